@@ -1,13 +1,17 @@
 """The one family of refusals.
 
 Raised low, with a sentence that says what was there and what would do, and turned into the text
-of a cell in one place only (``cells/faults.py``). The sentence carries no argument name: the
-caller that knows the name adds it.
+of a cell in one place only (``cells/faults.py``). Whoever knows which argument is to blame says so
+with ``argument``; otherwise the cell layer names the one it was reading.
 """
 
 
 class CellfuncsError(ValueError):
     """Root of every refusal; ``str(error)`` is one clear sentence."""
+
+    def __init__(self, text: str, argument: str | None = None):
+        super().__init__(text)
+        self.argument = argument
 
 
 class UnitRefused(CellfuncsError):
