@@ -1,0 +1,178 @@
+"""The command line: `cellfuncs recalc`, `cellfuncs functions`.
+
+Exit codes: 0 fine, 2 the input could not be used (one line on stderr says why), 130 interrupted.
+Whatever is heavy is imported inside the command that needs it, so that `--help` answers at once.
+"""
+
+import argparse
+import os
+import sys
+from collections.abc import Sequence
+
+from cellfuncs import __version__
+from cellfuncs.errors import CellfuncsError
+
+FINE, UNUSABLE, INTERRUPTED = 0, 2, 130
+
+
+def main(arguments: Sequence[str] | None = None) -> int:
+    """Run the command line; returns the exit code. Never raises an error into the terminal."""
+    _mend_streams()
+    options = _parser().parse_args(arguments)
+    try:
+        code = options.run(options)
+        sys.stdout.flush()
+        return code
+    except CellfuncsError as error:
+        return _refuse(str(error))
+    except BrokenPipeError:
+        # The reader of our output (head, a pager) has left: nothing more to say, and no message at exit.
+        os.dup2(os.open(os.devnull, os.O_WRONLY), sys.stdout.fileno())
+        return FINE
+    except OSError as error:
+        where = f"{error.filename}: " if error.filename else ""
+        return _refuse(f"{where}{error.strerror or error}")
+    except KeyboardInterrupt:
+        print("cellfuncs: interrupted, nothing was written", file=sys.stderr)
+        return INTERRUPTED
+    except MemoryError:
+        return _refuse("not enough memory for this workbook")
+    except Exception as error:
+        if os.environ.get("CELLFUNCS_TRACEBACK"):
+            raise
+        kind = type(error).__name__
+        return _refuse(f"an error of the program itself, {kind}: {error} (CELLFUNCS_TRACEBACK=1 shows where)")
+
+
+def _mend_streams() -> None:
+    """A terminal that lacks a sign shows a question mark instead of ending the program."""
+    for stream in (sys.stdout, sys.stderr):
+        if hasattr(stream, "reconfigure"):
+            stream.reconfigure(errors="replace")
+
+
+def _refuse(text: str) -> int:
+    print(f"cellfuncs: {' '.join(text.split())}", file=sys.stderr)
+    return UNUSABLE
+
+
+def _parser() -> argparse.ArgumentParser:
+    parser = argparse.ArgumentParser(
+        prog="cellfuncs",
+        description="Cell functions for convection and fluid friction, from the command line.",
+        epilog="Exit codes: 0 fine, 2 the input could not be used.",
+    )
+    parser.add_argument("--version", action="version", version=f"cellfuncs {__version__}")
+    commands = parser.add_subparsers(title="commands", metavar="COMMAND", required=True)
+
+    recalc = commands.add_parser(
+        "recalc",
+        help="recalculate a workbook without a spreadsheet program and print what our formulas answer",
+        description="Recalculates BOOK (.xlsx, .xlsm), prints every area of our formulas with its labels and "
+        "heads, and with -o writes a copy that holds the new values. BOOK itself is never changed.",
+    )
+    recalc.add_argument("book", metavar="BOOK", help="the workbook")
+    recalc.add_argument("-o", "--out", metavar="OUT", help="write the recalculated workbook here")
+    recalc.set_defaults(run=_recalc)
+
+    functions = commands.add_parser(
+        "functions",
+        help="list the cell functions, or tell all about one",
+        description="Lists the cell functions by family, or tells all about one.",
+    )
+    functions.add_argument("name", metavar="NAME", nargs="?", help="a function, with or without CF_")
+    functions.set_defaults(run=_functions)
+    return parser
+
+
+def _recalc(options: argparse.Namespace) -> int:
+    from cellfuncs.hosts import embedded
+
+    show = _Progress()
+    try:
+        result = embedded.recalc(options.book, out=options.out, progress=show)
+    finally:
+        show.clear()
+    print(embedded.render_areas(result.areas))
+    for warning in result.warnings:
+        print(f"warning: {warning}", file=sys.stderr)
+    if result.out:
+        print(f"wrote {result.out}")
+    return FINE
+
+
+class _Progress:
+    """The step under way, on one line of a terminal that goes when it is done; silent elsewhere."""
+
+    def __init__(self) -> None:
+        self.shown = 0
+
+    def __call__(self, text: str) -> None:
+        if sys.stderr.isatty():
+            self.clear()
+            self.shown = len(text)
+            print(text, end="", file=sys.stderr, flush=True)
+
+    def clear(self) -> None:
+        if self.shown:
+            print("\r" + " " * self.shown + "\r", end="", file=sys.stderr, flush=True)
+            self.shown = 0
+
+
+def _functions(options: argparse.Namespace) -> int:
+    from cellfuncs.cells import catalogue
+
+    known = catalogue.functions()
+    if options.name is None:
+        print(_listing(known.values()))
+        return FINE
+    wanted = options.name.upper()
+    name = wanted if wanted in known else f"CF_{wanted}"
+    if name not in known:
+        import difflib
+
+        near = difflib.get_close_matches(name, known, n=3, cutoff=0.5)
+        hint = f"; near it: {', '.join(near)}" if near else ""
+        return _refuse(f'no function "{options.name}"{hint}. `cellfuncs functions` lists all')
+    print(_in_full(known[name]))
+    return FINE
+
+
+def _call(function) -> str:
+    """CF_X(a, b, [c]) as one reads it in a formula."""
+    words = [f"[{one.name}]" if one.optional else one.name for one in function.arguments]
+    return f"{function.name}({', '.join(words)})"
+
+
+def _listing(functions) -> str:
+    lines = []
+    family = None
+    for function in functions:
+        if function.family != family:
+            family = function.family
+            lines += ["", family] if lines else [family]
+        lines += ["  " + _call(function), *_wrapped(function.summary, "      ")]
+    return "\n".join(lines)
+
+
+def _in_full(function) -> str:
+    lines = [_call(function), *_wrapped(function.summary, "  "), "", "Arguments"]
+    for one in function.arguments:
+        notes = [one.kind.replace("_", " ")] if one.kind else []
+        notes += ["optional"] if one.optional else []
+        lines.append(f"  {one.name}" + (f" ({', '.join(notes)})" if notes else ""))
+        lines += _wrapped(one.help, "      ")
+    if not function.arguments:
+        lines.append("  none")
+    lines += ["", f"Answers a {function.returns}. Family {function.family}."]
+    if function.source:
+        lines += _wrapped(f"Source: {function.source}", "")
+    return "\n".join(lines)
+
+
+def _wrapped(text: str, indent: str) -> list[str]:
+    import shutil
+    import textwrap
+
+    width = min(100, shutil.get_terminal_size((100, 24)).columns)
+    return textwrap.wrap(text, width, initial_indent=indent, subsequent_indent=indent)
