@@ -275,7 +275,7 @@ def _told(output: str, folder: Path) -> str | None:
 
 
 def _version(python: Path) -> str:
-    """"3.11" of an environment's Python, or "" when it does not run."""
+    """ "3.11" of an environment's Python, or "" when it does not run."""
     try:
         done = subprocess.run(
             [python, "-I", "-c", "import sys, pip; print('%d.%d' % sys.version_info[:2])"],
