@@ -283,46 +283,13 @@ def term_table() -> Row:
     return Row("CF_TERMS on water in a duct", 1000 * fresh / number, 2.0, "ms", note)
 
 
+UNITS = "m kg s K W Btu degF mmH2O lbf psi kJ cSt mil ft a µ Å"
+JOINTS = "*|/|·|.| |-|^|**|⁻¹|^-1|^4|(|)|((|))|per |²|%|,"
+
+
 def hostile_unit_texts() -> list[str]:
     """Texts of at most 40 characters built to make a reader of units work hard."""
-    units = [
-        "m",
-        "kg",
-        "s",
-        "K",
-        "W",
-        "Btu",
-        "degF",
-        "mmH2O",
-        "lbf",
-        "psi",
-        "kJ",
-        "cSt",
-        "mil",
-        "ft",
-        "µ",
-        "Å",
-    ]
-    joints = [
-        "*",
-        "/",
-        "·",
-        ".",
-        " ",
-        "-",
-        "^",
-        "**",
-        "⁻¹",
-        "^-1",
-        "^4",
-        "(",
-        ")",
-        "((",
-        "))",
-        "per ",
-        "²",
-        "%",
-    ]
+    units, joints = UNITS.split(), JOINTS.split("|")
     texts = {"", " " * 40, "9**9**9", "m^" * 20, "(" * 40, "(" * 20 + ")" * 20, "/" * 40, "^" * 40, "·" * 40}
     texts |= {(unit + joint) * (40 // len(unit + joint)) for unit in units for joint in joints}
     texts |= {(joint + unit) * (40 // len(unit + joint)) for unit in units for joint in joints}
