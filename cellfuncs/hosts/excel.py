@@ -65,10 +65,10 @@ def worksheet_function(function: catalogue.CellFunction) -> Callable[..., Any]:
             for argument in function.arguments
         ]
     )
-    wrapper = xlwings.func(category=function.family)(wrapper)
     for argument in function.arguments:
         wrapper = xlwings.arg(argument.name, doc=argument.help, **READING)(wrapper)
-    return wrapper
+    # Last, because each `arg` sets the category back to xlwings' own.
+    return xlwings.func(category=function.family)(wrapper)
 
 
 globals().update({name: worksheet_function(function) for name, function in catalogue.functions().items()})

@@ -46,6 +46,7 @@ def child() -> None:
     sys.modules["pywintypes"].com_error = type("com_error", (Exception,), {})
     sys.modules["pywintypes"].IID = str
     sys.modules["pythoncom"].TypeIIDs = collections.defaultdict(object)
+    sys.modules["win32process"].GetWindowThreadProcessId = lambda window: (0, 1)
     for name in ("windll", "oledll", "PyDLL"):
         setattr(ctypes, name, MagicMock())
 
@@ -62,13 +63,14 @@ def child() -> None:
 
     assert xlwings.func is udfs.xlfunc, "the real decorators of Windows must be in place"
 
-    class Range:
+    def cells(value):
         """A range as COM shows it: its values, and what tells that it is one."""
-
-        def __init__(self, value):
-            self.Value = value
-            self._oleobj_ = MagicMock()
-            self._oleobj_.GetTypeInfo().GetTypeAttr().iid = "{00020846-0000-0000-C000-000000000046}"
+        made = MagicMock()
+        made.Value = value
+        rows = value if isinstance(value, tuple) else ((value,),)
+        made.Row, made.Column, made.Rows.Count, made.Columns.Count = 1, 1, len(rows), len(rows[0])
+        made._oleobj_.GetTypeInfo().GetTypeAttr().iid = "{00020846-0000-0000-C000-000000000046}"
+        return made
 
     class Time(datetime.datetime):
         """Dates of cells come as pywintypes' own kind of datetime."""
@@ -78,18 +80,18 @@ def child() -> None:
     def handed(value):
         if isinstance(value, dict) and "range" in value:
             inner = value["range"]
-            return Range(tuple(map(tuple, inner)) if isinstance(inner, list) else inner)
+            return cells(tuple(map(tuple, inner)) if isinstance(inner, list) else inner)
         if isinstance(value, dict) and "array" in value:
             return tuple(tuple(row) if isinstance(row, list) else row for row in value["array"])
         if isinstance(value, dict) and "date" in value:
             return Time(*value["date"])
         if isinstance(value, dict) and "date in range" in value:
-            return Range(Time(*value["date in range"]))
+            return cells(Time(*value["date in range"]))
         return value
 
     def call(name, *values):
         arguments = tuple(handed(value) for value in values)
-        return com_server.XLPython().CallUDF("cellfuncs.hosts.excel", name, arguments, None, Range(None))
+        return com_server.XLPython().CallUDF("cellfuncs.hosts.excel", name, arguments, None, cells(None))
 
     asked = json.load(sys.stdin)
     module = udfs.get_udf_module("cellfuncs.hosts.excel", None)
