@@ -69,10 +69,12 @@ def _parser() -> argparse.ArgumentParser:
         "recalc",
         help="recalculate a workbook without a spreadsheet program and print what our formulas answer",
         description="Recalculates BOOK (.xlsx, .xlsm), prints every area of our formulas with its labels and "
-        "heads, and with -o writes a copy that holds the new values. BOOK itself is never changed.",
+        "heads, and writes a copy that holds the new values. BOOK itself is never changed.",
     )
     recalc.add_argument("book", metavar="BOOK", help="the workbook")
-    recalc.add_argument("-o", "--out", metavar="OUT", help="write the recalculated workbook here")
+    recalc.add_argument(
+        "-o", "--out", metavar="OUT", help="the copy to write (default: beside BOOK, NAME.recalculated.xlsx)"
+    )
     recalc.set_defaults(run=_recalc)
 
     functions = commands.add_parser(
@@ -96,8 +98,7 @@ def _recalc(options: argparse.Namespace) -> int:
     print(embedded.render_areas(result.areas))
     for warning in result.warnings:
         print(f"warning: {warning}", file=sys.stderr)
-    if result.out:
-        print(f"wrote {result.out}")
+    print(f"wrote {result.out}")
     return FINE
 
 
@@ -156,15 +157,18 @@ def _listing(functions) -> str:
 
 
 def _in_full(function) -> str:
+    from cellfuncs.quantities import KINDS
+
     lines = [_call(function), *_wrapped(function.summary, "  "), "", "Arguments"]
     for one in function.arguments:
-        notes = [one.kind.replace("_", " ")] if one.kind else []
+        kind = KINDS.get(one.kind)
+        notes = [f"{kind.words}, SI unit {kind.si_unit}"] if kind else []
         notes += ["optional"] if one.optional else []
         lines.append(f"  {one.name}" + (f" ({', '.join(notes)})" if notes else ""))
         lines += _wrapped(one.help, "      ")
     if not function.arguments:
         lines.append("  none")
-    lines += ["", f"Answers a {function.returns}. Family {function.family}."]
+    lines += ["", f"Example: {function.example}", f"Answers a {function.returns}. Family {function.family}."]
     if function.source:
         lines += _wrapped(f"Source: {function.source}", "")
     return "\n".join(lines)

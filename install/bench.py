@@ -365,7 +365,7 @@ def main(words: Sequence[str]) -> int:
     rows, broken = {}, 0
     (loop,) = best([calibration], 15)
     for letter in letters or ROWS:
-        print(f"measuring {ROWS[letter].__doc__.splitlines()[0]}", file=sys.stderr, flush=True)
+        print(f"measuring {letter}: {ROWS[letter].__doc__}", file=sys.stderr, flush=True)
         try:
             rows[letter] = ROWS[letter]()
         except Exception as error:
