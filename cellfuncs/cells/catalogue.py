@@ -196,6 +196,8 @@ def _caller(
     rows = nomenclature()
     readers = tuple(_reader(a, rows[takes.get(a.name, a.name)]) for a in arguments)
     names = tuple(a.name for a in arguments)
+    parameters = inspect.signature(function).parameters
+    defaults = tuple(parameters[n].default if n in parameters else None for n in names)
     count = len(arguments)
     required = sum(not a.optional for a in arguments)
     quantity = returns == "quantity"
@@ -214,6 +216,8 @@ def _caller(
                 value = readers[k](value)
                 if type(value) is Grid:
                     has_range = True
+                elif value is None:
+                    value = defaults[k]
                 values.append(value)
                 k += 1
             if k < required:
@@ -311,6 +315,8 @@ def _by_array(by_array: Any, values: list[Any], shape: Any, kind: Any, unit: Any
             if type(result) is Answer:
                 result, kind = result.value, result.kind
             if unit is not None:
+                if not kind:
+                    return None
                 result = quantities.from_si(result, unit, kind)
     except CellfuncsError:
         return None

@@ -1,0 +1,166 @@
+"""One solution a case, and everything in it by name."""
+
+from collections.abc import Callable, Mapping
+from dataclasses import dataclass
+from functools import cached_property
+
+from cellfuncs import groups
+from cellfuncs.answers.duct import DuctAnswers, solve_duct
+from cellfuncs.answers.gap import GapAnswers, solve_gap
+from cellfuncs.answers.plate import PlateAnswers, solve_plate
+from cellfuncs.cases import labels
+from cellfuncs.cases.case import Case
+from cellfuncs.errors import CaseRefused
+
+Answers = DuctAnswers | PlateAnswers | GapAnswers
+_SOLVERS: Mapping[str, Callable[[Case], Answers]] = {
+    "duct": solve_duct,
+    "plate": solve_plate,
+    "gap": solve_gap,
+}
+
+
+@dataclass(frozen=True)
+class Solution:
+    """A case with its answers; ``value`` gives any stated or derived quantity of it."""
+
+    case: Case
+    answers: Answers
+
+    @cached_property
+    def driving(self) -> float:
+        """Size of the driving difference [K]."""
+        return abs(self.answers.difference)
+
+    def value(self, key: str) -> float | str:
+        """A stated or derived quantity in SI, or the text of a choice."""
+        derived = _DERIVED.get(key)
+        found = derived(self) if derived else None
+        if found is None and self.case.has(key):
+            found = self.case.get(key)
+        if found is None:
+            entry = labels.dictionary()[key]
+            raise CaseRefused(f'"{entry.label}" is neither stated nor does it follow for this {self.case.flow}')
+        return found
+
+    @property
+    def group_length(self) -> float:
+        """The length that Re, Nu and the like are on: diameter, plate length, or gap."""
+        a = self.answers
+        if isinstance(a, DuctAnswers):
+            return a.shape.diameter
+        return a.length if isinstance(a, PlateAnswers) else a.gap
+
+    def mach(self) -> float | None:
+        sound = self.case.speed_of_sound(self.answers.property_temperature)
+        return None if sound is None else groups.mach(self.answers.velocity, sound)
+
+
+def solve(case: Case) -> Solution:
+    """Solve a case of any flow kind."""
+    return Solution(case, _SOLVERS[case.flow](case))
+
+
+def _attribute(name: str) -> Callable[[Solution], float | None]:
+    return lambda s: getattr(s.answers, name, None)
+
+
+def _property(name: str) -> Callable[[Solution], float]:
+    return lambda s: getattr(s.answers.properties, name)
+
+
+def _duct(find: Callable[[DuctAnswers], float | None]) -> Callable[[Solution], float | None]:
+    return lambda s: find(s.answers) if isinstance(s.answers, DuctAnswers) else None
+
+
+def _mass_flow(s: Solution) -> float | None:
+    a = s.answers
+    if not isinstance(a, DuctAnswers) or a.shape.area is None:
+        return None
+    return a.properties.density * a.velocity * a.shape.area
+
+
+def _local_flux(s: Solution) -> float:
+    a = s.answers
+    if isinstance(a, GapAnswers):
+        return a.cold_wall_flux
+    return a.local_flux
+
+
+def _wall_shear(s: Solution) -> float | None:
+    a = s.answers
+    if isinstance(a, GapAnswers):
+        return a.shear
+    if isinstance(a, DuctAnswers):
+        return a.pressure_drop * a.shape.diameter / (4.0 * a.length)
+    return None
+
+
+def _friction_rise(s: Solution) -> float | None:
+    a = s.answers
+    if not isinstance(a, DuctAnswers):
+        return None
+    return a.pressure_drop / (a.properties.density * a.properties.specific_heat)
+
+
+def _friction_power(s: Solution) -> float | None:
+    a = s.answers
+    if isinstance(a, GapAnswers):
+        return a.friction_power
+    if isinstance(a, DuctAnswers) and a.shape.area is not None:
+        return a.pressure_drop * a.velocity * a.shape.area
+    return None
+
+
+_DERIVED: Mapping[str, Callable[[Solution], float | str | None]] = {
+    "flow_kind": lambda s: s.case.flow,
+    "answer": lambda s: s.case.answer,
+    "tolerance": lambda s: s.case.tolerance,
+    "smallest": lambda s: s.case.smallest,
+    "pressure": lambda s: s.case.pressure,
+    "velocity": _attribute("velocity"),
+    "mass_flow": _mass_flow,
+    "volume_flow": _duct(lambda a: None if a.shape.area is None else a.velocity * a.shape.area),
+    "hydraulic_diameter": _duct(lambda a: a.shape.diameter),
+    "flow_area": _duct(lambda a: a.shape.area),
+    "section": _duct(lambda a: a.shape.section),
+    "heated_walls": _duct(lambda a: a.shape.heated),
+    "property_temperature": _attribute("property_temperature"),
+    "inlet_temperature": _attribute("inlet"),
+    "stream_temperature": _attribute("stream"),
+    "wall_temperature": _attribute("wall"),
+    "outlet_temperature": _attribute("outlet"),
+    "peak_temperature": _attribute("peak"),
+    "temperature_difference": _attribute("difference"),
+    "driving_difference": lambda s: s.driving,
+    "density": _property("density"),
+    "viscosity": _property("viscosity"),
+    "kinematic_viscosity": lambda s: s.answers.properties.viscosity / s.answers.properties.density,
+    "conductivity": _property("conductivity"),
+    "specific_heat": _property("specific_heat"),
+    "expansion": _property("expansion"),
+    "diffusivity": _property("diffusivity"),
+    "speed_of_sound": lambda s: s.case.speed_of_sound(s.answers.property_temperature),
+    "reynolds": _attribute("reynolds"),
+    "prandtl": _property("prandtl"),
+    "peclet": lambda s: s.answers.reynolds * s.answers.properties.prandtl,
+    "eckert": lambda s: s.answers.velocity**2 / (s.answers.properties.specific_heat * s.driving),
+    "brinkman": lambda s: groups.brinkman(
+        s.answers.velocity, s.driving, s.answers.properties.viscosity, s.answers.properties.conductivity
+    ),
+    "nusselt": _attribute("nusselt"),
+    "stanton": lambda s: None if isinstance(s.answers, GapAnswers) else s.answers.coefficient / s.answers.capacity_flux,
+    "graetz": _duct(lambda a: a.reynolds * a.properties.prandtl * a.shape.diameter / a.length),
+    "euler": _duct(lambda a: a.pressure_drop / (a.properties.density * a.velocity**2)),
+    "mach": lambda s: s.mach(),
+    "transfer_units": _duct(lambda a: a.transfer_units),
+    "coefficient": _attribute("coefficient"),
+    "friction_factor": _attribute("friction"),
+    "pressure_drop": _attribute("pressure_drop"),
+    "duty": _attribute("duty"),
+    "local_flux": _local_flux,
+    "recovery_rise": _attribute("recovery_rise"),
+    "friction_rise": _friction_rise,
+    "wall_shear": _wall_shear,
+    "friction_power": _friction_power,
+}

@@ -1,0 +1,242 @@
+"""The case: what is stated, and what follows from it by definition.
+
+What needs a coefficient (outlet temperature, a wall temperature under a given flux, and so the
+property temperature of some flows) comes from ``answers/``.
+"""
+
+from collections.abc import Mapping
+from dataclasses import dataclass
+from functools import cached_property
+from typing import Any, NamedTuple
+
+from cellfuncs import substances
+from cellfuncs.cases import labels
+from cellfuncs.errors import CaseRefused, CellfuncsError
+
+STANDARD_ATMOSPHERE = 101_325.0
+DEFAULT_TOLERANCE = 0.05
+DEFAULT_SMALLEST = 0.1  # K
+
+# property of a substance -> label that overrides it
+_OVERRIDES = {
+    "density": "density",
+    "viscosity": "viscosity",
+    "conductivity": "conductivity",
+    "specific_heat": "specific_heat",
+    "expansion_coefficient": "expansion",
+}
+_ANSWERS = {
+    "duct": ("outlet temperature", "wall temperature", "coefficient", "duty", "local flux", "pressure drop"),
+    "plate": ("coefficient", "wall temperature", "duty", "local flux"),
+    "gap": ("peak temperature", "local flux"),
+}
+
+
+class Properties(NamedTuple):
+    """Properties at one temperature, SI."""
+
+    density: float
+    viscosity: float
+    conductivity: float
+    specific_heat: float
+    expansion: float
+
+    @property
+    def prandtl(self) -> float:
+        return self.viscosity * self.specific_heat / self.conductivity
+
+    @property
+    def diffusivity(self) -> float:
+        return self.conductivity / (self.density * self.specific_heat)
+
+
+@dataclass(frozen=True)
+class Duct:
+    """Cross-section of a duct: hydraulic diameter, area, and the shape the methods ask for."""
+
+    diameter: float
+    area: float | None
+    section: str  # tube, plates or other
+    heated: str  # both or one
+
+    @property
+    def heated_per_area(self) -> float:
+        """Heated perimeter over cross-section [1/m]: 4/D, or 2/D with one of two plates insulated."""
+        return (2.0 if self.heated == "one" else 4.0) / self.diameter
+
+
+class Case:
+    """One operating point: a flow kind and its stated rows."""
+
+    def __init__(self, flow: str, stated: Mapping[str, Any]):
+        self.flow = flow
+        self.stated = stated
+
+    def get(self, key: str, default: Any = None) -> Any:
+        """The stated value in SI, or the default."""
+        entry = self.stated.get(key)
+        return default if entry is None else entry.value
+
+    def has(self, key: str) -> bool:
+        return key in self.stated
+
+    def need(self, *keys: str) -> Any:
+        """The first stated of ``keys``, or a refusal that asks for them by name."""
+        for key in keys:
+            if key in self.stated:
+                return self.stated[key].value
+        names = [f'"{labels.dictionary()[k].label}"' for k in keys]
+        listed = " or ".join([", ".join(names[:-1]), names[-1]] if len(names) > 1 else names)
+        raise CaseRefused(f"the row {listed} is missing for a {self.flow}")
+
+    @property
+    def tolerance(self) -> float:
+        return self.get("tolerance", DEFAULT_TOLERANCE)
+
+    @property
+    def smallest(self) -> float:
+        return self.get("smallest", DEFAULT_SMALLEST)
+
+    @property
+    def allow(self) -> bool:
+        """Whether methods may answer beyond their published range."""
+        return self.get("beyond_range") == "allow"
+
+    @cached_property
+    def wall(self) -> str:
+        """``temperature`` or ``flux``: what is prescribed at the wall."""
+        prescribed = [k for k in ("wall_temperature", "heat_flux", "temperature_difference") if self.has(k)]
+        if self.has("heat_flux") and len(prescribed) > 1:
+            names = " and ".join(f'"{self.stated[k].label}"' for k in prescribed)
+            raise CaseRefused(f"{names} are both stated; prescribe the flux or the wall temperature, not both")
+        if not prescribed:
+            self.need("wall_temperature", "heat_flux", "temperature_difference")
+        return "flux" if self.has("heat_flux") else "temperature"
+
+    @cached_property
+    def answer(self) -> str:
+        """The answer the verdicts are for: the row, or the default of the flow kind."""
+        if self.flow == "duct":
+            default = "wall temperature" if self.wall == "flux" else "outlet temperature"
+        else:
+            default = _ANSWERS[self.flow][0]
+        wanted = self.get("answer", default)
+        if wanted not in _ANSWERS[self.flow] or (wanted == "wall temperature" and self.wall == "temperature"):
+            why = "the wall temperature is prescribed" if wanted == "wall temperature" else f"a {self.flow} has none"
+            rest = [a for a in _ANSWERS[self.flow] if a != "wall temperature" or self.wall == "flux"]
+            raise CaseRefused(f'"answer" is {wanted}, but {why}; write one of: {", ".join(rest)}')
+        return wanted
+
+    # -- geometry and flow ------------------------------------------------------------------
+
+    @cached_property
+    def duct(self) -> Duct:
+        given = [k for k in ("diameter", "hydraulic_diameter", "gap") if self.has(k)]
+        if len(given) > 1:
+            names = " and ".join(f'"{self.stated[k].label}"' for k in given)
+            raise CaseRefused(f"{names} are both stated; one of them describes the section")
+        size = self.need("diameter", "hydraulic_diameter", "gap")
+        natural = {"diameter": "tube", "hydraulic_diameter": "other", "gap": "plates"}[given[0]]
+        section = self.get("section", natural)
+        heated = self.get("heated_walls", "both")
+        if section == "plates" and natural == "tube":
+            raise CaseRefused('parallel plates are described by their "gap", not by a diameter')
+        if natural == "plates" and section != "plates":
+            raise CaseRefused(f'a "gap" describes parallel plates, but the section is {section}')
+        if heated == "one" and section != "plates":
+            raise CaseRefused('"heated walls" one is for parallel plates')
+        area = self.get("flow_area")
+        if natural == "plates":
+            if area is None and self.has("width"):
+                area = size * self.need("width")
+            return Duct(2.0 * size, area, section, heated)
+        if area is None and section == "tube":
+            area = 0.7853981633974483 * size * size
+        return Duct(size, area, section, heated)
+
+    def velocity(self, density: float) -> float:
+        """Mean velocity [m/s], stated or from the one flow that is stated."""
+        given = [k for k in ("velocity", "volume_flow", "mass_flow") if self.has(k)]
+        if len(given) > 1:
+            names = " and ".join(f'"{self.stated[k].label}"' for k in given)
+            raise CaseRefused(f"{names} are both stated; state one of velocity, volume flow, mass flow")
+        if self.has("velocity"):
+            return self.get("velocity")
+        if self.flow != "duct":
+            return self.need("velocity")
+        flow = self.need("velocity", "volume_flow", "mass_flow")
+        area = self.duct.area
+        if area is None:
+            missing = "width" if self.duct.section == "plates" else "flow area"
+            raise CaseRefused(f'a velocity from "{self.stated[given[0]].label}" needs the row "{missing}"')
+        return flow / area if self.has("volume_flow") else flow / (density * area)
+
+    # -- properties -------------------------------------------------------------------------
+
+    @cached_property
+    def substance(self) -> Any:
+        """The substance, or None when every property is stated."""
+        if self.has("substance"):
+            try:
+                return substances.find(self.get("substance"))
+            except CellfuncsError as error:
+                raise CaseRefused(f'"{self.stated["substance"].label}": {error}') from None
+        return None
+
+    @cached_property
+    def pressure(self) -> float:
+        return self.get("pressure", self.get("atmosphere", STANDARD_ATMOSPHERE))
+
+    @cached_property
+    def fixed(self) -> bool:
+        """Whether all properties are stated, so that no temperature enters them."""
+        return not self._wanted
+
+    @cached_property
+    def _stated_properties(self) -> dict[str, float]:
+        found = {name: self.get(label) for name, label in _OVERRIDES.items() if self.has(label)}
+        if self.has("kinematic_viscosity"):
+            if self.has("viscosity"):
+                raise CaseRefused("viscosity and kinematic viscosity are both stated; keep one")
+            if "density" in found:
+                found["viscosity"] = self.get("kinematic_viscosity") * found["density"]
+        if not self.has("substance") and "expansion_coefficient" not in found:
+            found["expansion_coefficient"] = 0.0  # said in the reason of pressure work
+        return found
+
+    @cached_property
+    def _wanted(self) -> tuple[str, ...]:
+        return tuple(name for name in _OVERRIDES if name not in self._stated_properties)
+
+    def properties(self, temperature: float | None) -> Properties:
+        """Properties at a temperature [K], each overridden by its row where there is one."""
+        known = dict(self._stated_properties)
+        wanted = self._wanted
+        if self.has("kinematic_viscosity") and "density" not in known:
+            wanted = tuple(w for w in wanted if w != "viscosity")
+        if wanted:
+            if self.substance is None:
+                missing = next(w for w in wanted if w != "expansion_coefficient")
+                label = labels.dictionary()[_OVERRIDES[missing]].label
+                raise CaseRefused(f'the row "{label}" is missing; state it, or name a "substance"')
+            if temperature is None:
+                raise CaseRefused(
+                    'properties need a temperature; add the row "property temperature" or the temperatures of the flow'
+                )
+            known.update(self._from_substance(wanted, temperature))
+        if "viscosity" not in known:
+            known["viscosity"] = self.get("kinematic_viscosity") * known["density"]
+        return Properties(*(known[name] for name in _OVERRIDES))
+
+    def _from_substance(self, wanted: tuple[str, ...], temperature: float) -> dict[str, float]:
+        get, pressure = self.substance.get, self.pressure
+        return {name: get(name, temperature, pressure) for name in wanted}
+
+    def speed_of_sound(self, temperature: float | None) -> float | None:
+        """Speed of sound of the substance, or None where it is not known."""
+        if self.substance is None or temperature is None:
+            return None
+        try:
+            return self.substance.get("speed_of_sound", temperature, self.pressure)
+        except CellfuncsError:
+            return None

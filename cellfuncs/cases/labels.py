@@ -1,0 +1,164 @@
+"""The one dictionary of labels: what engineers write beside a value, and what it stands for.
+
+Data: ``data/labels.csv`` and ``data/choices.csv``. A label is found by its name, a synonym or its
+usual symbol; where several remain, the unit and the flow kind settle it.
+"""
+
+import csv
+import re
+import unicodedata
+from collections.abc import Iterable, Mapping
+from dataclasses import dataclass
+from functools import cache
+from importlib import resources
+
+from cellfuncs import quantities
+from cellfuncs.errors import CaseRefused, UnknownName
+
+_BRACKETED = re.compile(r"[\[(]([^\[\]()]*)[\])]\s*$")
+_JOINTS = re.compile(r"[\s_,.\-]+")
+
+
+@dataclass(frozen=True)
+class Label:
+    """An entry of the dictionary; ``role`` is stated, choice, text, note or derived."""
+
+    key: str
+    label: str
+    role: str
+    kind: str
+    symbols: tuple[str, ...]
+    synonyms: tuple[str, ...]
+    flows: tuple[str, ...]
+
+
+def _rows(name: str) -> list[dict[str, str]]:
+    text = resources.files("cellfuncs").joinpath(f"data/{name}").read_text("utf-8")
+    return list(csv.DictReader(text.splitlines()))
+
+
+def _split(text: str) -> tuple[str, ...]:
+    return tuple(part for part in text.split(";") if part)
+
+
+@cache
+def dictionary() -> Mapping[str, Label]:
+    """All labels by key."""
+    return {
+        row["key"]: Label(
+            row["key"], row["label"], row["role"], row["kind"],
+            _split(row["symbols"]), _split(row["synonyms"]), _split(row["flows"]),
+        )
+        for row in _rows("labels.csv")
+    }  # fmt: skip
+
+
+@cache
+def _choices() -> Mapping[str, Mapping[str, str]]:
+    table: dict[str, dict[str, str]] = {}
+    for row in _rows("choices.csv"):
+        for spelling in _split(row["spellings"]):
+            table.setdefault(row["key"], {})[_plain(spelling)] = row["choice"]
+    return table
+
+
+@cache
+def choices(key: str) -> tuple[str, ...]:
+    """The admissible choices of a row such as ``flow kind``."""
+    return tuple(dict.fromkeys(_choices()[key].values()))
+
+
+def _plain(text: str) -> str:
+    """A label without case, accents of spacing, and joints."""
+    text = unicodedata.normalize("NFKC", text).replace("µ", "μ").strip().rstrip(":=").strip()
+    return _JOINTS.sub(" ", text).strip().casefold()
+
+
+def _symbol(text: str) -> str:
+    """A symbol without separators, case kept."""
+    text = text.replace("µ", "μ").replace("\u2206", "Δ").strip().rstrip(":=").strip()
+    return _JOINTS.sub("", text).replace("{", "").replace("}", "")
+
+
+@cache
+def _index() -> tuple[dict[str, list[str]], dict[str, list[str]], dict[str, list[str]]]:
+    """Names, symbols with case, symbols without case -> keys."""
+    names: dict[str, list[str]] = {}
+    exact: dict[str, list[str]] = {}
+    loose: dict[str, list[str]] = {}
+    for key, entry in dictionary().items():
+        for name in (entry.label, *entry.synonyms):
+            names.setdefault(_plain(name), []).append(key)
+        for symbol in entry.symbols:
+            exact.setdefault(_symbol(symbol), []).append(key)
+            loose.setdefault(_symbol(symbol).casefold(), []).append(key)
+    return names, exact, loose
+
+
+def split_unit(label: str) -> tuple[str, str]:
+    """``Tube ID (mm)`` -> ``Tube ID``, ``mm``; a bracket that is no unit is left off the label."""
+    found = _BRACKETED.search(label)
+    if not found or found.start() == 0:
+        return label, ""
+    inside = found.group(1).strip()
+    rest = label[: found.start()].strip().rstrip(",")
+    return rest, inside if inside and quantities.kinds_for(inside) else ""
+
+
+@cache
+def candidates(label: str) -> tuple[str, ...]:
+    """All keys that a label may stand for, names before symbols; empty for an unknown label."""
+    names, exact, loose = _index()
+    found = names.get(_plain(label)) or exact.get(_symbol(label)) or loose.get(_symbol(label).casefold())
+    return tuple(dict.fromkeys(found or ()))
+
+
+def settle(label: str, keys: Iterable[str], unit: str, flow: str | None) -> str:
+    """The one key that fits the unit and the flow kind, or a refusal that names those that remain."""
+    keys = list(keys)
+    table = dictionary()
+    if len(keys) > 1 and unit:
+        keys = [k for k in keys if table[k].kind and quantities.unit_fits(unit, table[k].kind)] or keys
+    if len(keys) > 1 and flow:
+        keys = [k for k in keys if not table[k].flows or flow in table[k].flows] or keys
+        own = [k for k in keys if flow in table[k].flows]
+        keys = own if len(own) == 1 else keys
+    if len(keys) > 1:
+        meant = " or ".join(f'"{table[k].label}"' for k in keys)
+        raise CaseRefused(f'"{label}" may be {meant}; write that instead')
+    return keys[0]
+
+
+def nearest(label: str, roles: tuple[str, ...] = ("stated", "choice", "text")) -> str:
+    """The known label nearest to an unknown one."""
+    from rapidfuzz import fuzz, process
+
+    names = {
+        name: entry.label
+        for entry in dictionary().values()
+        if entry.role in roles
+        for name in (entry.label, *entry.synonyms)
+    }
+    match = process.extractOne(_plain(label), list(names), scorer=fuzz.WRatio)
+    return names[match[0]] if match else next(iter(names.values()))
+
+
+def choice(key: str, text: str) -> str:
+    """The admissible choice that a text means, or a refusal that lists them."""
+    table = _choices()[key]
+    found = table.get(_plain(text))
+    if found is None:
+        listed = ", ".join(choices(key))
+        raise UnknownName(f'"{text[:40]}" is no {dictionary()[key].label}; write one of: {listed}')
+    return found
+
+
+def find(text: str, flow: str | None = None) -> str:
+    """The key of a label or derived quantity asked for by name or symbol."""
+    label, unit = split_unit(text)
+    keys = candidates(text) or candidates(label)
+    keys = tuple(k for k in keys if dictionary()[k].role != "note")
+    if not keys:
+        known = nearest(text, ("stated", "choice", "text", "derived"))
+        raise UnknownName(f'"{text[:60]}" is not known; the nearest is "{known}"')
+    return settle(text, keys, unit, flow)

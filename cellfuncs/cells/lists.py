@@ -1,0 +1,63 @@
+"""What a user may type, for CF_LIST and for drop-down lists."""
+
+from collections.abc import Callable, Mapping
+
+from cellfuncs import groups, quantities, substances
+from cellfuncs.cases import labels
+from cellfuncs.cells import catalogue
+from cellfuncs.errors import UnknownName
+from cellfuncs.terms import MEASURES, TERMS
+
+
+def _labels(of: str | None) -> list[str]:
+    """Labels of a block, of one flow kind where it is named."""
+    flow = labels.choice("flow_kind", of) if of else None
+    roles = ("stated", "choice", "text")
+    entries = labels.dictionary().values()
+    return [e.label for e in entries if e.role in roles and (not flow or not e.flows or flow in e.flows)]
+
+
+def _derived(of: str | None) -> list[str]:
+    return [e.label for e in labels.dictionary().values() if e.role in ("stated", "derived")]
+
+
+def _choices(of: str | None) -> list[str]:
+    if not of:
+        return [e.label for e in labels.dictionary().values() if e.role == "choice"]
+    key = labels.find(of)
+    if labels.dictionary()[key].role != "choice":
+        raise UnknownName(f'"{of[:40]}" has no list of choices', argument="of")
+    return list(labels.choices(key))
+
+
+def _units(of: str | None) -> list[str]:
+    if of:
+        return list(quantities.KINDS[quantities.kind_key(of)].units)
+    return list(dict.fromkeys(unit for kind in quantities.KINDS.values() for unit in kind.units))
+
+
+_LISTS: Mapping[str, Callable[[str | None], list[str]]] = {
+    "labels": _labels,
+    "quantities": _derived,
+    "choices": _choices,
+    "units": _units,
+    "kinds": lambda of: [kind.words for kind in quantities.KINDS.values()],
+    "terms": lambda of: list(TERMS),
+    "measures": lambda of: list(MEASURES),
+    "answers": lambda of: list(labels.choices("answer")),
+    "flow kinds": lambda of: list(labels.choices("flow_kind")),
+    "properties": lambda of: [p.words for p in substances.PROPERTIES.values()],
+    "moist air": lambda of: [p.words for p in substances.MOIST_AIR.values()],
+    "substances": lambda of: [name for name, *_ in substances.names(of or "")],
+    "groups": lambda of: [group.name for group in groups.table().values()],
+    "functions": lambda of: list(catalogue.functions()),
+}
+
+
+def entries(what: str, of: str | None) -> list[str]:
+    """The list ``what``, narrowed by ``of``."""
+    plain = " ".join(what.replace("_", " ").split()).casefold()
+    for name in (plain, plain + "s"):
+        if name in _LISTS:
+            return _LISTS[name](of)
+    raise UnknownName(f'"{what[:40]}" is no list; write one of: {", ".join(_LISTS)}', argument="what")

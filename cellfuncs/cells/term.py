@@ -1,0 +1,51 @@
+"""Cell functions of the family Terms."""
+
+from cellfuncs.cells import solved
+from cellfuncs.cells.catalogue import cell_function
+from cellfuncs.errors import UnknownName
+from cellfuncs.terms import COLUMNS, MEASURES, TERMS
+from cellfuncs.terms.table import ALL_LEFT_OUT
+
+_SOURCE = "scaled energy equation; recovery and friction as cited by the methods used"
+
+
+def _named(text: str, admissible: tuple[str, ...], argument: str) -> str:
+    plain = " ".join(text.replace("-", " ").replace("_", " ").split()).casefold()
+    for name in admissible:
+        if name.replace("-", " ") == plain:
+            return name
+    from rapidfuzz import process
+
+    near = process.extractOne(plain, admissible)[0]
+    raise UnknownName(f'"{text[:40]}" is not one; the nearest is "{near}"', argument=argument)
+
+
+def _equation(text: str | None) -> str:
+    return "energy" if text is None else text.strip().casefold()
+
+
+@cell_function(
+    "CF_TERMS",
+    family="Terms",
+    summary="The term table of a case: how large each term of the energy equation is, its verdict and the reason.",
+    returns="table",
+    source=_SOURCE,
+    example="=CF_TERMS(coolant)",
+)
+def terms(block, equation=None):
+    return [list(COLUMNS), *map(list, solved.terms(block, _equation(equation)))]
+
+
+@cell_function(
+    "CF_TERM",
+    family="Terms",
+    summary="One cell of the term table: the share of a term, or its one-scale size, effect, verdict or reason.",
+    returns="table",
+    source=_SOURCE,
+    example='=CF_TERM(coolant,"viscous heating","verdict")',
+)
+def term(block, term, measure=None):
+    name = _named(term, (*TERMS, ALL_LEFT_OUT), "term")
+    column = 2 if measure is None else COLUMNS.index(_named(measure, MEASURES, "measure"))
+    rows = solved.terms(block, "energy")
+    return next(row[column] for row in rows if row[0] == name)

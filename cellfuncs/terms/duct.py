@@ -1,0 +1,210 @@
+"""Sizes of the energy terms in a duct: means over the cross-section, so that the balance closes.
+
+With a = heated perimeter over area (4/D, or 2/D with one of two plates insulated) and the balance
+a·h·ΔT_m = ρcpU·ΔT_b/L, conduction across and advection are equal at any Re and Pr.
+"""
+
+import math
+
+from cellfuncs.answers import Solution
+from cellfuncs.answers.duct import DuctAnswers
+from cellfuncs.terms.recovery import rise_or_bound
+from cellfuncs.terms.size import Size, absent, num, percent
+
+_MEANS = (0.01, 0.03)  # wall conduction number: leave out below, keep above, for mean answers
+_LOCAL = (0.003, 0.009)  # ... for local answers (Maranzana et al. 2004)
+_LOCAL_ANSWERS = ("wall temperature", "local flux")
+
+
+def sizes(solution: Solution) -> list[Size]:
+    """The terms of a duct in the order of the table."""
+    a: DuctAnswers = solution.answers
+    return [
+        _storage(solution, a),
+        *_exchange(solution, a),
+        _conduction_along(solution, a),
+        _wall_conduction(solution, a),
+        *_friction_pair(solution, a),
+        _source(solution, a),
+        absent("wall radiation", "a clear gas inside a duct of one wall temperature, or an opaque liquid: none"),
+    ]
+
+
+def _base(solution: Solution, a: DuctAnswers) -> float:
+    """What the answer's change is taken over, where it is a temperature [K]."""
+    if solution.case.answer == "outlet temperature" and a.flux is not None:
+        return abs(a.bulk_rise)
+    return solution.driving
+
+
+def _kelvins(solution: Solution, a: DuctAnswers, share: float) -> float | None:
+    if solution.case.answer in ("outlet temperature", "wall temperature"):
+        return share * _base(solution, a)
+    return None
+
+
+def balance(solution: Solution, a: DuctAnswers) -> float:
+    """The heat exchanged with the wall per volume [W/m3], which is what the stream carries away."""
+    if a.flux is not None:
+        return abs(a.flux) * a.exchange
+    return a.capacity_flux * solution.driving * -math.expm1(-a.transfer_units) / a.length
+
+
+def _exchange(solution: Solution, a: DuctAnswers) -> tuple[Size, Size]:
+    p, n = a.properties, a.transfer_units
+    peclet = a.capacity_flux * a.length / p.conductivity
+    if a.flux is None:
+        mean = solution.driving * -math.expm1(-n) / n
+        across = a.exchange * a.coefficient * mean
+        says = f"h {num(a.coefficient)} W/(m2 K) ({a.method}), NTU {num(n)}, mean difference {num(mean)} K"
+    else:
+        across = abs(a.flux) * a.exchange
+        says = f"flux {num(abs(a.flux))} W/m2 given; h {num(a.coefficient)} W/(m2 K) ({a.method}), q/h {num(solution.driving)} K"
+    if a.shape.section == "other" and a.reynolds < 2300:
+        says += "; tube value, by shape -35 to +50 %"
+    if a.outside:
+        says += f"; beyond range: {a.outside}"
+    advection = balance(solution, a)
+    carried = f"the stream takes up what the wall gives: {num(abs(a.bulk_rise))} K over {num(a.length)} m"
+    return (
+        Size("advection", 1.0, advection, carried, leading=True),
+        Size("conduction across", 1.0 / peclet, across, says, leading=True),
+    )
+
+
+def _conduction_along(solution: Solution, a: DuctAnswers) -> Size:
+    p = a.properties
+    peclet_length = a.capacity_flux * a.length / p.conductivity
+    peclet = a.reynolds * p.prandtl
+    grows_over = min(a.length, a.length / a.transfer_units)
+    size = p.conductivity * solution.driving / grows_over**2
+    share = None
+    says = f"temperature changes over {num(grows_over)} m; Pe {num(peclet)}"
+    if solution.case.answer == "duty" and a.flux is None:
+        reach = a.shape.diameter / math.sqrt(8.0 * peclet)
+        ends = 0.35 * reach / a.length
+        share = max(ends, size / balance(solution, a))
+        says += f"; about {percent(ends)} of the duty by the step at the inlet"
+    ratio = size / balance(solution, a)
+    kelvins = _kelvins(solution, a, 3.0 * ratio)
+    return Size("conduction along", 1.0 / peclet_length, size, says, asked=share, kelvins=kelvins)
+
+
+def _storage(solution: Solution, a: DuctAnswers) -> Size:
+    time = solution.case.get("time")
+    if time is None:
+        return absent("storage", "steady: no time scale is stated; add one to judge start-up or swings")
+    p = a.properties
+    moving = max(solution.driving, abs(a.bulk_rise))
+    size = p.density * p.specific_heat * moving / time
+    passing = a.length / (a.velocity * time)
+    return Size(
+        "storage",
+        passing,
+        size,
+        f"the stream passes in {num(a.length / a.velocity)} s, the change takes {num(time)} s; wall not counted",
+        kelvins=_kelvins(solution, a, 3.0 * size / balance(solution, a)),
+    )
+
+
+def _wall_conduction(solution: Solution, a: DuctAnswers) -> Size:
+    case = solution.case
+    if not (case.has("wall_thickness") and case.has("wall_conductivity")):
+        return absent("wall conduction", "no wall is stated; add wall thickness and wall conductivity to judge it")
+    s, k, d = case.get("wall_thickness"), case.get("wall_conductivity"), a.shape.diameter
+    if a.shape.section == "plates":
+        metal_over_flow = 2.0 * s / (d / 2.0)
+    else:
+        metal_over_flow = 4.0 * s * (d + s) / d**2
+    m = k * metal_over_flow / (a.length * a.capacity_flux)
+    thresholds = _LOCAL if case.answer in _LOCAL_ANSWERS else _MEANS
+    return Size(
+        "wall conduction",
+        m,
+        m * balance(solution, a),
+        f"M = {num(m)} (Maranzana et al. 2004: below {num(thresholds[0])} leave out)",
+        asked=m,
+        thresholds=thresholds,
+    )
+
+
+def _friction_pair(solution: Solution, a: DuctAnswers) -> tuple[Size, Size]:
+    """Viscous heating and pressure work: sizes of their own, one share and one verdict."""
+    p = a.properties
+    drop = abs(a.pressure_drop)
+    heating = drop * a.velocity / a.length
+    beta_t = p.expansion * a.property_temperature if a.property_temperature is not None else 0.0
+    work = beta_t * heating
+    net = (1.0 - beta_t) * heating
+    rise, remark = rise_or_bound(a)
+    share, exact = _friction_share(solution, a, net, rise)
+    if remark:
+        exact = False
+    kelvins = _kelvins(solution, a, share)
+    ec_re = (
+        p.viscosity * a.velocity / (p.density * p.specific_heat * solution.driving * a.length)
+    )  # Ec/Re = μU/(ρcpΔT·L), both on the length along the stream
+    eu_ec = beta_t * drop / (p.density * p.specific_heat * solution.driving)
+    bulk = (1.0 - beta_t) * drop / (p.density * p.specific_heat)
+    says = f"friction {num(drop)} Pa warms the bulk by {num(bulk)} K net, an unheated wall by {num(rise)} K"
+    if remark:
+        says += f" ({remark})"
+    elif beta_t > 0:
+        says += "; judged as a pair with pressure work" if beta_t < 0.999 or beta_t > 1.001 else ""
+    net_size = abs(net)
+    viscous = Size(
+        "viscous heating", ec_re, heating, says, asked=share, exact=exact, kelvins=kelvins, nets_to=net_size, pair=True
+    )
+    if beta_t == 0:
+        why = "expansion coefficient not known, taken as 0: state it (gases: 1/T)"
+        if solution.case.has("substance") or solution.case.has("expansion"):
+            why = "expansion coefficient 0: none"
+        return viscous, absent("pressure work", why)
+    takes = "takes" if beta_t > 0 else "adds"
+    cools = f"βT {num(beta_t)}: expansion {takes} {percent(abs(beta_t))} of the friction heat; judged as a pair with it"
+    pressure = Size(
+        "pressure work", eu_ec, abs(work), cools, asked=share, exact=exact, kelvins=kelvins, nets_to=0.0, pair=True
+    )
+    return viscous, pressure
+
+
+def _friction_share(solution: Solution, a: DuctAnswers, net: float, rise: float) -> tuple[float, bool]:
+    """The share that the answer calls for, and whether it is the effect itself."""
+    answer, n = solution.case.answer, a.transfer_units
+    if a.flux is not None:
+        bulk = net * a.length / a.capacity_flux
+        if answer == "outlet temperature":
+            return abs(bulk) / abs(a.bulk_rise), True
+        if answer == "wall temperature":
+            return abs(bulk + rise) / solution.driving, True
+        return max(abs(net) / balance(solution, a), rise / solution.driving), False
+    r = net / (a.exchange * a.coefficient * solution.driving)
+    w = rise / solution.driving
+    taken = -math.expm1(-n)
+    if answer == "outlet temperature":
+        return abs(r - w) * taken, True
+    if answer == "duty":
+        return abs(w - r + r * n / taken), True
+    if answer == "local flux":
+        return abs(w + r * math.expm1(min(n, 700.0))), True
+    if answer == "coefficient":
+        return max(abs(net) / balance(solution, a), w), False
+    return abs(net) / balance(solution, a), False
+
+
+def _source(solution: Solution, a: DuctAnswers) -> Size:
+    q = solution.case.get("volumetric_source")
+    if q is None:
+        return absent("volumetric source", "no source is stated; add one for electric, absorbed or reaction heat")
+    one_scale = abs(q) * a.length / (a.capacity_flux * solution.driving)
+    share, exact = _friction_share(solution, a, q, 0.0)
+    shift = abs(q) * a.length / a.capacity_flux
+    return Size(
+        "volumetric source",
+        one_scale,
+        abs(q),
+        f"{num(q)} W/m3 alone would warm the stream by {num(shift)} K",
+        asked=share,
+        exact=exact,
+        kelvins=_kelvins(solution, a, share),
+    )

@@ -1,0 +1,111 @@
+"""Sizes of the energy terms in the layer on a flat plate.
+
+The thickness comes from the energy integral, δ = hL/(ρcpU), so that conduction across and advection
+are both ρcpU·ΔT/L; molecular k over a turbulent layer never enters.
+"""
+
+from cellfuncs.answers import Solution
+from cellfuncs.answers.plate import PlateAnswers
+from cellfuncs.terms.recovery import rise_or_bound
+from cellfuncs.terms.size import STEFAN_BOLTZMANN, Size, absent, num, percent
+
+_HOLDS, _FAILS = 1000.0, 100.0  # Re_L of a boundary layer: premise holds above, fails below
+
+
+def sizes(solution: Solution) -> list[Size]:
+    """The terms of a plate in the order of the table."""
+    a: PlateAnswers = solution.answers
+    balance = a.capacity_flux * solution.driving / a.length
+    return [
+        _storage(solution, a, balance),
+        *_exchange(solution, a, balance),
+        _conduction_along(a),
+        absent("wall conduction", "conduction along the plate itself is not judged here; a duct case does"),
+        _viscous(solution, a, balance),
+        absent("pressure work", "no pressure gradient along a flat plate; heat of compression is in the recovery"),
+        _source(solution, a),
+        _radiation(solution, a, balance),
+    ]
+
+
+def _kelvins(solution: Solution, share: float) -> float | None:
+    return share * solution.driving if solution.case.answer == "wall temperature" else None
+
+
+def _peclet(a: PlateAnswers) -> float:
+    return a.reynolds * a.properties.prandtl
+
+
+def _exchange(solution: Solution, a: PlateAnswers, balance: float) -> tuple[Size, Size]:
+    thickness = a.properties.conductivity / a.coefficient
+    says = (
+        f"h {num(a.coefficient)} W/(m2 K) ({a.method}), difference {num(solution.driving)} K, "
+        f"k/h {num(1000 * thickness)} mm"
+    )
+    if a.outside:
+        says += f"; beyond range: {a.outside}"
+    carried = f"the layer carries away what the wall gives; Re {num(a.reynolds)}"
+    return (
+        Size("advection", 1.0, balance, carried, leading=True),
+        Size("conduction across", 1.0 / _peclet(a), balance, says, leading=True),
+    )
+
+
+def _conduction_along(a: PlateAnswers) -> Size:
+    re = a.reynolds
+    settled = "leave out" if re >= _HOLDS else "borderline" if re >= _FAILS else "keep"
+    state = {"leave out": "holds", "borderline": "is strained", "keep": "fails"}[settled]
+    says = f"no share: it is the premise of a thin layer, Re from {_HOLDS:g}; here Re {num(re)}, so it {state}"
+    return Size("conduction along", 1.0 / _peclet(a), 0.0, says, asked=0.0, settled=settled, no_share=True)
+
+
+def _storage(solution: Solution, a: PlateAnswers, balance: float) -> Size:
+    time = solution.case.get("time")
+    if time is None:
+        return absent("storage", "steady: no time scale is stated; add one to judge start-up or swings")
+    p = a.properties
+    size = p.density * p.specific_heat * solution.driving / time
+    return Size(
+        "storage",
+        a.length / (a.velocity * time),
+        size,
+        f"the stream passes in {num(a.length / a.velocity)} s, the change takes {num(time)} s",
+        kelvins=_kelvins(solution, 3.0 * size / balance),
+    )
+
+
+def _viscous(solution: Solution, a: PlateAnswers, balance: float) -> Size:
+    p = a.properties
+    rise, remark = rise_or_bound(a)
+    share = rise / solution.driving
+    ec_re = a.velocity**2 / (p.specific_heat * solution.driving) / a.reynolds
+    says = f"friction warms an unheated wall by {num(rise)} K (recovery), difference {num(solution.driving)} K"
+    if remark:
+        says += f"; {remark}"
+    elif not a.laminar and p.prandtl > 1.0:
+        says += "; Pr^1/3 is meant for gases, rough here"
+    return Size("viscous heating", ec_re, share * balance, says, kelvins=_kelvins(solution, share))
+
+
+def _source(solution: Solution, a: PlateAnswers) -> Size:
+    q = solution.case.get("volumetric_source")
+    if q is None:
+        return absent("volumetric source", "no source is stated; add one for absorbed or reaction heat")
+    share = abs(q) * a.length / (a.capacity_flux * solution.driving)
+    says = f"{num(q)} W/m3 alone would warm the layer by {num(share * solution.driving)} K"
+    return Size("volumetric source", share, abs(q), says, kelvins=_kelvins(solution, share))
+
+
+def _radiation(solution: Solution, a: PlateAnswers, balance: float) -> Size:
+    case = solution.case
+    if not (case.has("emissivity") and case.has("surroundings_temperature")) or a.wall is None:
+        return absent(
+            "wall radiation", "not stated; add emissivity and surroundings temperature to judge radiation from the wall"
+        )
+    flux = case.get("emissivity") * STEFAN_BOLTZMANN * (a.wall**4 - case.get("surroundings_temperature") ** 4)
+    share = abs(flux) / (a.coefficient * solution.driving)
+    says = f"the wall radiates {num(flux)} W/m2, {percent(share)} of what it gives to the stream"
+    return Size(
+        "wall radiation", abs(flux) / a.capacity_flux / solution.driving, share * balance, says,
+        kelvins=_kelvins(solution, 3.0 * share),
+    )  # fmt: skip

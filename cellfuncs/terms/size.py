@@ -1,0 +1,51 @@
+"""What is known of one term before a verdict, and numbers as words."""
+
+from dataclasses import dataclass
+
+STEFAN_BOLTZMANN = 5.670374419e-8  # W/(m2 K4), CODATA 2018
+
+
+@dataclass(frozen=True)
+class Size:
+    """One term of the energy equation in a case.
+
+    ``size`` [W/m3] enters the balance. ``asked`` is the share that the answer calls for, where that is
+    not the size over the largest one; ``exact`` says that it is the effect itself and not an estimate.
+    ``kelvins`` is what leaving the term out may move the answer by, where the answer is a temperature.
+    ``leading`` terms are never left out. ``thresholds`` replace the usual ones (leave out below, keep
+    above). ``settled`` is a verdict that needs no share. ``nets_to`` is the size with which the term
+    enters the largest, where it cancels against its partner.
+    """
+
+    term: str
+    one_scale: float
+    size: float
+    says: str
+    asked: float | None = None
+    exact: bool = False
+    kelvins: float | None = None
+    leading: bool = False
+    thresholds: tuple[float, float] | None = None
+    settled: str | None = None
+    nets_to: float | None = None
+    pair: bool = False
+    no_share: bool = False
+
+
+def num(value: float) -> str:
+    """Three significant digits."""
+    return f"{value:.3g}"
+
+
+def percent(share: float) -> str:
+    """A share in per cent, or as a power of ten where it is tiny."""
+    if share == 0:
+        return "0 %"
+    if abs(share) < 1e-4:
+        return f"{share:.1e}"
+    return f"{100 * share:.3g} %"
+
+
+def absent(term: str, why: str) -> Size:
+    """A term that the case as stated does not have."""
+    return Size(term, 0.0, 0.0, why, asked=0.0)

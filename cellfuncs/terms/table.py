@@ -1,0 +1,61 @@
+"""The term table: fixed columns, fixed rows, a reason in words in each."""
+
+from collections.abc import Callable, Mapping
+
+from cellfuncs.answers import Solution
+from cellfuncs.errors import UnknownName
+from cellfuncs.terms import duct, gap, plate
+from cellfuncs.terms.size import Size, percent
+from cellfuncs.terms.verdicts import KEEP, LEAVE_OUT, Judged, judge, left_out
+
+COLUMNS = ("term", "one-scale", "share", "effect", "verdict", "reason")
+MEASURES = COLUMNS[1:]
+TERMS = (
+    "storage",
+    "advection",
+    "conduction across",
+    "conduction along",
+    "wall conduction",
+    "viscous heating",
+    "pressure work",
+    "volumetric source",
+    "wall radiation",
+)
+ALL_LEFT_OUT = "all left out"
+NO_MODEL = "no model"
+NO_SHARE = "no share"
+_SIZES: Mapping[str, Callable[[Solution], list[Size]]] = {
+    "duct": duct.sizes,
+    "plate": plate.sizes,
+    "gap": gap.sizes,
+}
+
+Row = tuple[str, float, float | str, float | str, str, str]
+
+
+def term_rows(solution: Solution, equation: str = "energy") -> list[Row]:
+    """Rows of the term table (without the head): term, one-scale, share, effect, verdict, reason."""
+    if equation != "energy":
+        raise UnknownName(f'"{equation}" is not an equation that is judged; write energy', argument="equation")
+    case = solution.case
+    judged = judge(_SIZES[case.flow](solution), case.tolerance, case.smallest)
+    return [*map(_row, judged), _together(judged, case.tolerance)]
+
+
+def _row(j: Judged) -> Row:
+    reason = f"{j.why}; {j.size.says}" if j.why else j.size.says
+    share = NO_SHARE if j.size.no_share else j.share
+    return j.size.term, j.size.one_scale, share, NO_MODEL, j.verdict, reason
+
+
+def _together(judged: list[Judged], tolerance: float) -> Row:
+    out = left_out(judged)
+    share = sum(j.share for j in out)
+    one_scale = sum(j.size.one_scale for j in judged if j.verdict == LEAVE_OUT)
+    if not any(j.verdict == LEAVE_OUT for j in judged):
+        return ALL_LEFT_OUT, 0.0, 0.0, NO_MODEL, KEEP, "every term is kept"
+    names = ", ".join(j.size.term for j in out) or "only terms that the case as stated does not have"
+    reason = f"{names}: {percent(share)} together, tolerance {percent(tolerance)}"
+    if any(j.by_kelvins for j in out):
+        reason += "; some are left out because the kelvins do not matter"
+    return ALL_LEFT_OUT, one_scale, share, NO_MODEL, LEAVE_OUT, reason
