@@ -1,0 +1,279 @@
+"""The embedded host: recalculate a workbook file without a spreadsheet program.
+
+Hands the catalogue to the engine of ``books``, writes the values into a copy of the file, and says what
+a reader wants to see: the areas of our formulas with their labels, and where a bare number stands beside
+a unit that is not SI.
+"""
+
+from __future__ import annotations
+
+import re
+from collections.abc import Callable, Mapping, Sequence
+from dataclasses import dataclass
+from functools import lru_cache
+from pathlib import Path
+from typing import TYPE_CHECKING, Any, NamedTuple
+
+from cellfuncs.errors import BookRefused
+
+if TYPE_CHECKING:
+    from cellfuncs.books.areas import FoundArea
+    from cellfuncs.books.engine import Evaluation
+
+MAX_SHOWN = 40  # rows of an area that are printed
+SECONDS = 600.0
+
+
+@dataclass(frozen=True)
+class Recalculation:
+    """What a recalculation gave; `out` is the file that was written."""
+
+    areas: tuple[FoundArea, ...]
+    warnings: tuple[str, ...]
+    out: Path
+
+
+def detect(functions: Mapping[str, Any]) -> Callable[[str], str | None]:
+    """A reader of function names: the catalogue's name for a name in any case, else None."""
+    names = {name.casefold(): name for name in functions}
+    return lambda name: names.get(name.casefold())
+
+
+def recalc(
+    path: str | Path,
+    out: str | Path | None = None,
+    *,
+    progress: Callable[[str], None] | None = None,
+    seconds: float = SECONDS,
+    functions: Mapping[str, Any] | None = None,
+) -> Recalculation:
+    """Recalculate the workbook at `path` into `out` (default: beside it, `book.recalculated.xlsx`).
+
+    Only the cells that depend on our functions change, and cells that had no value; everything else in the
+    file stays byte for byte, and the file at `path` itself is never written. Raises BookRefused for a file
+    that cannot be used. `functions` is the catalogue unless another one is given.
+    """
+    from cellfuncs.books import inspect
+    from cellfuncs.books.areas import areas_of
+    from cellfuncs.books.engine import evaluate
+    from cellfuncs.books.package import copy_with, write_whole
+    from cellfuncs.books.splice import set_values
+
+    path = Path(path)
+    target = _target(path, out)
+    if progress is not None:
+        progress("examining the file")
+    book = inspect(path)
+    if functions is None:
+        from cellfuncs.cells import catalogue
+
+        functions = catalogue.functions()
+    calls = {name: function.call for name, function in functions.items()}
+    result = evaluate(book, calls, detect(functions), seconds=seconds, progress=progress)
+    if progress is not None:
+        progress("writing")
+    changed: dict[str, bytes] = {}
+    for name, sheet in result.sheets.items():
+        data = set_values(sheet, result.values.get(name, {}), result.extents.get(name, {}))
+        if data != sheet.data:
+            changed[book.sheet(name).part] = data
+    areas = tuple(areas_of(result))
+    warnings = tuple(result.warnings) + tuple(bare_numbers(result, functions))
+    write_whole(target, copy_with(book.package, changed) if changed else book.package.data)
+    return Recalculation(areas, warnings, target)
+
+
+def _target(path: Path, out: str | Path | None) -> Path:
+    suffix = path.suffix if path.suffix.lower() in (".xlsx", ".xlsm") else ".xlsx"
+    target = Path(out) if out is not None else path.with_name(f"{path.stem}.recalculated{suffix}")
+    same = target.resolve() == path.resolve()
+    if not same and target.exists() and path.exists():
+        same = target.samefile(path)
+    if same:
+        raise BookRefused("The output would overwrite the workbook itself; give another name.")
+    if target.is_dir():
+        raise BookRefused(f"{target.name} is a folder; give the name of a file.")
+    return target
+
+
+def render_areas(areas: Sequence[FoundArea]) -> str:
+    """The areas as plain text tables."""
+    if not areas:
+        return "The workbook holds no formulas with our functions."
+    return "\n\n".join(_rendered(area) for area in areas)
+
+
+def _rendered(area: FoundArea) -> str:
+    rows = [[label, *map(_shown, values)] for label, values in zip(area.row_labels, area.values, strict=True)]
+    left = len(rows) - MAX_SHOWN
+    rows = rows[:MAX_SHOWN]
+    if any(area.heads):
+        rows.insert(0, ["", *area.heads])
+    if not any(row[0] for row in rows):
+        rows = [row[1:] for row in rows]
+    widths = [max(len(cell) for cell in column) for column in zip(*rows, strict=True)]
+    lines = [f"{area.sheet}!{area.range}"]
+    lines += ["  " + "  ".join(c.ljust(w) for c, w in zip(row, widths, strict=True)).rstrip() for row in rows]
+    if left > 0:
+        lines.append(f"  … and {left} more rows")
+    return "\n".join(lines)
+
+
+def _shown(value: Any) -> str:
+    if value is None:
+        return ""
+    if isinstance(value, bool):
+        return "TRUE" if value else "FALSE"
+    if isinstance(value, float):
+        return f"{value:.6g}"
+    return " ".join(str(value).split())
+
+
+# -- bare numbers beside a unit ----------------------------------------------------------------------
+
+
+def bare_numbers(result: Evaluation, functions: Mapping[str, Any]) -> list[str]:
+    """Warnings: one of our formulas takes a bare number for a quantity, and a unit other than SI stands beside it."""
+    from cellfuncs.books.areas import texts
+
+    search = _UnitSearch(result, functions)
+    for sheet, formulas in result.ours.items():
+        for formula in formulas:
+            search.formula(sheet, formula)
+    words = texts(result, search.lookers, search.wanted)
+    found: dict[tuple[str, str, str, str], list[str]] = {}
+    for use in search.uses:
+        for spot in use.beside:
+            unit = _foreign_unit(words.get((use.sheet, spot), ""), use.kind)
+            if unit:
+                key = (use.function, use.argument, unit, use.sheet)
+                found.setdefault(key, []).append(f"{use.place} takes {use.number}")
+                break
+    return [_bare_text(key, places) for key, places in found.items()]
+
+
+def _bare_text(key: tuple[str, str, str, str], places: list[str]) -> str:
+    function, argument, unit, _ = key
+    more = f" (and {len(places) - 1} more cells)" if len(places) > 1 else ""
+    return (
+        f"{places[0]}{more} as {argument} of {function}: a bare number counts as SI, but {unit} stands beside it;"
+        f" give the pair of cells, or CF_SI(number, unit)"
+    )
+
+
+class _Use(NamedTuple):
+    """A number that a formula takes for a quantity, and the cells that may name its unit."""
+
+    function: str
+    argument: str
+    kind: str
+    place: str
+    number: str
+    sheet: str
+    beside: tuple[tuple[int, int], ...]
+
+
+class _UnitSearch:
+    """Goes through our formulas and collects the bare numbers they take."""
+
+    def __init__(self, result: Evaluation, functions: Mapping[str, Any]) -> None:
+        self.result, self.functions = result, functions
+        self.lookers: dict[str, Any] = {}
+        self.wanted: dict[str, set[tuple[int, int]]] = {}
+        self.uses: list[_Use] = []
+        self._heads: dict[tuple[str, int, int], tuple[int, int] | None] = {}
+
+    def formula(self, sheet: str, formula: Any) -> None:
+        """Note every single-cell argument of our functions in one formula."""
+        from cellfuncs.books.formulas import calls, normalised, reference
+        from cellfuncs.books.splice import area_text
+
+        text, ours = normalised(formula.text, detect(self.functions))
+        place = f"{sheet}!{area_text((formula.row, formula.column, formula.row, formula.column))}"
+        for name, arguments in calls(text) if ours else ():
+            function = self.functions.get(name)
+            if function is None:
+                continue
+            for argument, given in zip(function.arguments, arguments, strict=False):
+                if not argument.kind or argument.kind == "dimensionless" or not given:
+                    continue
+                found = reference(given)
+                if found.kind == "cells" and found.area[:2] == found.area[2:]:
+                    self._use(name, argument, place, given, self._sheet(found.sheet or sheet), found.area[:2])
+
+    def _sheet(self, name: str) -> str | None:
+        for part in self.result.book.sheets:
+            if part.name.casefold() == name.casefold() and part.kind == "worksheet":
+                return part.name
+        return None
+
+    def _use(
+        self, name: str, argument: Any, place: str, given: str, sheet: str | None, spot: tuple[int, int]
+    ) -> None:
+        if sheet is None:
+            return
+        looker = self._looker(sheet)
+        row, column = spot
+        if not looker.raw(row, column).is_number:
+            return
+        beside = []
+        if looker.raw(row, column + 1).is_text:
+            beside.append((row, column + 1))
+        beside += [near for near in (looker.label(row, column), self._head(sheet, row, column)) if near]
+        if beside:
+            self.wanted.setdefault(sheet, set()).update(beside)
+            self.uses.append(_Use(name, argument.name, argument.kind, place, given, sheet, tuple(beside)))
+
+    def _looker(self, sheet: str) -> Any:
+        from cellfuncs.books.areas import Looker
+        from cellfuncs.books.reading import read_sheet
+
+        if sheet not in self.lookers:
+            text = self.result.sheets.get(sheet) or read_sheet(self.result.book, sheet)
+            self.lookers[sheet] = Looker(text, self.result.values.get(sheet, {}))
+        return self.lookers[sheet]
+
+    def _head(self, sheet: str, row: int, column: int) -> tuple[int, int] | None:
+        """The text at the head of the column of numbers in which a cell stands."""
+        looker, heads = self._looker(sheet), self._heads
+        passed, head = [], None
+        while row > 1:
+            key = (sheet, row, column)
+            if key in heads:
+                head = heads[key]
+                break
+            passed.append(key)
+            above = looker.raw(row - 1, column)
+            if above.is_text:
+                head = (row - 1, column)
+                break
+            if not above.is_number:
+                break
+            row -= 1
+        for key in passed:
+            heads[key] = head
+        return head
+
+
+_BRACKETED = re.compile(r"[\[(]([^\[\]()]{1,40})[\])]\s*$")
+
+
+@lru_cache(maxsize=2048)
+def _foreign_unit(text: str, kind: str) -> str | None:
+    """The unit of `kind`, other than SI, that a text is or ends with in brackets; None where there is none."""
+    from cellfuncs.errors import CellfuncsError
+    from cellfuncs.quantities import read_unit
+
+    bracketed = _BRACKETED.search(text)
+    candidates = [text.strip()] if len(text) <= 40 else []
+    if bracketed:
+        candidates.append(bracketed[1].strip())
+    for candidate in filter(None, candidates):
+        try:
+            unit = read_unit(candidate, kind)
+        except CellfuncsError:
+            continue
+        if unit.factor != 1.0 or unit.offset != 0.0:
+            return candidate
+        return None
+    return None
