@@ -53,14 +53,17 @@ def hausen_entry(x_star: float) -> float:
     "plates entry",
     gives="mean Nu",
     ranges=(Range("Re", high=LAMINAR_UP_TO),),
-    scatter=0.05,
+    scatter=0.01,
     property_temperature="mean bulk",
-    source="edwards-1979",
+    source="shah-london-1978",
 )
 def plates_entry(x_star: float) -> float:
-    """Mean Nu over the thermal entry between plates, both at uniform temperature, Gz = 1/x*."""
-    gz = 1.0 / x_star
-    return 7.54 + 0.03 * gz / (1.0 + 0.016 * gz ** (2.0 / 3.0))
+    """Mean Nu over the thermal entry between plates, both at uniform temperature (Shah and London 1978)."""
+    if x_star <= 0.0005:
+        return 1.849 * x_star ** (-1.0 / 3.0)
+    if x_star <= 0.006:
+        return 1.849 * x_star ** (-1.0 / 3.0) + 0.6
+    return 7.541 + 0.0235 / x_star
 
 
 @method(

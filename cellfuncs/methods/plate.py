@@ -24,7 +24,7 @@ def laminar(reynolds: float, prandtl: float) -> float:
     ranges=(Range("Re", 100.0, 3e6), Range("Pr", low=0.6)),
     scatter=0.03,
     property_temperature="film",
-    source="kays-crawford-1993",
+    source="rohsenow-1998",
 )
 def laminar_flux(reynolds: float, prandtl: float) -> float:
     """Mean Nu at uniform flux (on the mean difference), 0.680 Re^1/2 Pr^1/3."""
@@ -55,7 +55,7 @@ def laminar_any_prandtl(reynolds: float, prandtl: float, flux: bool = False) -> 
     ranges=(Range("Re", high=1e8), Range("Pr", 0.6, 60.0)),
     scatter=0.15,
     property_temperature="film",
-    source="incropera-2007",
+    source="rohsenow-1998",
 )
 def mixed(reynolds: float, prandtl: float, transition: float = TRANSITION) -> float:
     """Mean Nu of a layer laminar to the transition and turbulent behind it, (0.037 Re^4/5 − A) Pr^1/3."""
@@ -69,7 +69,7 @@ def mixed(reynolds: float, prandtl: float, transition: float = TRANSITION) -> fl
     ranges=(Range("Re", 5e5, 1e8), Range("Pr", 0.6, 60.0)),
     scatter=0.15,
     property_temperature="film",
-    source="incropera-2007",
+    source="rohsenow-1998",
 )
 def turbulent_local(reynolds: float, prandtl: float) -> float:
     """Local Nu of a turbulent layer at uniform wall temperature, 0.0296 Re^4/5 Pr^1/3."""
