@@ -110,7 +110,10 @@ class _Progress:
 
     def __call__(self, text: str) -> None:
         if sys.stderr.isatty():
+            import shutil
+
             self.clear()
+            text = text[: shutil.get_terminal_size().columns - 1]
             self.shown = len(text)
             print(text, end="", file=sys.stderr, flush=True)
 

@@ -7,7 +7,7 @@ import pytest
 
 sys.path.insert(0, str(Path(__file__).resolve().parent.parent.parent / "install"))
 
-import bench  # noqa: E402
+import bench
 
 
 def kept():
