@@ -6,8 +6,8 @@ from dataclasses import dataclass
 from typing import NamedTuple
 
 from cellfuncs.books.engine import Evaluation
+from cellfuncs.books.grid import area_text
 from cellfuncs.books.reading import Sheet, shared_strings
-from cellfuncs.books.splice import area_text
 from cellfuncs.books.xmltext import Value, decoded
 
 LOOK_LEFT, LOOK_UP = 4, 4  # how far a label or head may stand from its area

@@ -11,9 +11,9 @@ from collections.abc import Mapping
 from dataclasses import dataclass, field
 from xml.parsers import expat
 
-from cellfuncs.books.formulas import Area, Reference, pieces, reference
-from cellfuncs.books.gate import Book, rectangle
-from cellfuncs.books.splice import area_text, column_letters
+from cellfuncs.books.formulas import Reference, reference
+from cellfuncs.books.gate import Book
+from cellfuncs.books.grid import Area, area_text, column_letters, rectangle
 from cellfuncs.books.xmltext import escaped
 
 MAX_STORED = 500_000  # cells kept of other workbooks
@@ -234,33 +234,3 @@ def _linked_book(found: Linked, data: bytes, number: int, left: int) -> int:
     parser.StartElementHandler, parser.EndElementHandler, parser.CharacterDataHandler = start, end, words
     parser.Parse(data, True)
     return left
-
-
-def plain_references(
-    text: str, sheet: str, row: int, column: int, found: Mapping[str, Table], links: Linked
-) -> tuple[str, bool]:
-    """The formula with table and external references as plain ones, and whether all could be replaced.
-
-    What cannot be replaced becomes ``#REF!``, so that one bad link spoils one cell and not the workbook.
-    """
-    if "[" not in text:
-        return text, True
-    parts = pieces(text)
-    if parts is None:
-        return text, False
-    written, whole = [], True
-    for part in parts:
-        new: str | None = part.text
-        if part.kind == "reference" and "[" in part.text:
-            kind = reference(part.text)
-            if kind.kind == "table":
-                place = table_area(part.text, found, sheet, row, column)
-                new = None if place is None else absolute(*place)
-            elif kind.kind == "external":
-                new = links.local(kind)
-            if new is None:
-                whole, new = False, "#REF!"
-        elif part.kind == "call" and "[" in part.text:
-            whole, new = False, "#REF!+("  # a function of another workbook's macros
-        written.append(new)
-    return "".join(written), whole

@@ -12,12 +12,11 @@ from dataclasses import dataclass
 from functools import lru_cache
 from typing import NamedTuple
 
-from cellfuncs.books.gate import LAST_COLUMN, LAST_ROW, column_number
+from cellfuncs.books.grid import LAST_COLUMN, LAST_ROW, Area, column_letters, column_number
 
 MAX_LENGTH = 8192  # characters; longer formulas are left alone, no program writes them
 
 IsOurs = Callable[[str], str | None]
-Area = tuple[int, int, int, int]
 
 
 class Piece(NamedTuple):
@@ -206,8 +205,6 @@ def _shifted_operand(text: str, rows: int, columns: int) -> str:
 
 
 def _moved_column(fixed: str, letters: str, by: int) -> str:
-    from cellfuncs.books.splice import column_letters
-
     if fixed:
         return fixed + letters
     # A shared formula wraps round the edge of the grid.

@@ -5,7 +5,8 @@ from __future__ import annotations
 from collections import defaultdict
 from collections.abc import Iterable, Sequence
 
-Area = tuple[int, int, int, int]
+from cellfuncs.books.grid import Area
+
 Place = tuple[str, Area]  # a sheet's name in small letters, and an area of it
 
 _SMALL = 4096  # cells of an area that are looked up one by one

@@ -15,12 +15,11 @@ from typing import NamedTuple
 from xml.parsers import expat
 
 from cellfuncs.books.formulas import shifted
-from cellfuncs.books.gate import Book, column_number, rectangle
+from cellfuncs.books.gate import Book
+from cellfuncs.books.grid import Area, column_number, rectangle
 from cellfuncs.books.package import shown
 from cellfuncs.books.xmltext import ErrorValue, Value, decoded, unescaped
 from cellfuncs.errors import BookRefused
-
-Area = tuple[int, int, int, int]  # first row, first column, last row, last column
 
 
 @dataclass(slots=True)

@@ -6,25 +6,9 @@ import re
 from bisect import bisect_left
 from collections.abc import Mapping
 
-from cellfuncs.books.gate import LAST_COLUMN, LAST_ROW, rectangle
-from cellfuncs.books.reading import Area, Cell, Sheet, tag_end
+from cellfuncs.books.grid import LAST_COLUMN, LAST_ROW, Area, area_text, column_letters, rectangle
+from cellfuncs.books.reading import Cell, Sheet, tag_end
 from cellfuncs.books.xmltext import Value, decoded, encoded
-
-
-def column_letters(number: int) -> str:
-    """1 = A … 16384 = XFD."""
-    letters = ""
-    while number:
-        number, rest = divmod(number - 1, 26)
-        letters = chr(65 + rest) + letters
-    return letters
-
-
-def area_text(area: Area) -> str:
-    """`B2:C9`, or `B2` for one cell."""
-    top, left, bottom, right = area
-    first = f"{column_letters(left)}{top}"
-    return first if (top, left) == (bottom, right) else f"{first}:{column_letters(right)}{bottom}"
 
 
 def apply_edits(data: bytes, edits: list[tuple[int, int, bytes]]) -> bytes:

@@ -7,9 +7,11 @@ import zipfile
 from collections.abc import Mapping, Sequence
 from xml.sax.saxutils import quoteattr
 
-from cellfuncs.books.gate import MAIN, RELATIONS, Book
+from cellfuncs.books.gate import Book
+from cellfuncs.books.grid import column_letters
 from cellfuncs.books.reading import Sheet, tag_end
-from cellfuncs.books.splice import apply_edits, column_letters
+from cellfuncs.books.scans import MAIN, RELATIONS
+from cellfuncs.books.splice import apply_edits
 from cellfuncs.books.xmltext import Value, encoded, escaped
 
 _TYPES = "http://schemas.openxmlformats.org/package/2006/content-types"

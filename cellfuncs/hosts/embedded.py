@@ -186,7 +186,7 @@ class _UnitSearch:
     def formula(self, sheet: str, formula: Any) -> None:
         """Note every single-cell argument of our functions in one formula."""
         from cellfuncs.books.formulas import calls, normalised, reference
-        from cellfuncs.books.splice import area_text
+        from cellfuncs.books.grid import area_text
 
         text, ours = normalised(formula.text, detect(self.functions))
         place = f"{sheet}!{area_text((formula.row, formula.column, formula.row, formula.column))}"
