@@ -1,11 +1,14 @@
 """Substances: properties of fluids, solutions, moist air and oils, with source, range and phase.
 
-All numbers are plain SI floats. A newcomer's map: ``names`` finds a substance from its name; ``fluids`` holds pure
-fluids, ``properties`` the list of what can be asked for.
+All numbers are plain SI floats. A newcomer's map: ``names`` finds a substance from its name, ``properties`` lists what
+can be asked for; ``fluids`` (with ``saturation``) holds pure fluids, ``solutions`` liquids and solutions, ``moist``
+moist air, ``oils`` mineral oils. ``base`` says what every substance can do, ``engine`` is the one door to CoolProp.
 """
 
 from .base import ATMOSPHERE, Limits, Substance
+from .moist import moist_air
 from .names import find, names
+from .oils import oil_viscosity, viscosity_index
 from .properties import MOIST_AIR, PROPERTIES, Property, property_key
 
 __all__ = [
@@ -16,6 +19,9 @@ __all__ = [
     "Property",
     "Substance",
     "find",
+    "moist_air",
     "names",
+    "oil_viscosity",
     "property_key",
+    "viscosity_index",
 ]

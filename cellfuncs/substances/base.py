@@ -40,7 +40,9 @@ def phase_word(text: str | None) -> str | None:
         return None
     word = PHASES.get(str(text).strip().casefold())
     if word is None:
-        raise UnknownName(f"{shown(str(text))} is no phase; write liquid or vapour{nearest(str(text), PHASES)}")
+        raise UnknownName(
+            f"{shown(str(text))} is no phase; write liquid or vapour{nearest(str(text), PHASES)}"
+        )
     return word
 
 
@@ -158,7 +160,9 @@ def check_state(
     if temperature <= 0:
         raise OutOfRange(f"{temperature:.6g} K is not above absolute zero")
     if pressure <= 0:
-        raise OutOfRange(f"an absolute pressure of {pascal(pressure)} is not above zero; is it a gauge reading?")
+        raise OutOfRange(
+            f"an absolute pressure of {pascal(pressure)} is not above zero; is it a gauge reading?"
+        )
     if not t_min <= temperature <= t_max:
         raise OutOfRange(
             f"{kelvin(temperature)} is outside the range of {name}, {kelvin(t_min)} to {kelvin(t_max)}"

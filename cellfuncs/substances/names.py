@@ -6,15 +6,21 @@ with a phase word before or behind ("water liquid", "liquid nitrogen", "R134a va
 
 import re
 import threading
+from collections.abc import Callable
 from functools import cache, lru_cache
 
 from ..errors import UnknownName
 from ..sources import read_table
 from .base import PHASES, Substance
 from .fluids import PureFluid
+from .moist import humid_air
+from .oils import oil
+from .solutions import Liquid, ask_concentration, liquid_names, liquid_rows, solution
 from .texts import folded, nearest, shown
 
 LONGEST_NAME = 120
+MOST_KEPT = 1000  # substances kept with their states; concentrations can be many
+_STEAM = frozenset(("steam", "watersteam", "watervapour", "watervapor"))
 _PHASE = re.compile(
     r"^\s*(?P<before>(?:" + "|".join(PHASES) + r"))[\s,]+(?P<rest>.+)$"
     r"|^(?P<name>.+?)[\s,]*[\s,(](?P<after>(?:" + "|".join(PHASES) + r"))\)?\s*$",
@@ -22,7 +28,7 @@ _PHASE = re.compile(
 )
 _REFRIGERANT = re.compile(r"^(?:hfc|hcfc|cfc|hfo|hcfo|pfc|hc|fc|freon|refrigerant)(?=\d)")
 _MADE: dict[str, Substance] = {}
-_MADE_LOCK = threading.Lock()
+_MADE_LOCK = threading.RLock()
 
 
 @lru_cache(maxsize=4096)
@@ -35,46 +41,60 @@ def find(text: str) -> Substance:
         raise UnknownName("a substance is wanted, for instance water, R134a or ethylene glycol 30 % by mass")
     if len(text) > LONGEST_NAME:
         raise UnknownName(f"{shown(text)} is too long for the name of a substance")
-    if folded(text) in ("steam", "watersteam", "watervapour", "watervapor"):
-        return _in_phase(find("water"), "gas")
-    found = _exact(text)
+    found = _read(text)
     if found is not None:
         return found
     parts = _PHASE.match(text)
     if parts:
-        rest = parts["rest"] or parts["name"]
-        found = _exact(rest)
+        found = _read(parts["rest"] or parts["name"])
         if found is not None:
             return _in_phase(found, PHASES[(parts["before"] or parts["after"]).casefold()])
+    ask_concentration(text)
     raise UnknownName(f"no substance {shown(text)}{nearest(text, _all_names())}")
 
 
-def _exact(text: str) -> Substance | None:
-    """The substance for a text without phase word, None on a miss."""
+def _read(text: str) -> Substance | None:
+    """The substance for a text without phase word; None on a miss."""
     name = folded(text)
+    if name in _STEAM:
+        return _in_phase(_fluid("Water"), "gas")
     key = _fluid_names().get(name) or _fluid_names().get(_REFRIGERANT.sub("r", name))
-    return _fluid(key) if key else None
+    if key:
+        return _fluid(key)
+    key = liquid_names(False).get(name)
+    if key:
+        return _kept(key, lambda: Liquid(liquid_rows()[key], liquid_rows()[key]["name"]))
+    found = humid_air(text)
+    if found is None:
+        read = solution(text)
+        if read is not None:
+            key, title, fraction, note = read
+            return _kept(title, lambda: Liquid(liquid_rows()[key], title, fraction, note))
+        found = oil(text)
+    return None if found is None else _kept(found.name, lambda: found)
+
+
+def _kept(key: str, make: Callable[[], Substance]) -> Substance:
+    """The one object for a key, so that its states are shared by all its names; the oldest goes when full."""
+    with _MADE_LOCK:
+        if key not in _MADE:
+            if len(_MADE) >= MOST_KEPT:
+                del _MADE[next(iter(_MADE))]
+            _MADE[key] = make()
+        return _MADE[key]
 
 
 def _fluid(key: str) -> PureFluid:
-    """The one object of a fluid, so that its states are shared by all its names."""
-    with _MADE_LOCK:
-        if key not in _MADE:
-            _MADE[key] = PureFluid(_fluid_titles()[key]["name"], _fluid_rows()[key])
-        return _MADE[key]
+    return _kept("fluid " + key, lambda: PureFluid(_fluid_titles()[key]["name"], _fluid_rows()[key]))
 
 
 def _in_phase(substance: Substance, phase: str) -> Substance:
     """The substance with a stated phase; one object for each."""
-    if not isinstance(substance, PureFluid):
-        if phase == "liquid":
-            return substance
-        raise UnknownName(f"{substance.name} is a liquid here; leave out the phase")
-    key = f"{substance.key}|{phase}"
-    with _MADE_LOCK:
-        if key not in _MADE:
-            _MADE[key] = substance.in_phase(phase)
-        return _MADE[key]
+    if isinstance(substance, PureFluid):
+        return _kept(f"fluid {substance.key} {phase}", lambda: substance.in_phase(phase))
+    if phase == ("gas" if substance.family == "moist air" else "liquid"):
+        return substance
+    raise UnknownName(f"{substance.name} has no {phase} here; leave the phase out")
 
 
 @cache
@@ -100,17 +120,29 @@ def _fluid_names() -> dict[str, str]:
 @cache
 def _all_names() -> tuple[str, ...]:
     """Every name that a hint may propose."""
-    rows = read_table("fluid_names.csv")
-    return tuple(
-        name for row in rows for name in (row["name"], *filter(None, row["aliases"].split(";")))
-    ) + ("steam",)
+    rows = (*read_table("fluid_names.csv"), *liquid_rows().values())
+    listed = (name for row in rows for name in (row["name"], *filter(None, row["aliases"].split(";"))))
+    return (*listed, "steam", "moist air", "mineral oil")
 
 
 def names(contains: str = "") -> list[tuple[str, str, str]]:
-    """Return (name, family, other names) of every substance whose names contain the text."""
-    rows = [(row["name"], PureFluid.family, row["aliases"].replace(";", ", ")) for row in _fluid_titles().values()]
+    """Return (name, family, other names) of every substance whose names contain the text.
+
+    Solutions stand with the way their concentration is written, oils and moist air with an example.
+    """
+    rows = [
+        (row["name"], PureFluid.family, row["aliases"].replace(";", ", ")) for row in _fluid_titles().values()
+    ]
+    for row in liquid_rows().values():
+        name = row["name"]
+        if row["basis"]:
+            low, high = (100 * float(row[end]) for end in ("x_min", "x_max"))
+            name += f", {low:g} % to {high:g} % by {row['basis']}"
+        rows.append((name, row["family"], row["aliases"].replace(";", ", ")))
+    rows.append(("moist air 50 %", "moist air", "humid air, wet air"))
+    rows.append(("ISO VG 46 VI 95", "mineral oil", "oil 46 cSt at 40 degC, 6.8 cSt at 100 degC, 870 kg/m3"))
     wanted = folded(contains)
-    return sorted(
-        (row for row in rows if wanted in folded(row[0]) or any(wanted in folded(part) for part in row[2].split(", "))),
-        key=lambda row: (row[1], row[0].casefold()),
-    )
+    found = [
+        row for row in rows if any(wanted in folded(part) for part in (row[0], row[1], *row[2].split(", ")))
+    ]
+    return sorted(found, key=lambda row: (row[1], row[0].casefold()))

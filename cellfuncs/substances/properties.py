@@ -23,7 +23,12 @@ class Property:
 def _table(family: str) -> dict[str, Property]:
     return {
         row["key"]: Property(
-            row["key"], row["words"], row["symbol"], row["kind"], tuple(row["aliases"].split(";")), row["source"]
+            row["key"],
+            row["words"],
+            row["symbol"],
+            row["kind"],
+            tuple(row["aliases"].split(";")),
+            row["source"],
         )
         for row in read_table("properties.csv")
         if row["set"] == family

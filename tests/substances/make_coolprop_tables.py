@@ -16,7 +16,28 @@ from CoolProp import CoolProp as engine
 
 DATA = Path(__file__).parents[2] / "cellfuncs" / "data"
 LIBRARY = "Bell-IECR-2014"  # the library itself, for what has no paper of its own
-COLUMNS = ["key", "cas", "pseudo_pure", "molar_mass", "t_min", "t_max", "p_max", "t_critical", "p_critical", "t_triple", "viscosity_model", "conductivity_model", "surface_tension", "reference_state", "eos_source", "viscosity_source", "conductivity_source", "surface_tension_source", "melting_source", "source"]
+COLUMNS = [
+    "key",
+    "cas",
+    "pseudo_pure",
+    "molar_mass",
+    "t_min",
+    "t_max",
+    "p_max",
+    "t_critical",
+    "p_critical",
+    "t_triple",
+    "viscosity_model",
+    "conductivity_model",
+    "surface_tension",
+    "reference_state",
+    "eos_source",
+    "viscosity_source",
+    "conductivity_source",
+    "surface_tension_source",
+    "melting_source",
+    "source",
+]
 # Water: the equations are those of the IAPWS releases, which is how engineers cite them.
 WATER = {
     "eos_source": "IAPWS-R6-95",
@@ -127,7 +148,9 @@ def fluid_row(key: str) -> dict:
 
 def bibliography() -> dict[str, tuple[str, str]]:
     """BibTeX key -> (authors, year, title; DOI) from the file that CoolProp ships."""
-    text = (Path(os.path.dirname(CoolProp.__file__)) / "CoolPropBibTeXLibrary.bib").read_text("utf-8", "replace")
+    text = (Path(os.path.dirname(CoolProp.__file__)) / "CoolPropBibTeXLibrary.bib").read_text(
+        "utf-8", "replace"
+    )
     entries = {}
     for chunk in re.split(r"\n@", text):
         head = re.match(r"@?\w+\{([^,]+),", chunk)
@@ -141,14 +164,19 @@ def bibliography() -> dict[str, tuple[str, str]]:
         where = " ".join(
             part
             for part in (
-                clean.get("journal") or clean.get("booktitle") or clean.get("publisher")
-                or clean.get("school") or clean.get("institution"),
+                clean.get("journal")
+                or clean.get("booktitle")
+                or clean.get("publisher")
+                or clean.get("school")
+                or clean.get("institution"),
                 clean.get("volume"),
             )
             if part
         )
         authors = clean.get("author", "").split(" and ")
-        who = authors[0] + (" et al." if len(authors) > 2 else "".join(" and " + name for name in authors[1:]))
+        who = authors[0] + (
+            " et al." if len(authors) > 2 else "".join(" and " + name for name in authors[1:])
+        )
         said = f"{who} ({clean.get('year', 'no year')}): {clean.get('title', '')}"
         entries[head.group(1).strip()] = (said + (f". {where}" if where else ""), clean.get("doi", ""))
     return entries
