@@ -1,8 +1,9 @@
 """Substances: properties of fluids, solutions, moist air and oils, with source, range and phase.
 
-All numbers are plain SI floats. A newcomer's map: ``names`` finds a substance from its name, ``properties`` lists what
-can be asked for; ``fluids`` (with ``saturation``) holds pure fluids, ``solutions`` liquids and solutions, ``moist``
-moist air, ``oils`` mineral oils. ``base`` says what every substance can do, ``engine`` is the one door to CoolProp.
+All numbers are plain SI floats. A newcomer's map: ``names`` finds a substance from its name, ``properties``
+lists what can be asked for; ``fluids`` (with ``saturation`` and ``state``) holds pure fluids, ``solutions``
+liquids and solutions, ``moist`` moist air, ``oils`` mineral oils. ``base`` says what every substance can do,
+``engine`` is the one door to CoolProp.
 """
 
 from .base import ATMOSPHERE, Limits, Substance

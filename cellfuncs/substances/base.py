@@ -49,8 +49,8 @@ def phase_word(text: str | None) -> str | None:
 class Substance:
     """Base of all substances. All numbers are plain SI floats.
 
-    `name` is the readable name, `family` one of "pure fluid", "solution", "liquid", "thermal oil", "mineral oil",
-    "moist air".
+    `name` is the readable name, `family` one of "pure fluid", "solution", "liquid", "thermal oil",
+    "mineral oil", "moist air".
     """
 
     name: str

@@ -1,8 +1,8 @@
 """Pure and pseudo-pure fluids from CoolProp's equations of state, with the guards that CoolProp leaves out.
 
-CoolProp answers far outside its ranges, inside the two-phase region and at the critical point, mostly without an
-error. Here a state is checked first, by plain comparisons where it is clearly fine (the usual case, see
-``PureFluid.get``) and step by step with a text that names the limit where it is not (``_careful``).
+CoolProp answers far outside its ranges, inside the two-phase region and at the critical point, mostly without
+an error. Here a state is checked first, by plain comparisons where it is clearly fine (the usual case, see
+``PureFluid.get``) and step by step with a text that names the limit where it is not (``_slowly``).
 """
 
 import copy
@@ -65,7 +65,7 @@ class PureFluid(SaturationLine, Substance):
             self._p_critical * (1 + NEAR_CRITICAL_P),
         )
         self._stated: str | None = None
-        # Above these no melting line is near, up to ORDINARY_PRESSURE and at any pressure; found at first touch.
+        # Above these no melting line is near, up to ORDINARY_PRESSURE and at any pressure.
         self._t_clear = self._t_sure = math.inf
         self._threads = threading.local()
 
@@ -262,7 +262,7 @@ class PureFluid(SaturationLine, Substance):
             )
 
     def _on_the_line(self, handle: Handle, key: str, temperature: float, pressure: float, phase: str):
-        """The stated phase within 1e-5 of the saturation pressure: the equation's own root, else saturation."""
+        """The stated phase within 1e-5 of the saturation pressure: the equation's root, else saturation."""
         module, state = coolprop(), handle.state
         handle.t = math.nan
         try:
@@ -345,7 +345,7 @@ class PureFluid(SaturationLine, Substance):
         return handle
 
     def _highest_melting(self, state, highest: float) -> float:
-        """The highest melting temperature up to a pressure [K] with a margin; just below t_min without one."""
+        """The highest melting temperature up to a pressure [K], with a margin; else just below t_min."""
         found = [self._t_min]
         if state.has_melting_line():
             for pressure in np.geomspace(1e3, highest, 40):

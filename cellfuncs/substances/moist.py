@@ -31,11 +31,12 @@ _LOCK = threading.Lock()  # CoolProp keeps one moist-air state for the whole pro
 
 
 def moist_air(what: str, temperature: float, relative_humidity: float, pressure: float = ATMOSPHERE) -> float:
-    """Return property `what` [SI] of moist air at a dry-bulb temperature [K], relative humidity 0 to 1, pressure [Pa].
+    """Return property `what` [SI] of moist air at its dry-bulb temperature [K].
 
-    Enthalpy, entropy and specific volume are per kilogram of dry air (enthalpy zero for dry air at 0 degC), density and
-    specific heat those of the mixture. Below 0 degC humidity is relative to saturation over ice.
-    Raises UnknownName, OutOfRange. Source: RP-1485.
+    The relative humidity goes from 0 to 1, the pressure [Pa] is that of the mixture.
+    Enthalpy, entropy and specific volume are per kilogram of dry air (enthalpy zero for dry air and liquid
+    water at 0 degC), density and specific heat those of the mixture. Below 0 degC humidity is
+    relative to saturation over ice. Raises UnknownName, OutOfRange. Source: RP-1485.
     """
     key = property_key(what, "moist air")
     temperature, humidity, pressure = float(temperature), float(relative_humidity), float(pressure)
@@ -81,8 +82,8 @@ def _check(temperature: float, humidity: float, pressure: float) -> None:
         )
     if temperature > 273.16 and humidity * water_vapour_pressure(temperature) >= 0.999 * pressure:
         raise OutOfRange(
-            f"at {kelvin(temperature)} and {pascal(pressure)} a relative humidity of {humidity:g} leaves no air: "
-            "the vapour alone would have the whole pressure"
+            f"at {kelvin(temperature)} and {pascal(pressure)} a relative humidity of {humidity:g} leaves "
+            "no air: the vapour alone would have the whole pressure"
         )
 
 
@@ -156,12 +157,13 @@ class MoistAir(Substance):
 
 _MOIST = re.compile(r"^\s*(?:moist|humid|wet)\s+air\b(?P<rest>.*)$")
 _HUMIDITY = re.compile(
-    r"^(?:rh|relative humidity|at|of|with)?\s*=?\s*(?P<value>\d+(?:\.\d+)?)\s*(?P<unit>%)?\s*(?:rh|relative humidity)?$"
+    r"^(?:rh|relative humidity|at|of|with)?\s*=?\s*(?P<value>\d+(?:\.\d+)?)\s*(?P<unit>%)?"
+    r"\s*(?:rh|relative humidity)?$"
 )
 
 
 def humid_air(text: str) -> MoistAir | None:
-    """Read "moist air 50 %"; None when the text is no moist air. Asks for the humidity where it is missing."""
+    """Read "moist air 50 %"; None when it is no moist air. Asks for the humidity where it is missing."""
     found = _MOIST.match(unicodedata.normalize("NFKC", text).casefold())
     if not found:
         return None

@@ -1,7 +1,7 @@
 """From the name in a cell to the substance: aliases, a phase word, a concentration, an oil grade.
 
-The order: a fluid or liquid by one of its names; moist air; an oil; a solution with its concentration; each also
-with a phase word before or behind ("water liquid", "liquid nitrogen", "R134a vapour").
+The order: a fluid or liquid by one of its names; moist air; a solution with its concentration; an oil; each
+also with a phase word before or behind ("water liquid", "liquid nitrogen", "R134a vapour").
 """
 
 import re
@@ -33,9 +33,10 @@ _MADE_LOCK = threading.RLock()
 
 @lru_cache(maxsize=4096)
 def find(text: str) -> Substance:
-    """Return the substance that `text` names, in any case and spelling; the same object for the same substance.
+    """Return the substance that `text` names, in any case and spelling.
 
-    Raises UnknownName with the nearest name on a miss, OutOfRange for a concentration outside its range.
+    The same substance is the same object, whatever it was called. Raises UnknownName with
+    the nearest name on a miss, OutOfRange for a concentration outside its range.
     """
     if not isinstance(text, str) or not text.strip():
         raise UnknownName("a substance is wanted, for instance water, R134a or ethylene glycol 30 % by mass")

@@ -1,4 +1,4 @@
-"""Mineral oils: viscosity by two points (ASTM D341) or by grade and viscosity index; the rest by relations."""
+"""Mineral oils: viscosity by two points (ASTM D341) or grade and viscosity index; the rest by relations."""
 
 import math
 import re
@@ -11,7 +11,6 @@ from ..errors import NoModel, NumberRefused, OutOfRange, UnknownName
 from ..sources import read_table
 from .base import ATMOSPHERE, Limits, Substance, check_state, phase_word
 from .properties import property_key
-from .texts import kelvin
 
 STOKES = 1e-6  # [m2/s] one cSt or mm2/s
 T_40, T_100 = 313.15, 373.15
@@ -23,22 +22,25 @@ DENSITY_RANGE = (800.9, 1163.5)  # [kg/m3 at 15 degC] of the lubricating-oil tab
 WATER_60F = 999.016  # [kg/m3] density of water at 60 degF, for relative densities
 
 
-def _height(viscosity):
-    """The double logarithm of ASTM D341 for viscosities in mm2/s."""
-    v = np.asarray(viscosity, dtype=float)
-    return np.log10(np.log10(v + 0.7 + np.exp(-1.47 - 1.84 * v - 0.51 * v * v)))
+def _height(viscosity, lib):
+    """The double logarithm of ASTM D341 for viscosities in mm2/s; `lib` is math, or numpy for arrays."""
+    v = viscosity
+    return lib.log10(lib.log10(v + 0.7 + lib.exp(-1.47 - 1.84 * v - 0.51 * v * v)))
 
 
-def _viscosity_at(height):
-    """The inverse of ``_height`` [mm2/s]: the explicit inverse of the standard, sharpened by Newton steps."""
-    target = 10.0 ** (10.0 ** np.asarray(height, dtype=float))
-    z = target - 0.7
-    small = np.minimum(z, 10.0)  # the correction vanishes far below ten, its cubic would overflow far above
-    v = z - np.exp(-0.7487 - 3.295 * small + 0.6119 * small**2 - 0.3193 * small**3)
-    for _ in range(3):
-        bend = np.exp(-1.47 - 1.84 * v - 0.51 * v * v)
-        v = v - (v + 0.7 + bend - target) / (1 + bend * (-1.84 - 1.02 * v))
+def _viscosity_at(height, lib):
+    """The inverse of ``_height`` [mm2/s], by Newton's method, so that the two points come out exactly."""
+    inner = 10.0 ** (10.0**height) - 0.7
+    v = inner
+    for _ in range(5):  # from 0.21 mm2/s up four steps reach the last digit
+        bend = lib.exp(-1.47 - 1.84 * v - 0.51 * v * v)
+        v = v - (v + bend - inner) / (1 - bend * (1.84 + 1.02 * v))
     return v
+
+
+def _every(condition) -> bool:
+    """Whether a comparison of numbers or arrays holds everywhere."""
+    return condition if isinstance(condition, bool) else bool(np.all(condition))
 
 
 def oil_viscosity(temperature, temperature_1, viscosity_1, temperature_2, viscosity_2):
@@ -54,33 +56,33 @@ def oil_viscosity(temperature, temperature_1, viscosity_1, temperature_2, viscos
 
     Notes
     -----
-    log log Z = A - B log T, Z = v + 0.7 + exp(-1.47 - 1.84 v - 0.51 v^2), v in mm2/s. Range 0.21 to 2e7 mm2/s;
-    raises OutOfRange outside. Extrapolation beyond the two points is what the standard is for, as long as the
-    oil stays a Newtonian liquid (no wax below the cloud point). Source: ASTM-D341.
+    log log Z = A - B log T, Z = v + 0.7 + exp(-1.47 - 1.84 v - 0.51 v^2), v in mm2/s; range 0.21 to
+    2e7 mm2/s, raises OutOfRange outside. Extrapolation beyond the two points is what the standard
+    is for, as long as the oil stays a Newtonian liquid (no wax below the cloud point). Source: ASTM-D341.
     """
-    t, t1, t2 = (np.asarray(value, dtype=float) for value in (temperature, temperature_1, temperature_2))
-    v1, v2 = (np.asarray(value, dtype=float) / STOKES for value in (viscosity_1, viscosity_2))
-    for value in (t, t1, t2):
-        if not (np.isfinite(value).all() and (value > 0).all()):
-            raise OutOfRange("the temperatures of an oil must be above absolute zero")
-    for value in (v1, v2):
-        if not ((value >= LOWEST).all() and (value <= HIGHEST).all()):
-            raise OutOfRange(
-                f"ASTM D341 holds from {LOWEST} to 2e7 mm2/s; the viscosity of an oil is outside"
-            )
-    if (np.abs(t1 - t2) < 1).any():
+    given = (temperature, temperature_1, viscosity_1, temperature_2, viscosity_2)
+    single = all(isinstance(value, int | float) for value in given)
+    lib = math if single else np
+    t, t1, v1, t2, v2 = given if single else (np.asarray(value, dtype=float) for value in given)
+    v1, v2 = v1 / STOKES, v2 / STOKES
+    if not all(_every(value > 0) and _every(value < math.inf) for value in (t, t1, t2)):
+        raise OutOfRange("the temperatures of an oil must be above absolute zero")
+    if not all(_every(value >= LOWEST) and _every(value <= HIGHEST) for value in (v1, v2)):
+        raise OutOfRange(f"an oil's viscosity is outside {LOWEST} to 2e7 mm2/s, the range of ASTM D341")
+    if not _every(abs(t1 - t2) >= 1):
         raise OutOfRange("the two temperatures of an oil must be at least 1 K apart")
-    if ((v1 - v2) * (t1 - t2) > 0).any():
+    if not _every((v1 - v2) * (t1 - t2) < 0):
         raise OutOfRange("an oil gets thinner when warmer: the two viscosities are the wrong way round")
-    slope = (_height(v1) - _height(v2)) / np.log10(t2 / t1)
-    height = _height(v1) - slope * np.log10(t / t1)
-    lowest, highest = _height(LOWEST), _height(HIGHEST)
-    if not ((height >= lowest).all() and (height <= highest).all()):
+    height_1 = _height(v1, lib)
+    slope = (height_1 - _height(v2, lib)) / lib.log10(t2 / t1)
+    height = height_1 - slope * lib.log10(t / t1)
+    lowest, highest = _height(LOWEST, math), _height(HIGHEST, math)
+    if not (_every(height >= lowest - 1e-12) and _every(height <= highest + 1e-12)):
         raise OutOfRange(
             f"the oil's viscosity would be outside {LOWEST} to 2e7 mm2/s, the range of ASTM D341"
         )
-    result = _viscosity_at(height) * STOKES
-    return float(result) if result.ndim == 0 else result
+    result = _viscosity_at(height, lib) * STOKES
+    return float(result) if single or np.ndim(result) == 0 else result
 
 
 @cache
@@ -116,8 +118,8 @@ def viscosity_at_100(viscosity_40: float, index: float) -> float:
     low, high = 2.0 * STOKES, min(viscosity_40 * (1 - 1e-9), 1000 * STOKES)
     if low >= high or not viscosity_index(viscosity_40, low) <= index <= viscosity_index(viscosity_40, high):
         raise OutOfRange(
-            f"an oil of {viscosity_40 / STOKES:.4g} mm2/s at 40 degC cannot have a viscosity index of {index:g} "
-            "by ASTM D2270; give its viscosity at a second temperature instead"
+            f"an oil of {viscosity_40 / STOKES:.4g} mm2/s at 40 degC cannot have a viscosity index of "
+            f"{index:g} by ASTM D2270; give its viscosity at a second temperature instead"
         )
     for _ in range(80):
         middle = math.sqrt(low * high)
@@ -216,7 +218,7 @@ class MineralOil(Substance):
     def source(self, what: str) -> str:
         """Return the bibliography keys of the relations behind a property."""
         key = property_key(what)
-        viscosity = "ASTM-D341" + (";ASTM-D2270;ISO-3448" if "viscosity index" in self._note else "")
+        viscosity = "ASTM-D341" + (";ASTM-D2270;ISO-3448" if "by its VI" in self._note else "")
         density = "ASTM-D1250" + ("" if self._given else ";ASTM-D2501")
         parts = {
             "kinematic_viscosity": viscosity,
@@ -237,11 +239,11 @@ class MineralOil(Substance):
         key = property_key(what)
         notes = [self._note] if self._note else []
         if key in ("specific_heat", "thermal_diffusivity", "prandtl"):
-            notes.append("specific heat of an average oil, about 4 %")
+            notes.append("specific heat about 4 %")
         if key in ("conductivity", "thermal_diffusivity", "prandtl"):
-            notes.append("conductivity of an average oil, about 10 %")
+            notes.append("conductivity about 10 %")
         if key != "kinematic_viscosity" and self._given is None:
-            notes.append("density estimated for a paraffinic oil, about 3 %")
+            notes.append("density estimated (paraffinic oil), about 3 %")
         return "; ".join(notes)
 
     def limits(self) -> Limits:
@@ -258,11 +260,11 @@ _POINT = re.compile(
     r"(?P<temperature>-?\d+(?:\.\d+)?)\s*(?:°|deg\.?\s*)?(?P<scale>[ckf])\b"
 )
 _DENSITY = re.compile(r"(?P<density>\d+(?:\.\d+)?)\s*kg/m\^?3(?:\s*(?:at|@)\s*15\s*(?:°|deg\.?\s*)?c)?")
-_FILLER = re.compile(r"[\s,;()]|\b(?:oil|mineral|lubricating|and|density)\b")
+_FILLER = re.compile(r"[\s,;()]|\b(?:oil|mineral|lubricating|hydraulic|gear|turbine|and|density|liquid)\b")
 
 
 def oil(text: str) -> MineralOil | None:
-    """Read "ISO VG 46 VI 95" or "oil 46 cSt at 40 degC, 6.8 cSt at 100 degC, 870 kg/m3"; None if it is no oil.
+    """Read "ISO VG 46 VI 95" or "oil 46 cSt at 40 degC, 6.8 cSt at 100 degC, 870 kg/m3"; else None.
 
     Raises UnknownName where something must be asked, OutOfRange for values that no oil has.
     """
@@ -297,7 +299,7 @@ def oil(text: str) -> MineralOil | None:
             "an oil needs its viscosity at two temperatures: 46 cSt at 40 degC, 6.8 cSt at 100 degC"
         )
     (t1, v1), (t2, v2) = ((_temperature(point), float(point["value"]) * STOKES) for point in points)
-    said = ", ".join(f"{point['value']} cSt at {kelvin(_temperature(point))}" for point in points)
+    said = ", ".join(f"{point['value']} cSt at {_temperature(point) - 273.15:.6g} degC" for point in points)
     return MineralOil(f"oil {said}{tail}", (t1, v1, t2, v2), density_15)
 
 
@@ -312,7 +314,7 @@ def _by_grade(grade: str, index, density_15: float | None, tail: str) -> Mineral
     viscosity_40 = table[grade] * STOKES
     value = float(index["index"])
     viscosity_100 = viscosity_at_100(viscosity_40, value)
-    note = f"middle of the grade, which spans 10 % each way; {viscosity_100 / STOKES:.4g} cSt at 100 degC by viscosity index"
+    note = f"middle of the grade (10 % each way), {viscosity_100 / STOKES:.4g} cSt at 100 degC by its VI"
     return MineralOil(
         f"ISO VG {grade} VI {value:g}{tail}", (T_40, viscosity_40, T_100, viscosity_100), density_15, note
     )

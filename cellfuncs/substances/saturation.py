@@ -128,8 +128,8 @@ class SaturationLine:
 
     def _critical_text(self, key: str) -> OutOfRange:
         return OutOfRange(
-            f"within 1 % of the critical temperature of {self._bare} ({kelvin(self._t_critical)}) and 5 % of its "
-            f"pressure ({pascal(self._p_critical)}) the {PROPERTIES[key].words} runs away: no value"
+            f"within 1 % of the critical temperature of {self._bare} ({kelvin(self._t_critical)}) and 5 % "
+            f"of its pressure ({pascal(self._p_critical)}) the {PROPERTIES[key].words} runs away: no value"
         )
 
     def _no_solution(self, temperature: float, pressure: float) -> OutOfRange:
@@ -144,7 +144,7 @@ class SaturationLine:
         )
 
     def _checked(self, key: str, value: float, temperature: float, pressure: float) -> float:
-        """Pass a value that can be true; refuse infinities, NaN, and zero or less where there is no such thing."""
+        """Pass a value that can be true; refuse infinities, NaN, and zero or less where it cannot be."""
         if math.isfinite(value) and (value > 0 or key in SIGNED):
             return value
         raise self._not_given(key, temperature, pressure)

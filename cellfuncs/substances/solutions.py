@@ -1,7 +1,7 @@
 """Incompressible liquids and solutions: CoolProp's fits, with limits, freezing and boiling looked after.
 
-CoolProp checks neither pressure nor (for most) boiling of these fits, and some hold placeholders or slips; what is
-refused and why stands row by row in ``data/coolprop_liquids.csv``.
+CoolProp checks neither pressure nor (for most) boiling of these fits, and some hold placeholders or slips;
+what is refused and why stands row by row in ``data/coolprop_liquids.csv``.
 """
 
 import math
@@ -119,7 +119,7 @@ class Liquid(Substance):
     def _boiling_pressure(self, temperature: float) -> float:
         """Vapour pressure [Pa]: the fit's own, else for aqueous liquids water's times the water content.
 
-        The product is a lower bound for solutes of little vapour pressure that bind little water (common practice).
+        The product is a rough lower bound for solutes of little vapour pressure (common practice).
         """
         if temperature >= self._t_boiling:
             return self._own_boiling(temperature)
@@ -219,7 +219,7 @@ class Liquid(Substance):
 
 
 def water_vapour_pressure(temperature: float) -> float:
-    """Vapour pressure of water [Pa] by the auxiliary equation of Wagner and Pruss (1993), 273.16 to 647.096 K.
+    """Vapour pressure of water [Pa], auxiliary equation of Wagner and Pruss (1993), 273.16 to 647.096 K.
 
     Below 273.16 K it returns that of the supercooled liquid roughly, enough to see that nothing boils.
     """
@@ -279,8 +279,8 @@ def volume_fraction(mass_fraction: float, solute: str) -> float:
 def solution(text: str) -> tuple[str, str, float, str] | None:
     """Read "ethylene glycol 30 % by mass": (key, name, fraction on the basis of the fit, note).
 
-    None when the text has no concentration of a known solute. Raises UnknownName where it must be asked: which
-    glycol, by mass or by volume; OutOfRange for a concentration outside the fit.
+    None when the text has no concentration of a known solute. Raises UnknownName where it must be asked
+    (which glycol, by mass or by volume), OutOfRange for a concentration outside the fit.
     """
     plain = unicodedata.normalize("NFKC", text).casefold()
     number = _NUMBER.search(plain)
@@ -326,7 +326,8 @@ def _on_the_basis(row: dict[str, str], value: float, basis: str) -> tuple[str, f
     low, high = float(row["x_min"]), float(row["x_max"])
     if not low <= fraction <= high:
         raise OutOfRange(
-            f"{name}: {percent(fraction)} by {row['basis']} is outside the data, {percent(low)} to {percent(high)}"
+            f"{name}: {percent(fraction)} by {row['basis']} is outside the data, "
+            f"{percent(low)} to {percent(high)}"
         )
     return name, fraction, note
 
@@ -334,9 +335,10 @@ def _on_the_basis(row: dict[str, str], value: float, basis: str) -> tuple[str, f
 def _ask_which(rest: str) -> None:
     """Ask where a name means several solutes."""
     words = set(re.findall(r"\w+", rest))
-    if words & {"glycol", "glycols", "antifreeze"} and not words & {"ethylene", "propylene"}:
+    filler = {"in", "water", "and", "with", "solution", "aqueous", "of", "inhibited"}
+    if words & {"glycol", "glycols", "antifreeze"} and words <= filler | {"glycol", "glycols", "antifreeze"}:
         raise UnknownName("which glycol: write ethylene glycol or propylene glycol")
-    if words <= {"brine", "salt", "solution", "in", "water"} and "brine" in words:
+    if "brine" in words and words <= filler | {"brine", "salt"}:
         raise UnknownName("which salt: write for instance sodium chloride 20 % or calcium chloride 20 %")
 
 
@@ -345,6 +347,8 @@ def ask_concentration(text: str) -> None:
     key = liquid_names(True).get(folded(text))
     if key is None:
         _ask_which(text.casefold())
+        if _BASIS.search(text.casefold()) and re.search(r"\d", text) and not _NUMBER.search(text.casefold()):
+            raise UnknownName(f"{shown(text)}: write the concentration in percent, with its sign, as in 30 %")
         return
     row = liquid_rows()[key]
     example = (

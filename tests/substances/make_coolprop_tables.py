@@ -2,7 +2,7 @@
 
 Run by hand after a change of the CoolProp version: ``python tests/substances/make_coolprop_tables.py``.
 Everything written here is read out of the installed CoolProp: limits, model classes, reference keys; the
-bibliography rows come from the BibTeX file that it ships. Rows of sources.csv that are there already are kept.
+bibliography rows come from the BibTeX file that it ships. Rows of sources.csv that are there already stay.
 """
 
 import csv
