@@ -257,11 +257,11 @@ def calls(text: str) -> list[tuple[str, list[str]]]:
     for part in parts or ():
         if part.kind == "close" and opened:
             opened.pop()
-        elif part.text == "," and opened and opened[-1] is not None:
-            opened[-1][1].append("")
-            continue
+        inner = opened[-1] if opened else None
         for call in opened:
-            if call is not None:
+            if call is inner is not None and part.text == ",":
+                call[1].append("")
+            elif call is not None:
                 call[1][-1] += part.text
         if part.kind == "call":
             call = (part.text[:-1], [""])

@@ -68,7 +68,7 @@ class Sheet:
         self.row_starts = array("Q")
         self.row_ends = array(
             "Q"
-        )  # where the closing tag of the row begins; its start again for an empty tag
+        )  # where the closing tag of the row begins
         self.data_end = 0  # where </sheetData> begins
         self.dimension: tuple[int, str] | None = None
         self.columns: list[tuple[int, int, str]] = []  # first, last, style
@@ -133,15 +133,18 @@ def tag_end(data: bytes, start: int) -> int:
     return match.end()
 
 
+def element_end(data: bytes, start: int, closing: int) -> int:
+    """The offset just past the element that begins at `start`, whose end the parser met at `closing`."""
+    opened = tag_end(data, start)
+    return opened if data[opened - 2 : opened] == b"/>" else tag_end(data, closing)
+
+
 _TAG = re.compile(rb"""<[^<>"']*(?:"[^"]*"[^<>"']*|'[^']*'[^<>"']*)*>""")
 
 
 def _take_apart(data: bytes, start: int, closing: int) -> Cell:
     opened = tag_end(data, start)
-    if closing == start:
-        end = opened
-    else:
-        end = tag_end(data, closing)
+    end = element_end(data, start, closing)
     raw = data[start:end]
     parser = expat.ParserCreate()
     parser.buffer_text = True
@@ -162,8 +165,9 @@ def _take_apart(data: bytes, start: int, closing: int) -> Cell:
     def on_end(_: str) -> None:
         if len(names) == 2:
             name, begin = opened_at.pop()
-            here = parser.CurrentByteIndex
-            children.append(Piece(name, start + begin, tag_end(data, start + here), "".join(texts)))
+            begin += start
+            end = element_end(data, begin, start + parser.CurrentByteIndex)
+            children.append(Piece(name, begin, end, "".join(texts)))
         names.pop()
 
     def on_text(text: str) -> None:
@@ -177,7 +181,7 @@ def _take_apart(data: bytes, start: int, closing: int) -> Cell:
         on_text,
     )
     parser.Parse(raw, True)
-    return Cell(start, opened, end, closing == start, attributes, children)
+    return Cell(start, opened, end, end == opened, attributes, children)
 
 
 def read_sheet(book: Book, name: str) -> Sheet:

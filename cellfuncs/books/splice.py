@@ -138,7 +138,7 @@ def _insertions(sheet: Sheet, missing: dict[int, dict[int, Value]]) -> list[tupl
             text = f'<{p}row r="{row}">'.encode() + b"".join(new.values()) + f"</{p}row>".encode()
             edits.append((at, at, text))
             continue
-        if start == end:  # an empty tag
+        if tag.endswith(b"/>"):
             tag = _spanned(tag, new)[:-2].rstrip() + b">"
             edits.append((start, opened, tag + b"".join(new.values()) + f"</{p}row>".encode()))
             continue

@@ -9,7 +9,7 @@ from xml.sax.saxutils import quoteattr
 
 from cellfuncs.books.gate import Book
 from cellfuncs.books.grid import column_letters
-from cellfuncs.books.reading import Sheet, tag_end
+from cellfuncs.books.reading import Sheet, element_end
 from cellfuncs.books.scans import MAIN, RELATIONS
 from cellfuncs.books.splice import apply_edits
 from cellfuncs.books.xmltext import Value, encoded, escaped
@@ -91,7 +91,7 @@ def _edit(sheet: Sheet, row: int, column: int, text: str | None, stored: Value) 
     else:
         mark, value = encoded(stored)
         new = f"{head}/>" if value is None else f'{head} t="{mark or "n"}"><{p}v>{value}</{p}v></{p}c>'
-    return start, tag_end(sheet.data, closing), new.encode()
+    return start, element_end(sheet.data, start, closing), new.encode()
 
 
 def _workbook(book: Book, sheets: Sequence[str], names: Sequence[tuple[str, str, str | None]]) -> str:
