@@ -1,0 +1,132 @@
+"""The table of units that may stand in a unit text (``data/units.csv``)."""
+
+import csv
+import functools
+from dataclasses import dataclass
+from fractions import Fraction
+
+from .kinds import DATA, Dimension, read_dimension
+
+# More digits than a double holds, so that factors with π are right to the last place.
+PI = Fraction("3.14159265358979323846264338327950288419716939937510")
+
+PREFIXES = {"G": 9, "M": 6, "k": 3, "h": 2, "d": -1, "c": -2, "m": -3, "μ": -6, "u": -6, "n": -9, "T": 12}
+PREFIX_NAMES = {
+    "giga": "G",
+    "mega": "M",
+    "kilo": "k",
+    "hecto": "h",
+    "deci": "d",
+    "centi": "c",
+    "milli": "m",
+    "micro": "μ",
+    "nano": "n",
+    "tera": "T",
+}
+# Prefixes whose case people get wrong without changing the meaning, or that M and m compete for.
+_LOOSE_PREFIXES = {"k": "k", "g": "G", "c": "c", "d": "d", "h": "h", "m": "mM", "μ": "μ", "u": "u"}
+
+EXACT, SPLIT, LOOSE, LOOSE_SPLIT = range(4)  # how far a reading is from the spelling in the table
+
+
+@dataclass(frozen=True, slots=True, eq=False)
+class Atom:
+    """One row of the table."""
+
+    symbol: str
+    factor: Fraction
+    dimension: Dimension
+    prefixes: str
+    exact_case: bool
+    alone: bool
+    kinds: tuple[str, ...]
+    refuse: str
+
+
+@dataclass(frozen=True, slots=True)
+class Piece:
+    """An atom with its prefix, as found in a text; ``rank`` tells how loosely it was matched."""
+
+    atom: Atom
+    prefix: str
+    rank: int
+
+
+def _factor(text: str) -> Fraction:
+    """``0.45359237*9.80665/0.09290304`` or ``pi/180`` as an exact fraction; each ``/`` divides once."""
+    result = Fraction(1)
+    for place, group in enumerate(text.split("/")):
+        for number in group.split("*"):
+            value = PI if number == "pi" else Fraction(number)
+            result = result / value if place else result * value
+    return result
+
+
+@functools.cache
+def _table() -> tuple[dict[str, list[Atom]], dict[str, list[Atom]]]:
+    """Spelling -> atoms, with case and without."""
+    exact: dict[str, list[Atom]] = {}
+    loose: dict[str, list[Atom]] = {}
+    with (DATA / "units.csv").open(encoding="utf-8", newline="") as file:
+        for row in csv.DictReader(file):
+            spellings = row["spellings"].split(";")
+            atom = Atom(
+                symbol=spellings[0],
+                factor=_factor(row["factor"]) if row["factor"] else Fraction(0),
+                dimension=read_dimension(row["dimension"]),
+                prefixes=row["prefixes"],
+                exact_case=row["case"] == "exact",
+                alone=row["place"] == "alone",
+                kinds=tuple(filter(None, row["kinds"].split(";"))),
+                refuse=row["refuse"],
+            )
+            for spelling in spellings:
+                exact.setdefault(spelling, []).append(atom)
+                if not atom.exact_case:
+                    known = loose.setdefault(spelling.casefold(), [])
+                    if atom not in known:
+                        known.append(atom)
+    return exact, loose
+
+
+def spellings() -> dict[str, list[Atom]]:
+    """Every spelling of the table with its atoms."""
+    return _table()[0]
+
+
+def whole(word: str) -> list[Piece]:
+    """What a word may mean as one unit, exactly as spelled."""
+    exact = _table()[0]
+    found = [Piece(atom, "", EXACT) for atom in exact.get(word, ())]
+    head, rest = word[:1], word[1:]
+    if head in PREFIXES and rest in exact:
+        sign = "μ" if head == "u" else head
+        found += [Piece(atom, sign, EXACT) for atom in exact[rest] if sign in atom.prefixes]
+    return found or _named(word, exact, EXACT)
+
+
+def _named(word: str, table: dict[str, list[Atom]], rank: int) -> list[Piece]:
+    """A prefix written out, before a unit of at least three letters: ``kilowatt``, ``centipoise``."""
+    for name, sign in PREFIX_NAMES.items():
+        rest = word[len(name) :]
+        if len(rest) >= 3 and word.startswith(name) and rest in table:
+            return [Piece(atom, sign, rank) for atom in table[rest] if sign in atom.prefixes]
+    return []
+
+
+def whole_in_any_case(word: str) -> list[Piece]:
+    """What a word may mean as one unit when its case is not trusted.
+
+    In ``Mpa`` the M stands out, so the case is trusted there; in ``mpa`` and ``MPA`` it says nothing.
+    """
+    loose = _table()[1]
+    small = word.casefold()
+    found = [Piece(atom, "", LOOSE) for atom in loose.get(small, ())]
+    head, rest = small[:1], small[1:]
+    signs = _LOOSE_PREFIXES.get(head, "")
+    if word[:1] == "M" and not word.isupper():
+        signs = "M"
+    for sign in signs:
+        sign = "μ" if sign == "u" else sign
+        found += [Piece(atom, sign, LOOSE) for atom in loose.get(rest, ()) if sign in atom.prefixes]
+    return found or _named(small, loose, LOOSE)
