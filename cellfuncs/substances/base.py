@@ -11,6 +11,7 @@ from .texts import kelvin, nearest, pascal, shown
 
 ATMOSPHERE = 101325.0  # [Pa] the pressure meant when none is given
 PLAUSIBLE_PRESSURE = 1000.0  # [Pa] below this a slip of the unit is likelier than a vacuum
+SLACK = 1e-9  # relative width of a limit: 0.01 degC comes out a digit below 273.16 K
 PHASES = {
     "liquid": "liquid",
     "gas": "gas",
@@ -163,11 +164,11 @@ def check_state(
         raise OutOfRange(
             f"an absolute pressure of {pascal(pressure)} is not above zero; is it a gauge reading?"
         )
-    if not t_min <= temperature <= t_max:
+    if not t_min * (1 - SLACK) <= temperature <= t_max * (1 + SLACK):
         raise OutOfRange(
             f"{kelvin(temperature)} is outside the range of {name}, {kelvin(t_min)} to {kelvin(t_max)}"
         )
-    if p_max is not None and pressure > p_max:
+    if p_max is not None and pressure > p_max * (1 + SLACK):
         raise OutOfRange(f"{pascal(pressure)} is above {pascal(p_max)}, the highest pressure for {name}")
 
 

@@ -3,7 +3,7 @@
 import math
 
 from ..errors import CellfuncsError, NoModel, OutOfRange
-from .base import phase_word
+from .base import SLACK, phase_word
 from .properties import PROPERTIES, property_key
 from .state import CODES, DIVERGING, SIGNED, Handle, place
 from .texts import kelvin, pascal
@@ -65,15 +65,15 @@ class SaturationLine:
             raise OutOfRange("a saturated state needs a temperature or a pressure, one of the two")
         if temperature is not None:
             temperature = float(temperature)
-            if not self._t_min <= temperature < self._t_critical:
+            if not self._t_min * (1 - SLACK) <= temperature < self._t_critical:
                 raise OutOfRange(
                     f"{self._bare} has no saturation line at {kelvin(temperature)}: it runs from "
                     f"{kelvin(self._t_min)} to the critical point, {kelvin(self._t_critical)}"
                 )
-            return "T", temperature, math.nan
+            return "T", max(temperature, self._t_min), math.nan
         pressure = float(pressure)
         lowest = self._saturation_pressures(handle, self._t_min)[1]
-        if not lowest <= pressure < self._p_critical:
+        if not lowest * (1 - SLACK) <= pressure < self._p_critical:
             raise OutOfRange(
                 f"{self._bare} has no saturation line at {pascal(pressure)}: it runs from {pascal(lowest)} "
                 f"to the critical point, {pascal(self._p_critical)}"

@@ -12,7 +12,7 @@ from functools import cache
 
 from ..errors import NoModel, OutOfRange, UnknownName
 from ..sources import read_table
-from .base import ATMOSPHERE, PLAUSIBLE_PRESSURE, Limits, Substance, check_state, phase_word
+from .base import ATMOSPHERE, PLAUSIBLE_PRESSURE, SLACK, Limits, Substance, check_state, phase_word
 from .engine import coolprop, open_state
 from .properties import PROPERTIES, property_key
 from .texts import folded, kelvin, pascal, percent, shown
@@ -99,7 +99,7 @@ class Liquid(Substance):
         if phase not in (None, "liquid"):
             raise NoModel(f"{self.name} is a liquid here; no model of its {phase} phase is at hand")
         low = self._t_low
-        if low > self._t_min and math.isfinite(temperature) and 0 < temperature < low:
+        if low > self._t_min and 0 < temperature < low * (1 - SLACK):
             raise OutOfRange(
                 f"{kelvin(temperature)} is below the freezing point of {self.name}, {kelvin(low)}"
             )
