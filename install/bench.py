@@ -16,7 +16,10 @@ from collections.abc import Callable, Sequence
 from dataclasses import dataclass
 from pathlib import Path
 
+ROOT = Path(__file__).resolve().parent.parent
 ATMOSPHERE = 101_325.0
+
+sys.path.insert(0, str(ROOT))
 
 
 @dataclass(frozen=True)
@@ -233,7 +236,7 @@ def command_start() -> Row:
     python = sys.executable
 
     def start(*words: str) -> Callable[[], object]:
-        return lambda: subprocess.run([python, *words], check=True, stdout=subprocess.DEVNULL)
+        return lambda: subprocess.run([python, *words], check=True, stdout=subprocess.DEVNULL, cwd=ROOT)
 
     works = [
         start("-c", "pass"),
@@ -255,7 +258,7 @@ def without_fluids() -> Row:
         book = Path(folder) / "plain.xlsx"
         _write_reynolds(book, 3)
         done = subprocess.run(
-            [sys.executable, "-c", script, str(book)], capture_output=True, text=True, check=True
+            [sys.executable, "-c", script, str(book)], capture_output=True, text=True, check=True, cwd=ROOT
         )
     loaded, areas = map(int, done.stdout.split())
     if not areas:
@@ -264,7 +267,7 @@ def without_fluids() -> Row:
 
 
 WATER_IN_A_DUCT = (
-    ("flow", "duct", ""),
+    ("flow kind", "duct", ""),
     ("substance", "water", ""),
     ("diameter", 25.0, "mm"),
     ("length", 4.0, "m"),

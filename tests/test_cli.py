@@ -1,8 +1,10 @@
 """The command line: what it prints, its exit codes, and one clear line for whatever goes wrong."""
 
+import os
 import subprocess
 import sys
 import types
+from pathlib import Path
 
 import pytest
 
@@ -10,10 +12,16 @@ from cellfuncs import __version__, cli
 from cellfuncs.cells import catalogue
 from cellfuncs.errors import BookRefused
 
+ROOT = Path(__file__).resolve().parent.parent
+
 
 def run(*words, **more):
     return subprocess.run(
-        [sys.executable, "-m", "cellfuncs", *map(str, words)], capture_output=True, encoding="utf-8", **more
+        [sys.executable, "-m", "cellfuncs", *map(str, words)],
+        capture_output=True,
+        encoding="utf-8",
+        cwd=ROOT,
+        **more,
     )
 
 
@@ -142,7 +150,10 @@ def test_progress_is_shown_on_a_terminal_and_gone_after_it(engine, capsys, monke
 def test_a_reader_that_leaves_early_is_no_error():
     script = "import sys; sys.stdin.readline()"
     listing = subprocess.Popen(
-        [sys.executable, "-m", "cellfuncs", "functions"], stdout=subprocess.PIPE, stderr=subprocess.PIPE
+        [sys.executable, "-m", "cellfuncs", "functions"],
+        stdout=subprocess.PIPE,
+        stderr=subprocess.PIPE,
+        cwd=ROOT,
     )
     subprocess.run([sys.executable, "-c", script], stdin=listing.stdout)
     listing.stdout.close()
@@ -152,6 +163,6 @@ def test_a_reader_that_leaves_early_is_no_error():
 
 
 def test_a_terminal_without_our_signs_shows_question_marks():
-    done = run("functions", env={"PYTHONIOENCODING": "ascii", "PATH": ""})
+    done = run("functions", env=os.environ | {"PYTHONIOENCODING": "ascii", "PYTHONUTF8": "0"})
     assert done.returncode == 0
     assert done.stderr == ""

@@ -243,19 +243,20 @@ def test_the_top_folder_holds_what_the_design_lists():
     assert {name for name in seen if not name.endswith(".egg-info")} <= listed
 
 
-HEAVY = ("numpy", "xlwings", *sorted(NEVER_AT_IMPORT))
+HEAVY = ("xlwings", *sorted(NEVER_AT_IMPORT))
 
 
 @pytest.mark.parametrize(
-    "statement",
+    ("statement", "heavy"),
     [
-        "import cellfuncs",
-        "import cellfuncs.cli",
-        "import cellfuncs.cli as c; c.main(['functions'])",
+        ("import cellfuncs", ("numpy", *HEAVY)),
+        ("import cellfuncs.cli", ("numpy", *HEAVY)),
+        # numpy costs a tenth of a second, which the list of functions may take
+        ("import cellfuncs.cli as c; c.main(['functions'])", HEAVY),
     ],
 )
-def test_nothing_heavy_is_loaded_before_it_is_needed(statement):
-    script = f"import sys\n{statement}\nprint('loaded:', [name for name in {HEAVY!r} if name in sys.modules])"
+def test_nothing_heavy_is_loaded_before_it_is_needed(statement, heavy):
+    script = f"import sys\n{statement}\nprint('loaded:', [name for name in {heavy!r} if name in sys.modules])"
     done = subprocess.run([sys.executable, "-c", script], capture_output=True, text=True, cwd=ROOT)
     assert done.returncode == 0, done.stderr
     assert done.stdout.splitlines()[-1] == "loaded: []"

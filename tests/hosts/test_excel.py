@@ -5,10 +5,15 @@ Windows, registers our functions and does what a test wrote into its input; see 
 """
 
 import json
+import os
 import subprocess
 import sys
+from pathlib import Path
 
 import pytest
+
+ROOT = Path(__file__).resolve().parent.parent.parent
+VARIABLES = os.environ | {"PYTHONPATH": str(ROOT)}
 
 MISSING = -2147352572  # what Excel hands over for an argument that was left out (DISP_E_PARAMNOTFOUND)
 DIVISION_BY_ZERO, NOT_AVAILABLE, SPILL = -2146826281, -2146826246, -2146826243  # CVErr 2007, 2042, 2045
@@ -139,6 +144,7 @@ def excel(*calls):
         input=json.dumps(calls),
         capture_output=True,
         encoding="utf-8",
+        env=VARIABLES,
         timeout=300,
     )
     assert done.returncode == 0, done.stderr
@@ -288,7 +294,7 @@ def test_it_can_be_imported_where_there_is_no_excel(catalogue):
         "import sys; from cellfuncs.hosts import excel; print(excel.CF_REYNOLDS(2.0, 0.05, 998.0, 0.001));"
         "print('CoolProp' in sys.modules)"
     )
-    done = subprocess.run([sys.executable, "-c", script], capture_output=True, text=True)
+    done = subprocess.run([sys.executable, "-c", script], capture_output=True, text=True, env=VARIABLES)
     assert done.returncode == 0, done.stderr
     number, loaded = done.stdout.split()
     assert float(number) == pytest.approx(REYNOLDS, rel=1e-12)
