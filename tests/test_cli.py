@@ -166,3 +166,59 @@ def test_a_terminal_without_our_signs_shows_question_marks():
     done = run("functions", env=os.environ | {"PYTHONIOENCODING": "ascii", "PYTHONUTF8": "0"})
     assert done.returncode == 0
     assert done.stderr == ""
+
+
+# -- with real files --------------------------------------------------------------------------------
+
+
+@pytest.fixture
+def book(tmp_path):
+    import xlsxwriter
+
+    path = tmp_path / "a sheet.xlsx"
+    with xlsxwriter.Workbook(str(path)) as made:
+        sheet = made.add_worksheet("Tube")
+        sheet.write_row("A1", ["speed", "Re"])
+        sheet.write_column("A2", [2.0, "4 m/s"])
+        for row in (2, 3):
+            sheet.write_formula(f"B{row}", f"=CF_REYNOLDS(A{row},0.05,998,0.001)", None, 0)
+    return path
+
+
+def test_a_workbook_is_recalculated_into_a_copy(book, tmp_path):
+    before = book.read_bytes()
+    done = run("recalc", book, "-o", tmp_path / "out.xlsx")
+    assert (done.returncode, done.stderr) == (0, "")
+    assert "Tube!B2:B3" in done.stdout and "Re" in done.stdout
+    assert "99800" in done.stdout and "199600" in done.stdout
+    assert done.stdout.splitlines()[-1] == f"wrote {tmp_path / 'out.xlsx'}"
+    assert book.read_bytes() == before
+    import openpyxl
+
+    sheet = openpyxl.load_workbook(tmp_path / "out.xlsx", data_only=True)["Tube"]
+    assert sheet["B3"].value == pytest.approx(199_600, rel=1e-12)
+
+
+@pytest.mark.parametrize(
+    ("name", "content"),
+    [("gone.xlsx", None), ("letter.xlsx", b"Dear reader"), ("cut.xlsx", "half of the book")],
+)
+def test_what_is_no_workbook_ends_in_one_line(book, tmp_path, name, content):
+    path = tmp_path / name
+    if content is not None:
+        path.write_bytes(content if isinstance(content, bytes) else book.read_bytes()[:2000])
+    done = run("recalc", path, "-o", tmp_path / "out.xlsx")
+    assert done.returncode == 2
+    assert done.stdout == ""
+    assert done.stderr.startswith("cellfuncs: ") and done.stderr.count("\n") == 1
+    assert "Error" not in done.stderr and "program itself" not in done.stderr
+    assert not (tmp_path / "out.xlsx").exists()
+
+
+@pytest.mark.parametrize("out", ["a sheet.xlsx", ".", "no such folder/out.xlsx"])
+def test_an_output_that_cannot_be_is_refused(book, tmp_path, out):
+    before = book.read_bytes()
+    done = run("recalc", book, "-o", tmp_path / out)
+    assert done.returncode == 2
+    assert done.stderr.count("\n") == 1 and "program itself" not in done.stderr
+    assert book.read_bytes() == before
