@@ -59,12 +59,15 @@ def _read(text: str) -> Substance | None:
     name = folded(text)
     if name in _STEAM:
         return _in_phase(_fluid("Water"), "gas")
-    key = _fluid_names().get(name) or _fluid_names().get(_REFRIGERANT.sub("r", name))
+    key = _fluid_names().get(name)
     if key:
         return _fluid(key)
-    key = liquid_names(False).get(name)
+    liquid = liquid_names(False).get(name)
+    if liquid:
+        return _kept(liquid, lambda: Liquid(liquid_rows()[liquid], liquid_rows()[liquid]["name"]))
+    key = _fluid_names().get(_REFRIGERANT.sub("r", name))
     if key:
-        return _kept(key, lambda: Liquid(liquid_rows()[key], liquid_rows()[key]["name"]))
+        return _fluid(key)
     found = humid_air(text)
     if found is None:
         read = solution(text)

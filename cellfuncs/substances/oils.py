@@ -115,7 +115,7 @@ def viscosity_at_100(viscosity_40: float, index: float) -> float:
     """Viscosity at 100 degC [m2/s] that gives a viscosity index with one at 40 degC [m2/s] (bisection)."""
     if not 0 <= index <= 400:
         raise OutOfRange(f"a viscosity index of {index:g} is outside 0 to 400")
-    low, high = 2.0 * STOKES, min(viscosity_40 * (1 - 1e-9), 1000 * STOKES)
+    low, high = 2.0 * STOKES, viscosity_40 * (1 - 1e-9)
     if low >= high or not viscosity_index(viscosity_40, low) <= index <= viscosity_index(viscosity_40, high):
         raise OutOfRange(
             f"an oil of {viscosity_40 / STOKES:.4g} mm2/s at 40 degC cannot have a viscosity index of "

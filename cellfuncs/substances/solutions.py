@@ -324,12 +324,12 @@ def _on_the_basis(row: dict[str, str], value: float, basis: str) -> tuple[str, f
         fraction = convert(value, row["solute"])
         note = f"{percent(value)} by {basis} is {percent(fraction)} by {row['basis']} (densities at 20 degC)"
     low, high = float(row["x_min"]), float(row["x_max"])
-    if not low <= fraction <= high:
+    if not low - SLACK <= fraction <= high + SLACK:
         raise OutOfRange(
             f"{name}: {percent(fraction)} by {row['basis']} is outside the data, "
             f"{percent(low)} to {percent(high)}"
         )
-    return name, fraction, note
+    return name, min(max(fraction, low), high), note
 
 
 def _ask_which(rest: str) -> None:
