@@ -3,16 +3,16 @@
 A new spelling of a unit is one word in ``data/units.csv``, a new kind one row in ``data/kinds.csv``.
 
 ``kinds``        the kinds of quantity, with SI unit, dimension and usual units
-``atoms``        the table of units that may stand in a unit text
-``clean``        unit texts from workbooks as plain ones
-``unit_text``    the closed and bounded reader: a text gives all that it may mean
-``convert``      the wanted kind settles which meaning holds; values to and from SI
 ``number_text``  numbers as people type them
+``convert``      values to and from SI; remembers the units it has seen
+``fitting``      the wanted kind settles which meaning of a unit text holds
+``unit_text``    the closed and bounded reader: a text gives all that it may mean
+``clean``        unit texts from workbooks as plain ones
+``atoms``        the table of units that may stand in a unit text
 """
 
 from .convert import (
     STANDARD_ATMOSPHERE,
-    Unit,
     check_physical,
     convert,
     from_pint,
@@ -23,7 +23,7 @@ from .convert import (
     to_si,
     unit_fits,
 )
-from .kinds import KINDS, Kind, example, kind_key
+from .kinds import KINDS, Kind, Unit, example, kind_key
 from .number_text import Reading, read_number
 
 __all__ = [

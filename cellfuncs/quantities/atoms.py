@@ -2,6 +2,7 @@
 
 import csv
 import functools
+import re
 from dataclasses import dataclass
 from fractions import Fraction
 
@@ -38,7 +39,7 @@ class Atom:
     dimension: Dimension
     prefixes: str
     exact_case: bool
-    alone: bool
+    place: str  # "alone": never within a compound; "column": only after a length
     kinds: tuple[str, ...]
     refuse: str
 
@@ -69,14 +70,15 @@ def _table() -> tuple[dict[str, list[Atom]], dict[str, list[Atom]]]:
     loose: dict[str, list[Atom]] = {}
     with (DATA / "units.csv").open(encoding="utf-8", newline="") as file:
         for row in csv.DictReader(file):
-            spellings = row["spellings"].split(";")
+            written = row["spellings"].split(";")
+            spellings = [spelling.replace(" ", "") for spelling in written]
             atom = Atom(
-                symbol=spellings[0],
+                symbol=written[0],
                 factor=_factor(row["factor"]) if row["factor"] else Fraction(0),
                 dimension=read_dimension(row["dimension"]),
                 prefixes=row["prefixes"],
                 exact_case=row["case"] == "exact",
-                alone=row["place"] == "alone",
+                place=row["place"],
                 kinds=tuple(filter(None, row["kinds"].split(";"))),
                 refuse=row["refuse"],
             )
@@ -89,9 +91,24 @@ def _table() -> tuple[dict[str, list[Atom]], dict[str, list[Atom]]]:
     return exact, loose
 
 
-def spellings() -> dict[str, list[Atom]]:
-    """Every spelling of the table with its atoms."""
-    return _table()[0]
+@functools.cache
+def _phrases() -> re.Pattern[str]:
+    """The spellings of several words: ``short ton``, ``lb mol``, with any joints between them."""
+    with (DATA / "units.csv").open(encoding="utf-8", newline="") as file:
+        written = [spelling for row in csv.DictReader(file) for spelling in row["spellings"].split(";")]
+    phrases = sorted((spelling for spelling in written if " " in spelling), key=len, reverse=True)
+    choice = "|".join(phrase.replace(" ", "[ .-]{1,2}") for phrase in phrases)
+    return re.compile(rf"(?<![a-z])(?:{choice})(?![a-z])", re.IGNORECASE)
+
+
+def join_phrases(text: str) -> str:
+    """Spellings of several words as single words."""
+    return _phrases().sub(lambda found: re.sub("[ .-]", "", found.group()), text)
+
+
+def spellings() -> tuple[str, ...]:
+    """Every spelling of the table, as one word."""
+    return tuple(_table()[0])
 
 
 def whole(word: str) -> list[Piece]:

@@ -4,7 +4,8 @@ import re
 import unicodedata
 
 from ..errors import UnitRefused
-from .kinds import shortened
+from . import atoms
+from .texts import check_characters, shortened
 
 LONGEST = 40
 
@@ -34,11 +35,17 @@ _WORDS = tuple(
         (r"\bper ?cent\b", "%"),
         (r"(?<![a-z])per(?![a-z])", "/"),
         # deg C, degree F, degC, °C: one token; "deg" alone stays the angle
-        (r"(?<![a-zΔ])(?:°|deg(?:ree)?s?\b\.?|deg(?=[CFRK](?![a-z]))) ?[-.]? ?"
-         r"(?:([CFRK])(?![a-z])|([CFRK])(?:elsius|ahrenheit|ankine|elvin)\b)", r"°\1\2"),
+        (
+            r"(?<![a-zΔ])(?:°|deg(?:ree)?s?\b\.?|deg(?=[CFRK](?![a-z]))) ?[-.]? ?"
+            r"(?:([CFRK])(?![a-z])|([CFRK])(?:elsius|ahrenheit|ankine|elvin)\b)",
+            r"°\1\2",
+        ),
         (r"(?<=[a-z])°([CFRK])(?![a-z])", r"°\1"),
-        (r"(?:Δ|(?<![a-z])(?:delta|diff\.?)) ?[-_]?T?(?: |_)?(?:°|deg(?:ree)?s?\b\.?|deg(?=[CFRK]))? ?([CFRK])(?![a-z])",
-         r"Δ\1"),
+        (
+            r"(?:Δ|(?<![a-z])(?:delta|diff\.?)) ?[-_]?T?(?: |_)?"
+            r"(?:°|deg(?:ree)?s?\b\.?|deg(?=[CFRK]))? ?([CFRK])(?![a-z])",
+            r"Δ\1",
+        ),
         (r"^([CFRK]) ?°$", r"Δ\1"),
         (r"h_?2o", "WC"),
         (r"(?<![a-z])w\. ?([cgs])\.?(?![a-z])", r"W\1"),
@@ -46,31 +53,21 @@ _WORDS = tuple(
         (r"\bof (?=water|WC|mercury|Hg)", ""),
         (r"\b(?:square|sq)\b[. -]*([a-z]+)(?![a-z^0-9])", r"\1^2"),
         (r"\b(?:cubic|cu)\b[. -]*([a-z]+)(?![a-z^0-9])", r"\1^3"),
-        (r"(?<![a-z])(lb|kg|g)m?[ -]?mol(?:es?)?(?![a-z])", r"\1mol"),
-        (r"(?<![a-z])(short|long|metric)[ .-]?(tons?|hp|horsepower)(?![a-z])", r"\1\2"),
-        (r"(?<![a-z])(us|uk|imp|imperial)[ .]{1,2}(gal|gpm|gallon|ton)", r"\1\2"),
-        (r"(?<![a-z])(tons?)[ .]?(?:of )?ref(?:r|rig|rigeration)?\.?(?![a-z])", "RT"),
-        (r"(?<![a-z])fl\.?[ -]?oz\b", "floz"),
-        (r"(?<![a-z])nautical miles?", "nmi"),
-        (r"(?<![a-z])boiler hp", "boilerhp"),
-        (r"(?<![a-z])(wt|vol|mol|mass)\.? ?%|% ?(?:by )?(wt|vol|mol|mass|volume|weight)\b\.?", "wt%"),
+        (r"(?<![a-z])(wt|vol|mol|mass)\.?[ -]?%", r"\1%"),
+        (r"% ?(?:by )?(vol|mol|mass)(?:ume)?\b\.?", r"\1%"),
+        (r"% ?(?:by )?(?:weight|wt)\b\.?", "wt%"),
         (r"% ?r\.? ?h\.?(?![a-z])|\brh ?%", "%RH"),
         (r"(?<![a-z])[aA]m(?=\^?3)", "m"),
     )
 )
-_LABELS = re.compile(r"(?<=[a-z])[ _]?(?:dry air|da|d\.a\.|water|w)(?=/|$)", re.IGNORECASE)
-_HUMIDITY = re.compile(r"^(?:k?g|lb|lbm|grains?)[ _]?(?:WC|water|w|v)?/k?(?:g|lb|lbm)[ _]?(?:dry ?air|da|air|d\.a\.)?$")
+# kg water/kg dry air, g/kg da, kgw/kgda: what is weighed is a label, not a unit
+_HUMIDITY = re.compile(
+    r"^(k?g|lbm?|grains?)[ _]?(?:h_?2o|water|vapou?r|w|v)?[ ]?/"
+    r"[ ]?(k?g|lbm?)[ _]?(?:dry[ _]?air|da|d\.a\.|air|a)?$",
+    re.IGNORECASE,
+)
 _STANDARD_VOLUME = re.compile(r"(?<![a-z])(?:n ?|s)m\^?3(?!\d)", re.IGNORECASE)
 _NUMBER_FIRST = re.compile(r"^(?:[*x·] ?\d|10 ?\^|10-\d|\d+[.,]?\d*e[-+]?\d)|[*x· ]10\^?-?\d", re.IGNORECASE)
-
-
-def check_characters(text: str) -> None:
-    """Refuse control, direction and unassigned characters, which a cell can hide."""
-    for character in text:
-        if unicodedata.category(character) in ("Cc", "Cf", "Cs", "Co", "Cn"):
-            raise UnitRefused(
-                f'"{shortened(text)}" holds a hidden character (U+{ord(character):04X}); type the unit anew'
-            )
 
 
 def clean(text: str) -> str:
@@ -86,8 +83,10 @@ def clean(text: str) -> str:
         raise UnitRefused("no unit; write one")
     if len(text) > LONGEST:
         raise UnitRefused(f'"{shortened(text, 30)}" has {len(text)} characters; a unit has at most {LONGEST}')
-    check_characters(text)
-    plain = _SUPERSCRIPT.sub(lambda found: "^" + found.group().translate(_SUPERSCRIPTS), text.translate(_SIGNS))
+    check_characters(text, UnitRefused)
+    plain = _SUPERSCRIPT.sub(
+        lambda found: "^" + found.group().translate(_SUPERSCRIPTS), text.translate(_SIGNS)
+    )
     plain = unicodedata.normalize("NFKC", plain).translate(_SIGNS).replace("**", "^")
     if len(plain) > 2 * LONGEST:
         raise UnitRefused(f'"{shortened(text, 30)}" is too long for a unit')
@@ -99,11 +98,10 @@ def clean(text: str) -> str:
             plain = inner.strip()
     if _NUMBER_FIRST.search(plain):
         raise UnitRefused(
-            f'"{shortened(text)}" holds a power of ten, and whether it multiplies or divides the value is open; '
+            f'"{shortened(text)}" holds a power of ten that may multiply or divide the value; '
             "put it into the value and write the plain unit"
         )
-    if _HUMIDITY.match(plain):
-        plain = re.sub(r"[ _]?(?:WC|water|dry ?air|da|d\.a\.|air|(?<=g)[wv]|(?<=lb)[wv])(?=/|$)", "", plain)
+    plain = atoms.join_phrases(_HUMIDITY.sub(r"\1/\2", plain))
     for pattern, replacement in _WORDS:
         plain = pattern.sub(replacement, plain)
     if _STANDARD_VOLUME.search(plain):

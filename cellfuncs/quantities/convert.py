@@ -1,73 +1,18 @@
-"""The wanted kind settles what a unit text means; values to and from SI.
-
-A unit text is read once for each kind and remembered: afterwards a conversion is a multiplication.
+"""Values to and from SI. A unit text is read once for each kind and remembered; afterwards a
+conversion is a multiplication. What reads the text is imported with the first one, not before.
 """
 
 import math
-import re
-from dataclasses import dataclass
-from fractions import Fraction
-from functools import lru_cache
 from typing import Any
 
 from ..errors import NumberRefused, OutOfRange, UnitRefused
-from .atoms import PI
-from .kinds import BASE, KINDS, NO_DIMENSION, Dimension, Kind, a, kind_of, shortened
+from .kinds import BASE, Unit, kind_of
 from .number_text import read_number
-from .unit_text import TEMPERATURE, Meaning, meanings
+from .texts import a, shortened
 
-STANDARD_ATMOSPHERE = 101325.0  # Pa, exact: SI Brochure 9 (2019)
-GRAVITY = Fraction("9.80665")  # m/s2, exact: standard acceleration of free fall, NIST SP 811 (2008) B.8
+STANDARD_ATMOSPHERE = 101325.0  # Pa, exact: NIST SP 811 (2008) B.8, standard atmosphere
 COLDEST_BARE = 200.0  # K: a temperature without unit below it is more likely meant in °C or °F
 MOST_REMEMBERED = 4096
-
-_PRESSURE = KINDS["stress"].dimension
-_PER_SECOND = KINDS["frequency"].dimension
-_TURNING = KINDS["angular_velocity"].dimension
-_FREQUENCIES = ("frequency", "rotational_frequency")
-_REFERENCES = {"pressure_absolute": ("", "absolute", "gauge"), "pressure_gauge": ("gauge",)}
-_REFERENCES["pressure_difference"] = ("", "difference")
-
-# Kinds in whose units sheets write kg, lb and oz for the force: kg/cm2, ft-lb, lb/in2, lb-s/ft2.
-_WITH_FORCE = frozenset(
-    "force torque energy stress pressure_absolute pressure_gauge pressure_difference pressure_gradient "
-    "dynamic_viscosity force_per_length".split()
-)
-_WEIGHED = {"kg": "kgf", "lb": "lbf", "oz": "ozf"}
-_WEIGHT_SHIFT = tuple(
-    f - m for f, m in zip(KINDS["force"].dimension, KINDS["mass"].dimension, strict=True)
-)
-
-_REFERENCE_WORDS = {
-    "absolute": "a|abs|absolute",
-    "gauge": "g|ga|gauge|gage|rel",
-    "difference": "d|dif|diff|differential|delta",
-    "vacuum": "v|vac|vacuum",
-}
-_WITH_REFERENCE = {
-    reference: re.compile(rf"^(.+?)[ ._-]*(?:\( ?(?:{words})\.? ?\)|(?:{words})\.?)$", re.IGNORECASE)
-    for reference, words in _REFERENCE_WORDS.items()
-}
-
-
-@dataclass(frozen=True, slots=True)
-class Unit:
-    """A unit text as read for a kind: SI = value * factor + offset; ``understood`` is its plain form."""
-
-    factor: float
-    offset: float
-    kind: str
-    understood: str
-
-
-@dataclass(frozen=True, slots=True)
-class _Reading:
-    """All meanings of a text, with the reference its pressure is given against, or the refusal."""
-
-    meanings: tuple[Meaning, ...]
-    reference: str
-    refusal: str
-
 
 _units: dict[tuple[str, str, float], Unit] = {}
 
@@ -92,146 +37,13 @@ def read_unit(text: str, kind: str, atmosphere: float = STANDARD_ATMOSPHERE) -> 
         pass
     except TypeError:
         raise UnitRefused("a unit must be a text") from None
-    unit = _read(text, kind, atmosphere)
+    from . import fitting
+
+    unit = fitting.fit(text, kind_of(kind), atmosphere)
     if len(_units) >= MOST_REMEMBERED:
         _units.clear()
     _units[text, kind, atmosphere] = unit
     return unit
-
-
-def _read(text: str, kind: str, atmosphere: float) -> Unit:
-    if not isinstance(text, str):
-        raise UnitRefused("a unit must be a text")
-    wanted = kind_of(kind)
-    reading = _reading(text)
-    if reading.refusal:
-        raise UnitRefused(_with_example(reading.refusal, wanted))
-    found = _fits(reading, wanted, atmosphere)
-    values = {(unit.factor, unit.offset) for unit in found}
-    if len(values) > 1:
-        choices = " or ".join(dict.fromkeys(unit.understood for unit in found))
-        raise UnitRefused(f'"{shortened(text)}" may be {choices}; write the one that is meant')
-    if not found:
-        raise UnitRefused(_misfit(text, reading, wanted))
-    return found[0]
-
-
-@lru_cache(maxsize=1024)
-def _reading(text: str) -> _Reading:
-    try:
-        plain = tuple(meanings(text))
-        refusal = ""
-    except UnitRefused as refused:
-        plain, refusal = (), str(refused)
-    if any(_is_pressure(meaning) for meaning in plain) or len(text) > 60:
-        return _Reading(plain, "", refusal)
-    for reference, pattern in _WITH_REFERENCE.items():
-        match = pattern.match(text.strip().strip("[]").replace("\xa0", " "))
-        if not match:
-            continue
-        try:
-            base = tuple(m for m in meanings(match.group(1)) if _is_pressure(m))
-        except UnitRefused:
-            continue
-        if base and reference == "vacuum":
-            said = f'"{shortened(text)}" counts downwards from the atmosphere; write the absolute pressure'
-            return _Reading((), "", said)
-        if base:
-            return _Reading(base, reference, "")
-    return _Reading(plain, "", refusal)
-
-
-def _is_pressure(meaning: Meaning) -> bool:
-    return meaning.dimension == _PRESSURE or (
-        _weighed_power(meaning) == 1 and _shifted(meaning.dimension, 1) == _PRESSURE
-    )
-
-
-def _weighed_power(meaning: Meaning) -> int:
-    """The power of the one mass that may stand for its weight, or 0."""
-    powers = [power for piece, power in meaning.pieces if piece.atom.symbol in _WEIGHED]
-    return powers[0] if len(powers) == 1 else 0
-
-
-def _shifted(dimension: Dimension, times: int) -> Dimension:
-    return tuple(d + times * s for d, s in zip(dimension, _WEIGHT_SHIFT, strict=True))
-
-
-def _fits(reading: _Reading, wanted: Kind, atmosphere: float) -> list[Unit]:
-    """The units of the nearest spelling that fit a kind."""
-    if reading.reference not in _REFERENCES.get(wanted.name, ("",)):
-        return []
-    found: list[Unit] = []
-    rank = None
-    for meaning in reading.meanings:
-        if rank is not None and meaning.rank != rank:
-            break
-        unit = _fit(meaning, reading.reference, wanted, atmosphere)
-        if unit is not None:
-            rank = meaning.rank
-            found.append(unit)
-    return found
-
-
-def _fit(meaning: Meaning, reference: str, wanted: Kind, atmosphere: float) -> Unit | None:
-    name, dimension = wanted.name, meaning.dimension
-    if not meaning.allows(name):
-        return None
-    if name == "temperature":
-        if dimension != TEMPERATURE or meaning.single is None or meaning.is_difference:
-            return None
-        return Unit(float(meaning.factor), float(meaning.offset), name, meaning.text())
-    if dimension == wanted.dimension:
-        if name == "angular_velocity" or dimension != NO_DIMENSION:
-            return _unit(meaning, 1, reference, wanted, atmosphere)
-        if name == "relative_humidity" and any(any(p.atom.dimension) for p, _ in meaning.pieces):
-            return None
-        return _unit(meaning, 1, reference, wanted, atmosphere)
-    if name in _FREQUENCIES and dimension == _TURNING:
-        return _unit(meaning, 1 / (2 * PI), reference, wanted, atmosphere)
-    if name == "angular_velocity" and dimension == _PER_SECOND and meaning.single is not None:
-        return _unit(meaning, 2 * PI, reference, wanted, atmosphere) if meaning.single.symbol == "Hz" else None
-    if name in _WITH_FORCE and _weighed_power(meaning) == 1 and _shifted(dimension, 1) == wanted.dimension:
-        return _unit(meaning, GRAVITY, reference, wanted, atmosphere, _WEIGHED)
-    return None
-
-
-def _unit(
-    meaning: Meaning,
-    times: Fraction | int,
-    reference: str,
-    wanted: Kind,
-    atmosphere: float,
-    swap: dict[str, str] | None = None,
-) -> Unit:
-    understood = meaning.text(swap) + (f" {reference}" if reference else "")
-    offset = atmosphere if reference == "gauge" else 0.0
-    return Unit(float(meaning.factor * times), offset, wanted.name, understood)
-
-
-def _with_example(refusal: str, wanted: Kind) -> str:
-    if "write" in refusal or "type" in refusal:
-        return refusal
-    return f"{refusal}; write for instance {wanted.example}"
-
-
-def _misfit(text: str, reading: _Reading, wanted: Kind) -> str:
-    """Why a unit that can be read does not fit the kind."""
-    shown = f'"{shortened(text)}"'
-    kinds = _kinds_of(reading)
-    instance = f"write for instance {wanted.example}"
-    if wanted.name == "pressure_gauge" and not reading.reference and kinds and _is_pressure(reading.meanings[0]):
-        return f"{shown} does not say that it is gauge; {instance}"
-    if wanted.name == "angular_velocity" and reading.meanings[0].dimension == _PER_SECOND:
-        return f"{shown} may be radians or turns in that time; write rad/s or rpm"
-    if not kinds:
-        return f"{shown} is no unit of {wanted.words}; {instance}"
-    found = KINDS[kinds[0]]
-    hint = ""
-    if {found.name, wanted.name} == {"kinematic_viscosity", "dynamic_viscosity"}:
-        verb = "multiply" if wanted.name == "dynamic_viscosity" else "divide"
-        hint = f"{verb} the value by the density, or "
-    return f"{shown} is {a(found.words)}, not {a(wanted.words)}; {hint}{instance}"
 
 
 def unit_fits(text: str, kind: str) -> bool:
@@ -243,31 +55,11 @@ def unit_fits(text: str, kind: str) -> bool:
     return True
 
 
-@lru_cache(maxsize=1024)
 def kinds_for(text: str) -> tuple[str, ...]:
     """The kinds that a unit can express, the likeliest first; none for what is no unit."""
-    return _kinds_of(_reading(text))
+    from . import fitting
 
-
-def _kinds_of(reading: _Reading) -> tuple[str, ...]:
-    """Kinds with the unit among their usual ones first, then in the order of the table."""
-    usual, others = [], []
-    for kind in KINDS.values():
-        found = _fits(reading, kind, STANDARD_ATMOSPHERE)
-        if len({(unit.factor, unit.offset) for unit in found}) == 1:
-            listed = found[0].understood in _usual_units(kind.name)
-            (usual if listed else others).append(kind.name)
-    return (*usual, *others)
-
-
-@lru_cache(maxsize=None)
-def _usual_units(kind: str) -> frozenset[str]:
-    """The understood forms of a kind's usual units."""
-    return frozenset(
-        unit.understood
-        for text in KINDS[kind].units
-        for unit in _fits(_reading(text), KINDS[kind], STANDARD_ATMOSPHERE)
-    )
+    return fitting.kinds_for(text)
 
 
 def to_si(value: Any, unit_text: str, kind: str) -> Any:
@@ -290,34 +82,10 @@ def convert(value: Any, unit_text: str, wanted_text: str) -> Any:
     UnitRefused
         When the two have no kind in common, or one is gauge and the other leaves that open.
     """
-    kind = _common_kind(unit_text, wanted_text)
+    from . import fitting
+
+    kind = fitting.common_kind(unit_text, wanted_text)
     return from_si(to_si(value, unit_text, kind), wanted_text, kind)
-
-
-@lru_cache(maxsize=1024)
-def _common_kind(unit_text: str, wanted_text: str) -> str:
-    kinds = _kinds_or_raise(unit_text), _kinds_or_raise(wanted_text)
-    common = [kind for kind in kinds[0] if kind in kinds[1]]
-    texts = [f'"{shortened(text, 30)}"' for text in (unit_text, wanted_text)]
-    words = [a(KINDS[k[0]].words) for k in kinds]
-    if not common:
-        raise UnitRefused(f"{texts[0]} is {words[0]}, {texts[1]} {words[1]}; these cannot be converted")
-    first = {k[0] for k in kinds}
-    if common[0] == "pressure_absolute" and "pressure_difference" in first and len(first) == 2:
-        raise UnitRefused(
-            f"{texts[0]} is {words[0]}, {texts[1]} {words[1]}; add abs, g or diff to the unit that leaves it open"
-        )
-    return common[0]
-
-
-def _kinds_or_raise(text: str) -> tuple[str, ...]:
-    reading = _reading(text)
-    if reading.refusal:
-        raise UnitRefused(reading.refusal)
-    kinds = kinds_for(text)
-    if not kinds:
-        raise UnitRefused(f'"{shortened(text)}" is no unit of a known kind')
-    return kinds
 
 
 def read_quantity(text: str, kind: str, atmosphere: float = STANDARD_ATMOSPHERE) -> float:
@@ -389,8 +157,10 @@ def from_pint(quantity: Any, kind: str) -> Any:
     offset = names and names[0] in ("degree_Celsius", "degree_Fahrenheit") and len(names) == 1
     if offset and kind != "temperature":
         raise UnitRefused(f'"{shown}" is a temperature, not {a(wanted.words)}; {instance}')
-    powers = [f"{_PINT_BASE[base]}**{power}" for base, power in zip(BASE, wanted.dimension, strict=True) if power]
-    if kind in _FREQUENCIES and any(name in _PINT_ANGLES for name in names):
+    powers = [
+        f"{_PINT_BASE[base]}**{power}" for base, power in zip(BASE, wanted.dimension, strict=True) if power
+    ]
+    if kind in ("frequency", "rotational_frequency") and any(name in _PINT_ANGLES for name in names):
         powers = ["turn", "second**-1"]
     try:
         return quantity.to(" * ".join(powers) if powers else "dimensionless").magnitude

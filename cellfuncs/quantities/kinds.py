@@ -6,6 +6,7 @@ from functools import cache
 from pathlib import Path
 
 from ..errors import UnknownName
+from .texts import shortened
 
 DATA = Path(__file__).parent.parent / "data"
 BASE = ("L", "M", "T", "Θ", "N", "I", "A")  # A is the plane angle: a turn is not a radian
@@ -32,6 +33,16 @@ class Kind:
     minimum: float | None
     zero_ok: bool
     source: str
+
+
+@dataclass(frozen=True, slots=True)
+class Unit:
+    """A unit text as read for a kind: SI = value * factor + offset; ``understood`` is its plain form."""
+
+    factor: float
+    offset: float
+    kind: str
+    understood: str
 
 
 def read_dimension(text: str) -> Dimension:
@@ -112,14 +123,3 @@ def kind_of(key: str) -> Kind:
 def example(kind: str) -> str:
     """A quantity as a user may type it, for messages: ``12 ft/s``."""
     return kind_of(kind).example
-
-
-def a(words: str) -> str:
-    """Words with their article."""
-    return f"{'an' if words[0] in 'aeioAEIO' else 'a'} {words}"
-
-
-def shortened(text: str, most: int = 40) -> str:
-    """A user's text fit for a message: one line, no characters that cannot be shown, not long."""
-    text = " ".join("".join(c if c.isprintable() else " " for c in text[: 4 * most]).split())
-    return text if len(text) <= most else text[: most - 1] + "…"

@@ -5,8 +5,7 @@ import re
 from dataclasses import dataclass
 
 from ..errors import NumberRefused
-from .clean import check_characters
-from .kinds import shortened
+from .texts import check_characters, shortened
 
 LONGEST = 60
 
@@ -32,7 +31,9 @@ _SUPERSCRIPTS = str.maketrans("⁰¹²³⁴⁵⁶⁷⁸⁹⁻⁺", "0123456789-+
 _SIGN = r"(?P<sign>[+-] ?)?"
 _FRACTION = re.compile(
     _SIGN + rf"(?:(?P<whole>\d{{1,6}}) ?)?(?P<vulgar>[{''.join(_VULGAR)}])"
-    r"|" + _SIGN.replace("sign", "sign2") + r"(?:(?P<whole2>\d{1,6})[ -])?(?P<over>\d{1,6}) ?/ ?(?P<under>\d{1,6})(?![\d.,])"
+    r"|"
+    + _SIGN.replace("sign", "sign2")
+    + r"(?:(?P<whole2>\d{1,6})[ -])?(?P<over>\d{1,6}) ?/ ?(?P<under>\d{1,6})(?![\d.,])"
 )
 _NUMERAL = re.compile(
     _SIGN + r"(?P<digits>\d{1,3}(?: \d{3})+(?![\d])(?:[.,]\d+)?|[.,]?\d[\d.,]*)"
@@ -70,11 +71,10 @@ def read_number(text: str) -> Reading:
         raise NumberRefused("empty; write a number")
     shown = shortened(stripped, 30)
     if len(stripped) > LONGEST:
-        raise NumberRefused(f'"{shown}" has {len(stripped)} characters; a number with its unit has at most {LONGEST}')
-    try:
-        check_characters(stripped.replace("\t", " "))
-    except ValueError:
-        raise NumberRefused(f'"{shown}" holds a hidden character; type the number anew') from None
+        raise NumberRefused(
+            f'"{shown}" has {len(stripped)} characters; a number with its unit has at most {LONGEST}'
+        )
+    check_characters(stripped.replace("\t", " "), NumberRefused)
     plain = stripped.translate(_SIGNS)
     if plain[0] == "(" and ")" in plain:
         plain, stripped = (t[1:].replace(")", " ", 1) for t in (plain, stripped))

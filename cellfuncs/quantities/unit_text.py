@@ -16,14 +16,15 @@ from fractions import Fraction
 from ..errors import UnitRefused
 from . import atoms, clean
 from .atoms import EXACT, LOOSE, LOOSE_SPLIT, SPLIT, Atom, Piece
-from .kinds import NO_DIMENSION, Dimension, shortened
+from .kinds import NO_DIMENSION, Dimension, read_dimension
+from .texts import shortened
 
 MOST_FACTORS = 8
 HIGHEST_POWER = 4
 MOST_GLUED = 14  # letters of a word that is taken apart
 MOST_COMBINATIONS = 96
 
-TEMPERATURE = NO_DIMENSION[:3] + (1,) + NO_DIMENSION[4:]
+LENGTH, TEMPERATURE = read_dimension("L"), read_dimension("Θ")
 
 _TOKEN = re.compile(
     r"""[ ]?(?:
@@ -42,8 +43,11 @@ _OFFSETS = {"°C": Fraction("273.15"), "°F": Fraction(45967, 180)}
 
 @dataclass(frozen=True, slots=True)
 class Factor:
+    """A word with its own power; ``side`` is 1 above the solidus, -1 below, times a bracket's power."""
+
     word: str
     power: int
+    side: int
 
 
 @dataclass(frozen=True, slots=True, eq=False)
@@ -93,9 +97,12 @@ class Meaning:
         for piece, power in self.pieces:
             symbol = piece.atom.symbol
             symbol = piece.prefix + (swap or {}).get(symbol, symbol)
-            (above if power > 0 else below).append(symbol + _superscript(abs(power)))
+            side = above if power > 0 else below
+            if piece.atom.place == "column":
+                symbol = side.pop() + symbol
+            side.append(symbol + _superscript(abs(power)))
         if self.divisor != 1:
-            below.insert(0, str(self.divisor))
+            below[0] = f"{self.divisor} {below[0]}"
         head = "·".join(above) or "1"
         if not below:
             return head if above else "-"
@@ -118,15 +125,16 @@ def meanings(text: str) -> list[Meaning]:
     if plain in _DIMENSIONLESS:
         return [Meaning(NO_DIMENSION, EXACT, (), 1)]
     factors, divisor = _factors(plain, text)
-    alone = len(factors) == 1 and factors[0].power == 1 and divisor == 1
+    alone = len(factors) == 1 and factors[0].power == factors[0].side == divisor == 1
     choices = [_meanings_of(factor.word, alone, text) for factor in factors]
     found = []
     for combination in itertools.islice(itertools.product(*choices), MOST_COMBINATIONS):
         pieces = []
         for factor, (_, glued) in zip(factors, combination, strict=True):
-            sign = 1 if factor.power > 0 else -1
-            pieces += [(piece, sign) for piece in glued[:-1]]
-            pieces.append((glued[-1], factor.power))
+            pieces += [(piece, factor.side) for piece in glued[:-1]]
+            pieces.append((glued[-1], factor.side * factor.power))
+        if not _columns_stand(pieces):
+            continue
         if len(pieces) > MOST_FACTORS:
             raise UnitRefused(f'"{shortened(text)}" has more than {MOST_FACTORS} factors')
         dimension = tuple(
@@ -134,8 +142,20 @@ def meanings(text: str) -> list[Meaning]:
             for place in range(len(NO_DIMENSION))
         )
         found.append(Meaning(dimension, max(rank for rank, _ in combination), tuple(pieces), divisor))
+    if not found:
+        raise UnitRefused(f'"{shortened(text)}" names a liquid, not a unit')
     found.sort(key=lambda meaning: meaning.rank)
     return found
+
+
+def _columns_stand(pieces: list[tuple[Piece, int]]) -> bool:
+    """Whether each column of water or mercury follows its height: mmHg, in w.c."""
+    heights = [None, *pieces[:-1]]
+    return all(
+        before is not None and before[0].atom.dimension == LENGTH and before[1] == power
+        for before, (piece, power) in zip(heights, pieces, strict=True)
+        if piece.atom.place == "column"
+    )
 
 
 def _factors(plain: str, text: str) -> tuple[list[Factor], int]:
@@ -156,8 +176,10 @@ def _factors(plain: str, text: str) -> tuple[list[Factor], int]:
         if token["word"]:
             power = _power(token["power"], shown)
             if below and power < 0:
-                raise UnitRefused(f'"{shown}" has a negative power below the solidus; write it above, or without the sign')
-            factors.append(Factor(token["word"], outer * sign * power))
+                raise UnitRefused(
+                    f'"{shown}" has a negative power below the solidus; write it above, or without the sign'
+                )
+            factors.append(Factor(token["word"], power, outer * sign))
             joined = after_solidus = False
         elif token["number"]:
             number = token["number"]
@@ -166,7 +188,7 @@ def _factors(plain: str, text: str) -> tuple[list[Factor], int]:
             elif number in _BELOW_NUMBERS and after_solidus and divisor == 1 and outer == 1:
                 divisor = int(number)
             else:
-                raise UnitRefused(f'"{shown}" holds the number {number[:10]}; put it into the value and write the plain unit')
+                raise UnitRefused(f'"{shown}" holds the number {number[:10]}; put it into the value')
             joined = after_solidus = False
         elif token["open"]:
             if group_start >= 0:
@@ -179,7 +201,9 @@ def _factors(plain: str, text: str) -> tuple[list[Factor], int]:
                 raise UnitRefused(f'"{shown}" has a bracket too many, or an empty one')
             if token["group_power"]:
                 power = _power(token["group_power"], shown)
-                factors[group_start:] = [Factor(f.word, f.power * power) for f in factors[group_start:]]
+                factors[group_start:] = [
+                    Factor(f.word, f.power, f.side * power) for f in factors[group_start:]
+                ]
             group_start, outer, below = -1, 1, outer_below
             joined = False
         else:
@@ -202,7 +226,7 @@ def _factors(plain: str, text: str) -> tuple[list[Factor], int]:
         raise UnitRefused(f'"{shown}" breaks off; write the whole unit')
     if len(factors) > MOST_FACTORS:
         raise UnitRefused(f'"{shown}" has more than {MOST_FACTORS} factors')
-    if any(not 0 < abs(factor.power) <= HIGHEST_POWER for factor in factors):
+    if any(abs(factor.power * factor.side) > HIGHEST_POWER for factor in factors):
         raise UnitRefused(f'"{shown}" has a power beyond {HIGHEST_POWER}')
     return factors, divisor
 
@@ -242,11 +266,11 @@ def _meanings_of(word: str, alone: bool, text: str) -> list[Choice]:
 
 
 def _usable(pieces: list[Piece], alone: bool, text: str, may_refuse: bool = True) -> list[Piece]:
-    """The pieces that may stand here; a unit that is refused by name raises, unless another reading is at hand."""
+    """The pieces that may stand here; one that is refused by name raises."""
     kept = []
     for piece in pieces:
         atom = piece.atom
-        if atom.alone and not alone:
+        if atom.place == "alone" and not alone:
             continue
         if piece.prefix and atom.dimension == TEMPERATURE and not alone:
             continue  # mK in W/mK is metre kelvin
@@ -277,7 +301,7 @@ def _glued(word: str, lookup) -> list[list[Piece]]:
 
 def _may_be_glued(piece: Piece, last: bool) -> bool:
     atom = piece.atom
-    if atom.alone or atom.refuse:
+    if atom.place == "alone" or atom.refuse:
         return False
     if atom.dimension == TEMPERATURE:
         return last and not piece.prefix

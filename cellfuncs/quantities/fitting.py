@@ -1,0 +1,269 @@
+"""Which of the meanings of a unit text holds: the wanted kind settles it.
+
+Here stand the rules of the trade that a table of units cannot hold: gauge and absolute are said by a
+suffix, a turn is 2π radians or one cycle, kg and lb may stand for their weight.
+"""
+
+import re
+from dataclasses import dataclass
+from fractions import Fraction
+from functools import cache, lru_cache
+
+from ..errors import UnitRefused
+from .atoms import PI
+from .kinds import KINDS, Dimension, Kind, Unit
+from .texts import a, shortened
+from .unit_text import TEMPERATURE, Meaning, meanings
+
+MOST_CHARACTERS = 100  # nothing longer is looked at, or remembered
+GRAVITY = Fraction("9.80665")  # m/s2, exact: standard acceleration of free fall, NIST SP 811 (2008) B.8
+
+_ANY_ATMOSPHERE = 101325.0  # Pa: where only the kind is asked for
+_PRESSURE = KINDS["stress"].dimension
+_PER_SECOND = KINDS["frequency"].dimension
+_TURNING = KINDS["angular_velocity"].dimension
+_FREQUENCIES = ("frequency", "rotational_frequency")
+_REFERENCES = {  # which references a kind of pressure takes; other kinds take none
+    "pressure_absolute": ("", "absolute", "gauge"),
+    "pressure_gauge": ("gauge",),
+    "pressure_difference": ("", "difference"),
+}
+
+# Kinds in whose units sheets write kg, lb and oz for the force: kg/cm2, ft-lb, lb/in2, lb-s/ft2.
+_WITH_FORCE = frozenset(
+    [
+        "force",
+        "torque",
+        "energy",
+        "stress",
+        "pressure_absolute",
+        "pressure_gauge",
+        "pressure_difference",
+        "pressure_gradient",
+        "dynamic_viscosity",
+        "force_per_length",
+    ]
+)
+_WEIGHED = {"kg": "kgf", "lb": "lbf", "oz": "ozf"}
+_WEIGHT_SHIFT = tuple(f - m for f, m in zip(KINDS["force"].dimension, KINDS["mass"].dimension, strict=True))
+
+_REFERENCE_WORDS = {
+    "absolute": "a|abs|absolute",
+    "gauge": "g|ga|gauge|gage|rel",
+    "difference": "d|dif|diff|differential|delta",
+    "vacuum": "v|vac|vacuum",
+}
+_WITH_REFERENCE = {
+    reference: re.compile(rf"^(.+?)[ ._-]*(?:\( ?(?:{words})\.? ?\)|(?:{words})\.?)$", re.IGNORECASE)
+    for reference, words in _REFERENCE_WORDS.items()
+}
+
+
+@dataclass(frozen=True, slots=True, eq=False)
+class _Reading:
+    """All meanings of a text, with the reference its pressure is given against, or the refusal."""
+
+    meanings: tuple[Meaning, ...]
+    reference: str
+    refusal: str
+
+
+def fit(text: str, wanted: Kind, atmosphere: float) -> Unit:
+    """The unit that a text means where a kind is wanted; raises UnitRefused."""
+    if not isinstance(text, str):
+        raise UnitRefused("a unit must be a text")
+    reading = _read(text)
+    if reading.refusal:
+        raise UnitRefused(_with_example(reading.refusal, wanted))
+    found = _fits(reading, wanted, atmosphere)
+    values = {(unit.factor, unit.offset) for unit in found}
+    if len(values) > 1:
+        choices = " or ".join(dict.fromkeys(unit.understood for unit in found))
+        raise UnitRefused(f'"{shortened(text)}" may be {choices}; write the one that is meant')
+    if not found:
+        raise UnitRefused(_misfit(text, reading, wanted))
+    return found[0]
+
+
+def _read(text: str) -> _Reading:
+    if len(text) > MOST_CHARACTERS:
+        return _Reading((), "", f'"{shortened(text, 30)}" has {len(text):,} characters; write a unit')
+    return _reading(text)
+
+
+@lru_cache(maxsize=1024)
+def _reading(text: str) -> _Reading:
+    try:
+        plain = tuple(meanings(text))
+        refusal = ""
+    except UnitRefused as refused:
+        plain, refusal = (), str(refused)
+    if any(_is_pressure(meaning) for meaning in plain):
+        return _Reading(plain, "", refusal)
+    for reference, pattern in _WITH_REFERENCE.items():
+        match = pattern.match(text.strip().strip("[]").replace("\xa0", " "))
+        if not match:
+            continue
+        try:
+            base = tuple(m for m in meanings(match.group(1)) if _is_pressure(m))
+        except UnitRefused:
+            continue
+        if base and reference == "vacuum":
+            said = f'"{shortened(text)}" counts downwards from the atmosphere; write the absolute pressure'
+            return _Reading((), "", said)
+        if base:
+            return _Reading(base, reference, "")
+    return _Reading(plain, "", refusal)
+
+
+def _is_pressure(meaning: Meaning) -> bool:
+    return meaning.dimension == _PRESSURE or (
+        _weighed_power(meaning) == 1 and _shifted(meaning.dimension, 1) == _PRESSURE
+    )
+
+
+def _weighed_power(meaning: Meaning) -> int:
+    """The power of the one mass that may stand for its weight, or 0."""
+    powers = [power for piece, power in meaning.pieces if piece.atom.symbol in _WEIGHED]
+    return powers[0] if len(powers) == 1 else 0
+
+
+def _shifted(dimension: Dimension, times: int) -> Dimension:
+    return tuple(d + times * s for d, s in zip(dimension, _WEIGHT_SHIFT, strict=True))
+
+
+def _fits(reading: _Reading, wanted: Kind, atmosphere: float) -> list[Unit]:
+    """The units of the nearest spelling that fit a kind."""
+    if reading.reference not in _REFERENCES.get(wanted.name, ("",)):
+        return []
+    found: list[Unit] = []
+    rank = None
+    for meaning in reading.meanings:
+        if rank is not None and meaning.rank != rank:
+            break
+        unit = _fit(meaning, reading.reference, wanted, atmosphere)
+        if unit is not None:
+            rank = meaning.rank
+            found.append(unit)
+    return found
+
+
+def _fit(meaning: Meaning, reference: str, wanted: Kind, atmosphere: float) -> Unit | None:
+    name, dimension = wanted.name, meaning.dimension
+    if not meaning.allows(name):
+        return None
+    if name == "temperature":
+        if dimension != TEMPERATURE or meaning.single is None or meaning.is_difference:
+            return None
+        return Unit(float(meaning.factor), float(meaning.offset), name, meaning.text())
+    if dimension == wanted.dimension:
+        if name == "relative_humidity" and any(any(p.atom.dimension) for p, _ in meaning.pieces):
+            return None  # a ratio of two masses is a humidity ratio
+        return _unit(meaning, 1, reference, wanted, atmosphere)
+    if name in _FREQUENCIES and dimension == _TURNING:
+        return _unit(meaning, 1 / (2 * PI), reference, wanted, atmosphere)
+    if name == "angular_velocity" and dimension == _PER_SECOND and meaning.single is not None:
+        return (
+            _unit(meaning, 2 * PI, reference, wanted, atmosphere) if meaning.single.symbol == "Hz" else None
+        )
+    if name in _WITH_FORCE and _weighed_power(meaning) == 1 and _shifted(dimension, 1) == wanted.dimension:
+        return _unit(meaning, GRAVITY, reference, wanted, atmosphere, _WEIGHED)
+    return None
+
+
+def _unit(
+    meaning: Meaning,
+    times: Fraction | int,
+    reference: str,
+    wanted: Kind,
+    atmosphere: float,
+    swap: dict[str, str] | None = None,
+) -> Unit:
+    understood = meaning.text(swap) + (f" {reference}" if reference else "")
+    offset = atmosphere if reference == "gauge" else 0.0
+    return Unit(float(meaning.factor * times), offset, wanted.name, understood)
+
+
+def _with_example(refusal: str, wanted: Kind) -> str:
+    if "write" in refusal or "type" in refusal:
+        return refusal
+    return f"{refusal}; write for instance {wanted.example}"
+
+
+def _misfit(text: str, reading: _Reading, wanted: Kind) -> str:
+    """Why a unit that can be read does not fit the kind."""
+    shown = f'"{shortened(text)}"'
+    kinds = _kinds_of(reading)
+    instance = f"write for instance {wanted.example}"
+    if (
+        wanted.name == "pressure_gauge"
+        and not reading.reference
+        and kinds
+        and _is_pressure(reading.meanings[0])
+    ):
+        return f"{shown} does not say that it is gauge; {instance}"
+    if wanted.name == "angular_velocity" and reading.meanings[0].dimension == _PER_SECOND:
+        return f"{shown} may be radians or turns in that time; write rad/s or rpm"
+    if not kinds:
+        return f"{shown} is no unit of {wanted.words}; {instance}"
+    found = KINDS[kinds[0]]
+    hint = ""
+    if {found.name, wanted.name} == {"kinematic_viscosity", "dynamic_viscosity"}:
+        verb = "multiply" if wanted.name == "dynamic_viscosity" else "divide"
+        hint = f"{verb} the value by the density, or "
+    return f"{shown} is {a(found.words)}, not {a(wanted.words)}; {hint}{instance}"
+
+
+def kinds_for(text: str) -> tuple[str, ...]:
+    """The kinds that a unit can express, the likeliest first; none for what is no unit."""
+    return _kinds_of(_read(text)) if isinstance(text, str) else ()
+
+
+@lru_cache(maxsize=1024)
+def _kinds_of(reading: _Reading) -> tuple[str, ...]:
+    """Kinds with the unit among their usual ones first, then in the order of the table."""
+    if reading.reference == "gauge":
+        return ("pressure_gauge", "pressure_absolute")
+    usual, others = [], []
+    for kind in KINDS.values():
+        found = _fits(reading, kind, _ANY_ATMOSPHERE)
+        if len({(unit.factor, unit.offset) for unit in found}) == 1:
+            listed = found[0].understood in _usual_units(kind.name)
+            (usual if listed else others).append(kind.name)
+    return (*usual, *others)
+
+
+@cache
+def _usual_units(kind: str) -> frozenset[str]:
+    """The understood forms of a kind's usual units."""
+    return frozenset(
+        unit.understood
+        for text in KINDS[kind].units
+        for unit in _fits(_read(text), KINDS[kind], _ANY_ATMOSPHERE)
+    )
+
+
+@lru_cache(maxsize=1024)
+def common_kind(unit_text: str, wanted_text: str) -> str:
+    kinds = _kinds_or_raise(unit_text), _kinds_or_raise(wanted_text)
+    common = [kind for kind in kinds[0] if kind in kinds[1]]
+    texts = [f'"{shortened(text, 30)}"' for text in (unit_text, wanted_text)]
+    words = [a(KINDS[k[0]].words) for k in kinds]
+    if not common:
+        raise UnitRefused(f"{texts[0]} is {words[0]}, {texts[1]} {words[1]}; these cannot be converted")
+    first = {k[0] for k in kinds}
+    if common[0] == "pressure_absolute" and "pressure_difference" in first and len(first) == 2:
+        raise UnitRefused(
+            f"{texts[0]} is {words[0]}, {texts[1]} {words[1]}; add abs, g or diff to the one that is open"
+        )
+    return common[0]
+
+
+def _kinds_or_raise(text: str) -> tuple[str, ...]:
+    reading = _read(text)
+    if reading.refusal:
+        raise UnitRefused(reading.refusal)
+    kinds = kinds_for(text)
+    if not kinds:
+        raise UnitRefused(f'"{shortened(text)}" is no unit of a known kind')
+    return kinds
