@@ -5,7 +5,7 @@ by friction and pressure work are judged in ``terms/``, not mixed in here.
 """
 
 import math
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 
 from cellfuncs.answers.loop import settle
 from cellfuncs.cases.case import Case, Duct, Properties
@@ -123,10 +123,15 @@ def solve_duct(case: Case) -> DuctAnswers:
             case, shape, length, temperature, p, u, re, nusselt, friction, h, method, outside, driving, flux, inlet
         )
 
-    if stated is not None or case.fixed or inlet is None:
+    if stated is not None or inlet is None:
         return at(stated)
+    if case.fixed:
+        found = at(None)
+        return replace(found, property_temperature=inlet + 0.5 * found.bulk_rise)
     start = inlet if difference is None else inlet + 0.25 * difference
-    return at(settle(start, lambda t: inlet + 0.5 * at(t).bulk_rise, "mean bulk temperature"))
+    found = at(settle(start, lambda t: inlet + 0.5 * at(t).bulk_rise, "mean bulk temperature"))
+    case.refuse_phase_change(inlet, found.property_temperature, found.outlet)
+    return found
 
 
 def _coefficient(

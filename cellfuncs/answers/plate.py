@@ -1,6 +1,6 @@
 """Answers of a flat plate in a parallel stream: mean coefficient, wall temperature, flux, duty."""
 
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 
 from cellfuncs.answers.loop import settle
 from cellfuncs.cases.case import Case, Properties
@@ -93,11 +93,17 @@ def solve_plate(case: Case) -> PlateAnswers:
             case, length, temperature, p, u, re, transition, nusselt, h, method, outside, driving, flux, stream
         )
 
-    if stated is not None or case.fixed or stream is None:
+    if stated is not None or stream is None:
         return at(stated)
+    if case.fixed:
+        found = at(None)
+        return replace(found, property_temperature=stream + 0.5 * found.difference)
     if difference is not None:
-        return at(stream + 0.5 * difference)
-    return at(settle(stream, lambda t: stream + 0.5 * at(t).difference, "film temperature"))
+        found = at(stream + 0.5 * difference)
+    else:
+        found = at(settle(stream, lambda t: stream + 0.5 * at(t).difference, "film temperature"))
+    case.refuse_phase_change(stream, found.property_temperature)
+    return found
 
 
 def _temperatures(case: Case) -> tuple[float | None, float | None]:

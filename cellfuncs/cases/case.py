@@ -232,6 +232,21 @@ class Case:
         get, pressure = self.substance.get, self.pressure
         return {name: get(name, temperature, pressure) for name in wanted}
 
+    def refuse_phase_change(self, entering: float | None, *others: float | None) -> None:
+        """Refuse a fluid that is liquid where it enters and gas elsewhere, or the other way round."""
+        if self.fixed or entering is None:
+            return
+        first = self.substance.phase(entering, self.pressure)
+        for temperature in others:
+            if temperature is None:
+                continue
+            then = self.substance.phase(temperature, self.pressure)
+            if {first, then} == {"liquid", "gas"}:
+                raise CaseRefused(
+                    f"{self.substance.name} is {first} where it enters and {then} at {temperature - 273.15:.1f} degC; "
+                    "one phase is assumed: change temperatures or pressure, or split the case"
+                )
+
     def speed_of_sound(self, temperature: float | None) -> float | None:
         """Speed of sound of the substance, or None where it is not known."""
         if self.substance is None or temperature is None:

@@ -28,6 +28,8 @@ def block(labels, values, units=None, plus_minus=None):
     if len(lengths) > 1:
         shown = " and ".join(str(n) for n in sorted(lengths))
         raise CaseRefused(f"the columns have {shown} rows; they must be equally long", argument="values")
+    if not any(columns[0]):
+        raise CaseRefused("empty; give the column of labels", argument="labels")
     return [["" if cell is None else cell for cell in row] for row in zip(*columns, strict=True)]
 
 

@@ -154,7 +154,9 @@ def number_of(value: Any) -> float:
         value = reading.value
     try:
         number = float(value)
-    except (TypeError, ValueError, OverflowError):
+    except OverflowError:
+        raise NumberRefused("not a finite number") from None
+    except (TypeError, ValueError):
         raise NumberRefused(f"{type(value).__name__} is no number") from None
     if not math.isfinite(number):
         raise NumberRefused("not a finite number")

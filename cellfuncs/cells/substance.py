@@ -4,7 +4,7 @@ from typing import Any
 
 from cellfuncs import quantities, sources, substances
 from cellfuncs.cells.catalogue import Answer, cell_function
-from cellfuncs.errors import CellfuncsError, NumberRefused
+from cellfuncs.errors import CellfuncsError, NumberRefused, UnknownName
 
 _SOURCE = "CoolProp and the sources that CF_PROPERTIES names for each property"
 _KINDS = {key: entry.kind for key, entry in substances.PROPERTIES.items()}
@@ -126,5 +126,7 @@ def oil_viscosity(temperature, temperature_1, viscosity_1, temperature_2, viscos
     example='=CF_SUBSTANCES("glycol")',
 )
 def known_substances(contains=None):
-    rows = [list(row) for row in substances.names(contains or "")]
+    rows = [[cell or "none" for cell in row] for row in substances.names(contains or "")]
+    if not rows:
+        raise UnknownName(f'no substance has "{contains[:40]}" in its name')
     return [["substance", "family", "other names"], *rows]

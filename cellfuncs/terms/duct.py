@@ -156,9 +156,11 @@ def _friction_pair(solution: Solution, a: DuctAnswers) -> tuple[Size, Size]:
         "viscous heating", ec_re, heating, says, asked=share, exact=exact, kelvins=kelvins, nets_to=net_size, pair=True
     )
     if beta_t == 0:
-        why = "expansion coefficient not known, taken as 0: state it (gases: 1/T)"
-        if solution.case.has("substance") or solution.case.has("expansion"):
-            why = "expansion coefficient 0: none"
+        why = "expansion coefficient 0: none"
+        if not (solution.case.has("substance") or solution.case.has("expansion")):
+            why = "expansion coefficient not stated, taken as 0: state it (gases: 1/T)"
+        elif a.property_temperature is None:
+            why = "no temperature is stated, so that βT is not known and taken as 0"
         return viscous, absent("pressure work", why)
     takes = "takes" if beta_t > 0 else "adds"
     cools = f"βT {num(beta_t)}: expansion {takes} {percent(abs(beta_t))} of the friction heat; judged as a pair with it"

@@ -54,7 +54,9 @@ def _together(judged: list[Judged], tolerance: float) -> Row:
     one_scale = sum(j.size.one_scale for j in judged if j.verdict == LEAVE_OUT)
     if not any(j.verdict == LEAVE_OUT for j in judged):
         return ALL_LEFT_OUT, 0.0, 0.0, NO_MODEL, KEEP, "every term is kept"
-    names = ", ".join(j.size.term for j in out) or "only terms that the case as stated does not have"
+    names = ", ".join(f"{j.size.term} with pressure work" if j.size.pair else j.size.term for j in out)
+    if not names:
+        return ALL_LEFT_OUT, one_scale, 0.0, NO_MODEL, LEAVE_OUT, "only terms that the case as stated does not have"
     reason = f"{names}: {percent(share)} together, tolerance {percent(tolerance)}"
     if any(j.by_kelvins for j in out):
         reason += "; some are left out because the kelvins do not matter"
