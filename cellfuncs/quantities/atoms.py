@@ -39,7 +39,7 @@ class Atom:
     dimension: Dimension
     prefixes: str
     exact_case: bool
-    place: str  # "alone": never within a compound; "column": only after a length
+    place: str  # "alone": never within a compound; "once": to no power; "column": only after a length
     kinds: tuple[str, ...]
     refuse: str
 

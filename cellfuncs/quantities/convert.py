@@ -84,8 +84,8 @@ def convert(value: Any, unit_text: str, wanted_text: str) -> Any:
     """
     from . import fitting
 
-    kind = fitting.common_kind(unit_text, wanted_text)
-    return from_si(to_si(value, unit_text, kind), wanted_text, kind)
+    factor, offset = fitting.conversion(unit_text, wanted_text)
+    return value * factor + offset
 
 
 def read_quantity(text: str, kind: str, atmosphere: float = STANDARD_ATMOSPHERE) -> float:

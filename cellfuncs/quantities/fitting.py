@@ -18,7 +18,7 @@ from .unit_text import TEMPERATURE, Meaning, meanings
 MOST_CHARACTERS = 100  # nothing longer is looked at, or remembered
 GRAVITY = Fraction("9.80665")  # m/s2, exact: standard acceleration of free fall, NIST SP 811 (2008) B.8
 
-_ANY_ATMOSPHERE = 101325.0  # Pa: where only the kind is asked for
+_ANY_ATMOSPHERE = 101325.0  # Pa: standard atmosphere, where only the kind or a difference of gauges counts
 _PRESSURE = KINDS["stress"].dimension
 _PER_SECOND = KINDS["frequency"].dimension
 _TURNING = KINDS["angular_velocity"].dimension
@@ -68,6 +68,15 @@ class _Reading:
     refusal: str
 
 
+@dataclass(frozen=True, slots=True)
+class _Fit:
+    """A meaning that fits a kind: SI = value * factor + offset, both exact."""
+
+    factor: Fraction
+    offset: Fraction
+    understood: str
+
+
 def fit(text: str, wanted: Kind, atmosphere: float) -> Unit:
     """The unit that a text means where a kind is wanted; raises UnitRefused."""
     if not isinstance(text, str):
@@ -76,13 +85,12 @@ def fit(text: str, wanted: Kind, atmosphere: float) -> Unit:
     if reading.refusal:
         raise UnitRefused(_with_example(reading.refusal, wanted))
     found = _fits(reading, wanted, atmosphere)
-    values = {(unit.factor, unit.offset) for unit in found}
-    if len(values) > 1:
-        choices = " or ".join(dict.fromkeys(unit.understood for unit in found))
+    if len({fits.factor for fits in found}) > 1:
+        choices = " or ".join(dict.fromkeys(fits.understood for fits in found))
         raise UnitRefused(f'"{shortened(text)}" may be {choices}; write the one that is meant')
     if not found:
         raise UnitRefused(_misfit(text, reading, wanted))
-    return found[0]
+    return Unit(float(found[0].factor), float(found[0].offset), wanted.name, found[0].understood)
 
 
 def _read(text: str) -> _Reading:
@@ -132,11 +140,11 @@ def _shifted(dimension: Dimension, times: int) -> Dimension:
     return tuple(d + times * s for d, s in zip(dimension, _WEIGHT_SHIFT, strict=True))
 
 
-def _fits(reading: _Reading, wanted: Kind, atmosphere: float) -> list[Unit]:
+def _fits(reading: _Reading, wanted: Kind, atmosphere: float) -> list[_Fit]:
     """The units of the nearest spelling that fit a kind."""
     if reading.reference not in _REFERENCES.get(wanted.name, ("",)):
         return []
-    found: list[Unit] = []
+    found: list[_Fit] = []
     rank = None
     for meaning in reading.meanings:
         if rank is not None and meaning.rank != rank:
@@ -148,40 +156,40 @@ def _fits(reading: _Reading, wanted: Kind, atmosphere: float) -> list[Unit]:
     return found
 
 
-def _fit(meaning: Meaning, reference: str, wanted: Kind, atmosphere: float) -> Unit | None:
+def _fit(meaning: Meaning, reference: str, wanted: Kind, atmosphere: float) -> _Fit | None:
     name, dimension = wanted.name, meaning.dimension
     if not meaning.allows(name):
         return None
     if name == "temperature":
         if dimension != TEMPERATURE or meaning.single is None or meaning.is_difference:
             return None
-        return Unit(float(meaning.factor), float(meaning.offset), name, meaning.text())
+        return _Fit(meaning.factor, meaning.offset, meaning.text())
     if dimension == wanted.dimension:
         if name == "relative_humidity" and any(any(p.atom.dimension) for p, _ in meaning.pieces):
             return None  # a ratio of two masses is a humidity ratio
-        return _unit(meaning, 1, reference, wanted, atmosphere)
+        return _times(meaning, 1, reference, wanted, atmosphere)
     if name in _FREQUENCIES and dimension == _TURNING:
-        return _unit(meaning, 1 / (2 * PI), reference, wanted, atmosphere)
+        return _times(meaning, 1 / (2 * PI), reference, wanted, atmosphere)
     if name == "angular_velocity" and dimension == _PER_SECOND and meaning.single is not None:
         return (
-            _unit(meaning, 2 * PI, reference, wanted, atmosphere) if meaning.single.symbol == "Hz" else None
+            _times(meaning, 2 * PI, reference, wanted, atmosphere) if meaning.single.symbol == "Hz" else None
         )
     if name in _WITH_FORCE and _weighed_power(meaning) == 1 and _shifted(dimension, 1) == wanted.dimension:
-        return _unit(meaning, GRAVITY, reference, wanted, atmosphere, _WEIGHED)
+        return _times(meaning, GRAVITY, reference, wanted, atmosphere, _WEIGHED)
     return None
 
 
-def _unit(
+def _times(
     meaning: Meaning,
     times: Fraction | int,
     reference: str,
     wanted: Kind,
     atmosphere: float,
     swap: dict[str, str] | None = None,
-) -> Unit:
+) -> _Fit:
     understood = meaning.text(swap) + (f" {reference}" if reference else "")
-    offset = atmosphere if reference == "gauge" else 0.0
-    return Unit(float(meaning.factor * times), offset, wanted.name, understood)
+    offset = Fraction(atmosphere) if reference == "gauge" else Fraction(0)
+    return _Fit(meaning.factor * times, offset, understood)
 
 
 def _with_example(refusal: str, wanted: Kind) -> str:
@@ -227,7 +235,7 @@ def _kinds_of(reading: _Reading) -> tuple[str, ...]:
     usual, others = [], []
     for kind in KINDS.values():
         found = _fits(reading, kind, _ANY_ATMOSPHERE)
-        if len({(unit.factor, unit.offset) for unit in found}) == 1:
+        if len({fits.factor for fits in found}) == 1:
             listed = found[0].understood in _usual_units(kind.name)
             (usual if listed else others).append(kind.name)
     return (*usual, *others)
@@ -244,19 +252,25 @@ def _usual_units(kind: str) -> frozenset[str]:
 
 
 @lru_cache(maxsize=1024)
-def common_kind(unit_text: str, wanted_text: str) -> str:
+def conversion(unit_text: str, wanted_text: str) -> tuple[float, float]:
+    """Factor and offset from one unit to another of the same kind; raises UnitRefused."""
     kinds = _kinds_or_raise(unit_text), _kinds_or_raise(wanted_text)
+    readings = _read(unit_text), _read(wanted_text)
     common = [kind for kind in kinds[0] if kind in kinds[1]]
-    texts = [f'"{shortened(text, 30)}"' for text in (unit_text, wanted_text)]
-    words = [a(KINDS[k[0]].words) for k in kinds]
+    first = f'"{shortened(unit_text, 30)}" is {a(KINDS[kinds[0][0]].words)}'
+    second = f'"{shortened(wanted_text, 30)}" {a(KINDS[kinds[1][0]].words)}'
     if not common:
-        raise UnitRefused(f"{texts[0]} is {words[0]}, {texts[1]} {words[1]}; these cannot be converted")
-    first = {k[0] for k in kinds}
-    if common[0] == "pressure_absolute" and "pressure_difference" in first and len(first) == 2:
-        raise UnitRefused(
-            f"{texts[0]} is {words[0]}, {texts[1]} {words[1]}; add abs, g or diff to the one that is open"
-        )
-    return common[0]
+        raise UnitRefused(f"{first}, {second}; these cannot be converted")
+    # a column of water is nearly always a difference: beside a gauge or absolute unit it must say which
+    for one, other, kind in ((0, 1, kinds[0][0]), (1, 0, kinds[1][0])):
+        if (
+            kind == "pressure_difference"
+            and not readings[one].reference
+            and readings[other].reference in ("absolute", "gauge")
+        ):
+            raise UnitRefused(f"{first}, {second}; add abs, g or diff to the one that is open")
+    start, end = (_fits(reading, KINDS[common[0]], _ANY_ATMOSPHERE)[0] for reading in readings)
+    return float(start.factor / end.factor), float((start.offset - end.offset) / end.factor)
 
 
 def _kinds_or_raise(text: str) -> tuple[str, ...]:

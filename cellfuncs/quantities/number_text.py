@@ -31,18 +31,19 @@ _SUPERSCRIPTS = str.maketrans("⁰¹²³⁴⁵⁶⁷⁸⁹⁻⁺", "0123456789-+
 _SIGN = r"(?P<sign>[+-] ?)?"
 _FRACTION = re.compile(
     _SIGN + rf"(?:(?P<whole>\d{{1,6}}) ?)?(?P<vulgar>[{''.join(_VULGAR)}])"
-    r"|"
-    + _SIGN.replace("sign", "sign2")
-    + r"(?:(?P<whole2>\d{1,6})[ -])?(?P<over>\d{1,6}) ?/ ?(?P<under>\d{1,6})(?![\d.,])"
+    r"|" + _SIGN.replace("sign", "sign2") + r"(?:(?P<whole2>\d{1,6})[ -])?"
+    r"(?P<over>\d{1,6}) ?/ ?(?P<under>\d{1,6})(?![\d.,])",
+    re.ASCII,
 )
 _NUMERAL = re.compile(
     _SIGN + r"(?P<digits>\d{1,3}(?: \d{3})+(?![\d])(?:[.,]\d+)?|[.,]?\d[\d.,]*)"
     r"(?P<power>[eE][+-]?\d+(?!\d)| ?[×xX*·] ?10(?:\^|\*\*)[+-]?\d+| ?[×xX*·] ?10[+-]\d+"
-    r"| ?[×xX*·] ?10[⁻⁺]?[⁰¹²³⁴⁵⁶⁷⁸⁹]+)?"
+    r"| ?[×xX*·] ?10[⁻⁺]?[⁰¹²³⁴⁵⁶⁷⁸⁹]+)?",
+    re.ASCII,
 )
-_TEN_TO = re.compile(_SIGN + r"10(?:(?:\^|\*\*)(?P<plain>[+-]?\d+)|(?P<raised>[⁻⁺]?[⁰¹²³⁴⁵⁶⁷⁸⁹]+))")
+_TEN_TO = re.compile(_SIGN + r"10(?:(?:\^|\*\*)(?P<plain>[+-]?\d+)|(?P<raised>[⁻⁺]?[⁰¹²³⁴⁵⁶⁷⁸⁹]+))", re.ASCII)
 _PLUS_MINUS = re.compile(r" ?(?:±|\+ ?/ ?-|\+-) ?")
-_RANGE = re.compile(r" ?(?:-|\.\.+|…|to\b|bis\b|~) ?\d")
+_RANGE = re.compile(r" ?(?:-|\.\.+|…|to\b|~) ?\d", re.ASCII)
 
 
 @dataclass(frozen=True, slots=True)
@@ -104,9 +105,9 @@ def _value_and_unit(plain: str, typed: str, shown: str) -> tuple[float, str]:
     if _RANGE.match(rest):
         raise NumberRefused(f'"{shown}" is a range; give one number')
     unit = typed[end:].strip()
-    if re.match(r"\d", unit) and not re.match(r"1 ?/", unit) and not rest.strip().startswith("10^"):
+    if re.match("[0-9]", unit) and not re.match(r"1 ?/", unit) and not rest.strip().startswith("10^"):
         raise NumberRefused(f'"{shown}" holds two numbers; give one with its unit')
-    if unit[:1] in (",", ".", "e", "E") and re.match(r"[.,eE][+-]?\d", unit):
+    if "±" in unit or re.match(r"[.,eExX×*·/^'’_] ?[+-]?\d", unit):
         raise NumberRefused(f'"{shown}" is no number as written; write for instance 1250.5')
     return value, unit
 

@@ -133,7 +133,7 @@ def meanings(text: str) -> list[Meaning]:
         for factor, (_, glued) in zip(factors, combination, strict=True):
             pieces += [(piece, factor.side) for piece in glued[:-1]]
             pieces.append((glued[-1], factor.side * factor.power))
-        if not _columns_stand(pieces):
+        if not _columns_stand(pieces) or any(p.atom.place == "once" and abs(n) != 1 for p, n in pieces):
             continue
         if len(pieces) > MOST_FACTORS:
             raise UnitRefused(f'"{shortened(text)}" has more than {MOST_FACTORS} factors')
@@ -143,7 +143,7 @@ def meanings(text: str) -> list[Meaning]:
         )
         found.append(Meaning(dimension, max(rank for rank, _ in combination), tuple(pieces), divisor))
     if not found:
-        raise UnitRefused(f'"{shortened(text)}" names a liquid, not a unit')
+        raise UnitRefused(f'"{shortened(text)}" is no known unit')
     found.sort(key=lambda meaning: meaning.rank)
     return found
 
