@@ -13,11 +13,12 @@ from ..errors import UnitRefused
 from .atoms import PI
 from .kinds import KINDS, Dimension, Kind, Unit
 from .texts import a, shortened
-from .unit_text import TEMPERATURE, Meaning, meanings
+from .unit_text import Meaning, meanings
 
 MOST_CHARACTERS = 100  # nothing longer is looked at, or remembered
 GRAVITY = Fraction("9.80665")  # m/s2, exact: standard acceleration of free fall, NIST SP 811 (2008) B.8
 
+_ONE, _TURN = Fraction(1), 2 * PI
 _ANY_ATMOSPHERE = 101325.0  # Pa: standard atmosphere, where only the kind or a difference of gauges counts
 _PRESSURE = KINDS["stress"].dimension
 _PER_SECOND = KINDS["frequency"].dimension
@@ -157,39 +158,34 @@ def _fits(reading: _Reading, wanted: Kind, atmosphere: float) -> list[_Fit]:
 
 
 def _fit(meaning: Meaning, reference: str, wanted: Kind, atmosphere: float) -> _Fit | None:
-    name, dimension = wanted.name, meaning.dimension
-    if not meaning.allows(name):
+    times = _times(meaning, wanted)
+    if times is None or not meaning.allows(wanted.name):
         return None
-    if name == "temperature":
-        if dimension != TEMPERATURE or meaning.single is None or meaning.is_difference:
-            return None
-        return _Fit(meaning.factor, meaning.offset, meaning.text())
+    offset = Fraction(0)
+    if wanted.name == "temperature":
+        offset = meaning.offset
+    elif reference == "gauge":
+        offset = Fraction(atmosphere)
+    understood = meaning.text(_WEIGHED if times is GRAVITY else None)
+    return _Fit(meaning.factor * times, offset, f"{understood} {reference}".rstrip())
+
+
+def _times(meaning: Meaning, wanted: Kind) -> Fraction | None:
+    """By what a unit's factor is to be multiplied for a kind; None where it does not fit."""
+    name, dimension = wanted.name, meaning.dimension
     if dimension == wanted.dimension:
+        if name == "temperature" and (meaning.single is None or meaning.is_difference):
+            return None
         if name == "relative_humidity" and any(any(p.atom.dimension) for p, _ in meaning.pieces):
             return None  # a ratio of two masses is a humidity ratio
-        return _times(meaning, 1, reference, wanted, atmosphere)
-    if name in _FREQUENCIES and dimension == _TURNING:
-        return _times(meaning, 1 / (2 * PI), reference, wanted, atmosphere)
-    if name == "angular_velocity" and dimension == _PER_SECOND and meaning.single is not None:
-        return (
-            _times(meaning, 2 * PI, reference, wanted, atmosphere) if meaning.single.symbol == "Hz" else None
-        )
-    if name in _WITH_FORCE and _weighed_power(meaning) == 1 and _shifted(dimension, 1) == wanted.dimension:
-        return _times(meaning, GRAVITY, reference, wanted, atmosphere, _WEIGHED)
+        return _ONE
+    if dimension == _TURNING and name in _FREQUENCIES:
+        return 1 / _TURN
+    if dimension == _PER_SECOND and name == "angular_velocity":
+        return _TURN if meaning.single is not None and meaning.single.symbol == "Hz" else None
+    if name in _WITH_FORCE and _shifted(dimension, 1) == wanted.dimension and _weighed_power(meaning) == 1:
+        return GRAVITY
     return None
-
-
-def _times(
-    meaning: Meaning,
-    times: Fraction | int,
-    reference: str,
-    wanted: Kind,
-    atmosphere: float,
-    swap: dict[str, str] | None = None,
-) -> _Fit:
-    understood = meaning.text(swap) + (f" {reference}" if reference else "")
-    offset = Fraction(atmosphere) if reference == "gauge" else Fraction(0)
-    return _Fit(meaning.factor * times, offset, understood)
 
 
 def _with_example(refusal: str, wanted: Kind) -> str:

@@ -22,7 +22,7 @@ from .texts import shortened
 MOST_FACTORS = 8
 HIGHEST_POWER = 4
 MOST_GLUED = 14  # letters of a word that is taken apart
-MOST_COMBINATIONS = 96
+MOST_COMBINATIONS = 48
 
 LENGTH, TEMPERATURE = read_dimension("L"), read_dimension("Θ")
 
