@@ -8,6 +8,7 @@ an error. Here a state is checked first, by plain comparisons where it is clearl
 import copy
 import math
 import threading
+from operator import call
 
 import numpy as np
 
@@ -129,21 +130,20 @@ class PureFluid(SaturationLine, Substance):
         plain = self._plain(handle, temperatures, pressures)
         update, pair = handle.update, CODES.pt
         handle.t = math.nan
-        rows, careful, gap = [], [], [math.nan] * len(keys)
-        add = rows.append
-        for index, (temperature, pressure, clear) in enumerate(
-            zip(temperatures.tolist(), pressures.tolist(), plain.tolist(), strict=True)
-        ):
+        careful, flat, width = [], [], len(keys)
+        extend, gap = flat.extend, [math.nan] * width
+        points = zip(temperatures.tolist(), pressures.tolist(), plain.tolist(), strict=True)
+        for index, (temperature, pressure, clear) in enumerate(points):
             if clear:
                 try:
                     update(pair, pressure, temperature)
-                    add([read() for read in reads])
+                    extend(map(call, reads))
                     continue
                 except ValueError:
-                    pass  # asked again below, with a text
-            add(gap)
+                    del flat[index * width :]  # asked again below, with a text
+            extend(gap)
             careful.append(index)
-        values[:] = np.array(rows).T
+        values[:] = np.array(flat).reshape(-1, width).T
         unsigned = np.array([key not in SIGNED for key in keys])
         odd = ~np.isfinite(values).all(axis=0) | (values[unsigned] <= 0).any(axis=0)
         odd[careful] = True
