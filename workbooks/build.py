@@ -17,10 +17,11 @@ from cellfuncs.terms import COLUMNS, MEASURES, TERMS
 from cellfuncs.terms.table import ALL_LEFT_OUT
 
 HERE = Path(__file__).parent
-INK, GREY, TINT, RULE = "#1F2A30", "#7A858C", "#F3EEF7", "#6B4C8A"
+INK, GREY, LINE, TINT, RULE = "#1F2A30", "#7A858C", "#D5D9DC", "#F3EEF7", "#6B4C8A"
+SHARES = '[=0]"0";0.0E+00'
 CAUTION = (
-    "Supports a licensed engineer's judgement and does not replace it. Pressure equipment, hot surfaces, flammable or toxic "
-    "fluids, freezing and boiling are governed by your local codes."
+    "Supports a licensed engineer's judgement and does not replace it. Pressure equipment, hot surfaces, "
+    "flammable or toxic fluids, freezing and boiling are governed by your local codes."
 )
 
 
@@ -43,13 +44,13 @@ class Sample:
 COOLANT = Sample(
     file="coolant_channel.xlsx",
     title="Coolant channel of a mould plate",
-    story="Veldermoor pilot line, mould plate 3 (invented). Glycol solution in a drilled channel; the plate holds its wall "
-    "at one temperature.",
+    story="Veldermoor pilot line, mould plate 3 (invented). Glycol solution in a drilled channel; the plate holds "
+    "its wall at one temperature.",
     block="coolant",
     rows=(
         ("flow kind", "duct", None, None),
         ("substance", "ethylene glycol 30 % by mass", None, None),
-        ("velocity", 1.4, "m/s", 0.05),
+        ("velocity", 3, "m/s", 0.1),
         ("diameter", 8, "mm", None),
         ("length", 1.2, "m", None),
         ("inlet temperature", 18, "degC", 0.5),
@@ -78,8 +79,8 @@ COOLANT = Sample(
 FILM = Sample(
     file="oil_film.xlsx",
     title="Oil film under a sliding shoe",
-    story="Veldermoor pilot line, press drive (invented). A shoe slides on a flooded film between two walls held at one "
-    "temperature.",
+    story="Veldermoor pilot line, press drive (invented). A shoe slides on a flooded film between two walls held "
+    "at one temperature.",
     block="film",
     rows=(
         ("flow kind", "gap", None, None),
@@ -126,17 +127,19 @@ class Sheet:
             self.formats[key] = self.book.add_format(base | options)
         return self.formats[key]
 
-    def entry(self, **options):
-        """An input cell: a rule at its left and a light tint."""
-        return self.style(bg_color=TINT, left=5, left_color=RULE, locked=False, **options)
+    def entry(self, ruled: bool = True, **options):
+        """An input cell: a rule at the left of the inputs of a row, and a light tint."""
+        rule = {"left": 5, "left_color": RULE} if ruled else {}
+        return self.style(bg_color=TINT, locked=False, bottom=4, bottom_color=LINE, **rule, **options)
 
     def write(self) -> None:
         sheet, sample = self.sheet, self.sample
-        for column, width in enumerate((25, 15, 13, 12, 13, 66)):
+        for column, width in enumerate((25, 29, 11, 11, 13, 62)):
             sheet.set_column(column, column, width)
         sheet.hide_gridlines(2)
         row = self._head()
-        row = self._block(row)
+        beside = row + len(self.sample.results) + len(self.sample.sweep[2]) + 5
+        row = max(self._block(row), beside)
         self._terms(row)
         self._results(7)
         self._print()
@@ -160,27 +163,27 @@ class Sheet:
         first = row + 1
         for k, (label, value, unit, spread) in enumerate(sample.rows):
             at = first + k
-            sheet.write(at, 0, label, self.style(bottom=4, bottom_color="#D5D9DC"))
+            sheet.write(at, 0, label, self.style(bottom=4, bottom_color=LINE))
             text = isinstance(value, str)
-            sheet.write(at, 1, value, self.entry(align="left" if text else "right", text_wrap=text))
-            sheet.write(at, 2, unit, self.entry(align="left"))
-            sheet.write(at, 3, spread, self.entry(align="right"))
+            sheet.write(at, 1, value, self.entry(align="left" if text else "right", indent=1))
+            sheet.write(at, 2, unit, self.entry(ruled=False, align="left", indent=1))
+            sheet.write(at, 3, spread, self.entry(ruled=False, align="right"))
             key = labels.find(label)
             if labels.dictionary()[key].role == "choice":
                 sheet.data_validation(at, 1, at, 1, {"validate": "list", "source": list(labels.choices(key))})
-            if text and len(value) > 16:
-                sheet.set_row(at, 30)
         last = first + len(sample.rows) + sample.spare - 1
         for at in range(first + len(sample.rows), last + 1):
-            for column in range(4):
-                sheet.write_blank(at, column, None, self.entry() if column else self.style(bottom=4, bottom_color="#D5D9DC"))
+            sheet.write_blank(at, 0, None, self.style(bottom=4, bottom_color=LINE))
+            for column in range(1, 4):
+                sheet.write_blank(at, column, None, self.entry(ruled=column == 1))
         self.book.define_name(sample.block, f"=Case!$A${first + 1}:$D${last + 1}")
         return last + 2
 
     def _heading(self, row: int, words, column: int = 0) -> None:
         for k, word in enumerate(words):
-            align = "left" if k in (0, 5) or word in ("unit", "verdict", "answer") else "right"
-            self.sheet.write(row, column + k, word, self.style(bold=True, bottom=1, bottom_color=INK, align=align))
+            left = k in (0, 5) or word in ("unit", "verdict")
+            look = {"align": "left" if left else "right", "indent": 0 if k == 0 else 1}
+            self.sheet.write(row, column + k, word, self.style(bold=True, bottom=1, bottom_color=INK, **look))
 
     def _results(self, row: int) -> None:
         """Answers and characteristic numbers, right of the block: one formula a cell."""
@@ -190,23 +193,28 @@ class Sheet:
         for k, (what, unit, shown) in enumerate(sample.results):
             name = f"{what} [{unit}]" if unit else what
             formula = f'=CF_CASE({sample.block},"{what}"' + (f',"{unit}")' if unit else ")")
-            sheet.write(row + k, 5, name, self.style(indent=2, bottom=4, bottom_color="#D5D9DC"))
-            sheet.write_formula(row + k, 6, formula, self.style(num_format=shown, bottom=4, bottom_color="#D5D9DC"))
+            sheet.write(row + k, 5, name, self.style(indent=2, bottom=4, bottom_color=LINE))
+            sheet.write_formula(row + k, 6, formula, self.style(num_format=shown, bottom=4, bottom_color=LINE))
         sheet.write(top, 6, "value", self.style(bold=True, bottom=1, bottom_color=INK, align="right"))
-        sheet.set_column(6, 6, 13)
+        sheet.set_column(6, 6, 16)
         label, unit, values, term = sample.sweep
         top = row + len(sample.results) + 1
-        sheet.write(top, 5, f"{label} [{unit}]", self.style(bold=True, bottom=1, bottom_color=INK, indent=2))
-        sheet.write(top, 6, f"share of {term}", self.style(bold=True, bottom=1, bottom_color=INK, align="right"))
-        sheet.set_column(7, 7, 13)
+        sheet.write(
+            top,
+            5,
+            f"{label} [{unit}] and the share that follows",
+            self.style(bold=True, bottom=1, bottom_color=INK, indent=2),
+        )
+        sheet.write(top, 6, term, self.style(bold=True, bottom=1, bottom_color=INK, align="right"))
         for k, value in enumerate(values, start=1):
             sheet.write(top + k, 5, value, self.entry(align="left", indent=1))
             formula = f'=CF_TERM(CF_VARY({sample.block},"{label}",$F{top + k + 1},"{unit}"),"{term}")'
-            sheet.write_formula(top + k, 6, formula, self.style(num_format="0.00E+00"))
+            sheet.write_formula(top + k, 6, formula, self.style(num_format=SHARES, bottom=4, bottom_color=LINE))
 
     def _terms(self, row: int) -> None:
         sheet, sample = self.sheet, self.sample
         sheet.write(row, 0, sample.question, self.style(bold=True, font_size=12))
+        sheet.set_h_pagebreaks([row])
         head = row + 1
         self._heading(head, COLUMNS)
         sheet.write(head, 6, "for the chart", self.style(font_color=GREY, align="right", bottom=1, bottom_color=INK))
@@ -214,29 +222,33 @@ class Sheet:
         first = head + 1
         for k, term in enumerate(names):
             at = first + k
-            sheet.write(at, 0, term, self.style(bold=term == ALL_LEFT_OUT))
+            sheet.write(at, 0, term, self.style(bold=term == ALL_LEFT_OUT, bottom=4, bottom_color=LINE))
             for j, measure in enumerate(MEASURES, start=1):
                 number = measure in ("one-scale", "share", "effect")
                 style = self.style(
-                    num_format="0.0E+00" if number else "General",
+                    num_format=SHARES if number else "General",
                     align="right" if number else "left",
+                    indent=1,
+                    bottom=4,
+                    bottom_color=LINE,
                     text_wrap=measure == "reason",
                     font_size=9.5 if measure == "reason" else 10.5,
                 )
                 column = "ABCDEF"[j]
                 sheet.write_formula(at, j, f"=CF_TERM({sample.block},$A{at + 1},{column}${head + 1})", style)
-            sheet.set_row(at, 39)
+            sheet.set_row(at, 28)
             guarded = f"=IF(ISNUMBER(C{at + 1}),MAX(C{at + 1},0.000001),NA())"
             if term != ALL_LEFT_OUT:
-                sheet.write_formula(at, 6, guarded, self.style(num_format="0.0E+00", font_color=GREY))
+                sheet.write_formula(at, 6, guarded, self.style(num_format=SHARES, font_color=GREY))
         last = first + len(TERMS) - 1
         verdicts = f"E{first + 1}:E{last + 2}"
-        for word, look in (("keep", {"bold": True}), ("leave out", {"font_color": GREY})):
-            rule = {"type": "cell", "criteria": "==", "value": f'"{word}"', "format": self.book.add_format(look)}
+        bold = self.book.add_format({"bold": True})
+        for word, look in (("keep", bold), ("leave out", self.book.add_format({"font_color": GREY}))):
+            rule = {"type": "cell", "criteria": "==", "value": f'"{word}"', "format": look}
             sheet.conditional_format(verdicts, rule)
         sheet.conditional_format(
             f"A1:H{last + 8}",
-            {"type": "text", "criteria": "begins with", "value": "! ", "format": self.book.add_format({"bold": True})},
+            {"type": "text", "criteria": "begins with", "value": "! ", "format": bold},
         )
         self._decision(last + 3, first, last)
         span = f"A8:H{last + 3}"
@@ -249,7 +261,8 @@ class Sheet:
         for k, word in enumerate(("keep", "borderline", "leave out")):
             parts = "&".join(f'IF(E{r + 1}="{word}",A{r + 1}&", ","")' for r in range(first, last + 1))
             sheet.write(row + 1 + k, 0, word, self.style(bold=word == "keep", indent=1))
-            sheet.write_formula(row + 1 + k, 1, f'=IF({parts}="","none",{parts})', self.style())
+            listed = f'=IF({parts}="","none",LEFT({parts},LEN({parts})-2))'
+            sheet.write_formula(row + 1 + k, 1, listed, self.style())
 
     def _chart(self, first: int, last: int, row: int) -> None:
         chart = self.book.add_chart({"type": "bar"})
@@ -265,9 +278,12 @@ class Sheet:
         font = {"color": INK, "size": 9}
         chart.set_title({"name": "Share of each term", "name_font": {"size": 11, "bold": True, "color": INK}})
         chart.set_x_axis(
-            {"log_base": 10, "min": 1e-6, "max": 10, "num_format": "0E+00", "num_font": font, "crossing": 1e-6,
-             "major_gridlines": {"visible": True, "line": {"color": "#D5D9DC"}},
-             "name": "share of the largest term, or of what the answer calls for", "name_font": {"size": 9, "bold": False}}
+            {
+                "log_base": 10, "min": 1e-6, "max": 10, "num_format": "0E+00", "num_font": font, "crossing": 1e-6,
+                "major_gridlines": {"visible": True, "line": {"color": LINE}},
+                "name": "share of the largest term, or of what the answer calls for",
+                "name_font": {"size": 9, "bold": False},
+            }
         )  # fmt: skip
         chart.set_y_axis({"reverse": True, "num_font": font, "line": {"color": INK}})
         chart.set_legend({"none": True})

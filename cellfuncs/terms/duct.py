@@ -59,7 +59,8 @@ def _exchange(solution: Solution, a: DuctAnswers) -> tuple[Size, Size]:
         says = f"h {num(a.coefficient)} W/(m2 K) ({a.method}), NTU {num(n)}, mean difference {num(mean)} K"
     else:
         across = abs(a.flux) * a.exchange
-        says = f"flux {num(abs(a.flux))} W/m2 given; h {num(a.coefficient)} W/(m2 K) ({a.method}), q/h {num(solution.driving)} K"
+        says = f"flux {num(abs(a.flux))} W/m2 given; h {num(a.coefficient)} W/(m2 K) ({a.method})"
+        says += f", q/h {num(solution.driving)} K"
     if a.shape.section == "other" and a.reynolds < 2300:
         says += "; tube value, by shape -35 to +50 %"
     if a.outside:

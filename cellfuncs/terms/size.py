@@ -33,7 +33,9 @@ class Size:
 
 
 def num(value: float) -> str:
-    """Three significant digits."""
+    """Three significant digits, without a power of ten where it reads better so."""
+    if 1e-3 <= abs(value) < 1e6:
+        return f"{float(f'{value:.3g}'):g}"
     return f"{value:.3g}"
 
 
