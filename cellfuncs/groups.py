@@ -66,9 +66,7 @@ def grashof(length, temperature_difference, kinematic_viscosity, expansion, grav
     return gravity * expansion * temperature_difference * length**3 / kinematic_viscosity**2
 
 
-def rayleigh(
-    length, temperature_difference, kinematic_viscosity, diffusivity, expansion, gravity=STANDARD_GRAVITY
-):
+def rayleigh(length, temperature_difference, kinematic_viscosity, diffusivity, expansion, gravity=STANDARD_GRAVITY):
     """Ra = gβΔTL³/(να) = Gr·Pr."""
     return gravity * expansion * temperature_difference * length**3 / (kinematic_viscosity * diffusivity)
 
@@ -137,6 +135,4 @@ def strouhal(velocity, length, frequency):
 def table() -> Mapping[str, Group]:
     """All groups by the name of their function, in the order of the data file."""
     text = resources.files("cellfuncs").joinpath("data/groups.csv").read_text("utf-8")
-    return {
-        row["key"]: Group(**row, function=globals()[row["key"]]) for row in csv.DictReader(text.splitlines())
-    }
+    return {row["key"]: Group(**row, function=globals()[row["key"]]) for row in csv.DictReader(text.splitlines())}

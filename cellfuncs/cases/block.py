@@ -163,7 +163,7 @@ def _quantity_row(
     try:
         reading, own_plus_minus, own_unit = _number(value)
         if own_unit and unit and own_unit != unit and _differs(own_unit, unit, entry.kind):
-            raise CaseRefused(f'the value says {own_unit}, the unit column {unit}; keep one')
+            raise CaseRefused(f"the value says {own_unit}, the unit column {unit}; keep one")
         unit = own_unit or unit
         if not unit and entry.kind not in _UNITLESS_KINDS:
             raise CaseRefused(f"has no unit; write one, for instance {_usual(entry.kind)}")
@@ -201,7 +201,7 @@ def _check_sign(key: str, si: float) -> None:
     if key in _SIGNED:
         return
     if key in ("emissivity", "tolerance", "smallest"):
-        if not 0 <= si:
+        if not si >= 0:
             raise CaseRefused(f"{si:g} is below zero")
         if key != "smallest" and si > 1:
             raise CaseRefused(f"{si:g} is above 1; write for instance 0.05 or 5 %")

@@ -17,7 +17,7 @@ _SOURCE = "the labels of cellfuncs/data/labels.csv"
     "many cases stand side by side.",
     returns="table",
     source=_SOURCE,
-    example="=CF_CASE(CF_BLOCK(A3:A12,D3:D12,B3:B12),\"Reynolds number\")",
+    example='=CF_CASE(CF_BLOCK(A3:A12,D3:D12,B3:B12),"Reynolds number")',
 )
 def block(labels, values, units=None, plus_minus=None):
     columns = [_column(labels, "labels"), _column(values, "values")]

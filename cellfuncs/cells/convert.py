@@ -9,15 +9,14 @@ The readers here make these equal. A reader takes one host value and gives a flo
 
 import datetime as dt
 import math
-from collections.abc import Callable, Iterator
-from dataclasses import dataclass, field
+from collections.abc import Callable
 from typing import Any
 
 from cellfuncs import quantities
 from cellfuncs.cells import faults
+from cellfuncs.cells.grid import MOST_CELLS, Grid
 from cellfuncs.errors import CellfuncsError, NumberRefused, OutOfRange
 
-MOST_CELLS = 200_000
 MOST_BLOCK_ROWS = 1_000
 MOST_TEXT = 1_000
 COLDEST_BARE = 200.0  # K: a plain number below it is more likely meant in °C or °F
@@ -25,42 +24,25 @@ _REMEMBERED_TEXTS = 20_000
 
 BLANK = (None, "")
 ERROR_TEXTS = frozenset(
-    "#NULL! #DIV/0! #VALUE! #REF! #NAME? #NUM! #N/A #GETTING_DATA #SPILL! #CALC! #BLOCKED! #FIELD!".split()
+    [
+        "#NULL!",
+        "#DIV/0!",
+        "#VALUE!",
+        "#REF!",
+        "#NAME?",
+        "#NUM!",
+        "#N/A",
+        "#GETTING_DATA",
+        "#SPILL!",
+        "#CALC!",
+        "#BLOCKED!",
+        "#FIELD!",
+    ]
 )
 
 
 class Handed(Exception):
     """A fault that was handed in and goes out unchanged."""
-
-
-@dataclass
-class Grid:
-    """A range of an argument: values in rows, and the faults of single cells by position."""
-
-    rows: list[list[Any]]
-    faults: dict[tuple[int, int], str] = field(default_factory=dict)
-
-    @property
-    def shape(self) -> tuple[int, int]:
-        return len(self.rows), len(self.rows[0])
-
-    def at(self, i: int, j: int) -> Any:
-        """Value at a place of the broadcast shape."""
-        rows = self.rows
-        row = rows[i if len(rows) > 1 else 0]
-        return row[j if len(row) > 1 else 0]
-
-    def fault_at(self, i: int, j: int) -> str | None:
-        if not self.faults:
-            return None
-        height, width = self.shape
-        return self.faults.get((i if height > 1 else 0, j if width > 1 else 0))
-
-    def array(self):
-        """The values as a float array (nan where a cell is faulty)."""
-        import numpy as np
-
-        return np.array([[math.nan if v is None else v for v in row] for row in self.rows], dtype=float)
 
 
 def is_range(value: object) -> bool:
@@ -221,9 +203,7 @@ class QuantityReader:
         if number == 0 and (self.optional or not self.zero_is_value):
             return self._nothing()
         if self.kind == "temperature" and number < COLDEST_BARE:
-            raise OutOfRange(
-                f"{number:g} means {number:g} K; write {number:g} degC, or {number:g} K if that is meant"
-            )
+            raise OutOfRange(f"{number:g} means {number:g} K; write {number:g} degC, or {number:g} K if that is meant")
         self.check(number)
         return number
 
@@ -404,25 +384,3 @@ def read_block(value: Any) -> tuple[tuple[Any, ...], ...]:
     if not rows:
         raise NumberRefused("an empty block; write rows of label, value, unit")
     return tuple(rows)
-
-
-def positions(shape: tuple[int, int]) -> Iterator[tuple[int, int]]:
-    for i in range(shape[0]):
-        for j in range(shape[1]):
-            yield i, j
-
-
-def common_shape(grids: list[Grid]) -> tuple[int, int]:
-    """The shape that ranges of the arguments share; single rows and columns stretch."""
-    height = max(g.shape[0] for g in grids)
-    width = max(g.shape[1] for g in grids)
-    for grid in grids:
-        if grid.shape[0] not in (1, height) or grid.shape[1] not in (1, width):
-            raise NumberRefused(
-                f"ranges of {grid.shape[0]} x {grid.shape[1]} and {height} x {width} cells do not fit together"
-            )
-    if height * width > MOST_CELLS:
-        raise NumberRefused(f"{height * width:,} answers; at most {MOST_CELLS:,} in one call")
-    return height, width
-
-

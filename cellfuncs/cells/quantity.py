@@ -5,6 +5,7 @@ from typing import Any
 from cellfuncs import __version__, quantities
 from cellfuncs.cells import convert, faults
 from cellfuncs.cells.catalogue import cell_function
+from cellfuncs.cells.grid import MOST_CELLS
 from cellfuncs.errors import CellfuncsError, NumberRefused, UnknownName
 
 
@@ -23,8 +24,8 @@ def _over_values(value: Any, one: Any) -> Any:
     if not convert.is_range(value):
         return one(value)
     rows = convert.as_rows(value)
-    if len(rows) * len(rows[0]) > convert.MOST_CELLS:
-        raise NumberRefused(f"more than {convert.MOST_CELLS:,} cells")
+    if len(rows) * len(rows[0]) > MOST_CELLS:
+        raise NumberRefused(f"more than {MOST_CELLS:,} cells")
 
     def safe(cell: Any) -> Any:
         try:

@@ -101,10 +101,7 @@ def gnielinski(reynolds: float, prandtl: float, friction: float, diameter_over_l
     """Nu of turbulent duct flow, (f/8)(Re−1000)Pr/(1+12.7√(f/8)(Pr^2/3−1))·(1+(D/L)^2/3)."""
     eighth = friction / 8.0
     developed = (
-        eighth
-        * (reynolds - 1000.0)
-        * prandtl
-        / (1.0 + 12.7 * math.sqrt(eighth) * (prandtl ** (2.0 / 3.0) - 1.0))
+        eighth * (reynolds - 1000.0) * prandtl / (1.0 + 12.7 * math.sqrt(eighth) * (prandtl ** (2.0 / 3.0) - 1.0))
     )
     return developed * (1.0 + diameter_over_length ** (2.0 / 3.0))
 

@@ -189,7 +189,7 @@ def _friction_share(solution: Solution, a: DuctAnswers, net: float, rise: float)
     if answer == "duty":
         return abs(w - r + r * n / taken), True
     if answer == "local flux":
-        return abs(w + r * math.expm1(min(n, 700.0))), True
+        return abs(w + r * math.expm1(min(n, 300.0))), True
     if answer == "coefficient":
         return max(abs(net) / balance(solution, a), w), False
     return abs(net) / balance(solution, a), False

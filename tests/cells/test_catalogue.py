@@ -29,7 +29,20 @@ SETTLED = {
     "CF_TERMS": "block [equation]",
     "CF_TERM": "block term [measure]",
 }
-ORDER = "block substance velocity length time temperature temperature_difference density viscosity specific_heat conductivity diffusivity".split()
+ORDER = [
+    "block",
+    "substance",
+    "velocity",
+    "length",
+    "time",
+    "temperature",
+    "temperature_difference",
+    "density",
+    "viscosity",
+    "specific_heat",
+    "conductivity",
+    "diffusivity",
+]
 
 
 def shown(function):

@@ -48,7 +48,20 @@ def test_an_error_cell_is_said(cf, error):
 
 @pytest.mark.parametrize(
     "same",
-    [2.0, 2, "2 m/s", "2", [[2.0]], ((2.0,),), (2.0,), [["2 m/s"]], [[2.0, "m/s"]], ((2.0, "m/s"),), "200 cm/s", [[200, "cm/s"]]],
+    [
+        2.0,
+        2,
+        "2 m/s",
+        "2",
+        [[2.0]],
+        ((2.0,),),
+        (2.0,),
+        [["2 m/s"]],
+        [[2.0, "m/s"]],
+        ((2.0, "m/s"),),
+        "200 cm/s",
+        [[200, "cm/s"]],
+    ],
     ids=repr,
 )
 def test_the_same_velocity_in_every_form(cf, same):
@@ -162,7 +175,9 @@ JUNK = st.one_of(
     st.floats(),
     st.integers(-(10**30), 10**30),
     st.text(max_size=30),
-    st.sampled_from(["#DIV/0!", "12 m/s", "1 bar", "40 degC", "water", "duct", "! x: y", {"kind": "Na"}, dt.date(2026, 1, 1)]),
+    st.sampled_from(
+        ["#DIV/0!", "12 m/s", "1 bar", "40 degC", "water", "duct", "! x: y", {"kind": "Na"}, dt.date(2026, 1, 1)]
+    ),
 )
 CELLS = st.one_of(JUNK, st.lists(st.lists(JUNK, max_size=4), max_size=4), st.lists(JUNK, max_size=4))
 

@@ -13,7 +13,9 @@ def test_faults_counts_and_names_the_first(cf):
     assert answer == "3 faults, first: velocity: empty"
 
 
-@pytest.mark.parametrize("what", ["labels", "units", "kinds", "terms", "measures", "answers", "flow kinds", "properties", "groups"])
+@pytest.mark.parametrize(
+    "what", ["labels", "units", "kinds", "terms", "measures", "answers", "flow kinds", "properties", "groups"]
+)
 def test_lists_are_columns_of_texts(cf, what):
     column = cf("LIST", what)
     assert len(column) > 2
