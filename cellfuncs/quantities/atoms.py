@@ -39,7 +39,8 @@ class Atom:
     dimension: Dimension
     prefixes: str
     exact_case: bool
-    place: str  # "alone": never within a compound; "once": to no power; "column": only after a length
+    # "alone": not within a compound; "once": to no power (fps2 is written for ft/s2); "column": only after a length
+    place: str
     kinds: tuple[str, ...]
     refuse: str
 

@@ -66,7 +66,7 @@ _HUMIDITY = re.compile(
     r"[ ]?(k?g|lbm?)[ _]?(?:dry[ _]?air|da|d\.a\.|air|a)?$",
     re.IGNORECASE,
 )
-_STANDARD_VOLUME = re.compile(r"(?<![a-z])(?:n ?|s)m\^?3(?!\d)", re.IGNORECASE)
+_STANDARD_VOLUME = re.compile(r"(?<![a-z])(?:n ?|s)c?m\^?3(?!\d)", re.IGNORECASE)
 _NUMBER_FIRST = re.compile(r"^(?:[*x·] ?\d|10 ?\^|10-\d|\d+[.,]?\d*e[-+]?\d)|[*x· ]10\^?-?\d", re.IGNORECASE)
 
 
