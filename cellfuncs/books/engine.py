@@ -237,7 +237,9 @@ class _Run:
             by_sheet.setdefault(item.sheet, {})[item.formula.row * 16384 + item.formula.column - 1] = text
         data = stand_in(self.book, self.sheets, by_sheet, self._engine_names(), self.translator.links.sheets)
         config = fz.EvaluationConfig()
-        config.enable_parallel = False  # one thread: a state of a property library belongs to one
+        # One thread, for the states of a property library belong to one; and the engine's parallel way,
+        # for only that one stops soon when it is told to.
+        config.enable_parallel, config.max_threads = True, 1
         config.date_system = "1904" if self.book.date_1904 else "1900"
         try:
             workbook = fz.Workbook.from_bytes(data, config=fz.WorkbookConfig(eval_config=config))

@@ -82,7 +82,8 @@ def table_area(
     if inner.startswith("@"):
         specials.add("#this row")
         inner = inner[1:]
-    if "[" in inner:
+    inner = inner.strip()
+    if inner.startswith("["):
         words = _PART.findall(inner)
     else:
         words = [inner] if inner else []
