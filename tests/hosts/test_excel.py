@@ -24,6 +24,7 @@ def child() -> None:
     import collections
     import ctypes
     import datetime
+    import decimal
     import types
     from unittest.mock import MagicMock
 
@@ -88,6 +89,8 @@ def child() -> None:
             return cells(tuple(map(tuple, inner)) if isinstance(inner, list) else inner)
         if isinstance(value, dict) and "array" in value:
             return tuple(tuple(row) if isinstance(row, list) else row for row in value["array"])
+        if isinstance(value, dict) and "currency" in value:
+            return decimal.Decimal(value["currency"])
         if isinstance(value, dict) and "date" in value:
             return Time(*value["date"])
         if isinstance(value, dict) and "date in range" in value:
@@ -153,6 +156,23 @@ def excel(*calls):
 
 REYNOLDS = 2.0 * 0.05 * 998.0 / 0.001
 
+# A case block as cells hold it; every property is stated, so that no table of fluids is needed.
+BLOCK = [
+    ["Cooling of a tube", None, None],
+    ["flow kind", "duct", None],
+    ["diameter", 25.0, "mm"],
+    ["length", 4.0, "m"],
+    ["velocity", 1.2, "m/s"],
+    [None, None, None],
+    ["inlet temperature", 20.0, "degC"],
+    ["wall temperature", 60.0, "degC"],
+    ["density", 998.0, "kg/m3"],
+    ["viscosity", 1.0, "mPa s"],
+    ["conductivity", 0.6, "W/mK"],
+    ["specific heat", 4180.0, "J/kgK"],
+    ["expansion coefficient", 2e-4, "1/K"],
+]
+
 # What Excel hands over, and what has to come back; a text is the start of a fault.
 CALLS = {
     "numbers": (["CF_REYNOLDS", 2.0, 0.05, 998.0, 0.001], REYNOLDS),
@@ -200,6 +220,13 @@ CALLS = {
     "optional left out": (["CF_SI", 25.0, "mm", MISSING], 0.025),
     "optional from an empty cell": (["CF_SI", 25.0, "mm", {"range": None}], 0.025),
     "optional given": (["CF_SI", 25.0, "C", "temperature"], 298.15),
+    "currency": (["CF_REYNOLDS", {"currency": "2.0"}, 0.05, 998.0, 0.001], REYNOLDS),
+    "a block": (["CF_CASE", {"range": BLOCK}, "reynolds", MISSING], 0.025 * 1.2 * 998.0 / 0.001),
+    "a block with an error": (
+        ["CF_CASE", {"range": [*BLOCK[:-1], ["expansion coefficient", NOT_AVAILABLE, "1/K"]]}, "reynolds"],
+        "! ",
+    ),
+    "a table back": (["CF_TERMS", {"range": BLOCK}, MISSING], None),
     "a text back": (["CF_VERSION"], None),
     "truth as a number": (["CF_UNIT_FITS", True, "velocity"], "! unit: "),
 }
@@ -247,6 +274,12 @@ def test_a_text_comes_back_as_text(answered):
     assert __version__ in answered["answers"][list(CALLS).index("a text back")]
 
 
+def test_a_table_comes_back_whole(answered, catalogue):
+    table = answered["answers"][list(CALLS).index("a table back")]
+    assert table[0][:3] == ["term", "one-scale", "share"]
+    assert table == catalogue["CF_TERMS"].call(BLOCK)
+
+
 def test_every_function_is_registered_with_category_and_help(answered, catalogue):
     registered = answered["registered"]
     assert list(registered) == list(catalogue)
@@ -283,10 +316,7 @@ def test_vba_declares_the_right_arguments(answered, catalogue):
     assert declared == wanted
     assert max(map(len, lines)) < 1023, "the longest line that VBA reads"
     reynolds = ", ".join(one.name for one in catalogue["CF_REYNOLDS"].arguments)
-    assert (
-        f'CF_REYNOLDS = XLPy.CallUDF("cellfuncs.hosts.excel", "CF_REYNOLDS", Array({reynolds})'
-        in answered["vba"]
-    )
+    assert f'CF_REYNOLDS = XLPy.CallUDF("cellfuncs.hosts.excel", "CF_REYNOLDS", Array({reynolds})' in answered["vba"]
 
 
 def test_it_can_be_imported_where_there_is_no_excel(catalogue):
