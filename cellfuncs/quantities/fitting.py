@@ -62,11 +62,15 @@ _WITH_REFERENCE = {
 
 @dataclass(frozen=True, slots=True, eq=False)
 class _Reading:
-    """All meanings of a text, with the reference its pressure is given against, or the refusal."""
+    """All meanings of a text, with the reference its pressure is given against, or the refusal.
+
+    ``unreferred`` is what the text means when the end that looks like a reference is a unit.
+    """
 
     meanings: tuple[Meaning, ...]
     reference: str
     refusal: str
+    unreferred: tuple[Meaning, ...] = ()
 
 
 @dataclass(frozen=True, slots=True)
@@ -121,7 +125,9 @@ def _reading(text: str) -> _Reading:
             said = f'"{shortened(text)}" counts downwards from the atmosphere; write the absolute pressure'
             return _Reading((), "", said)
         if base:
-            return _Reading(base, reference, "")
+            # kg/cm2-d is a mass flux as well; psid is nothing else
+            weights = all(meaning.dimension != _PRESSURE for meaning in base)
+            return _Reading(base, reference, "", plain if weights else ())
     return _Reading(plain, "", refusal)
 
 
@@ -143,14 +149,17 @@ def _shifted(dimension: Dimension, times: int) -> Dimension:
 
 def _fits(reading: _Reading, wanted: Kind, atmosphere: float) -> list[_Fit]:
     """The units of the nearest spelling that fit a kind."""
-    if reading.reference not in _REFERENCES.get(wanted.name, ("",)):
+    candidates, reference = reading.meanings, reading.reference
+    if reference and wanted.name not in _REFERENCES:
+        candidates, reference = reading.unreferred, ""
+    elif reference not in _REFERENCES.get(wanted.name, ("",)):
         return []
     found: list[_Fit] = []
     rank = None
-    for meaning in reading.meanings:
+    for meaning in candidates:
         if rank is not None and meaning.rank != rank:
             break
-        unit = _fit(meaning, reading.reference, wanted, atmosphere)
+        unit = _fit(meaning, reference, wanted, atmosphere)
         if unit is not None:
             rank = meaning.rank
             found.append(unit)
@@ -226,15 +235,16 @@ def kinds_for(text: str) -> tuple[str, ...]:
 @lru_cache(maxsize=1024)
 def _kinds_of(reading: _Reading) -> tuple[str, ...]:
     """Kinds with the unit among their usual ones first, then in the order of the table."""
-    if reading.reference == "gauge":
-        return ("pressure_gauge", "pressure_absolute")
     usual, others = [], []
     for kind in KINDS.values():
         found = _fits(reading, kind, _ANY_ATMOSPHERE)
         if len({fits.factor for fits in found}) == 1:
             listed = found[0].understood in _usual_units(kind.name)
             (usual if listed else others).append(kind.name)
-    return (*usual, *others)
+    kinds = usual + others
+    if reading.reference:
+        kinds.sort(key=lambda name: (name in _REFERENCES, name != "pressure_gauge"))
+    return tuple(kinds)
 
 
 @cache
