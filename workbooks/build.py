@@ -6,43 +6,14 @@ without Cellfuncs sees every number. The scenario (the Veldermoor pilot line) is
 
 import sys
 import tempfile
-from dataclasses import dataclass, field
 from pathlib import Path
 
-import xlsxwriter
-
-from cellfuncs.cases import labels
 from cellfuncs.hosts import embedded
-from cellfuncs.terms import COLUMNS, MEASURES, TERMS
-from cellfuncs.terms.table import ALL_LEFT_OUT
+from cellfuncs.sheets.case_sheet import CaseSheet, write_book
 
 HERE = Path(__file__).parent
-INK, GREY, LINE, TINT, RULE = "#1F2A30", "#7A858C", "#D5D9DC", "#F3EEF7", "#6B4C8A"
-SHARES = '[=0]"0";0.0E+00'
-CAUTION = (
-    "Supports a licensed engineer's judgement and does not replace it. Pressure equipment, hot surfaces, "
-    "flammable or toxic fluids, freezing and boiling are governed by your local codes."
-)
 
-
-@dataclass(frozen=True)
-class Sample:
-    """One sample workbook."""
-
-    file: str
-    title: str
-    story: str
-    block: str  # the workbook name of the case block
-    rows: tuple[tuple, ...]  # label, value, unit, ±
-    results: tuple[tuple[str, str, str], ...]  # what, unit, number format
-    question: str
-    sweep: tuple[str, str, tuple[float, ...], str]  # label, unit, values, term
-    spare: int = 4
-    choices: dict[str, tuple[str, ...]] = field(default_factory=dict)
-
-
-COOLANT = Sample(
-    file="coolant_channel.xlsx",
+COOLANT = CaseSheet(
     title="Coolant channel of a mould plate",
     story="Veldermoor pilot line, mould plate 3 (invented). Glycol solution in a drilled channel; the plate holds "
     "its wall at one temperature.",
@@ -76,8 +47,7 @@ COOLANT = Sample(
     sweep=("velocity", "m/s", (0.25, 0.5, 1, 2, 4, 8), "viscous heating"),
 )
 
-FILM = Sample(
-    file="oil_film.xlsx",
+FILM = CaseSheet(
     title="Oil film under a sliding shoe",
     story="Veldermoor pilot line, press drive (invented). A shoe slides on a flooded film between two walls held "
     "at one temperature.",
@@ -109,214 +79,22 @@ FILM = Sample(
     sweep=("sliding speed", "m/s", (1, 2, 4, 8, 12, 16), "advection"),
 )
 
-SAMPLES = (COOLANT, FILM)
+SAMPLES = {"coolant_channel.xlsx": COOLANT, "oil_film.xlsx": FILM}
 
 
-class Sheet:
-    """Writes one sample; rows are counted from 0 as XlsxWriter does."""
-
-    def __init__(self, book: xlsxwriter.Workbook, sample: Sample):
-        self.book, self.sample = book, sample
-        self.sheet = book.add_worksheet("Case")
-        self.formats: dict[tuple, object] = {}
-
-    def style(self, **options):
-        key = tuple(sorted(options.items()))
-        if key not in self.formats:
-            base = {"font_name": "Calibri", "font_size": 10.5, "font_color": INK, "valign": "vcenter"}
-            self.formats[key] = self.book.add_format(base | options)
-        return self.formats[key]
-
-    def entry(self, ruled: bool = True, **options):
-        """An input cell: a rule at the left of the inputs of a row, and a light tint."""
-        rule = {"left": 5, "left_color": RULE} if ruled else {}
-        return self.style(bg_color=TINT, locked=False, bottom=4, bottom_color=LINE, **rule, **options)
-
-    def write(self) -> None:
-        sheet, sample = self.sheet, self.sample
-        for column, width in enumerate((25, 29, 11, 11, 13, 62)):
-            sheet.set_column(column, column, width)
-        sheet.hide_gridlines(2)
-        row = self._head()
-        beside = row + len(self.sample.results) + len(self.sample.sweep[2]) + 5
-        row = max(self._block(row), beside)
-        self._terms(row)
-        self._results(7)
-        self._print()
-        self.book.set_properties({"title": sample.title, "subject": "which terms matter", "comments": CAUTION})
-
-    def _head(self) -> int:
-        sheet, sample = self.sheet, self.sample
-        sheet.set_row(0, 24)
-        sheet.write(0, 0, sample.title, self.style(bold=True, font_size=16))
-        sheet.write(1, 0, sample.story, self.style(font_color=GREY, italic=True))
-        sheet.write(2, 0, "Faults in this sheet", self.style(font_color=GREY))
-        self.faults_at = 2
-        sheet.write(3, 0, "Cellfuncs", self.style(font_color=GREY))
-        sheet.write_formula(3, 1, "=CF_VERSION()", self.style(font_color=GREY, align="left"))
-        sheet.write(4, 0, CAUTION, self.style(font_color=GREY, font_size=9))
-        return 6
-
-    def _block(self, row: int) -> int:
-        sheet, sample = self.sheet, self.sample
-        self._heading(row, ("Case", "value", "unit", "±"))
-        first = row + 1
-        for k, (label, value, unit, spread) in enumerate(sample.rows):
-            at = first + k
-            sheet.write(at, 0, label, self.style(bottom=4, bottom_color=LINE))
-            text = isinstance(value, str)
-            sheet.write(at, 1, value, self.entry(align="left" if text else "right", indent=1))
-            sheet.write(at, 2, unit, self.entry(ruled=False, align="left", indent=1))
-            sheet.write(at, 3, spread, self.entry(ruled=False, align="right"))
-            key = labels.find(label)
-            if labels.dictionary()[key].role == "choice":
-                sheet.data_validation(at, 1, at, 1, {"validate": "list", "source": list(labels.choices(key))})
-        last = first + len(sample.rows) + sample.spare - 1
-        for at in range(first + len(sample.rows), last + 1):
-            sheet.write_blank(at, 0, None, self.style(bottom=4, bottom_color=LINE))
-            for column in range(1, 4):
-                sheet.write_blank(at, column, None, self.entry(ruled=column == 1))
-        self.book.define_name(sample.block, f"=Case!$A${first + 1}:$D${last + 1}")
-        return last + 2
-
-    def _heading(self, row: int, words, column: int = 0) -> None:
-        for k, word in enumerate(words):
-            left = k in (0, 5) or word in ("unit", "verdict")
-            look = {"align": "left" if left else "right", "indent": 0 if k == 0 else 1}
-            self.sheet.write(row, column + k, word, self.style(bold=True, bottom=1, bottom_color=INK, **look))
-
-    def _results(self, row: int) -> None:
-        """Answers and characteristic numbers, right of the block: one formula a cell."""
-        sheet, sample = self.sheet, self.sample
-        top = row - 1
-        sheet.write(top, 5, "What follows from it", self.style(bold=True, bottom=1, bottom_color=INK, indent=2))
-        for k, (what, unit, shown) in enumerate(sample.results):
-            name = f"{what} [{unit}]" if unit else what
-            formula = f'=CF_CASE({sample.block},"{what}"' + (f',"{unit}")' if unit else ")")
-            sheet.write(row + k, 5, name, self.style(indent=2, bottom=4, bottom_color=LINE))
-            sheet.write_formula(row + k, 6, formula, self.style(num_format=shown, bottom=4, bottom_color=LINE))
-        sheet.write(top, 6, "value", self.style(bold=True, bottom=1, bottom_color=INK, align="right"))
-        sheet.set_column(6, 6, 16)
-        label, unit, values, term = sample.sweep
-        top = row + len(sample.results) + 1
-        sheet.write(
-            top,
-            5,
-            f"{label} [{unit}] and the share that follows",
-            self.style(bold=True, bottom=1, bottom_color=INK, indent=2),
-        )
-        sheet.write(top, 6, term, self.style(bold=True, bottom=1, bottom_color=INK, align="right"))
-        for k, value in enumerate(values, start=1):
-            sheet.write(top + k, 5, value, self.entry(align="left", indent=1))
-            formula = f'=CF_TERM(CF_VARY({sample.block},"{label}",$F{top + k + 1},"{unit}"),"{term}")'
-            sheet.write_formula(top + k, 6, formula, self.style(num_format=SHARES, bottom=4, bottom_color=LINE))
-
-    def _terms(self, row: int) -> None:
-        sheet, sample = self.sheet, self.sample
-        sheet.write(row, 0, sample.question, self.style(bold=True, font_size=12))
-        sheet.set_h_pagebreaks([row])
-        head = row + 1
-        self._heading(head, COLUMNS)
-        sheet.write(head, 6, "for the chart", self.style(font_color=GREY, align="right", bottom=1, bottom_color=INK))
-        names = (*TERMS, ALL_LEFT_OUT)
-        first = head + 1
-        for k, term in enumerate(names):
-            at = first + k
-            sheet.write(at, 0, term, self.style(bold=term == ALL_LEFT_OUT, bottom=4, bottom_color=LINE))
-            for j, measure in enumerate(MEASURES, start=1):
-                number = measure in ("one-scale", "share", "effect")
-                style = self.style(
-                    num_format=SHARES if number else "General",
-                    align="right" if number else "left",
-                    indent=1,
-                    bottom=4,
-                    bottom_color=LINE,
-                    text_wrap=measure == "reason",
-                    font_size=9.5 if measure == "reason" else 10.5,
-                )
-                column = "ABCDEF"[j]
-                sheet.write_formula(at, j, f"=CF_TERM({sample.block},$A{at + 1},{column}${head + 1})", style)
-            sheet.set_row(at, 28)
-            guarded = f"=IF(ISNUMBER(C{at + 1}),MAX(C{at + 1},0.000001),NA())"
-            if term != ALL_LEFT_OUT:
-                sheet.write_formula(at, 6, guarded, self.style(num_format=SHARES, font_color=GREY))
-        last = first + len(TERMS) - 1
-        verdicts = f"E{first + 1}:E{last + 2}"
-        bold = self.book.add_format({"bold": True})
-        for word, look in (("keep", bold), ("leave out", self.book.add_format({"font_color": GREY}))):
-            rule = {"type": "cell", "criteria": "==", "value": f'"{word}"', "format": look}
-            sheet.conditional_format(verdicts, rule)
-        sheet.conditional_format(
-            f"A1:H{last + 8}",
-            {"type": "text", "criteria": "begins with", "value": "! ", "format": bold},
-        )
-        self._decision(last + 3, first, last)
-        span = f"A8:H{last + 3}"
-        sheet.write_formula(self.faults_at, 1, f"=CF_FAULTS({span})", self.style(align="left"))
-        self._chart(first, last, last + 7)
-
-    def _decision(self, row: int, first: int, last: int) -> None:
-        sheet = self.sheet
-        sheet.write(row, 0, "Decision", self.style(bold=True, font_size=12))
-        for k, word in enumerate(("keep", "borderline", "leave out")):
-            parts = "&".join(f'IF(E{r + 1}="{word}",A{r + 1}&", ","")' for r in range(first, last + 1))
-            sheet.write(row + 1 + k, 0, word, self.style(bold=word == "keep", indent=1))
-            listed = f'=IF({parts}="","none",LEFT({parts},LEN({parts})-2))'
-            sheet.write_formula(row + 1 + k, 1, listed, self.style())
-
-    def _chart(self, first: int, last: int, row: int) -> None:
-        chart = self.book.add_chart({"type": "bar"})
-        chart.add_series(
-            {
-                "name": "share",
-                "categories": ["Case", first, 0, last, 0],
-                "values": ["Case", first, 6, last, 6],
-                "fill": {"color": RULE},
-                "gap": 60,
-            }
-        )
-        font = {"color": INK, "size": 9}
-        chart.set_title({"name": "Share of each term", "name_font": {"size": 11, "bold": True, "color": INK}})
-        chart.set_x_axis(
-            {
-                "log_base": 10, "min": 1e-6, "max": 10, "num_format": "0E+00", "num_font": font, "crossing": 1e-6,
-                "major_gridlines": {"visible": True, "line": {"color": LINE}},
-                "name": "share of the largest term, or of what the answer calls for",
-                "name_font": {"size": 9, "bold": False},
-            }
-        )  # fmt: skip
-        chart.set_y_axis({"reverse": True, "num_font": font, "line": {"color": INK}})
-        chart.set_legend({"none": True})
-        chart.set_size({"width": 920, "height": 300})
-        self.sheet.insert_chart(row, 0, chart, {"x_offset": 4, "y_offset": 6})
-        self.last_row = row + 16
-
-    def _print(self) -> None:
-        sheet = self.sheet
-        sheet.set_landscape()
-        sheet.set_paper(9)
-        sheet.fit_to_pages(1, 0)
-        sheet.set_margins(0.5, 0.5, 0.6, 0.6)
-        sheet.print_area(0, 0, self.last_row, 6)
-        sheet.set_footer(f"&L&8{CAUTION}&R&8&P/&N")
-
-
-def build(sample: Sample, folder: Path) -> Path:
+def build(name: str, folder: Path) -> Path:
     """Write one sample with its stored values and return its path."""
     with tempfile.TemporaryDirectory() as temporary:
-        raw = Path(temporary) / sample.file
-        book = xlsxwriter.Workbook(raw)
-        Sheet(book, sample).write()
-        book.close()
-        out = folder / sample.file
-        embedded.recalc(raw, out)
-    return out
+        raw = Path(temporary) / name
+        write_book(SAMPLES[name], raw)
+        embedded.recalc(raw, folder / name)
+    return folder / name
 
 
 def main(arguments: list[str]) -> int:
     folder = Path(arguments[0]) if arguments else HERE
-    for sample in SAMPLES:
-        print("built", build(sample, folder))
+    for name in SAMPLES:
+        print("built", build(name, folder))
     return 0
 
 

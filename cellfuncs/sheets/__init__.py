@@ -1,0 +1,1 @@
+"""Whole sheets: the look of ours, and starters for a flow kind."""
