@@ -39,7 +39,8 @@ class Atom:
     dimension: Dimension
     prefixes: str
     exact_case: bool
-    # "alone": not within a compound; "once": to no power (fps2 is written for ft/s2); "column": only after a length
+    # "joins": may be written without a joint (mPas); "column": after a length (mmHg); "alone": not within
+    # a compound; "once": to no power (fps2 is written for ft/s2)
     place: str
     kinds: tuple[str, ...]
     refuse: str
@@ -99,7 +100,8 @@ def _phrases() -> re.Pattern[str]:
         written = [spelling for row in csv.DictReader(file) for spelling in row["spellings"].split(";")]
     phrases = sorted((spelling for spelling in written if " " in spelling), key=len, reverse=True)
     choice = "|".join(phrase.replace(" ", "[ .-]{1,2}") for phrase in phrases)
-    return re.compile(rf"(?<![a-z])(?:{choice})(?![a-z])", re.IGNORECASE)
+    # g mol^-1 is a quotient: a phrase ends before a negative power
+    return re.compile(rf"(?<![a-z])(?:{choice})(?![a-z]|\^?-\d)", re.IGNORECASE)
 
 
 def join_phrases(text: str) -> str:

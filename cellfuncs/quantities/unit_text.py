@@ -28,7 +28,7 @@ LENGTH, TEMPERATURE = read_dimension("L"), read_dimension("Θ")
 
 _TOKEN = re.compile(
     r"""[ ]?(?:
-    (?P<word>Δ[CFRK](?![A-Za-z])|°[CFRKE]|%RH|%|[A-Za-zμΩÅ]+%?|[‰'"°])(?P<power>\^[+-]?\d+|-?\d+(?![\d]))?
+    (?P<word>Δ[CFRKcfrk](?![A-Za-z])|°[CFRKEcfrke]|%RH|%|[A-Za-zμΩÅ]+%?|[‰'"°])(?P<power>\^[+-]?\d+|-?\d+(?![\d]))?
     |(?P<number>\d+)
     |(?P<open>\()
     |(?P<close>\))(?P<group_power>\^[+-]?\d+|\d+)?
@@ -253,9 +253,9 @@ def _meanings_of(word: str, alone: bool, text: str) -> list[Choice]:
     choices: list[Choice] = []
     exact = _usable(atoms.whole(word), alone, text)
     choices += [(EXACT, [piece]) for piece in exact]
+    loose = _usable(atoms.whole_in_any_case(word), alone, text, may_refuse=not exact)
     if not exact or word == "ms":  # kg/ms is a viscosity as well as a flow
         choices += [(SPLIT, glued) for glued in _glued(word, atoms.whole)]
-    loose = _usable(atoms.whole_in_any_case(word), alone, text, may_refuse=not choices)
     known = [(piece.atom, piece.prefix) for piece in exact]
     choices += [(LOOSE, [piece]) for piece in loose if (piece.atom, piece.prefix) not in known]
     if not exact and not loose:
@@ -301,7 +301,7 @@ def _glued(word: str, lookup) -> list[list[Piece]]:
 
 def _may_be_glued(piece: Piece, last: bool) -> bool:
     atom = piece.atom
-    if atom.place == "alone" or atom.refuse:
+    if atom.place not in ("joins", "column") or atom.refuse:
         return False
     if atom.dimension == TEMPERATURE:
         return last and not piece.prefix
