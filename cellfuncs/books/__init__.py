@@ -1,20 +1,31 @@
 """Workbook files: the gate, reading, writing values in place, and the engine.
 
 Knows no physics and no function names; whoever wants functions evaluated hands over a mapping.
-Every workbook passes the gate (``gate.inspect``) before any other code reads it, and everything after
-works on the bytes that the gate has seen, so that a file cannot change in between.
+Every workbook passes the gate (``inspect``) before any other code reads it, and everything after works on
+the bytes that the gate has seen, so that a file cannot change in between. No link is followed, no macro
+is looked into.
 
-==============  ==========================================================================
-package.py      the zip container: strict directory, bounded inflating, writing a copy
-gate.py         the one pre-scan, its limits and refusals; returns a :class:`Book`
-reading.py      formulas, stored values and byte offsets of one sheet
-splice.py       new values set into the sheet's own text
-formulas.py     names with prefixes, shared formulas, references, what depends on what
-externals.py    values that the file has stored of other workbooks; table ranges
-engine.py       evaluation with the engine, and the comparison with stored values
-==============  ==========================================================================
+=============  ==============================================================================
+package.py     the zip container: strict directory, bounded inflating, a copy with parts replaced
+gate.py        the one pre-scan, its limits and refusals; returns a :class:`Book`
+scans.py       what the gate looks for in the main part and in each worksheet
+reading.py     formulas, stored values and byte offsets of one sheet
+splice.py      new values set into the sheet's own text
+xmltext.py     values as cell texts and back
+grid.py        rows, columns, areas
+formulas.py    formulas as texts: prefixes of names, shared formulas, references
+influence.py   which formulas depend on which
+externals.py   tables of the workbook, and stored values of other workbooks
+translate.py   a formula of the file as the engine wants it
+stand_in.py    the small package that the engine gets instead of the file
+engine.py      evaluation: what has to be calculated, and the comparison with stored values
+exchange.py    values on their way to and from the engine
+outcome.py     what was calculated, as values for cells
+areas.py       contiguous areas of our formulas with labels and heads, for a reader
+=============  ==============================================================================
 """
 
-from cellfuncs.books.gate import Book, DefinedName, SheetPart, inspect
+from cellfuncs.books.gate import Book, SheetPart, inspect
+from cellfuncs.books.scans import DefinedName
 
 __all__ = ["Book", "DefinedName", "SheetPart", "inspect"]

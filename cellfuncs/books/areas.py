@@ -41,6 +41,9 @@ class Raw(NamedTuple):
         return self.mark in (None, "n") and bool(self.text)
 
 
+_EMPTY = Raw(None, None)
+
+
 class Looker:
     """Looks at cells of one sheet: new values before stored ones; shared strings are looked up at the end."""
 
@@ -51,16 +54,18 @@ class Looker:
     def raw(self, row: int, column: int) -> Raw:
         """What stands in a cell; a new value counts before the stored one."""
         spot = (row, column)
-        if spot not in self._raw:
+        found = self._raw.get(spot)
+        if found is None:
             if row < 1 or column < 1:
-                self._raw[spot] = Raw(None, None)
+                found = _EMPTY
             elif spot in self.values:
                 value = self.values[spot]
                 mark = "str" if isinstance(value, str) else "n" if type(value) is float else "e"
-                self._raw[spot] = Raw(None, None) if value is None else Raw(mark, str(value))
+                found = _EMPTY if value is None else Raw(mark, str(value))
             else:
-                self._raw[spot] = Raw(*self.sheet.value(row, column))
-        return self._raw[spot]
+                found = Raw(*self.sheet.value(row, column))
+            self._raw[spot] = found
+        return found
 
     def label(self, row: int, column: int) -> Spot | None:
         """The nearest text left of a cell."""
@@ -125,8 +130,7 @@ def areas_of(evaluation: Evaluation) -> list[FoundArea]:
                 labels, heads = [None] * len(labels), [None] * len(heads)  # a table has its own
             rows = tuple(
                 tuple(
-                    values.get((row, column)) if (row, column) in spots else None
-                    for column in range(left, right + 1)
+                    values.get((row, column)) if (row, column) in spots else None for column in range(left, right + 1)
                 )
                 for row in range(top, bottom + 1)
             )

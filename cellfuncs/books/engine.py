@@ -133,9 +133,8 @@ class _Run:
 
     def _item(self, sheet: Sheet, formula: Formula) -> Item:
         text, ours = normalised(formula.text, self.is_ours)
-        item = Item(
-            sheet.name, formula, text, ours, [], False, False, bool(text) and formula.kind != "data table"
-        )
+        formula.text = text  # from here on without prefixes
+        item = Item(sheet.name, formula, text, ours, [], False, False, bool(text) and formula.kind != "data table")
         self._study(item, text, sheet.name, 0)
         return item
 
@@ -158,9 +157,7 @@ class _Run:
         if found.kind == "cells":
             item.reads.append(((found.sheet or sheet).casefold(), found.area))
         elif found.kind == "table":
-            place = table_area(
-                text, self.translator.tables, item.sheet, item.formula.row, item.formula.column
-            )
+            place = table_area(text, self.translator.tables, item.sheet, item.formula.row, item.formula.column)
             if place is not None:
                 item.reads.append((place[0].casefold(), place[1]))
         elif found.kind == "name":
@@ -210,14 +207,10 @@ class _Run:
             item = self.items[number]
             value = from_engine(workbook.get_value(item.sheet, item.formula.row, item.formula.column))
             if not agree(item.formula.stored, value):
-                differing.append(
-                    f"{item.place} holds {said(item.formula.stored)}, recalculated it is {said(value)}"
-                )
+                differing.append(f"{item.place} holds {said(item.formula.stored)}, recalculated it is {said(value)}")
         if differing:
             more = f" and {len(differing) - 5} more" if len(differing) > 5 else ""
-            self.warnings.append(
-                "These cells differ when recalculated: " + "; ".join(differing[:5]) + more + "."
-            )
+            self.warnings.append("These cells differ when recalculated: " + "; ".join(differing[:5]) + more + ".")
 
     # -- the engine ----------------------------------------------------------------------------------
 
@@ -229,11 +222,7 @@ class _Run:
 
         by_sheet: dict[str, dict[int, str | None]] = {}
         for number, item in enumerate(self.items):
-            text = (
-                self.translator.engine_text(item.text, item.sheet, item.formula)
-                if number in running
-                else None
-            )
+            text = self.translator.engine_text(item.text, item.sheet, item.formula) if number in running else None
             by_sheet.setdefault(item.sheet, {})[item.formula.row * 16384 + item.formula.column - 1] = text
         data = stand_in(self.book, self.sheets, by_sheet, self._engine_names(), self.translator.links.sheets)
         config = fz.EvaluationConfig()

@@ -68,9 +68,7 @@ def _table(data: bytes, sheet: str) -> Table | None:
 _PART = re.compile(r"\[((?:[^\[\]']|'.)*)\]")
 
 
-def table_area(
-    text: str, found: Mapping[str, Table], sheet: str, row: int, column: int
-) -> tuple[str, Area] | None:
+def table_area(text: str, found: Mapping[str, Table], sheet: str, row: int, column: int) -> tuple[str, Area] | None:
     """The cells that `Table[[#This Row],[head]]` and the like mean in a formula at `row`; None where they are none."""
     name, bracket, inner = text.partition("[")
     table = found.get(name.casefold()) if name else _table_here(found, sheet, row, column)
@@ -157,7 +155,7 @@ class Linked:
     defined: dict[tuple[int, str], str] = field(default_factory=dict)  # (book number, name) -> its text
 
     def local(self, found: Reference) -> str | None:
-        """The reference among the extra sheets that stands for one to another workbook; None where nothing is stored."""
+        """The reference among the extra sheets for one to another workbook; None where nothing is stored."""
         match = re.fullmatch(r"\[(\d+)\](.*)", found.sheet or "", re.DOTALL)
         if match is None:
             return None

@@ -8,7 +8,6 @@ from __future__ import annotations
 
 import re
 from collections.abc import Callable
-from dataclasses import dataclass
 from functools import lru_cache
 from typing import NamedTuple
 
@@ -110,12 +109,12 @@ _CELLS = re.compile(
     + r"|(?P<c1>\$?)(?P<first_column>[A-Za-z]{1,3}):(?P<c2>\$?)(?P<last_column>[A-Za-z]{1,3})"
     + r"|(?P<d1>\$?)(?P<first_row>[0-9]{1,7}):(?P<d2>\$?)(?P<last_row>[0-9]{1,7}))\Z"
 )
+_CELL = re.compile(r"\$?([A-Za-z]{1,3})\$?([0-9]{1,7})\Z")
 _NAMED = re.compile(_SHEET + r"(?P<name>[^\W\d][\w.\\?]*|\\[\w.\\?]*)\Z")
 _TABLE = re.compile(r"(?P<table>[^\W\d][\w.\\]*)?\[")
 
 
-@dataclass(frozen=True)
-class Reference:
+class Reference(NamedTuple):
     """What an operand refers to. `kind`: cells, name, table, external (another workbook) or unknown."""
 
     kind: str
@@ -127,6 +126,12 @@ class Reference:
 @lru_cache(maxsize=16384)
 def reference(text: str) -> Reference:
     """Read one operand, `Sheet1!$A$1:B3`, `A:A`, `3:5`, a name, `Table[column]`, `[1]Sheet1!A1` …"""
+    match = _CELL.match(text)
+    if match is not None:  # by far the most frequent
+        row, column = int(match[2]), column_number(match[1].upper())
+        if 1 <= row <= LAST_ROW and column <= LAST_COLUMN:
+            return Reference("cells", None, (row, column, row, column))
+        return Reference("unknown")
     match = _CELLS.match(text)
     if match is not None:
         sheet = _sheet_of(match)
@@ -172,9 +177,7 @@ def shifted(text: str, rows: int, columns: int) -> str:
     parts = pieces(text)
     if parts is None or (rows == 0 and columns == 0):
         return text
-    return "".join(
-        _shifted_operand(p.text, rows, columns) if p.kind == "reference" else p.text for p in parts
-    )
+    return "".join(_shifted_operand(p.text, rows, columns) if p.kind == "reference" else p.text for p in parts)
 
 
 def _shifted_operand(text: str, rows: int, columns: int) -> str:
@@ -251,9 +254,7 @@ def calls(text: str) -> list[tuple[str, list[str]]]:
     """Every call in a formula: the function's name and the texts of its arguments, without outer blanks."""
     parts = pieces(text)
     found: list[tuple[str, list[str]]] = []
-    opened: list[
-        tuple[str, list[str]] | None
-    ] = []  # the call in which we are; None inside brackets or braces
+    opened: list[tuple[str, list[str]] | None] = []  # the call in which we are; None inside brackets or braces
     for part in parts or ():
         if part.kind == "close" and opened:
             opened.pop()

@@ -89,9 +89,7 @@ def _read_file(path: Path) -> bytes:
             word = "is a folder, not a workbook" if path.is_dir() else "does not exist"
             raise BookRefused(f"{path.name or path} {word}.")
         if path.stat().st_size > MAX_FILE:
-            raise BookRefused(
-                f"The file has more than {MAX_FILE // 1024**2} MB, which is beyond what is read."
-            )
+            raise BookRefused(f"The file has more than {MAX_FILE // 1024**2} MB, which is beyond what is read.")
         with path.open("rb") as file:
             data = file.read(MAX_FILE + 1)
     except OSError as error:
@@ -108,7 +106,7 @@ def _check_signature(data: bytes) -> None:
         raise BookRefused("The file is empty.")
     if data[:4] == b"\xd0\xcf\x11\xe0":
         if "EncryptedPackage".encode("utf-16-le") in data:
-            text = "The file is encrypted with a password. Open it in your spreadsheet program, remove the password and save it."
+            text = "The file is encrypted. Open it in your spreadsheet program, remove the password and save it."
         elif "Workbook".encode("utf-16-le") in data or "Book".encode("utf-16-le") in data:
             text = f"The file is a workbook in the old .xls form. {_SAVE_AS}."
         else:
@@ -181,9 +179,7 @@ class _Gate:
         if "[Content_Types].xml" not in members:
             if "mimetype" in members and b"opendocument" in self.package.read("mimetype")[:200]:
                 raise BookRefused(f"The file is in the OpenDocument form (.ods). {_SAVE_AS}.")
-            raise BookRefused(
-                "The file is a zip archive, but not a workbook: only .xlsx and .xlsm files are read."
-            )
+            raise BookRefused("The file is a zip archive, but not a workbook: only .xlsx and .xlsm files are read.")
         types: dict[str, str] = {}
 
         def start(name: str, attributes: dict[str, str]) -> None:
@@ -208,9 +204,7 @@ class _Gate:
                 if "wordprocessingml" in content or "presentationml" in content:
                     raise BookRefused("The file is a text document or a presentation, not a workbook.")
                 break
-        raise BookRefused(
-            "The file is a package without a workbook in it: only .xlsx and .xlsm files are read."
-        )
+        raise BookRefused("The file is a package without a workbook in it: only .xlsx and .xlsm files are read.")
 
     def _relations(self, part: str) -> dict[str, tuple[str, str]]:
         """Relations of a part: id -> (last word of the kind, part name); links to the outside are left out."""
@@ -248,9 +242,7 @@ class _Gate:
             self._scan(target, scan.start)
             scan.finish()
             self.totals.cells += scan.cells
-            tables = tuple(
-                t for k, t in self._relations(target).values() if k == "table" and t in self.package.members
-            )
+            tables = tuple(t for k, t in self._relations(target).values() if k == "table" and t in self.package.members)
             sheets.append(
                 SheetPart(
                     name,
@@ -280,9 +272,7 @@ class _Gate:
                 self._check_time()
                 if len(head) < 65536:
                     head += piece[:65536]
-            if low.endswith((".xml", ".vml")) and re.search(
-                rb"<!\s*(?:DOCTYPE|ENTITY)", head.replace(b"\0", b"")
-            ):
+            if low.endswith((".xml", ".vml")) and re.search(rb"<!\s*(?:DOCTYPE|ENTITY)", head.replace(b"\0", b"")):
                 raise _declares(name)
 
     def _check_time(self) -> None:
@@ -331,7 +321,7 @@ class _Gate:
                 self.marks += marks
                 if self.marks > MAX_MARKS:
                     raise BookRefused(
-                        f"The workbook holds more than {MAX_MARKS // 1_000_000} million tags, which is beyond what is read."
+                        f"The workbook holds more than {MAX_MARKS // 1_000_000} million tags, beyond what is read."
                     )
                 since_mark = len(piece) - piece.rfind(b"<") if marks else since_mark + len(piece)
                 if since_mark > MAX_TAG:
@@ -350,9 +340,7 @@ class _Gate:
 
 
 def _declares(name: str) -> BookRefused:
-    return BookRefused(
-        f"The part {shown(name)} declares a document type or entities, which no workbook needs."
-    )
+    return BookRefused(f"The part {shown(name)} declares a document type or entities, which no workbook needs.")
 
 
 def _refuser(name: str) -> Callable[..., None]:

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import re
+from functools import lru_cache
 
 LAST_ROW, LAST_COLUMN = 1_048_576, 16_384
 
@@ -11,6 +12,7 @@ Area = tuple[int, int, int, int]  # first row, first column, last row, last colu
 _REFERENCE = re.compile(r"\$?([A-Z]{1,3})\$?([0-9]{1,7})(?::\$?([A-Z]{1,3})\$?([0-9]{1,7}))?\Z")
 
 
+@lru_cache(maxsize=20_000)
 def column_number(letters: str) -> int:
     """A = 1 … XFD = 16384."""
     number = 0

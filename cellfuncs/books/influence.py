@@ -34,8 +34,7 @@ class Readers:
         waiting = list(reached)
         # The ranges of a sheet that nothing has touched yet: their corners as one table.
         untouched = {
-            s: (np.array(list(areas), dtype=np.int64), list(areas.values()))
-            for s, areas in self._ranges.items()
+            s: (np.array(list(areas), dtype=np.int64), list(areas.values())) for s, areas in self._ranges.items()
         }
         while waiting:
             found: set[int] = set()
@@ -68,9 +67,7 @@ class Readers:
     def _cell_readers(self, sheet: str, area: Area) -> Iterable[int]:
         top, left, bottom, right = area
         if (bottom - top + 1) * (right - left + 1) <= _SMALL:
-            places = (
-                (sheet, row, column) for row in range(top, bottom + 1) for column in range(left, right + 1)
-            )
+            places = ((sheet, row, column) for row in range(top, bottom + 1) for column in range(left, right + 1))
             return (reader for place in places for reader in self._cells.get(place, ()))
         return (
             reader

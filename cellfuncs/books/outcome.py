@@ -58,9 +58,7 @@ class Outcome:
         grown: dict[int, Area] = {}
         crowded: list[Item] = []
         freed: dict[str, set[Spot]] = {}
-        self._formulas = {
-            name: {(f.row, f.column) for f in sheet.formulas} for name, sheet in self.sheets.items()
-        }
+        self._formulas = {name: {(f.row, f.column) for f in sheet.formulas} for name, sheet in self.sheets.items()}
         for number in sorted(running):
             item = self.items[number]
             formula = item.formula
@@ -103,9 +101,7 @@ class Outcome:
         stored = item.formula.stored
         unknown = isinstance(value, ErrorValue) and value.text == "#NAME?"
         if self.keep_unknown and unknown and not item.ours and stored is not None:
-            self.warnings.append(
-                f"{item.place} calls a function that is not known here; its stored value was kept."
-            )
+            self.warnings.append(f"{item.place} calls a function that is not known here; its stored value was kept.")
             return stored
         return value
 
@@ -135,9 +131,7 @@ class Outcome:
             if (row, column) not in own and sheet.filled[index]:
                 blocking = f"{column_letters(column)}{row} is not empty"
                 break
-        return (
-            f"! table: needs {rows} rows and {columns} columns, but {blocking}; clear it or move the formula"
-        )
+        return f"! table: needs {rows} rows and {columns} columns, but {blocking}; clear it or move the formula"
 
 
 def _extent(workbook: Any, item: Item) -> Area:

@@ -14,6 +14,7 @@ import zipfile
 import zlib
 from collections.abc import Iterator, Mapping
 from dataclasses import dataclass
+from itertools import pairwise
 from pathlib import Path
 
 from cellfuncs.errors import BookRefused
@@ -53,9 +54,7 @@ class Package:
         for piece in _inflate(packed, info.compress_type):
             total += len(piece)
             if total > MAX_INFLATED:
-                raise BookRefused(
-                    f"The part {shown(name)} grows past 200 MB when unpacked, which no workbook needs."
-                )
+                raise BookRefused(f"The part {shown(name)} grows past 200 MB when unpacked, which no workbook needs.")
             if total > RATIO_FROM and total > MAX_RATIO * max(len(packed), 1):
                 raise BookRefused(
                     f"The part {shown(name)} unpacks to more than {MAX_RATIO} times its size, as only a trap does."
@@ -133,9 +132,7 @@ def _directory(data: bytes) -> dict[str, Member]:
                 "A part of the file is encrypted. Remove the password in your spreadsheet program and save it."
             )
         if info.compress_type not in (zipfile.ZIP_STORED, zipfile.ZIP_DEFLATED):
-            raise BookRefused(
-                "The file is packed by an unusual method. Save it again in your spreadsheet program."
-            )
+            raise BookRefused("The file is packed by an unusual method. Save it again in your spreadsheet program.")
         members[info.filename] = Member(info.filename, _data_start(data, info), info)
     _check_overlap(members)
     if sum(m.info.file_size for m in members.values()) > MAX_INFLATED:
@@ -161,15 +158,13 @@ def _data_start(data: bytes, info: zipfile.ZipInfo) -> int:
     if name.decode(encoding, "replace") != info.orig_filename:
         raise BookRefused(_DAMAGED.format(f"the part {shown(info.filename)} has two names"))
     if start + info.compress_size > len(data):
-        raise BookRefused(
-            _DAMAGED.format(f"the part {shown(info.filename)} reaches past the end of the file")
-        )
+        raise BookRefused(_DAMAGED.format(f"the part {shown(info.filename)} reaches past the end of the file"))
     return start
 
 
 def _check_overlap(members: Mapping[str, Member]) -> None:
     spans = sorted((m.info.header_offset, m.start + m.info.compress_size) for m in members.values())
-    for (_, end), (begin, _) in zip(spans, spans[1:], strict=False):
+    for (_, end), (begin, _) in pairwise(spans):
         if begin < end:
             raise BookRefused("Parts of the file lie on top of each other, as only a trap does.")
 

@@ -66,9 +66,7 @@ class Sheet:
         self.filled = bytearray()
         self.rows = array("L")
         self.row_starts = array("Q")
-        self.row_ends = array(
-            "Q"
-        )  # where the closing tag of the row begins
+        self.row_ends = array("Q")  # where the closing tag of the row begins
         self.data_end = 0  # where </sheetData> begins
         self.dimension: tuple[int, str] | None = None
         self.columns: list[tuple[int, int, str]] = []  # first, last, style

@@ -123,9 +123,7 @@ class SheetScan:
             self.formulas += 1
             self.totals.formulas += 1
             if self.totals.formulas > MAX_FORMULAS:
-                raise BookRefused(
-                    f"The workbook holds more than {MAX_FORMULAS:,} formulas.".replace(",", " ")
-                )
+                raise BookRefused(f"The workbook holds more than {MAX_FORMULAS:,} formulas.".replace(",", " "))
         elif name == _ROW:
             text = attributes.get("r")
             row = _whole(text, LAST_ROW, self.name) if text else self.row + 1
@@ -179,9 +177,7 @@ class SheetScan:
         plain = letters.isascii() and letters.isalpha() and letters.isupper() and len(letters) <= 3
         column = column_number(letters) if plain else 0
         if not 1 <= column <= LAST_COLUMN:
-            raise BookRefused(
-                f"The sheet {shown(self.name)} has a cell called {shown(reference)}, which is no cell."
-            )
+            raise BookRefused(f"The sheet {shown(self.name)} has a cell called {shown(reference)}, which is no cell.")
         self._columns[letters] = column
         return column
 
@@ -203,7 +199,7 @@ class SheetScan:
             area = (self.last_row - self.first_row + 1) * (self.last_column - self.first_column + 1)
             if area > MAX_AREA:
                 raise BookRefused(
-                    f"The sheet {shown(self.name)} has a cell far away from the others, at row {self.last_row} or column"
+                    f"The sheet {shown(self.name)} has a cell far from the others, at row {self.last_row} or column"
                     f" {self.last_column}; delete it and save the workbook again."
                 )
         if self.dimension is not None:

@@ -67,10 +67,7 @@ def _with_formulas(sheet: Sheet, formulas: Mapping[int, str | None]) -> bytes:
         edits.append(_edit(sheet, formula.row, formula.column, text, formula.stored))
         done.add(key)
     for formula in sheet.formulas:
-        if (
-            formula.kind not in ("fixed", "dynamic")
-            or formulas.get(formula.row * 16384 + formula.column - 1) is None
-        ):
+        if formula.kind not in ("fixed", "dynamic") or formulas.get(formula.row * 16384 + formula.column - 1) is None:
             continue
         for row, column, index in sheet.inside(formula.area):
             key = row * 16384 + column - 1

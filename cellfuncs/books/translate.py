@@ -50,9 +50,7 @@ class Translator:
         parts = pieces(text)
         if parts is None or depth > MAX_DEPTH:
             return "#REF!"
-        return "".join(
-            self._piece(part, parts, number, sheet, row, column, depth) for number, part in enumerate(parts)
-        )
+        return "".join(self._piece(part, parts, number, sheet, row, column, depth) for number, part in enumerate(parts))
 
     def _piece(
         self,
@@ -95,9 +93,7 @@ class Translator:
         ends = sorted((low.index(first.casefold()), low.index(last.casefold())))
         before = parts[number - 1] if number else None
         after = parts[number + 1] if number + 1 < len(parts) else None
-        alone = (
-            before and after and (before.kind == "call" or before.text == ",") and after.text in (",", ")")
-        )
+        alone = before and after and (before.kind == "call" or before.text == ",") and after.text in (",", ")")
         if not alone:
             return "#REF!"
         return ",".join(f"{quoted(name)}!{area}" for name in self.order[ends[0] : ends[1] + 1])

@@ -181,16 +181,15 @@ class _UnitSearch:
         self.lookers: dict[str, Any] = {}
         self.wanted: dict[str, set[tuple[int, int]]] = {}
         self.uses: list[_Use] = []
-        self._heads: dict[tuple[str, int, int], tuple[int, int] | None] = {}
+        self._ends: dict[tuple[str, int, int, int], tuple[int, int] | None] = {}
 
     def formula(self, sheet: str, formula: Any) -> None:
         """Note every single-cell argument of our functions in one formula."""
-        from cellfuncs.books.formulas import calls, normalised, reference
+        from cellfuncs.books.formulas import calls, reference
         from cellfuncs.books.grid import area_text
 
-        text, ours = normalised(formula.text, detect(self.functions))
         place = f"{sheet}!{area_text((formula.row, formula.column, formula.row, formula.column))}"
-        for name, arguments in calls(text) if ours else ():
+        for name, arguments in calls(formula.text):
             function = self.functions.get(name)
             if function is None:
                 continue
@@ -207,9 +206,7 @@ class _UnitSearch:
                 return part.name
         return None
 
-    def _use(
-        self, name: str, argument: Any, place: str, given: str, sheet: str | None, spot: tuple[int, int]
-    ) -> None:
+    def _use(self, name: str, argument: Any, place: str, given: str, sheet: str | None, spot: tuple[int, int]) -> None:
         if sheet is None:
             return
         looker = self._looker(sheet)
@@ -219,7 +216,8 @@ class _UnitSearch:
         beside = []
         if looker.raw(row, column + 1).is_text:
             beside.append((row, column + 1))
-        beside += [near for near in (looker.label(row, column), self._head(sheet, row, column)) if near]
+        label, head = (self._along(sheet, looker, row, column, *way) for way in ((0, 1), (1, 0)))
+        beside += [near for near in (label, head) if near]
         if beside:
             self.wanted.setdefault(sheet, set()).update(beside)
             self.uses.append(_Use(name, argument.name, argument.kind, place, given, sheet, tuple(beside)))
@@ -233,26 +231,25 @@ class _UnitSearch:
             self.lookers[sheet] = Looker(text, self.result.values.get(sheet, {}))
         return self.lookers[sheet]
 
-    def _head(self, sheet: str, row: int, column: int) -> tuple[int, int] | None:
-        """The text at the head of the column of numbers in which a cell stands."""
-        looker, heads = self._looker(sheet), self._heads
-        passed, head = [], None
-        while row > 1:
-            key = (sheet, row, column)
-            if key in heads:
-                head = heads[key]
+    def _along(self, sheet: str, looker: Any, row: int, column: int, up: int, left: int) -> tuple[int, int] | None:
+        """The text at the end of the numbers that run up, or left, from a cell: its head or label."""
+        passed, end = [], None
+        while True:
+            key = (sheet, row, column, up)
+            if key in self._ends:
+                end = self._ends[key]
                 break
             passed.append(key)
-            above = looker.raw(row - 1, column)
-            if above.is_text:
-                head = (row - 1, column)
+            row, column = row - up, column - left
+            raw = looker.raw(row, column)
+            if raw.is_text:
+                end = (row, column)
                 break
-            if not above.is_number:
+            if not raw.is_number:
                 break
-            row -= 1
         for key in passed:
-            heads[key] = head
-        return head
+            self._ends[key] = end
+        return end
 
 
 _BRACKETED = re.compile(r"[\[(]([^\[\]()]{1,40})[\])]\s*$")

@@ -11,10 +11,8 @@ PACKAGE = "http://schemas.openxmlformats.org/package/2006"
 ML = "application/vnd.openxmlformats-officedocument.spreadsheetml"
 
 
-def parts_of(
-    *sheets, names="", calc="", strings=None, extra_relations="", extra_types="", kind=f"{ML}.sheet.main+xml"
-):
-    """The parts of a workbook whose sheets hold the given sheetData (or whole part, where it begins with <?xml or <x:)."""
+def parts_of(*sheets, names="", calc="", strings=None, extra_relations="", extra_types="", kind=f"{ML}.sheet.main+xml"):
+    """The parts of a workbook whose sheets hold the given sheetData, or are the given text where it is a whole part."""
     whole = [
         s
         if s.startswith(("<?xml", "<x:", "<worksheet"))
@@ -36,13 +34,10 @@ def parts_of(
         f'<Override PartName="/xl/workbook.xml" ContentType="{kind}"/>{types}{extra_types}</Types>',
         "_rels/.rels": f'<Relationships xmlns="{PACKAGE}/relationships"><Relationship Id="rId1"'
         f' Type="{RELATIONS}/officeDocument" Target="xl/workbook.xml"/></Relationships>',
-        "xl/workbook.xml": f'<workbook xmlns="{MAIN}" xmlns:r="{RELATIONS}"><sheets>{rows}</sheets>{names}{calc}</workbook>',
+        "xl/workbook.xml": f'<workbook xmlns="{MAIN}" xmlns:r="{RELATIONS}">'
+        f"<sheets>{rows}</sheets>{names}{calc}</workbook>",
         "xl/_rels/workbook.xml.rels": f'<Relationships xmlns="{PACKAGE}/relationships">{relations}{extra_relations}'
-        + (
-            f'<Relationship Id="rIdS" Type="{RELATIONS}/sharedStrings" Target="sharedStrings.xml"/>'
-            if strings
-            else ""
-        )
+        + (f'<Relationship Id="rIdS" Type="{RELATIONS}/sharedStrings" Target="sharedStrings.xml"/>' if strings else "")
         + "</Relationships>",
     }
     for number, text in enumerate(whole, 1):
@@ -90,9 +85,7 @@ def run():
         book = inspect(data)
         result = evaluate(book, functions)
         changed = {
-            book.sheet(name).part: set_values(
-                sheet, result.values.get(name, {}), result.extents.get(name, {})
-            )
+            book.sheet(name).part: set_values(sheet, result.values.get(name, {}), result.extents.get(name, {}))
             for name, sheet in result.sheets.items()
         }
         return result, copy_with(book.package, changed)

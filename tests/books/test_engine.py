@@ -31,9 +31,7 @@ def cells(**formulas):
         rows.setdefault(int(place[len(letters) :]), []).append(
             (len(letters), letters, f'<c r="{place}" {attributes}>{inner}</c>')
         )
-    return "".join(
-        f'<row r="{r}">' + "".join(c for *_, c in sorted(row)) + "</row>" for r, row in sorted(rows.items())
-    )
+    return "".join(f'<row r="{r}">' + "".join(c for *_, c in sorted(row)) + "</row>" for r, row in sorted(rows.items()))
 
 
 def values(result, sheet="S1"):
@@ -72,9 +70,7 @@ def test_stored_values_are_the_truth_and_differences_are_told(make):
 
 
 def test_what_changes_by_itself_is_not_compared(make):
-    data = make(
-        cells(A1="<f>RAND()</f><v>0.5</v>", A2="<f>A1+TODAY()</f><v>1</v>", B1="<f>CF_DOUBLE(A1)</f><v>1</v>")
-    )
+    data = make(cells(A1="<f>RAND()</f><v>0.5</v>", A2="<f>A1+TODAY()</f><v>1</v>", B1="<f>CF_DOUBLE(A1)</f><v>1</v>"))
     assert evaluate(data, OURS).warnings == []
 
 
@@ -152,9 +148,7 @@ def test_prefixed_sheet(make):
 def test_date_system(parts_of, zipped):
     parts = parts_of(cells(A1="<f>DATE(1904,1,2)</f>", B1="<f>CF_DOUBLE(A1)</f>"))
     assert values(evaluate(zipped(parts), OURS)) == {"A1": 1463.0, "B1": 2926.0}
-    parts["xl/workbook.xml"] = parts["xl/workbook.xml"].replace(
-        "<sheets>", '<workbookPr date1904="1"/><sheets>'
-    )
+    parts["xl/workbook.xml"] = parts["xl/workbook.xml"].replace("<sheets>", '<workbookPr date1904="1"/><sheets>')
     assert values(evaluate(zipped(parts), OURS)) == {"A1": 1.0, "B1": 2.0}
 
 
@@ -164,9 +158,7 @@ DYNAMIC = 'cm="1"'
 
 
 def test_plain_formula_is_one_value(make):
-    data = make(
-        cells(A1="<f>CF_TABLE(3)</f><v>0</v>", A2="<f>ROWS(CF_TABLE(3))</f><v>0</v>", A3="<f>A2:A9*2</f>")
-    )
+    data = make(cells(A1="<f>CF_TABLE(3)</f><v>0</v>", A2="<f>ROWS(CF_TABLE(3))</f><v>0</v>", A3="<f>A2:A9*2</f>"))
     result = evaluate(data, OURS)
     assert values(result)["A1"] == "r0" and values(result)["A2"] == 3.0
     assert result.extents == {}
@@ -207,11 +199,7 @@ def test_dynamic_array_grows_and_shrinks(make, run):
     result, data = run(copy_with(inspect(data).package, {"xl/worksheets/sheet1.xml": smaller}), OURS)
     assert result.extents == {"S1": {(1, 3): (1, 3, 1, 4)}}
     found = values(result)
-    assert (
-        [found[c] for c in ("C2", "D2", "C3", "D3")] == [None] * 4
-        and found["F1"] == 0.1
-        and found["F2"] == 0.0
-    )
+    assert [found[c] for c in ("C2", "D2", "C3", "D3")] == [None] * 4 and found["F1"] == 0.1 and found["F2"] == 0.0
     sheet = read_sheet(inspect(data), "S1")
     assert all(sheet.value(row, column) == (None, None) for row in (2, 3) for column in (3, 4))
 
@@ -228,10 +216,7 @@ def test_dynamic_array_without_room(make, run):
     )
     result, new = run(data, OURS)
     found = values(result)
-    assert (
-        found["A1"]
-        == "! table: needs 3 rows and 2 columns, but B3 is not empty; clear it or move the formula"
-    )
+    assert found["A1"] == "! table: needs 3 rows and 2 columns, but B3 is not empty; clear it or move the formula"
     assert [found[c] for c in ("B1", "A2", "B2")] == [None, None, None]
     assert read_sheet(inspect(new), "S1").value(3, 2) == (None, "77")
     assert result.extents == {"S1": {(1, 1): (1, 1, 1, 1)}}
@@ -268,9 +253,7 @@ def test_fixed_array_is_cut_or_padded(make):
 
 
 def test_data_table_is_left(make):
-    data = make(
-        cells(A1='<f t="dataTable" ref="A1:A2" r1="B1" dt2D="0"/><v>5</v>', B1="<f>CF_DOUBLE(A1)</f>")
-    )
+    data = make(cells(A1='<f t="dataTable" ref="A1:A2" r1="B1" dt2D="0"/><v>5</v>', B1="<f>CF_DOUBLE(A1)</f>"))
     assert values(evaluate(data, OURS)) == {"B1": 10.0}
 
 
@@ -298,7 +281,8 @@ def test_table_references(parts_of, zipped):
 
     parts["xl/tables/table1.xml"] = (
         f'<table xmlns="{MAIN}" id="1" name="Flow" displayName="Flow" ref="A1:B4" totalsRowCount="1">'
-        '<tableColumns count="2"><tableColumn id="1" name="speed"/><tableColumn id="2" name="x [m]"/></tableColumns></table>'
+        '<tableColumns count="2"><tableColumn id="1" name="speed"/><tableColumn id="2" name="x [m]"/></tableColumns>'
+        "</table>"
     )
     parts["xl/worksheets/_rels/sheet1.xml.rels"] = (
         '<Relationships xmlns="http://schemas.openxmlformats.org/package/2006/relationships"><Relationship Id="rId1"'
@@ -323,11 +307,13 @@ def linked(parts_of, zipped, **formulas):
         cells(**formulas),
         names='<externalReferences><externalReference r:id="rIdX"/></externalReferences>'
         '<definedNames><definedName name="far">[1]Data!$B$1</definedName></definedNames>',
-        extra_relations=f'<Relationship Id="rIdX" Type="{RELATIONS}/externalLink" Target="externalLinks/externalLink1.xml"/>',
+        extra_relations=f'<Relationship Id="rIdX" Type="{RELATIONS}/externalLink"'
+        ' Target="externalLinks/externalLink1.xml"/>',
     )
     parts["xl/externalLinks/externalLink1.xml"] = (
-        f'<externalLink xmlns="{MAIN}" xmlns:r="{RELATIONS}"><externalBook r:id="rId1"><sheetNames><sheetName val="Other"/>'
-        '<sheetName val="Data"/></sheetNames><definedNames><definedName name="speed" refersTo="=Data!$A$1"/></definedNames>'
+        f'<externalLink xmlns="{MAIN}" xmlns:r="{RELATIONS}"><externalBook r:id="rId1"><sheetNames>'
+        '<sheetName val="Other"/><sheetName val="Data"/></sheetNames><definedNames>'
+        '<definedName name="speed" refersTo="=Data!$A$1"/></definedNames>'
         '<sheetDataSet><sheetData sheetId="1"><row r="1"><cell r="A1"><v>5</v></cell><cell r="B1"><v>-1.5</v></cell>'
         '<cell r="C1" t="str"><v>a &amp; b</v></cell></row><row r="2"><cell r="A2" t="b"><v>1</v></cell>'
         '<cell r="B2" t="e"><v>#N/A</v></cell></row></sheetData></sheetDataSet></externalBook></externalLink>'

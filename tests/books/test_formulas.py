@@ -45,9 +45,7 @@ def test_prefixes(written):
     assert ours == {"CF_X"}
 
 
-@pytest.mark.parametrize(
-    "name", ["CF_XX", "XCF_X", "CF_X.A", "SUM", "[1]!OTHER", "ERF.PRECISE", "get", "CF_Y"]
-)
+@pytest.mark.parametrize("name", ["CF_XX", "XCF_X", "CF_X.A", "SUM", "[1]!OTHER", "ERF.PRECISE", "get", "CF_Y"])
 def test_other_names_stay(name):
     assert canonical(name, is_ours) is None
     assert normalised(f"{name}(1)", is_ours) == (f"{name}(1)", frozenset())

@@ -1,5 +1,6 @@
 """The gate: what passes, and that each hostile or foreign file ends in one sentence, fast and small."""
 
+import contextlib
 import io
 import random
 import struct
@@ -52,9 +53,7 @@ def test_description(make):
 
 def test_date_system_and_macro_workbook(parts_of, zipped):
     parts = parts_of(CELLS, kind="application/vnd.ms-excel.sheet.macroEnabled.main+xml")
-    parts["xl/workbook.xml"] = parts["xl/workbook.xml"].replace(
-        "<sheets>", '<workbookPr date1904="1"/><sheets>'
-    )
+    parts["xl/workbook.xml"] = parts["xl/workbook.xml"].replace("<sheets>", '<workbookPr date1904="1"/><sheets>')
     parts["xl/vbaProject.bin"] = b"\xd0\xcf\x11\xe0 macros"
     book = inspect(zipped(parts))
     assert book.date_1904 and book.kind == "xlsm"
@@ -67,7 +66,8 @@ def test_path_and_bytes_agree(make, tmp_path):
 
 
 def test_prefixed_sheet_passes(make):
-    sheet = f'<x:worksheet xmlns:x="{scans.MAIN}"><x:sheetData><x:row><x:c><x:v>1</x:v></x:c></x:row></x:sheetData></x:worksheet>'
+    rows = "<x:sheetData><x:row><x:c><x:v>1</x:v></x:c></x:row></x:sheetData>"
+    sheet = f'<x:worksheet xmlns:x="{scans.MAIN}">{rows}</x:worksheet>'
     assert inspect(make(sheet)).sheets[0].cells == 1
 
 
@@ -145,10 +145,8 @@ def test_any_damaged_byte_is_refused_or_harmless(make):
     """Flipping a byte anywhere never raises anything but BookRefused."""
     data = make(CELLS)
     for at in range(4, len(data), 7):
-        try:
+        with contextlib.suppress(BookRefused):
             inspect(data[:at] + bytes([data[at] ^ 0xFF]) + data[at + 1 :])
-        except BookRefused:
-            pass
 
 
 def test_duplicate_entries(parts_of):
@@ -167,9 +165,7 @@ def test_duplicate_entries(parts_of):
     assert "twice" in refused(out.getvalue())
 
 
-@pytest.mark.parametrize(
-    "name", ["../evil.xml", "xl/../../evil.xml", "/etc/evil", "C:/evil.xml", "..\\evil.xml"]
-)
+@pytest.mark.parametrize("name", ["../evil.xml", "xl/../../evil.xml", "/etc/evil", "C:/evil.xml", "..\\evil.xml"])
 def test_names_that_point_outside(parts_of, zipped, name):
     assert "outside" in refused(zipped({**parts_of(CELLS), name: "x"}))
 
@@ -275,9 +271,7 @@ def test_time(make, monkeypatch):
     assert "too long" in refused(make(CELLS))
 
 
-@pytest.mark.parametrize(
-    "name", ["xl/workbook.xml", "xl/worksheets/sheet1.xml", "_rels/.rels", "[Content_Types].xml"]
-)
+@pytest.mark.parametrize("name", ["xl/workbook.xml", "xl/worksheets/sheet1.xml", "_rels/.rels", "[Content_Types].xml"])
 def test_broken_and_missing_parts(parts_of, zipped, name):
     parts = parts_of(CELLS)
     assert "well-formed" in refused(zipped(edited(parts, name, parts[name][:-5])))
@@ -301,19 +295,21 @@ def test_no_sheets(parts_of, zipped):
 
 
 def test_merge_over_the_whole_sheet(make):
-    sheet = f'<worksheet xmlns="{scans.MAIN}"><sheetData/><mergeCells><mergeCell ref="A1:XFD1048576"/></mergeCells></worksheet>'
+    merges = '<mergeCells><mergeCell ref="A1:XFD1048576"/></mergeCells>'
+    sheet = f'<worksheet xmlns="{scans.MAIN}"><sheetData/>{merges}</worksheet>'
     assert "merges" in refused(make(sheet))
 
 
 def test_million_row_dimension(make):
     for claimed in ("A1:XFD1048576", "A1:A1048576", "A1:C1000000"):
-        sheet = f'<worksheet xmlns="{scans.MAIN}"><dimension ref="{claimed}"/><sheetData>{CELLS}</sheetData></worksheet>'
+        body = f'<dimension ref="{claimed}"/><sheetData>{CELLS}</sheetData>'
+        sheet = f'<worksheet xmlns="{scans.MAIN}">{body}</worksheet>'
         assert "says it reaches" in refused(make(sheet))
 
 
 def test_far_cell(make):
     far = CELLS + '<row r="1048576"><c r="XFD1048576"><v>1</v></c></row>'
-    assert "far away" in refused(make(far))
+    assert "far from" in refused(make(far))
     corner_only = '<row r="1048576"><c r="XFD1048576"><v>1</v></c></row>'
     assert inspect(make(corner_only)).sheets[0].last_row == 1048576
 

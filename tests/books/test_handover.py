@@ -1,4 +1,4 @@
-"""What the engine hands to a function and makes of its answers, recorded, so that a change of the library is noticed."""
+"""What the engine hands to a function and makes of its answers, so that a change of the library is noticed."""
 
 import datetime
 

@@ -19,9 +19,7 @@ def _touch(a, b):
 
 
 @settings(max_examples=200)
-@given(
-    st.lists(st.tuples(st.lists(_areas(), max_size=3), _areas()), min_size=1, max_size=12), st.integers(0, 11)
-)
+@given(st.lists(st.tuples(st.lists(_areas(), max_size=3), _areas()), min_size=1, max_size=12), st.integers(0, 11))
 def test_reach_is_that_of_a_plain_walk(formulas, first):
     reads = [r for r, _ in formulas]
     writes = [[w] for _, w in formulas]

@@ -167,9 +167,7 @@ def test_column_with_head_and_labels(tmp_path):
         sheet.write_formula(row, 3, f"=CF_PRODUCT(C{row + 1},1)")
     book.close()
     (area,) = recalc(path).areas
-    assert (
-        area.range == "C2:D61" and area.heads == ("product", "second") and area.row_labels[:2] == ("p1", "p2")
-    )
+    assert area.range == "C2:D61" and area.heads == ("product", "second") and area.row_labels[:2] == ("p1", "p2")
     assert area.values[59] == (120.0, 120.0)
     text = embedded.render_areas([area])
     assert text.splitlines()[1].split() == ["product", "second"] and "and 20 more rows" in text
@@ -263,12 +261,7 @@ def test_refusals_pass_through(tmp_path):
 def test_progress_is_told(rich):
     told = []
     recalc(rich, progress=told.append)
-    assert (
-        told[0] == "examining the file"
-        and "reading" in told
-        and "calculating" in told
-        and told[-1] == "writing"
-    )
+    assert told[0] == "examining the file" and "reading" in told and "calculating" in told and told[-1] == "writing"
 
 
 # -- bare numbers beside a unit ------------------------------------------------------------------------
