@@ -68,11 +68,18 @@ class Looker:
         return found
 
     def label(self, row: int, column: int) -> Spot | None:
-        """The nearest text left of a cell."""
-        for step in range(1, LOOK_LEFT + 1):
-            if self.raw(row, column - step).is_text:
-                return row, column - step
-        return None
+        """The label of a cell: the text at the left end of the cells beside it, else the number next to it, else
+        the nearest text past a gap."""
+        near = [(row, column - step) for step in range(1, LOOK_LEFT + 1)]
+        for spot in near:
+            raw = self.raw(*spot)
+            if raw.is_text:
+                return spot
+            if not raw.is_number:
+                break
+        if self.raw(*near[0]).is_number:
+            return near[0]
+        return next((spot for spot in near if self.raw(*spot).is_text), None)
 
     def head(self, row: int, column: int) -> Spot | None:
         """The nearest text above a cell."""
@@ -101,6 +108,9 @@ def texts(
                 found[name, spot] = strings.get(int(raw.text), "")
             elif raw.is_text:
                 found[name, spot] = str(decoded("str", raw.text))
+            elif raw.is_number:
+                number = decoded("n", raw.text)
+                found[name, spot] = f"{number:.6g}" if isinstance(number, float) else str(number)
     return found
 
 

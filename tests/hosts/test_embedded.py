@@ -173,6 +173,20 @@ def test_column_with_head_and_labels(tmp_path):
     assert text.splitlines()[1].split() == ["product", "second"] and "and 20 more rows" in text
 
 
+def test_numbers_as_labels(tmp_path):
+    """A sweep: the varied number stands left of the answer, other things past a gap."""
+    path = tmp_path / "a.xlsx"
+    book = xlsxwriter.Workbook(path)
+    sheet = book.add_worksheet()
+    for row in range(3):
+        sheet.write(row, 0, "K")
+        sheet.write(row, 2, row / 4)
+        sheet.write_formula(row, 3, f"=CF_PRODUCT(C{row + 1},2)")
+    book.close()
+    (area,) = recalc(path).areas
+    assert area.row_labels == ("0", "0.25", "0.5")
+
+
 def test_no_formulas_of_ours(tmp_path):
     path = tmp_path / "a.xlsx"
     book = xlsxwriter.Workbook(path)
