@@ -1,9 +1,9 @@
 """The kinds of quantity (``data/kinds.csv``)."""
 
 import csv
-from dataclasses import dataclass
 from functools import cache
 from pathlib import Path
+from typing import NamedTuple
 
 from ..errors import UnknownName
 from .texts import shortened
@@ -15,8 +15,7 @@ NO_DIMENSION = (0,) * len(BASE)
 Dimension = tuple[int, ...]
 
 
-@dataclass(frozen=True, slots=True)
-class Kind:
+class Kind(NamedTuple):
     """One kind of quantity.
 
     ``minimum`` is the least value in SI that can be (None: any), ``zero_ok`` whether zero can be.
@@ -35,8 +34,7 @@ class Kind:
     source: str
 
 
-@dataclass(frozen=True, slots=True)
-class Unit:
+class Unit(NamedTuple):
     """A unit text as read for a kind: SI = value * factor + offset; ``understood`` is its plain form."""
 
     factor: float

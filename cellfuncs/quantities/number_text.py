@@ -2,7 +2,7 @@
 
 import math
 import re
-from dataclasses import dataclass
+from typing import NamedTuple
 
 from ..errors import NumberRefused
 from .texts import check_characters, shortened
@@ -46,8 +46,7 @@ _PLUS_MINUS = re.compile(r" ?(?:±|\+ ?/ ?-|\+-) ?")
 _RANGE = re.compile(r" ?(?:-|\.\.+|…|to\b|~) ?\d", re.ASCII)
 
 
-@dataclass(frozen=True, slots=True)
-class Reading:
+class Reading(NamedTuple):
     """A number, its ± (None where there is none), and the text of its unit (may be empty)."""
 
     value: float
