@@ -14,6 +14,7 @@ import tempfile
 import time
 from collections.abc import Callable, Sequence
 from dataclasses import dataclass
+from importlib import import_module
 from pathlib import Path
 
 ROOT = Path(__file__).resolve().parent.parent
@@ -63,9 +64,7 @@ def best(works: Sequence[Callable[[], object]], rounds: int) -> list[float]:
 
 
 def functions() -> dict:
-    from cellfuncs.cells import catalogue
-
-    return catalogue.functions()
+    return import_module("cellfuncs.cells.catalogue").functions()
 
 
 def sound(answer: object) -> object:
@@ -167,7 +166,7 @@ def own_cost() -> Row:
     times = []
     for _ in range(7):
         fresh()
-        times.append(best([ours, ours, bare], 1)  # the second time the texts are known)
+        times.append(best([ours, ours, bare], 1))  # the second time the texts are known
     first, second, formula = (min(column) / number for column in zip(*times, strict=True))
     note = f"for 4 texts; {1e6 * (second - formula):.1f} µs when the texts come again"
     return Row("a cell's own cost, unit texts seen before", 1e6 * (first - formula), 15, "µs", note)
@@ -193,9 +192,7 @@ def embedded_cells() -> Row:
         def in_engine(known: dict) -> Callable[[], object]:
             return lambda: _engine_alone(book, known["CF_REYNOLDS"].call, number)
 
-        host, host_bare, engine, engine_bare = best(
-            [in_host(ours), in_host(bare), in_engine(ours), in_engine(bare)], 3
-        )
+        host, host_bare, engine, engine_bare = best([in_host(ours), in_host(bare), in_engine(ours), in_engine(bare)], 3)
     cells = [cell for area in results[0].areas for row in area.values for cell in row]
     if len(cells) != number:
         raise RuntimeError(f"{len(cells)} cells were calculated")
@@ -281,10 +278,7 @@ def term_table() -> Row:
 
     def block() -> list[list[object]]:
         velocity = 1.2 + next(counter) * 1e-4
-        return [
-            [label, velocity if label == "velocity" else value, unit]
-            for label, value, unit in WATER_IN_A_DUCT
-        ]
+        return [[label, velocity if label == "velocity" else value, unit] for label, value, unit in WATER_IN_A_DUCT]
 
     def changing() -> None:
         for _ in range(number):
@@ -312,19 +306,12 @@ def hostile_unit_texts() -> list[str]:
     texts = {"", " " * 40, "9**9**9", "m^" * 20, "(" * 40, "(" * 20 + ")" * 20, "/" * 40, "^" * 40, "·" * 40}
     texts |= {(unit + joint) * (40 // len(unit + joint)) for unit in units for joint in joints}
     texts |= {(joint + unit) * (40 // len(unit + joint)) for unit in units for joint in joints}
-    texts |= {
-        f"{unit}^{exponent}" for unit in units for exponent in ("999999999", "-4", "1e308", "4.5", "³⁴⁵⁶⁷")
-    }
+    texts |= {f"{unit}^{exponent}" for unit in units for exponent in ("999999999", "-4", "1e308", "4.5", "³⁴⁵⁶⁷")}
     texts |= {unit * (40 // len(unit)) for unit in units}
     texts |= {
-        f"{a}{b}/{c}{d}{a}"
-        for a, b, c, d in itertools.product(units[:7], ("-", "·", " "), units[7:], joints[:5])
+        f"{a}{b}/{c}{d}{a}" for a, b, c, d in itertools.product(units[:7], ("-", "·", " "), units[7:], joints[:5])
     }
-    texts |= {
-        a + b
-        for a in ("kilo", "mega", "milli", "k", "M", "µ", "da")
-        for b in ("gram", "btu", "calorie", "xyz")
-    }
+    texts |= {a + b for a in ("kilo", "mega", "milli", "k", "M", "µ", "da") for b in ("gram", "btu", "calorie", "xyz")}
     texts |= {sign * 40 for sign in ("\u200b", "\u202e", "\u0301", "ﬃ", "㎏", "Ａ", "x", "mM", "9")}
     return sorted(text[:40] for text in texts)
 
