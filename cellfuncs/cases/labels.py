@@ -95,14 +95,22 @@ def _index() -> tuple[dict[str, list[str]], dict[str, list[str]], dict[str, list
     return names, exact, loose
 
 
+@cache
 def split_unit(label: str) -> tuple[str, str]:
-    """``Tube ID (mm)`` -> ``Tube ID``, ``mm``; a bracket that is no unit is left off the label."""
+    """``Tube ID (mm)`` -> ``Tube ID``, ``mm``; a bracket that holds no unit is left off the label.
+
+    ``Diameter (D)`` has its symbol in the bracket, although D alone might be a day.
+    """
     found = _BRACKETED.search(label)
     if not found or found.start() == 0:
         return label, ""
     inside = found.group(1).strip()
     rest = label[: found.start()].strip().rstrip(",")
-    return rest, inside if inside and quantities.kinds_for(inside) else ""
+    entries = [dictionary()[key] for key in candidates(rest)]
+    if any(entry.kind and quantities.unit_fits(inside, entry.kind) for entry in entries):
+        return rest, inside
+    symbol = any(_symbol(inside) in map(_symbol, entry.symbols) for entry in entries)
+    return rest, "" if symbol or not inside or not quantities.kinds_for(inside) else inside
 
 
 @cache
