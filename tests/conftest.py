@@ -1,8 +1,13 @@
 """What the tests share: calling a cell function, and the case blocks they vary."""
 
 import pytest
+from hypothesis import settings
 
 from cellfuncs.cells import catalogue
+
+# a loaded machine is no failure: speed is measured by the bench, not by the tests
+settings.register_profile("cellfuncs", deadline=None)
+settings.load_profile("cellfuncs")
 
 
 @pytest.fixture(scope="session")

@@ -80,7 +80,7 @@ def _is_head(value: Any, unit: Any) -> bool:
 
 
 def _flow_kind(rows: list[Row]) -> str:
-    for number, label, value, unit, _ in rows:
+    for _number, label, value, unit, _ in rows:
         if label is None or _is_head(value, unit):
             continue
         if "flow_kind" in labels.candidates(label) and isinstance(value, str) and _is_choice("flow_kind", value):

@@ -84,9 +84,7 @@ def clean(text: str) -> str:
     if len(text) > LONGEST:
         raise UnitRefused(f'"{shortened(text, 30)}" has {len(text)} characters; a unit has at most {LONGEST}')
     check_characters(text, UnitRefused)
-    plain = _SUPERSCRIPT.sub(
-        lambda found: "^" + found.group().translate(_SUPERSCRIPTS), text.translate(_SIGNS)
-    )
+    plain = _SUPERSCRIPT.sub(lambda found: "^" + found.group().translate(_SUPERSCRIPTS), text.translate(_SIGNS))
     plain = unicodedata.normalize("NFKC", plain).translate(_SIGNS).replace("**", "^")
     if len(plain) > 2 * LONGEST:
         raise UnitRefused(f'"{shortened(text, 30)}" is too long for a unit')

@@ -3,6 +3,7 @@ conversion is a multiplication. What reads the text is imported with the first o
 """
 
 import math
+import re
 from typing import Any
 
 from ..errors import NumberRefused, OutOfRange, UnitRefused
@@ -88,6 +89,11 @@ def convert(value: Any, unit_text: str, wanted_text: str) -> Any:
     return value * factor + offset
 
 
+_PLAIN = re.compile(r"[+-]?\d{1,15}(?:\.\d{1,15})?(?![\d.,])", re.ASCII)
+_MOST_SEEN = 4096
+_seen: dict[tuple[str, str], tuple[float, float]] = {}  # what stood behind a plain number -> its factor and offset
+
+
 def read_quantity(text: str, kind: str, atmosphere: float = STANDARD_ATMOSPHERE) -> float:
     """A number with its unit as SI; without a unit the number is in SI already.
 
@@ -98,9 +104,19 @@ def read_quantity(text: str, kind: str, atmosphere: float = STANDARD_ATMOSPHERE)
     UnitRefused
         When the unit is not one of the kind.
     """
+    plain = _PLAIN.match(text)
+    tail = text[plain.end() :] if plain else ""
+    if atmosphere == STANDARD_ATMOSPHERE:
+        seen = _seen.get((tail, kind))
+        if seen is not None:
+            return float(plain[0]) * seen[0] + seen[1]
     reading = read_number(text)
     if reading.unit_text:
         unit = read_unit(reading.unit_text, kind, atmosphere)
+        if tail.strip() == reading.unit_text and atmosphere == STANDARD_ATMOSPHERE:
+            if len(_seen) >= _MOST_SEEN:
+                _seen.clear()
+            _seen[tail, kind] = unit.factor, unit.offset
         return reading.value * unit.factor + unit.offset
     if kind == "temperature" and reading.value < COLDEST_BARE:
         number = f"{reading.value:g}"
@@ -134,9 +150,7 @@ def check_physical(si: Any, kind: str) -> None:
         raise OutOfRange(f"{a(wanted.words)} of 0 cannot be")
 
 
-_PINT_BASE = dict(
-    zip(BASE, ("meter", "kilogram", "second", "kelvin", "mole", "ampere", "radian"), strict=True)
-)
+_PINT_BASE = dict(zip(BASE, ("meter", "kilogram", "second", "kelvin", "mole", "ampere", "radian"), strict=True))
 _PINT_ANGLES = ("radian", "degree", "turn", "grade", "revolutions_per_minute", "revolutions_per_second")
 
 
@@ -157,9 +171,7 @@ def from_pint(quantity: Any, kind: str) -> Any:
     offset = names and names[0] in ("degree_Celsius", "degree_Fahrenheit") and len(names) == 1
     if offset and kind != "temperature":
         raise UnitRefused(f'"{shown}" is a temperature, not {a(wanted.words)}; {instance}')
-    powers = [
-        f"{_PINT_BASE[base]}**{power}" for base, power in zip(BASE, wanted.dimension, strict=True) if power
-    ]
+    powers = [f"{_PINT_BASE[base]}**{power}" for base, power in zip(BASE, wanted.dimension, strict=True) if power]
     if kind in ("frequency", "rotational_frequency") and any(name in _PINT_ANGLES for name in names):
         powers = ["turn", "second**-1"]
     try:

@@ -208,12 +208,7 @@ def _misfit(text: str, reading: _Reading, wanted: Kind) -> str:
     shown = f'"{shortened(text)}"'
     kinds = _kinds_of(reading)
     instance = f"write for instance {wanted.example}"
-    if (
-        wanted.name == "pressure_gauge"
-        and not reading.reference
-        and kinds
-        and _is_pressure(reading.meanings[0])
-    ):
+    if wanted.name == "pressure_gauge" and not reading.reference and kinds and _is_pressure(reading.meanings[0]):
         return f"{shown} does not say that it is gauge; {instance}"
     if wanted.name == "angular_velocity" and reading.meanings[0].dimension == _PER_SECOND:
         return f"{shown} may be radians or turns in that time; write rad/s or rpm"
@@ -251,9 +246,7 @@ def _kinds_of(reading: _Reading) -> tuple[str, ...]:
 def _usual_units(kind: str) -> frozenset[str]:
     """The understood forms of a kind's usual units."""
     return frozenset(
-        unit.understood
-        for text in KINDS[kind].units
-        for unit in _fits(_read(text), KINDS[kind], _ANY_ATMOSPHERE)
+        unit.understood for text in KINDS[kind].units for unit in _fits(_read(text), KINDS[kind], _ANY_ATMOSPHERE)
     )
 
 

@@ -71,9 +71,7 @@ def read_number(text: str) -> Reading:
         raise NumberRefused("empty; write a number")
     shown = shortened(stripped, 30)
     if len(stripped) > LONGEST:
-        raise NumberRefused(
-            f'"{shown}" has {len(stripped)} characters; a number with its unit has at most {LONGEST}'
-        )
+        raise NumberRefused(f'"{shown}" has {len(stripped)} characters; a number with its unit has at most {LONGEST}')
     check_characters(stripped.replace("\t", " "), NumberRefused)
     plain = stripped.translate(_SIGNS)
     if plain[0] == "(" and ")" in plain:

@@ -20,6 +20,4 @@ def check_characters(text: str, refusal: type[CellfuncsError]) -> None:
     """Refuse control, direction and unassigned characters, which a cell can hide."""
     for character in text:
         if unicodedata.category(character) in ("Cc", "Cf", "Cs", "Co", "Cn"):
-            raise refusal(
-                f'"{shortened(text)}" holds a hidden character (U+{ord(character):04X}); type it anew'
-            )
+            raise refusal(f'"{shortened(text)}" holds a hidden character (U+{ord(character):04X}); type it anew')

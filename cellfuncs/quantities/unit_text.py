@@ -138,8 +138,7 @@ def meanings(text: str) -> list[Meaning]:
         if len(pieces) > MOST_FACTORS:
             raise UnitRefused(f'"{shortened(text)}" has more than {MOST_FACTORS} factors')
         dimension = tuple(
-            sum(piece.atom.dimension[place] * power for piece, power in pieces)
-            for place in range(len(NO_DIMENSION))
+            sum(piece.atom.dimension[place] * power for piece, power in pieces) for place in range(len(NO_DIMENSION))
         )
         found.append(Meaning(dimension, max(rank for rank, _ in combination), tuple(pieces), divisor))
     if not found:
@@ -201,9 +200,7 @@ def _factors(plain: str, text: str) -> tuple[list[Factor], int]:
                 raise UnitRefused(f'"{shown}" has a bracket too many, or an empty one')
             if token["group_power"]:
                 power = _power(token["group_power"], shown)
-                factors[group_start:] = [
-                    Factor(f.word, f.power, f.side * power) for f in factors[group_start:]
-                ]
+                factors[group_start:] = [Factor(f.word, f.power, f.side * power) for f in factors[group_start:]]
             group_start, outer, below = -1, 1, outer_below
             joined = False
         else:

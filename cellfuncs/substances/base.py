@@ -1,13 +1,18 @@
 """What every substance can say: its properties, their source, range and phase."""
 
-import math
-from dataclasses import dataclass
+from __future__ import annotations
 
-import numpy as np
+import math
+from abc import ABC, abstractmethod
+from dataclasses import dataclass
+from typing import TYPE_CHECKING
 
 from ..errors import CellfuncsError, NoModel, OutOfRange, UnknownName
 from .properties import PROPERTIES, property_key
 from .texts import kelvin, nearest, pascal, shown
+
+if TYPE_CHECKING:
+    import numpy as np
 
 ATMOSPHERE = 101325.0  # [Pa] the pressure meant when none is given
 PLAUSIBLE_PRESSURE = 1000.0  # [Pa] below this a slip of the unit is likelier than a vacuum
@@ -41,13 +46,11 @@ def phase_word(text: str | None) -> str | None:
         return None
     word = PHASES.get(str(text).strip().casefold())
     if word is None:
-        raise UnknownName(
-            f"{shown(str(text))} is no phase; write liquid or vapour{nearest(str(text), PHASES)}"
-        )
+        raise UnknownName(f"{shown(str(text))} is no phase; write liquid or vapour{nearest(str(text), PHASES)}")
     return word
 
 
-class Substance:
+class Substance(ABC):
     """Base of all substances. All numbers are plain SI floats.
 
     `name` is the readable name, `family` one of "pure fluid", "solution", "liquid", "thermal oil",
@@ -57,14 +60,12 @@ class Substance:
     name: str
     family: str
 
-    def get(
-        self, what: str, temperature: float, pressure: float | None = None, phase: str | None = None
-    ) -> float:
+    @abstractmethod
+    def get(self, what: str, temperature: float, pressure: float | None = None, phase: str | None = None) -> float:
         """Return property `what` [SI] at temperature [K] and pressure [Pa, 101 325 when None].
 
         Raises UnknownName (property), OutOfRange (state), NoModel (no published model for this substance).
         """
-        raise NotImplementedError
 
     def get_many(self, whats, temperature, pressure=None, phase: str | None = None, errors: str = "raise"):
         """Return the properties `whats` for a column of states: array (len(whats), n).
@@ -76,6 +77,8 @@ class Substance:
         errors : "raise" stops at the first bad point and names it (counted from 1); "collect" returns
             (array with NaN at bad points, list of (index from 0, error)).
         """
+        import numpy as np
+
         keys = tuple(property_key(what) for what in whats)
         temperatures, pressures = _columns(temperature, pressure)
         values = np.empty((len(keys), len(temperatures)))
@@ -86,9 +89,7 @@ class Substance:
         """Fill `values` point by point; return the faults in order of their index."""
         get = self.get
         faults = []
-        for index, (temperature, pressure) in enumerate(
-            zip(temperatures.tolist(), pressures.tolist(), strict=True)
-        ):
+        for index, (temperature, pressure) in enumerate(zip(temperatures.tolist(), pressures.tolist(), strict=True)):
             try:
                 values[:, index] = [get(key, temperature, pressure, phase) for key in keys]
             except CellfuncsError as error:
@@ -96,9 +97,9 @@ class Substance:
                 faults.append((index, error))
         return faults
 
+    @abstractmethod
     def phase(self, temperature: float, pressure: float | None = None) -> str:
         """Return "liquid", "gas" or "supercritical" at temperature [K] and pressure [Pa]."""
-        raise NotImplementedError
 
     def saturation(
         self,
@@ -110,17 +111,17 @@ class Substance:
         """Return property `what` [SI] of the saturated phase at a temperature [K] or a pressure [Pa]."""
         raise NoModel(f"{self.name} has no saturation line here")
 
+    @abstractmethod
     def source(self, what: str) -> str:
         """Return the bibliography key (several parted by ";") behind property `what`."""
-        raise NotImplementedError
 
     def note(self, what: str) -> str:
         """Return what a reader of this property must know ("" when nothing): estimates, reference states."""
         return ""
 
+    @abstractmethod
     def limits(self) -> Limits:
         """Return the range in which this substance answers."""
-        raise NotImplementedError
 
     def __repr__(self) -> str:
         return f"<{self.family}: {self.name}>"
@@ -130,6 +131,8 @@ class Substance:
 
 
 def _columns(temperature, pressure) -> tuple[np.ndarray, np.ndarray]:
+    import numpy as np
+
     temperatures = np.asarray(temperature, dtype=float)
     pressures = np.asarray(ATMOSPHERE if pressure is None else pressure, dtype=float)
     temperatures, pressures = np.broadcast_arrays(np.atleast_1d(temperatures), np.atleast_1d(pressures))
@@ -161,13 +164,9 @@ def check_state(
     if temperature <= 0:
         raise OutOfRange(f"{temperature:.6g} K is not above absolute zero")
     if pressure <= 0:
-        raise OutOfRange(
-            f"an absolute pressure of {pascal(pressure)} is not above zero; is it a gauge reading?"
-        )
+        raise OutOfRange(f"an absolute pressure of {pascal(pressure)} is not above zero; is it a gauge reading?")
     if not t_min * (1 - SLACK) <= temperature <= t_max * (1 + SLACK):
-        raise OutOfRange(
-            f"{kelvin(temperature)} is outside the range of {name}, {kelvin(t_min)} to {kelvin(t_max)}"
-        )
+        raise OutOfRange(f"{kelvin(temperature)} is outside the range of {name}, {kelvin(t_min)} to {kelvin(t_max)}")
     if p_max is not None and pressure > p_max * (1 + SLACK):
         raise OutOfRange(f"{pascal(pressure)} is above {pascal(p_max)}, the highest pressure for {name}")
 

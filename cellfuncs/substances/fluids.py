@@ -5,12 +5,13 @@ an error. Here a state is checked first, by plain comparisons where it is clearl
 ``PureFluid.get``) and step by step with a text that names the limit where it is not (``_slowly``).
 """
 
+from __future__ import annotations
+
 import copy
 import math
 import threading
 from operator import call
-
-import numpy as np
+from typing import TYPE_CHECKING
 
 from ..errors import CellfuncsError, OutOfRange
 from .base import ATMOSPHERE, PLAUSIBLE_PRESSURE, Limits, Substance, check_state, near_vacuum, phase_word
@@ -32,6 +33,9 @@ from .state import (
     Handle,
     melting_temperature,
 )
+
+if TYPE_CHECKING:
+    import numpy as np
 from .texts import kelvin, pascal
 
 
@@ -47,8 +51,7 @@ class PureFluid(SaturationLine, Substance):
         self.molar_mass = float(row["molar_mass"])
         self._row = row
         self._t_min, self._t_max, self._p_max, self._t_critical, self._p_critical, t_triple = (
-            float(row[column])
-            for column in ["t_min", "t_max", "p_max", "t_critical", "p_critical", "t_triple"]
+            float(row[column]) for column in ["t_min", "t_max", "p_max", "t_critical", "p_critical", "t_triple"]
         )
         self._limits = Limits(
             self._t_min,
@@ -70,7 +73,7 @@ class PureFluid(SaturationLine, Substance):
         self._t_clear = self._t_sure = math.inf
         self._threads = threading.local()
 
-    def in_phase(self, phase: str) -> "PureFluid":
+    def in_phase(self, phase: str) -> PureFluid:
         """Return this fluid with its phase stated ("liquid", "gas"); the states are shared."""
         other = copy.copy(self)
         other._stated = phase_word(phase)
@@ -79,9 +82,7 @@ class PureFluid(SaturationLine, Substance):
 
     # ---- the fast path
 
-    def get(
-        self, what: str, temperature: float, pressure: float | None = None, phase: str | None = None
-    ) -> float:
+    def get(self, what: str, temperature: float, pressure: float | None = None, phase: str | None = None) -> float:
         """Return property `what` [SI]; see ``Substance.get``.
 
         The state of the last call is kept: further properties of the same state cost no new update.
@@ -143,6 +144,8 @@ class PureFluid(SaturationLine, Substance):
                     del flat[index * width :]  # asked again below, with a text
             extend(gap)
             careful.append(index)
+        import numpy as np
+
         values[:] = np.array(flat).reshape(-1, width).T
         unsigned = np.array([key not in SIGNED for key in keys])
         odd = ~np.isfinite(values).all(axis=0) | (values[unsigned] <= 0).any(axis=0)
@@ -155,6 +158,8 @@ class PureFluid(SaturationLine, Substance):
 
     def _plain(self, handle: Handle, temperatures: np.ndarray, pressures: np.ndarray) -> np.ndarray:
         """True where the comparisons of ``get`` find a state clearly fine."""
+        import numpy as np
+
         t_low, t_high, p_low, p_high = self._box
         boxed = (t_low < temperatures) & (temperatures < t_high) & (p_low < pressures) & (pressures < p_high)
         melting = np.where(pressures <= ORDINARY_PRESSURE, self._t_clear, self._t_sure)
@@ -257,8 +262,7 @@ class PureFluid(SaturationLine, Substance):
         melting = melting_temperature(state, pressure)
         if melting is not None and temperature < melting:
             raise OutOfRange(
-                f"{self._bare} is solid at {kelvin(temperature)} and {pascal(pressure)}: "
-                f"it melts at {kelvin(melting)}"
+                f"{self._bare} is solid at {kelvin(temperature)} and {pascal(pressure)}: it melts at {kelvin(melting)}"
             )
 
     def _on_the_line(self, handle: Handle, key: str, temperature: float, pressure: float, phase: str):
@@ -348,8 +352,9 @@ class PureFluid(SaturationLine, Substance):
         """The highest melting temperature up to a pressure [K], with a margin; else just below t_min."""
         found = [self._t_min]
         if state.has_melting_line():
-            for pressure in np.geomspace(1e3, highest, 40):
-                melting = melting_temperature(state, float(pressure))
+            steps = 39
+            for step in range(steps + 1):  # evenly spaced in the logarithm from 1 kPa
+                melting = melting_temperature(state, 1e3 * (highest / 1e3) ** (step / steps))
                 if melting is not None:
                     found.append(melting + 0.5)
         return math.nextafter(max(found), 0.0)

@@ -70,16 +70,12 @@ def _check(temperature: float, humidity: float, pressure: float) -> None:
     if not math.isfinite(humidity):
         raise OutOfRange("the relative humidity must be a finite number")
     if 1 < humidity <= 100:
-        raise OutOfRange(
-            f"a relative humidity of {humidity:g} is above 1: write {humidity:g} % or {humidity / 100:g}"
-        )
+        raise OutOfRange(f"a relative humidity of {humidity:g} is above 1: write {humidity:g} % or {humidity / 100:g}")
     if not 0 <= humidity <= 1:
         raise OutOfRange(f"a relative humidity of {humidity:g} is outside 0 to 1 (0 % to 100 %)")
     check_state("moist air", temperature, pressure, *T_RANGE, P_RANGE[1])
     if pressure < P_RANGE[0]:
-        raise OutOfRange(
-            f"{pascal(pressure)} is below {pascal(P_RANGE[0])}, the range for moist air; was kPa meant?"
-        )
+        raise OutOfRange(f"{pascal(pressure)} is below {pascal(P_RANGE[0])}, the range for moist air; was kPa meant?")
     if temperature > 273.16 and humidity * water_vapour_pressure(temperature) >= 0.999 * pressure:
         raise OutOfRange(
             f"at {kelvin(temperature)} and {pascal(pressure)} a relative humidity of {humidity:g} leaves "
@@ -101,9 +97,7 @@ def _ask(name: str, temperature: float, humidity: float | None, pressure: float,
 
 
 def _no_answer(temperature: float, pressure: float) -> OutOfRange:
-    return OutOfRange(
-        f"moist air has no answer at {kelvin(temperature)}, {pascal(pressure)} and this humidity"
-    )
+    return OutOfRange(f"moist air has no answer at {kelvin(temperature)}, {pascal(pressure)} and this humidity")
 
 
 class MoistAir(Substance):
@@ -117,9 +111,7 @@ class MoistAir(Substance):
         self.humidity = humidity
         self.name = f"moist air {100 * humidity:g} %"
 
-    def get(
-        self, what: str, temperature: float, pressure: float | None = None, phase: str | None = None
-    ) -> float:
+    def get(self, what: str, temperature: float, pressure: float | None = None, phase: str | None = None) -> float:
         """Return property `what` [SI]; see ``Substance.get`` and ``moist_air``."""
         if phase_word(phase) not in (None, "gas"):
             raise NoModel(f"{self.name} is a gas here")

@@ -134,9 +134,7 @@ def names(contains: str = "") -> list[tuple[str, str, str]]:
 
     Solutions stand with the way their concentration is written, oils and moist air with an example.
     """
-    rows = [
-        (row["name"], PureFluid.family, row["aliases"].replace(";", ", ")) for row in _fluid_titles().values()
-    ]
+    rows = [(row["name"], PureFluid.family, row["aliases"].replace(";", ", ")) for row in _fluid_titles().values()]
     for row in liquid_rows().values():
         name = row["name"]
         if row["basis"]:
@@ -146,7 +144,5 @@ def names(contains: str = "") -> list[tuple[str, str, str]]:
     rows.append(("moist air 50 %", "moist air", "humid air, wet air"))
     rows.append(("ISO VG 46 VI 95", "mineral oil", "oil 46 cSt at 40 degC, 6.8 cSt at 100 degC, 870 kg/m3"))
     wanted = folded(contains)
-    found = [
-        row for row in rows if any(wanted in folded(part) for part in (row[0], row[1], *row[2].split(", ")))
-    ]
+    found = [row for row in rows if any(wanted in folded(part) for part in (row[0], row[1], *row[2].split(", ")))]
     return sorted(found, key=lambda row: (row[1], row[0].casefold()))

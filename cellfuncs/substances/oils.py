@@ -5,8 +5,6 @@ import re
 import unicodedata
 from functools import cache
 
-import numpy as np
-
 from ..errors import NoModel, NumberRefused, OutOfRange, UnknownName
 from ..sources import read_table
 from .base import ATMOSPHERE, Limits, Substance, check_state, phase_word
@@ -40,7 +38,7 @@ def _viscosity_at(height, lib):
 
 def _every(condition) -> bool:
     """Whether a comparison of numbers or arrays holds everywhere."""
-    return condition if isinstance(condition, bool) else bool(np.all(condition))
+    return condition if isinstance(condition, bool) else bool(condition.all())
 
 
 def oil_viscosity(temperature, temperature_1, viscosity_1, temperature_2, viscosity_2):
@@ -62,8 +60,13 @@ def oil_viscosity(temperature, temperature_1, viscosity_1, temperature_2, viscos
     """
     given = (temperature, temperature_1, viscosity_1, temperature_2, viscosity_2)
     single = all(isinstance(value, int | float) for value in given)
-    lib = math if single else np
-    t, t1, v1, t2, v2 = given if single else (np.asarray(value, dtype=float) for value in given)
+    if single:
+        lib = math
+        t, t1, v1, t2, v2 = given
+    else:
+        import numpy as lib
+
+        t, t1, v1, t2, v2 = (lib.asarray(value, dtype=float) for value in given)
     v1, v2 = v1 / STOKES, v2 / STOKES
     if not all(_every(value > 0) and _every(value < math.inf) for value in (t, t1, t2)):
         raise OutOfRange("the temperatures of an oil must be above absolute zero")
@@ -78,11 +81,9 @@ def oil_viscosity(temperature, temperature_1, viscosity_1, temperature_2, viscos
     height = height_1 - slope * lib.log10(t / t1)
     lowest, highest = _height(LOWEST, math), _height(HIGHEST, math)
     if not (_every(height >= lowest - 1e-12) and _every(height <= highest + 1e-12)):
-        raise OutOfRange(
-            f"the oil's viscosity would be outside {LOWEST} to 2e7 mm2/s, the range of ASTM D341"
-        )
+        raise OutOfRange(f"the oil's viscosity would be outside {LOWEST} to 2e7 mm2/s, the range of ASTM D341")
     result = _viscosity_at(height, lib) * STOKES
-    return float(result) if single or np.ndim(result) == 0 else result
+    return float(result) if single or lib.ndim(result) == 0 else result
 
 
 @cache
@@ -144,9 +145,7 @@ class MineralOil(Substance):
 
     family = "mineral oil"
 
-    def __init__(
-        self, name: str, points: tuple[float, float, float, float], density_15: float | None, note: str = ""
-    ):
+    def __init__(self, name: str, points: tuple[float, float, float, float], density_15: float | None, note: str = ""):
         self.name = name
         self.points = points
         self._note = note
@@ -159,9 +158,7 @@ class MineralOil(Substance):
         self._given = density_15
         self._density_15 = density_15
 
-    def get(
-        self, what: str, temperature: float, pressure: float | None = None, phase: str | None = None
-    ) -> float:
+    def get(self, what: str, temperature: float, pressure: float | None = None, phase: str | None = None) -> float:
         """Return property `what` [SI]; see ``Substance.get``. The pressure changes nothing here."""
         key = property_key(what)
         pressure = ATMOSPHERE if pressure is None else pressure
@@ -272,9 +269,7 @@ def oil(text: str) -> MineralOil | None:
     grade = _GRADE.search(plain)
     points = list(_POINT.finditer(plain))
     if not grade and not points:
-        if re.search(
-            r"\b(?:mineral|lubricating|hydraulic|gear|engine|turbine) oil\b|^\s*oil\b|\bcst\b", plain
-        ):
+        if re.search(r"\b(?:mineral|lubricating|hydraulic|gear|engine|turbine) oil\b|^\s*oil\b|\bcst\b", plain):
             raise UnknownName(
                 "which oil: write ISO VG 46 VI 95, or oil 46 cSt at 40 degC, 6.8 cSt at 100 degC "
                 "(density at 15 degC may follow: , 870 kg/m3)"
@@ -295,18 +290,14 @@ def oil(text: str) -> MineralOil | None:
     if index and len(points) == 1:
         raise UnknownName("with a viscosity index write the grade: ISO VG 46 VI 95; or give two viscosities")
     if len(points) != 2:
-        raise UnknownName(
-            "an oil needs its viscosity at two temperatures: 46 cSt at 40 degC, 6.8 cSt at 100 degC"
-        )
+        raise UnknownName("an oil needs its viscosity at two temperatures: 46 cSt at 40 degC, 6.8 cSt at 100 degC")
     (t1, v1), (t2, v2) = ((_temperature(point), float(point["value"]) * STOKES) for point in points)
     said = ", ".join(f"{point['value']} cSt at {_temperature(point) - 273.15:.6g} degC" for point in points)
     return MineralOil(f"oil {said}{tail}", (t1, v1, t2, v2), density_15)
 
 
 def _by_grade(grade: str, index, density_15: float | None, tail: str) -> MineralOil:
-    table = {
-        row["grade"]: float(row["midpoint_mm2_per_s_at_40_degC"]) for row in read_table("oil_grades.csv")
-    }
+    table = {row["grade"]: float(row["midpoint_mm2_per_s_at_40_degC"]) for row in read_table("oil_grades.csv")}
     if grade not in table:
         raise UnknownName(f"ISO 3448 has no grade VG {grade}; its grades are {', '.join(table)}")
     if not index:

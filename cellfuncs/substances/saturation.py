@@ -133,9 +133,7 @@ class SaturationLine:
         )
 
     def _no_solution(self, temperature: float, pressure: float) -> OutOfRange:
-        return OutOfRange(
-            f"the equation of state of {self._bare} has no answer at {place(temperature, pressure)}"
-        )
+        return OutOfRange(f"the equation of state of {self._bare} has no answer at {place(temperature, pressure)}")
 
     def _not_given(self, key: str, temperature: float, pressure: float) -> NoModel:
         return NoModel(

@@ -52,9 +52,7 @@ class Liquid(Substance):
         self._threads = threading.local()
         self._frozen_below = 0.0  # [K] found when the first state is opened
 
-    def get(
-        self, what: str, temperature: float, pressure: float | None = None, phase: str | None = None
-    ) -> float:
+    def get(self, what: str, temperature: float, pressure: float | None = None, phase: str | None = None) -> float:
         """Return property `what` [SI]; see ``Substance.get``. Only boiling depends on the pressure."""
         read = self._reads().get(what)
         if read is None:
@@ -77,13 +75,9 @@ class Liquid(Substance):
             raise OutOfRange(
                 f"the fit of {self.name} has no answer at {kelvin(temperature)} and {pascal(pressure)}"
             ) from error
-        if 0.0 < value < 1e300 or (
-            math.isfinite(value) and what in ("enthalpy", "entropy", "expansion_coefficient")
-        ):
+        if 0.0 < value < 1e300 or (math.isfinite(value) and what in ("enthalpy", "entropy", "expansion_coefficient")):
             return value
-        raise NoModel(
-            f"the fit of {self.name} gives no true {PROPERTIES[what].words} at {kelvin(temperature)}"
-        )
+        raise NoModel(f"the fit of {self.name} gives no true {PROPERTIES[what].words} at {kelvin(temperature)}")
 
     def _other(self, what, temperature, pressure, phase) -> float:
         key = property_key(what)
@@ -100,9 +94,7 @@ class Liquid(Substance):
             raise NoModel(f"{self.name} is a liquid here; no model of its {phase} phase is at hand")
         low = self._t_low
         if low > self._t_min and 0 < temperature < low * (1 - SLACK):
-            raise OutOfRange(
-                f"{kelvin(temperature)} is below the freezing point of {self.name}, {kelvin(low)}"
-            )
+            raise OutOfRange(f"{kelvin(temperature)} is below the freezing point of {self.name}, {kelvin(low)}")
         check_state(self.name, temperature, pressure, low, self._t_max, P_MAX)
         if pressure < PLAUSIBLE_PRESSURE and phase is None:
             raise OutOfRange(
@@ -304,8 +296,7 @@ def solution(text: str) -> tuple[str, str, float, str] | None:
     if basis is None and row["ask_basis"] == "yes":
         short = row["aliases"].split(";")[0]
         raise UnknownName(
-            f"{percent(value)} of {short} by mass or by volume? "
-            f"Write {short} {percent(value)} by mass, or by volume"
+            f"{percent(value)} of {short} by mass or by volume? Write {short} {percent(value)} by mass, or by volume"
         )
     basis = "volume" if basis and basis[0] == "v" else "mass"
     return (key, *_on_the_basis(row, value, basis))
@@ -317,17 +308,14 @@ def _on_the_basis(row: dict[str, str], value: float, basis: str) -> tuple[str, f
     note, fraction = "", value
     if basis != row["basis"]:
         if not row["solute"]:
-            raise UnknownName(
-                f"the data of {row['name']} go by {row['basis']}: give the percentage by {row['basis']}"
-            )
+            raise UnknownName(f"the data of {row['name']} go by {row['basis']}: give the percentage by {row['basis']}")
         convert = mass_fraction if basis == "volume" else volume_fraction
         fraction = convert(value, row["solute"])
         note = f"{percent(value)} by {basis} is {percent(fraction)} by {row['basis']} (densities at 20 degC)"
     low, high = float(row["x_min"]), float(row["x_max"])
     if not low - SLACK <= fraction <= high + SLACK:
         raise OutOfRange(
-            f"{name}: {percent(fraction)} by {row['basis']} is outside the data, "
-            f"{percent(low)} to {percent(high)}"
+            f"{name}: {percent(fraction)} by {row['basis']} is outside the data, {percent(low)} to {percent(high)}"
         )
     return name, min(max(fraction, low), high), note
 
@@ -351,8 +339,6 @@ def ask_concentration(text: str) -> None:
             raise UnknownName(f"{shown(text)}: write the concentration in percent, with its sign, as in 30 %")
         return
     row = liquid_rows()[key]
-    example = (
-        "3.5 %" if key == "MITSW" else "20 %" + (f" by {row['basis']}" if row["ask_basis"] == "yes" else "")
-    )
+    example = "3.5 %" if key == "MITSW" else "20 %" + (f" by {row['basis']}" if row["ask_basis"] == "yes" else "")
     short = row["aliases"].split(";")[0] if row["aliases"] and key != "MITSW" else row["name"]
     raise UnknownName(f"{shown(text)} needs its concentration: write for instance {short} {example}")
