@@ -7,12 +7,12 @@ with its symbol and its item in ISO 80000-11 where it has one.
 To add a group, write its definition here and its row there; the cell function follows by itself.
 """
 
-import csv
 from collections.abc import Callable, Mapping
 from dataclasses import dataclass
 from functools import cache
-from importlib import resources
 from typing import Any
+
+from cellfuncs.sources import read_table
 
 STANDARD_GRAVITY = 9.80665  # m/s2, exact by definition (NIST SP 811, table B.8)
 
@@ -134,5 +134,4 @@ def strouhal(velocity, length, frequency):
 @cache
 def table() -> Mapping[str, Group]:
     """All groups by the name of their function, in the order of the data file."""
-    text = resources.files("cellfuncs").joinpath("data/groups.csv").read_text("utf-8")
-    return {row["key"]: Group(**row, function=globals()[row["key"]]) for row in csv.DictReader(text.splitlines())}
+    return {row["key"]: Group(**row, function=globals()[row["key"]]) for row in read_table("groups.csv")}

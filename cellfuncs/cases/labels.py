@@ -4,16 +4,15 @@ Data: ``data/labels.csv`` and ``data/choices.csv``. A label is found by its name
 usual symbol; where several remain, the unit and the flow kind settle it.
 """
 
-import csv
 import re
 import unicodedata
 from collections.abc import Iterable, Mapping
 from dataclasses import dataclass
 from functools import cache
-from importlib import resources
 
 from cellfuncs import quantities
 from cellfuncs.errors import CaseRefused, UnknownName
+from cellfuncs.sources import read_table
 
 _BRACKETED = re.compile(r"[\[(]([^\[\]()]*)[\])]\s*$")
 _JOINTS = re.compile(r"[\s_,.\-]+")
@@ -32,11 +31,6 @@ class Label:
     flows: tuple[str, ...]
 
 
-def _rows(name: str) -> list[dict[str, str]]:
-    text = resources.files("cellfuncs").joinpath(f"data/{name}").read_text("utf-8")
-    return list(csv.DictReader(text.splitlines()))
-
-
 def _split(text: str) -> tuple[str, ...]:
     return tuple(part for part in text.split(";") if part)
 
@@ -49,14 +43,14 @@ def dictionary() -> Mapping[str, Label]:
             row["key"], row["label"], row["role"], row["kind"],
             _split(row["symbols"]), _split(row["synonyms"]), _split(row["flows"]),
         )
-        for row in _rows("labels.csv")
+        for row in read_table("labels.csv")
     }  # fmt: skip
 
 
 @cache
 def _choices() -> Mapping[str, Mapping[str, str]]:
     table: dict[str, dict[str, str]] = {}
-    for row in _rows("choices.csv"):
+    for row in read_table("choices.csv"):
         for spelling in _split(row["spellings"]):
             table.setdefault(row["key"], {})[_plain(spelling)] = row["choice"]
     return table

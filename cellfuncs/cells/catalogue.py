@@ -5,17 +5,17 @@ checked when it is made. ``CellFunction.call`` takes what a host hands over and 
 text or rows of these; it never raises and never returns None, nan or infinity.
 """
 
-import csv
 import inspect
 import keyword
 from collections.abc import Callable, Mapping
 from dataclasses import dataclass
 from functools import cache
-from importlib import import_module, resources
+from importlib import import_module
 from typing import Any
 
 from cellfuncs import quantities
 from cellfuncs.cells.call import Answer, Argument, caller, reader
+from cellfuncs.sources import read_table
 
 __all__ = ["Answer", "Argument", "CellFunction", "cell_function", "functions"]
 
@@ -45,15 +45,13 @@ class CellFunction:
 @cache
 def nomenclature() -> Mapping[str, Mapping[str, str]]:
     """Argument name -> kind, form, meaning of zero, help (data/arguments.csv)."""
-    text = resources.files("cellfuncs").joinpath("data/arguments.csv").read_text("utf-8")
-    return {row["name"]: row for row in csv.DictReader(text.splitlines())}
+    return {row["name"]: row for row in read_table("arguments.csv")}
 
 
 @cache
 def reserved() -> frozenset[str]:
     """Argument names that kill a whole module in one of the hosts, or are no names in Python."""
-    text = resources.files("cellfuncs").joinpath("data/reserved_names.csv").read_text("utf-8")
-    return frozenset(keyword.kwlist) | {row["name"] for row in csv.DictReader(text.splitlines())}
+    return frozenset(keyword.kwlist) | {row["name"] for row in read_table("reserved_names.csv")}
 
 
 _functions: dict[str, CellFunction] = {}
