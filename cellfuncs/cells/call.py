@@ -93,7 +93,7 @@ def caller(
         except _UnitWanted as refused:
             return faults.from_error(refused.error, "unit")
         except Exception as error:
-            return faults.from_error(error, names[k] if k < count else first)
+            return faults.from_error(error, names[k] if k < count else first, names)
 
     call.__name__ = name
     return call
@@ -211,4 +211,4 @@ def _one_of_range(
     except _UnitWanted as refused:
         return faults.from_error(refused.error, "unit")
     except Exception as error:
-        return faults.from_error(error, names[0])
+        return faults.from_error(error, names[0], names)

@@ -1,5 +1,7 @@
 """The one place where an error becomes the text of a cell."""
 
+from collections.abc import Sequence
+
 from cellfuncs.errors import CellfuncsError
 
 LONGEST_TEXT = 255
@@ -23,10 +25,10 @@ def fault(argument: str, text: str) -> str:
     return clip(f"{MARK}{argument.replace('_', ' ')}: {' '.join(text.split())}")
 
 
-def from_error(error: BaseException, argument: str) -> str:
-    """The fault text of an exception; ``argument`` is named unless the error knows better."""
+def from_error(error: BaseException, argument: str, names: Sequence[str] = ()) -> str:
+    """The fault text of an exception; ``argument`` is named unless the error blames another of ``names``."""
     if isinstance(error, CellfuncsError):
-        return fault(error.argument or argument, str(error))
+        return fault(error.argument if error.argument in names else argument, str(error))
     if isinstance(error, MemoryError):
         return fault(argument, "too much to hold in memory; give fewer cells")
     detail = f"{type(error).__name__}: {error}" if str(error) else type(error).__name__

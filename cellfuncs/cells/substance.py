@@ -1,14 +1,25 @@
 """Cell functions of the family Substances."""
 
+from collections.abc import Callable
 from typing import Any
 
 from cellfuncs import quantities, sources, substances
 from cellfuncs.cells.catalogue import Answer, cell_function
-from cellfuncs.errors import CellfuncsError, NumberRefused, UnknownName
+from cellfuncs.errors import CellfuncsError, NoModel, NumberRefused, UnknownName
 
 _SOURCE = "CoolProp and the sources that CF_PROPERTIES names for each property"
 _KINDS = {key: entry.kind for key, entry in substances.PROPERTIES.items()}
 _NOT_AVAILABLE = "not available"
+
+
+def _blamed(argument: str, function: Callable[..., Any], *arguments: Any) -> Any:
+    """Call, and let a refusal name ``argument`` unless it names another one; a missing model is about ``what``."""
+    try:
+        return function(*arguments)
+    except CellfuncsError as error:
+        if error.argument is None:
+            error.argument = "what" if isinstance(error, NoModel) else argument
+        raise
 
 
 def _property_columns(substance: str, what: Any, temperature: Any, pressure: Any = None) -> Answer:
@@ -40,8 +51,9 @@ def _property_columns(substance: str, what: Any, temperature: Any, pressure: Any
     by_array=_property_columns,
 )
 def property_of(substance, what, temperature, pressure=None):
-    key = substances.property_key(what)
-    return Answer(substances.find(substance).get(key, temperature, pressure), _KINDS[key])
+    key = _blamed("what", substances.property_key, what)
+    found = substances.find(substance)
+    return Answer(_blamed("temperature", found.get, key, temperature, pressure), _KINDS[key])
 
 
 @cell_function(
@@ -69,8 +81,18 @@ def properties(substance, temperature, pressure=None):
             first_problem = first_problem or error
             rows.append([entry.words, _NOT_AVAILABLE, unit, str(error)])
     if not answered and first_problem is not None:
+        first_problem.argument = first_problem.argument or "temperature"
         raise first_problem
+    rows.append(["phase", found.phase(temperature, pressure), "", _range(found)])
     return rows
+
+
+def _range(found: substances.Substance) -> str:
+    """The range in which a substance answers, and where it is from."""
+    limits = found.limits()
+    highest = "" if limits.p_max is None else f", up to {limits.p_max / 1e6:.4g} MPa"
+    low, high = limits.t_min - 273.15, limits.t_max - 273.15
+    return f"range {low:.5g} to {high:.5g} degC{highest}; {sources.cite(limits.source)}"
 
 
 @cell_function(
@@ -82,11 +104,13 @@ def properties(substance, temperature, pressure=None):
     example='=CF_SATURATION("R134a","density","liquid","25 degC")',
 )
 def saturation(substance, what, phase, temperature=None, pressure=None):
-    key = substances.property_key(what)
+    key = _blamed("what", substances.property_key, what)
     if (temperature is None) == (pressure is None):
         given = "both are" if temperature is not None else "none is"
         raise NumberRefused(f"give either a temperature or a pressure; {given} given", argument="temperature")
-    value = substances.find(substance).saturation(key, phase, temperature, pressure)
+    found = substances.find(substance)
+    given = "temperature" if pressure is None else "pressure"
+    value = _blamed(given, found.saturation, key, phase, temperature, pressure)
     return Answer(value, _KINDS[key])
 
 
@@ -99,9 +123,10 @@ def saturation(substance, what, phase, temperature=None, pressure=None):
     example='=CF_MOIST_AIR("dew point","25 degC","60 %",,"degC")',
 )
 def moist_air(what, temperature, relative_humidity, pressure=None):
-    key = substances.property_key(what, "moist air")
+    key = _blamed("what", substances.property_key, what, "moist air")
     given = substances.ATMOSPHERE if pressure is None else pressure
-    return Answer(substances.moist_air(key, temperature, relative_humidity, given), substances.MOIST_AIR[key].kind)
+    value = _blamed("temperature", substances.moist_air, key, temperature, relative_humidity, given)
+    return Answer(value, substances.MOIST_AIR[key].kind)
 
 
 @cell_function(

@@ -46,7 +46,9 @@ def phase_word(text: str | None) -> str | None:
         return None
     word = PHASES.get(str(text).strip().casefold())
     if word is None:
-        raise UnknownName(f"{shown(str(text))} is no phase; write liquid or vapour{nearest(str(text), PHASES)}")
+        raise UnknownName(
+            f"{shown(str(text))} is no phase; write liquid or vapour{nearest(str(text), PHASES)}", "phase"
+        )
     return word
 
 
@@ -164,16 +166,19 @@ def check_state(
     if temperature <= 0:
         raise OutOfRange(f"{temperature:.6g} K is not above absolute zero")
     if pressure <= 0:
-        raise OutOfRange(f"an absolute pressure of {pascal(pressure)} is not above zero; is it a gauge reading?")
+        raise OutOfRange(
+            f"an absolute pressure of {pascal(pressure)} is not above zero; is it a gauge reading?", "pressure"
+        )
     if not t_min * (1 - SLACK) <= temperature <= t_max * (1 + SLACK):
         raise OutOfRange(f"{kelvin(temperature)} is outside the range of {name}, {kelvin(t_min)} to {kelvin(t_max)}")
     if p_max is not None and pressure > p_max * (1 + SLACK):
-        raise OutOfRange(f"{pascal(pressure)} is above {pascal(p_max)}, the highest pressure for {name}")
+        raise OutOfRange(f"{pascal(pressure)} is above {pascal(p_max)}, the highest pressure for {name}", "pressure")
 
 
 def near_vacuum(name: str, pressure: float) -> OutOfRange:
     """The refusal of a pressure that is likelier a slip of the unit than a vacuum."""
     return OutOfRange(
         f"{pascal(pressure)} is nearly a vacuum; was bar or kPa meant? "
-        f"If the low pressure is right, state the phase: {name} vapour"
+        f"If the low pressure is right, state the phase: {name} vapour",
+        "pressure",
     )

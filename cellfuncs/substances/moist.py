@@ -68,14 +68,19 @@ def moist_air(what: str, temperature: float, relative_humidity: float, pressure:
 
 def _check(temperature: float, humidity: float, pressure: float) -> None:
     if not math.isfinite(humidity):
-        raise OutOfRange("the relative humidity must be a finite number")
+        raise OutOfRange("the relative humidity must be a finite number", "relative_humidity")
     if 1 < humidity <= 100:
-        raise OutOfRange(f"a relative humidity of {humidity:g} is above 1: write {humidity:g} % or {humidity / 100:g}")
+        raise OutOfRange(
+            f"a relative humidity of {humidity:g} is above 1: write {humidity:g} % or {humidity / 100:g}",
+            "relative_humidity",
+        )
     if not 0 <= humidity <= 1:
-        raise OutOfRange(f"a relative humidity of {humidity:g} is outside 0 to 1 (0 % to 100 %)")
+        raise OutOfRange(f"a relative humidity of {humidity:g} is outside 0 to 1 (0 % to 100 %)", "relative_humidity")
     check_state("moist air", temperature, pressure, *T_RANGE, P_RANGE[1])
     if pressure < P_RANGE[0]:
-        raise OutOfRange(f"{pascal(pressure)} is below {pascal(P_RANGE[0])}, the range for moist air; was kPa meant?")
+        raise OutOfRange(
+            f"{pascal(pressure)} is below {pascal(P_RANGE[0])}, the range for moist air; was kPa meant?", "pressure"
+        )
     if temperature > 273.16 and humidity * water_vapour_pressure(temperature) >= 0.999 * pressure:
         raise OutOfRange(
             f"at {kelvin(temperature)} and {pascal(pressure)} a relative humidity of {humidity:g} leaves "

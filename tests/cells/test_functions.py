@@ -45,8 +45,9 @@ def test_version(cf):
 def test_properties_table_agrees_with_its_cells(cf):
     rows = cf("PROPERTIES", "water", "40 degC", "2 bar")
     assert rows[0] == ["property", "value", "unit", "source"]
-    assert [row[0] for row in rows[1:]] == [p.words for p in substances.PROPERTIES.values()]
-    for name, value, unit, source in rows[1:]:
+    assert [row[0] for row in rows[1:]] == [*(p.words for p in substances.PROPERTIES.values()), "phase"]
+    assert rows[-1][1] == "liquid" and "degC" in rows[-1][3]
+    for name, value, unit, source in rows[1:-1]:
         assert source
         if value != "not available":
             single = cf("PROPERTY", "water", name, "40 degC", "2 bar", unit if unit not in ("", "1") else None)
@@ -80,3 +81,23 @@ def test_block_and_vary(cf, stated_duct):
 def test_every_group_says_what_it_compares():
     for group in groups.table().values():
         assert group.compares and group.decides and group.source and group.symbol
+
+
+@pytest.mark.parametrize(
+    ("name", "arguments", "blamed"),
+    [
+        ("PROPERTY", ("water", "colour", 300.0), "what"),
+        ("PROPERTY", ("watr", "density", 300.0), "substance"),
+        ("PROPERTY", ("water", "density", "3000 K"), "temperature"),
+        ("PROPERTY", ("water", "density", 300.0, "20 GPa"), "pressure"),
+        ("PROPERTY", ("water", "density", 300.0, 1.01), "pressure"),
+        ("PROPERTY", ("acetone", "viscosity", 300.0), "what"),
+        ("MOIST_AIR", ("dew point", 300.0, 60.0), "relative humidity"),
+        ("MOIST_AIR", ("dew", 300.0, 0.6), "what"),
+        ("SATURATION", ("water", "density", "liquid", "700 K"), "temperature"),
+        ("SATURATION", ("water", "density", "solid", "300 K"), "phase"),
+        ("CASE", ([["flow kind", "gap"], ["fluid", "water"]], "Re"), "block"),
+    ],
+)
+def test_a_fault_names_the_argument_to_blame(cf, name, arguments, blamed):
+    assert cf(name, *arguments).startswith(f"! {blamed}: ")
