@@ -15,16 +15,15 @@ from dataclasses import dataclass, field
 from pathlib import Path
 from typing import Any
 
-from cellfuncs.books.exchange import agree, fitted, from_engine, said, shape
-from cellfuncs.books.externals import table_area
+from cellfuncs.books.exchange import agree, fitted, from_engine, said
 from cellfuncs.books.formulas import IsOurs, normalised, pieces, reference
 from cellfuncs.books.gate import Book, inspect
 from cellfuncs.books.grid import Area
 from cellfuncs.books.influence import Place, Readers
-from cellfuncs.books.outcome import SHAPE, Item, Outcome
+from cellfuncs.books.outcome import Item, Outcome
 from cellfuncs.books.package import shown
 from cellfuncs.books.reading import Formula, Sheet, read_sheet
-from cellfuncs.books.translate import FITTED, Translator
+from cellfuncs.books.translate import FITTED, Translator, engine_text
 from cellfuncs.books.xmltext import Value
 from cellfuncs.errors import BookRefused
 
@@ -109,7 +108,7 @@ class _Run:
         for _ in range(3):
             workbook = self._calculate(changing, "calculating")
             outcome = Outcome(self.items, self.sheets, self.failed, keep_unknown=self.book.full_calculation)
-            grown = outcome.collect(workbook, changing, self.translator)
+            grown = outcome.collect(workbook, changing)
             result.values, result.extents = outcome.values, outcome.extents
             unknown = outcome.warnings
             more = self.readers.reached(changing, self._writes(grown)) - changing
@@ -130,43 +129,37 @@ class _Run:
                 self.items += [self._item(sheet, formula) for formula in sheet.formulas]
                 self.say("reading")
         self.readers = Readers([item.reads for item in self.items])
+        unread = [item for item in self.items if not item.readable and item.formula.text]
+        if unread:
+            more = f" and {len(unread) - 1} more" if len(unread) > 1 else ""
+            self.warnings.append(f"{unread[0].place}{more} cannot be read; stored values were kept there.")
 
     def _item(self, sheet: Sheet, formula: Formula) -> Item:
-        text, ours = normalised(formula.text, self.is_ours)
-        formula.text = text  # from here on without prefixes
-        item = Item(sheet.name, formula, text, ours, [], False, False, bool(text) and formula.kind != "data table")
-        self._study(item, text, sheet.name, 0)
+        formula.text = normalised(formula.text, self.is_ours).text  # from here on without prefixes
+        text = self.translator.plain(formula.text, sheet.name, formula.row, formula.column)
+        readable = bool(text) and formula.kind != "data table"
+        item = Item(sheet.name, formula, text or "", frozenset(), [], False, False, readable)
+        if text:
+            self._study(item, text)
         return item
 
-    def _study(self, item: Item, text: str, sheet: str, depth: int) -> None:
-        """Note what a formula reads, through defined names too."""
-        parts = pieces(text)
-        if parts is None or depth > 8:
-            item.readable = False
-            return
-        for part in parts:
+    def _study(self, item: Item, text: str) -> None:
+        """Note what a formula calls and reads; its names, tables and links are plain references by now."""
+        ours = set()
+        for part in pieces(text) or ():
             if part.kind == "call":
                 name = part.text[:-1].upper().removeprefix("_XLFN.").removeprefix("_XLWS.")
                 item.volatile |= name in _VOLATILE
                 item.reaching |= name in _REACHING
+                if own := self.is_ours(part.text[:-1]):
+                    ours.add(own)
             elif part.kind == "reference":
-                self._study_reference(item, part.text, sheet, depth)
-
-    def _study_reference(self, item: Item, text: str, sheet: str, depth: int) -> None:
-        found = reference(text)
-        if found.kind == "cells":
-            item.reads.append(((found.sheet or sheet).casefold(), found.area))
-        elif found.kind == "table":
-            place = table_area(text, self.translator.tables, item.sheet, item.formula.row, item.formula.column)
-            if place is not None:
-                item.reads.append((place[0].casefold(), place[1]))
-        elif found.kind == "name":
-            inner = self.translator.name_text(found.name, found.sheet or sheet)
-            if inner is not None:
-                item.ours |= normalised(inner, self.is_ours).ours
-                self._study(item, inner, found.sheet or sheet, depth + 1)
-        elif found.kind == "unknown":
-            item.reaching = True
+                found = reference(part.text)
+                if found.kind == "cells":
+                    item.reads.append(((found.sheet or item.sheet).casefold(), found.area))
+                elif found.kind == "unknown" and part.text != "#REF!":
+                    item.reaching = True
+        item.ours = frozenset(ours)
 
     # -- what has to be calculated -------------------------------------------------------------------
 
@@ -222,7 +215,7 @@ class _Run:
 
         by_sheet: dict[str, dict[int, str | None]] = {}
         for number, item in enumerate(self.items):
-            text = self.translator.engine_text(item.text, item.sheet, item.formula) if number in running else None
+            text = engine_text(item.text, item.formula) if number in running else None
             by_sheet.setdefault(item.sheet, {})[item.formula.row * 16384 + item.formula.column - 1] = text
         data = stand_in(self.book, self.sheets, by_sheet, self._engine_names(), self.translator.links.sheets)
         config = fz.EvaluationConfig()
@@ -239,7 +232,6 @@ class _Run:
         for name, function in self.functions.items():
             workbook.register_function(name, function)
         workbook.register_function(FITTED, fitted, min_args=3, max_args=3)
-        workbook.register_function(SHAPE, shape, min_args=1, max_args=1)
         self._run(workbook, running, what)
         return workbook
 

@@ -54,13 +54,6 @@ def fitted(value: Any, rows: float, columns: float) -> Any:
     return [[at(row, column) for column in range(int(columns))] for row in range(int(rows))]
 
 
-def shape(value: Any) -> str:
-    """The size of a value as `rows columns`."""
-    if isinstance(value, list) and value and isinstance(value[0], list):
-        return f"{len(value)} {len(value[0])}"
-    return "1 1"
-
-
 def agree(stored: Value, value: Value) -> bool:
     """Whether a recalculated value is the stored one, but for rounding."""
     if isinstance(stored, float) and isinstance(value, float):

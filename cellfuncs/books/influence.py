@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections import defaultdict
 from collections.abc import Iterable, Sequence
+from typing import Any
 
 from cellfuncs.books.grid import Area
 
@@ -32,33 +33,16 @@ class Readers:
 
         reached = set(start)
         waiting = list(reached)
-        # The ranges of a sheet that nothing has touched yet: their corners as one table.
         untouched = {
-            s: (np.array(list(areas), dtype=np.int64), list(areas.values())) for s, areas in self._ranges.items()
+            sheet: _Untouched(np.array(list(areas), dtype=np.int64), list(areas.values()))
+            for sheet, areas in self._ranges.items()
         }
         while waiting:
             found: set[int] = set()
             for sheet, area in writes[waiting.pop()]:
                 found.update(self._cell_readers(sheet, area))
-                if sheet not in untouched:
-                    continue
-                corners, readers = untouched[sheet]
-                top, left, bottom, right = area
-                hit = (
-                    (corners[:, 0] <= bottom)
-                    & (corners[:, 2] >= top)
-                    & (corners[:, 1] <= right)
-                    & (corners[:, 3] >= left)
-                )
-                numbers = hit.nonzero()[0]
-                if numbers.size:
-                    for number in numbers.tolist():
-                        found.update(readers[number])
-                    keep = (~hit).nonzero()[0]
-                    if keep.size:
-                        untouched[sheet] = (corners[keep], [readers[i] for i in keep.tolist()])
-                    else:
-                        del untouched[sheet]
+                if sheet in untouched:
+                    found.update(untouched[sheet].take(area))
             new = found - reached
             reached |= new
             waiting.extend(new)
@@ -75,3 +59,29 @@ class Readers:
             if name == sheet and top <= row <= bottom and left <= column <= right
             for reader in readers
         )
+
+
+class _Untouched:
+    """The ranges of a sheet that nothing has touched yet: their corners as one table, thinned out now and then."""
+
+    def __init__(self, corners: Any, readers: list[list[int]]) -> None:
+        self.corners, self.readers = corners, readers
+        self.gone = 0
+
+    def take(self, area: Area) -> set[int]:
+        """The readers of all ranges that an area touches; these ranges are taken out."""
+        corners = self.corners
+        top, left, bottom, right = area
+        hit = (corners[:, 0] <= bottom) & (corners[:, 2] >= top) & (corners[:, 1] <= right) & (corners[:, 3] >= left)
+        numbers = hit.nonzero()[0].tolist()
+        if not numbers:
+            return set()
+        found = {reader for number in numbers for reader in self.readers[number]}
+        corners[hit, 2] = -1  # ends before it begins: touches nothing any more
+        self.gone += len(numbers)
+        if 2 * self.gone > len(self.readers):
+            keep = corners[:, 2] >= 0
+            self.corners = corners[keep]
+            self.readers = [readers for readers, kept in zip(self.readers, keep.tolist(), strict=True) if kept]
+            self.gone = 0
+        return found

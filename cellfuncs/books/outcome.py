@@ -13,10 +13,10 @@ from cellfuncs.books.grid import Area, column_letters
 from cellfuncs.books.influence import Place
 from cellfuncs.books.package import shown
 from cellfuncs.books.reading import Formula, Sheet
-from cellfuncs.books.translate import Translator
 from cellfuncs.books.xmltext import ErrorValue, Value
+from cellfuncs.errors import BookRefused
 
-SHAPE = "BOOKS_SHAPE"  # the helper that tells the size of a table
+MAX_RESULTS = 2_000_000  # cells
 _VALUE = ErrorValue("#VALUE!")
 
 Spot = tuple[int, int]
@@ -28,7 +28,7 @@ class Item:
 
     sheet: str
     formula: Formula
-    text: str  # our functions under plain names
+    text: str  # our functions under plain names, and plain references only
     ours: frozenset[str]
     reads: list[Place]
     volatile: bool
@@ -53,11 +53,12 @@ class Outcome:
     extents: dict[str, dict[Spot, Area]] = field(default_factory=dict)
     warnings: list[str] = field(default_factory=list)
 
-    def collect(self, workbook: Any, running: set[int], translator: Translator) -> dict[int, Area]:
+    def collect(self, workbook: Any, running: set[int]) -> dict[int, Area]:
         """Take all calculated cells over; gives the new extents of the dynamic arrays by item."""
         grown: dict[int, Area] = {}
         crowded: list[Item] = []
         freed: dict[str, set[Spot]] = {}
+        results = 0
         self._formulas = {name: {(f.row, f.column) for f in sheet.formulas} for name, sheet in self.sheets.items()}
         for number in sorted(running):
             item = self.items[number]
@@ -78,6 +79,9 @@ class Outcome:
                 freed.setdefault(item.sheet, set()).update(self._old_cells(item))
                 if value == SPILL:
                     crowded.append(item)
+            results += (area[2] - area[0] + 1) * (area[3] - area[1] + 1)
+            if results > MAX_RESULTS:
+                raise BookRefused(f"The tables of the workbook fill over {MAX_RESULTS // 1_000_000} million cells.")
             for row in range(area[0], area[2] + 1):
                 for column in range(area[1], area[3] + 1):
                     values[row, column] = from_engine(workbook.get_value(item.sheet, row, column))
@@ -86,7 +90,7 @@ class Outcome:
             for cell in cells - set(self.values[sheet]):
                 self.values[sheet][cell] = None
         for item in crowded:  # last, for it sets formulas anew
-            text = self._no_room(workbook, item, translator) if item.ours else _VALUE
+            text = self._no_room(workbook, item) if item.ours else _VALUE
             self.values[item.sheet][item.formula.row, item.formula.column] = text
         return grown
 
@@ -114,12 +118,12 @@ class Outcome:
         area = self.sheets[item.sheet].inside(item.formula.area)
         return {(row, column) for row, column, _ in area} - self._formulas[item.sheet]
 
-    def _no_room(self, workbook: Any, item: Item, translator: Translator) -> str:
+    def _no_room(self, workbook: Any, item: Item) -> str:
         """What an array's anchor shows where other cells stand in its way."""
         formula, sheet = item.formula, self.sheets[item.sheet]
-        text = translator.plain(item.text, item.sheet, formula.row, formula.column)
+        text = item.text
         try:
-            workbook.set_formula(item.sheet, formula.row, formula.column, f"={SHAPE}({text})")
+            workbook.set_formula(item.sheet, formula.row, formula.column, f'=ROWS({text})&" "&COLUMNS({text})')
             size = workbook.evaluate_cell(item.sheet, formula.row, formula.column)
             rows, columns = (int(part) for part in str(size).split(" "))
         except Exception:  # the size only makes the text better

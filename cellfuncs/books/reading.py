@@ -21,6 +21,8 @@ from cellfuncs.books.package import shown
 from cellfuncs.books.xmltext import ErrorValue, Value, decoded, unescaped
 from cellfuncs.errors import BookRefused
 
+MAX_FORMULA_TEXT = 32_000_000  # characters of all formulas of a sheet, shared ones written out
+
 
 @dataclass(slots=True)
 class Formula:
@@ -209,6 +211,7 @@ class _Reader:
         self.cell_attributes: dict[str, str] = {}
         self.shared: dict[str, tuple[int, int, str]] = {}
         self.letters: dict[str, int] = {}
+        self.length = 0
 
     def run(self) -> None:
         parser = self.parser
@@ -324,12 +327,14 @@ class _Reader:
         area = rectangle(attributes.get("ref", "")) or (row, column, row, column)
         kind, text = "plain", unescaped(self.formula_text)
         mark = attributes.get("t", "normal")
+        self.length += len(text)
         if mark == "shared":
             key = attributes.get("si", "")
             if text:
                 self.shared[key] = (row, column, text)
             elif key in self.shared:
                 top, left, master = self.shared[key]
+                self.length += len(master)
                 text = shifted(master, row - top, column - left)
             area = (row, column, row, column)
         elif mark == "array":
@@ -340,6 +345,10 @@ class _Reader:
             kind = "data table"
         else:
             area = (row, column, row, column)
+        if self.length > MAX_FORMULA_TEXT:
+            raise BookRefused(
+                f"The formulas of the sheet {shown(self.sheet.name)} are far longer than any program writes."
+            )
         stored = self._stored(cell.get("t"))
         self.sheet.formulas.append(Formula(row, column, text, kind, area, stored))
 

@@ -10,6 +10,7 @@ from cellfuncs.errors import BookRefused
 
 MAX_FORMULAS = 200_000
 MAX_MERGED = 1_000_000  # cells under merges
+MAX_ARRAYS = 200_000  # cells under array formulas
 MAX_MERGES = 100_000
 MAX_AREA = 20_000_000  # cells of the rectangle round all cells of a sheet
 MAX_NAMES = 20_000
@@ -37,6 +38,7 @@ class Totals:
     cells: int = 0
     formulas: int = 0
     merged: int = 0
+    arrays: int = 0
 
 
 class WorkbookScan:
@@ -121,6 +123,8 @@ class SheetScan:
             self._cell(attributes.get("r"))
         elif name == _FORMULA:
             self.formulas += 1
+            if "ref" in attributes and attributes.get("t") == "array":
+                self._array(attributes["ref"])
             self.totals.formulas += 1
             if self.totals.formulas > MAX_FORMULAS:
                 raise BookRefused(f"The workbook holds more than {MAX_FORMULAS:,} formulas.".replace(",", " "))
@@ -180,6 +184,18 @@ class SheetScan:
             raise BookRefused(f"The sheet {shown(self.name)} has a cell called {shown(reference)}, which is no cell.")
         self._columns[letters] = column
         return column
+
+    def _array(self, reference: str) -> None:
+        area = rectangle(reference)
+        if area is None:
+            raise BookRefused(
+                f"The sheet {shown(self.name)} has an array formula over {shown(reference)}, which is no range."
+            )
+        self.totals.arrays += (area[2] - area[0] + 1) * (area[3] - area[1] + 1)
+        if self.totals.arrays > MAX_ARRAYS:
+            raise BookRefused(
+                f"The array formulas of the workbook cover far too many cells ({shown(reference)} and others)."
+            )
 
     def _merge(self, reference: str) -> None:
         area = rectangle(reference)

@@ -3,13 +3,11 @@
 from __future__ import annotations
 
 from cellfuncs.books.externals import Linked, absolute, linked, quoted, table_area, tables
-from cellfuncs.books.formulas import IsOurs, Piece, as_one_value, normalised, pieces, reference
+from cellfuncs.books.formulas import MAX_LENGTH, IsOurs, Piece, as_one_value, normalised, pieces, reference
 from cellfuncs.books.gate import Book
 from cellfuncs.books.grid import area_text
 from cellfuncs.books.reading import Formula
 
-MAX_DEPTH = 8  # names within names
-MAX_EXTENT = 1_000_000  # cells of one fixed array
 FITTED = "BOOKS_FITTED"  # the helper that makes a value fill a fixed array
 
 
@@ -21,6 +19,7 @@ class Translator:
         self.tables = tables(book)
         self.links: Linked = linked(book)
         self.order = [part.name for part in book.sheets]
+        self._plain_names: dict[tuple[str, str], str | None] = {}
         self.names: dict[tuple[str | None, str], str] = {}
         for defined in book.names:
             scope = defined.sheet.casefold() if defined.sheet else None
@@ -31,37 +30,31 @@ class Translator:
         key = name.casefold()
         return self.names.get((sheet.casefold(), key), self.names.get((None, key)))
 
-    def engine_text(self, text: str, sheet: str, formula: Formula) -> str:
-        """The formula (our functions already under plain names) as the engine gets it, without its `=`.
+    def plain(self, text: str, sheet: str, row: int, column: int) -> str | None:
+        """A formula (our functions already under plain names) with plain references only; None where it cannot be read.
 
         What cannot be replaced becomes ``#REF!``, so that one bad link spoils one cell and not the workbook.
         """
-        text = self.plain(text, sheet, formula.row, formula.column)
-        if formula.kind == "plain":
-            return as_one_value(text)
-        if formula.kind == "fixed":
-            top, left, bottom, right = formula.area
-            rows, columns = bottom - top + 1, right - left + 1
-            return "#REF!" if rows * columns > MAX_EXTENT else f"{FITTED}({text},{rows},{columns})"
-        return text
-
-    def plain(self, text: str, sheet: str, row: int, column: int, depth: int = 0) -> str:
-        """The formula with plain references only."""
         parts = pieces(text)
-        if parts is None or depth > MAX_DEPTH:
-            return "#REF!"
-        return "".join(self._piece(part, parts, number, sheet, row, column, depth) for number, part in enumerate(parts))
+        if parts is None:
+            return None
+        new = "".join(self._piece(part, parts, number, sheet, row, column) for number, part in enumerate(parts))
+        return new if len(new) <= MAX_LENGTH else None
 
-    def _piece(
-        self,
-        part: Piece,
-        parts: tuple[Piece, ...],
-        number: int,
-        sheet: str,
-        row: int,
-        column: int,
-        depth: int,
-    ) -> str:
+    def _plain_name(self, name: str, sheet: str) -> str | None:
+        """What a name stands for, with plain references; a name that stands for itself is ``#REF!``."""
+        key = (sheet.casefold(), name.casefold())
+        if key not in self._plain_names:
+            inner = self.name_text(name, sheet)
+            self._plain_names[key] = "#REF!"  # as long as it is being worked out
+            if inner is None:
+                self._plain_names[key] = None
+            else:
+                inner = self.plain(inner, sheet, 0, 0) or "#REF!"
+                self._plain_names[key] = inner if reference(inner).kind == "cells" else f"({inner})"
+        return self._plain_names[key]
+
+    def _piece(self, part: Piece, parts: tuple[Piece, ...], number: int, sheet: str, row: int, column: int) -> str:
         if part.kind == "call":
             if "[" in part.text:
                 return "#REF!+("  # a function of another workbook's macros
@@ -70,11 +63,8 @@ class Translator:
             return part.text
         found = reference(part.text)
         if found.kind == "name":
-            inner = self.name_text(found.name, found.sheet or sheet)
-            if inner is None:
-                return part.text
-            inner = self.plain(inner, found.sheet or sheet, row, column, depth + 1)
-            return inner if reference(inner).kind == "cells" else f"({inner})"
+            inner = self._plain_name(found.name, found.sheet or sheet)
+            return part.text if inner is None else inner
         if found.kind == "table":
             place = table_area(part.text, self.tables, sheet, row, column)
             return "#REF!" if place is None else absolute(*place)
@@ -97,3 +87,13 @@ class Translator:
         if not alone:
             return "#REF!"
         return ",".join(f"{quoted(name)}!{area}" for name in self.order[ends[0] : ends[1] + 1])
+
+
+def engine_text(text: str, formula: Formula) -> str:
+    """A plain text as the engine gets it, without its `=`: one value, a fixed array made to fit, or as it is."""
+    if formula.kind == "plain":
+        return as_one_value(text)
+    if formula.kind == "fixed":
+        top, left, bottom, right = formula.area
+        return f"{FITTED}({text},{bottom - top + 1},{right - left + 1})"
+    return text

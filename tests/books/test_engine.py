@@ -399,7 +399,39 @@ def test_function_that_raises(make):
 
 def test_a_formula_too_long_is_left(make):
     data = make(cells(A1=f"<f>{'1+' * 6000}1</f><v>6001</v>", A2="<f>CF_DOUBLE(A1)</f>"))
-    assert values(evaluate(data, OURS)) == {"A2": 12002.0}
+    result = evaluate(data, OURS)
+    assert values(result) == {"A2": 12002.0}
+    assert result.warnings == ["S1!A1 cannot be read; stored values were kept there."]
+
+
+def test_names_that_grow(make):
+    """Names that name each other many times over: bounded, and the rest of the workbook is calculated."""
+    names = "".join(f'<definedName name="n_{n}">{"+".join([f"n_{n + 1}"] * 100)}</definedName>' for n in range(60))
+    loop = '<definedName name="loop">loop+1</definedName>'
+    data = make(
+        cells(A1="<f>n_0+CF_DOUBLE(1)</f>", A2="<f>CF_DOUBLE(2)</f>", A3="<f>loop+CF_DOUBLE(1)</f>"),
+        names=f"<definedNames>{names}{loop}</definedNames>",
+    )
+    found = values(evaluate(data, OURS))
+    assert found["A2"] == 4.0 and isinstance(found["A1"], ErrorValue) and found["A3"] == ErrorValue("#REF!")
+
+
+def test_one_long_shared_formula_many_times(make):
+    long = "+".join(["A1"] * 2500)
+    rows = f'<row r="1"><c r="B1"><f t="shared" si="0" ref="B1:B9000">{long}</f></c></row>' + "".join(
+        f'<row r="{r}"><c r="B{r}"><f t="shared" si="0"/></c></row>' for r in range(2, 9000)
+    )
+    with pytest.raises(BookRefused, match="longer than any program"):
+        evaluate(make(rows), OURS)
+
+
+def test_tables_without_end(make, monkeypatch):
+    from cellfuncs.books import outcome
+
+    monkeypatch.setattr(outcome, "MAX_RESULTS", 50)
+    data = make(cells(A1=(DYNAMIC, '<f t="array" ref="A1">CF_TABLE(40)</f>')))
+    with pytest.raises(BookRefused, match="million cells"):
+        evaluate(data, OURS)
 
 
 # -- limits --------------------------------------------------------------------------------------------

@@ -300,6 +300,13 @@ def test_merge_over_the_whole_sheet(make):
     assert "merges" in refused(make(sheet))
 
 
+def test_array_over_the_whole_sheet(make):
+    cell = '<row r="1"><c r="A1"><f t="array" ref="{}">SIN(1)</f></c></row>'
+    assert "array formulas" in refused(make(cell.format("A1:XFD1048576")))
+    assert "no range" in refused(make(cell.format("A1:ZZZZ9")))
+    assert inspect(make(cell.format("A1:J100"))).sheets[0].formulas == 1
+
+
 def test_million_row_dimension(make):
     for claimed in ("A1:XFD1048576", "A1:A1048576", "A1:C1000000"):
         body = f'<dimension ref="{claimed}"/><sheetData>{CELLS}</sheetData>'
