@@ -10,6 +10,7 @@ package.py     the zip container: strict directory, bounded inflating, a copy wi
 gate.py        the one pre-scan, its limits and refusals; returns a :class:`Book`
 scans.py       what the gate looks for in the main part and in each worksheet
 reading.py     formulas, stored values and byte offsets of one sheet
+strings.py     shared strings, stored values of single cells
 splice.py      new values set into the sheet's own text
 xmltext.py     values as cell texts and back
 grid.py        rows, columns, areas

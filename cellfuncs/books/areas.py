@@ -7,7 +7,8 @@ from typing import NamedTuple
 
 from cellfuncs.books.engine import Evaluation
 from cellfuncs.books.grid import area_text
-from cellfuncs.books.reading import Sheet, shared_strings
+from cellfuncs.books.reading import Sheet
+from cellfuncs.books.strings import shared_strings
 from cellfuncs.books.xmltext import Value, decoded
 
 LOOK_LEFT, LOOK_UP = 4, 4  # how far a label or head may stand from its area

@@ -7,8 +7,9 @@ from hypothesis import given, settings
 from hypothesis import strategies as st
 
 from cellfuncs.books import inspect, scans
-from cellfuncs.books.reading import Sheet, _Reader, read_sheet, values_of
+from cellfuncs.books.reading import Sheet, _Reader, read_sheet
 from cellfuncs.books.splice import set_values, with_attribute
+from cellfuncs.books.strings import values_of
 from cellfuncs.books.xmltext import ErrorValue, decoded
 from cellfuncs.errors import BookRefused
 
