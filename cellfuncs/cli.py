@@ -1,4 +1,4 @@
-"""The command line: `cellfuncs recalc`, `cellfuncs functions`.
+"""The command line: `cellfuncs recalc`, `cellfuncs functions`, `cellfuncs starter`.
 
 Exit codes: 0 fine, 2 the input could not be used (one line on stderr says why), 130 interrupted.
 Whatever is heavy is imported inside the command that needs it, so that `--help` answers at once.
@@ -84,6 +84,16 @@ def _parser() -> argparse.ArgumentParser:
     )
     functions.add_argument("name", metavar="NAME", nargs="?", help="a function, with or without CF_")
     functions.set_defaults(run=_functions)
+
+    starter = commands.add_parser(
+        "starter",
+        help="write a starter workbook for a flow kind",
+        description="Writes BOOK with a case block of the flow kind KIND (duct, plate, gap), its term table, chart and "
+        "fault count, to be filled with your own case.",
+    )
+    starter.add_argument("kind", metavar="KIND", help="duct, plate or gap")
+    starter.add_argument("book", metavar="BOOK", help="the workbook to write (.xlsx); it must not exist yet")
+    starter.set_defaults(run=_starter)
     return parser
 
 
@@ -99,6 +109,26 @@ def _recalc(options: argparse.Namespace) -> int:
     for warning in result.warnings:
         print(f"warning: {warning}", file=sys.stderr)
     print(f"wrote {result.out}")
+    return FINE
+
+
+def _starter(options: argparse.Namespace) -> int:
+    import tempfile
+    from pathlib import Path
+
+    from cellfuncs.hosts import embedded
+    from cellfuncs.sheets import starters
+
+    book = Path(options.book)
+    if book.suffix.casefold() != ".xlsx":
+        return _refuse(f"a starter is an .xlsx workbook; write for instance {book.stem or 'case'}.xlsx")
+    if book.exists():
+        return _refuse(f"{book} is there already; choose another name")
+    with tempfile.TemporaryDirectory() as folder:
+        raw = Path(folder) / "starter.xlsx"
+        starters.write_starter(options.kind, raw)
+        embedded.recalc(raw, out=book)
+    print(f"wrote {book}")
     return FINE
 
 

@@ -159,7 +159,8 @@ class _Writer:
         sheet.set_h_pagebreaks([row])
         head = row + 1
         self._heading(head, COLUMNS)
-        sheet.write(head, 6, "for the chart", self.style(font_color=GREY, align="right", bottom=1, bottom_color=INK))
+        sheet.set_column(7, 7, 13)
+        sheet.write(head, 7, "for the chart", self.style(font_color=GREY, align="right", bottom=1, bottom_color=INK))
         names = (*TERMS, ALL_LEFT_OUT)
         first = head + 1
         for k, term in enumerate(names):
@@ -181,7 +182,7 @@ class _Writer:
             sheet.set_row(at, 28)
             guarded = f"=IF(ISNUMBER(C{at + 1}),MAX(C{at + 1},0.000001),NA())"
             if term != ALL_LEFT_OUT:
-                sheet.write_formula(at, 6, guarded, self.style(num_format=SHARES, font_color=GREY))
+                sheet.write_formula(at, 7, guarded, self.style(num_format=SHARES, font_color=GREY))
         last = first + len(TERMS) - 1
         verdicts = f"E{first + 1}:E{last + 2}"
         bold = self.book.add_format({"bold": True})
@@ -193,7 +194,7 @@ class _Writer:
             {"type": "text", "criteria": "begins with", "value": "! ", "format": bold},
         )
         self._decision(last + 3, first, last)
-        span = f"A8:H{last + 3}"
+        span = f"A8:G{last + 3}"  # not the column for the chart: its #N/A are meant
         sheet.write_formula(self.faults_at, 1, f"=CF_FAULTS({span})", self.style(align="left"))
         self._chart(first, last, last + 7)
 
@@ -212,7 +213,7 @@ class _Writer:
             {
                 "name": "share",
                 "categories": ["Case", first, 0, last, 0],
-                "values": ["Case", first, 6, last, 6],
+                "values": ["Case", first, 7, last, 7],
                 "fill": {"color": RULE},
                 "gap": 60,
             }
