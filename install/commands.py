@@ -46,11 +46,19 @@ def bench(words: list[str]) -> int:
     return _run([prepare(), ROOT / "install" / "bench.py", *words])
 
 
+def calc(words: list[str]) -> int:
+    """Put Cellfuncs into LibreOffice Calc, or take it out."""
+    from calc.command import main as calc_main
+
+    return calc_main(words)
+
+
 COMMANDS = {
     "demo": (demo, "[FOLDER]"),
     "test": (test, "[PYTEST ARGUMENTS]"),
     "bench": (bench, "[check]"),
     "setup": (setup, ""),
+    "calc": (calc, "[--remove | --out FILE.oxt]"),
 }
 
 

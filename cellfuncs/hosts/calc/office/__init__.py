@@ -1,0 +1,1 @@
+"""What runs inside LibreOffice. Syntax of Python 3.8, standard library and uno only."""

@@ -1,0 +1,53 @@
+"""Makes cellfuncs.idl and cellfuncs.rdb anew, after the catalogue has changed. Needs LibreOffice's SDK
+(Debian: libreoffice-dev)."""
+
+import subprocess
+import sys
+import tempfile
+from pathlib import Path
+
+sys.path.insert(0, str(Path(__file__).resolve().parent.parent))
+
+from calc import extension
+from calc import office as offices
+from calc.office import Office, Unusable
+
+IDL = extension.HERE / "cellfuncs.idl"
+
+
+def compile_types(office: Office, text: str) -> bytes:
+    """The types of an interface as the office reads them. Raises Unusable."""
+    writer = office.sdk()
+    if writer is None:
+        raise Unusable("the SDK's unoidl-write is not here (Debian, Ubuntu: apt install libreoffice-dev)")
+    types = [path for path in (office.folder / "types.rdb", *_more_types(office)) if path.exists()]
+    with tempfile.TemporaryDirectory() as folder:
+        source, out = Path(folder) / "cellfuncs.idl", Path(folder) / "cellfuncs.rdb"
+        source.write_text(text, "utf-8")
+        done = subprocess.run([writer, *types, source, out], capture_output=True, text=True)
+        if done.returncode:
+            raise Unusable(f"unoidl-write: {done.stderr.strip()}")
+        return out.read_bytes()
+
+
+def _more_types(office: Office) -> tuple[Path, ...]:
+    resources = office.folder.parent / "Resources"
+    return (office.folder / "types" / "offapi.rdb", resources / "ure" / "share" / "misc" / "types.rdb")
+
+
+def main() -> int:
+    """Write both files; 2 with one line when it cannot be done."""
+    text = extension.idl()
+    try:
+        types = compile_types(offices.find(), text)
+    except Unusable as unusable:
+        print(unusable, file=sys.stderr)
+        return 2
+    IDL.write_text(text, "utf-8")
+    extension.RDB.write_bytes(types)
+    print(f"wrote {IDL.name} and {extension.RDB.name}")
+    return 0
+
+
+if __name__ == "__main__":
+    sys.exit(main())
