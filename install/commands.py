@@ -53,12 +53,28 @@ def calc(words: list[str]) -> int:
     return calc_main(words)
 
 
+def excel(words: list[str]) -> int:
+    """Put the functions into Excel (Windows), make them anew, or take them out."""
+    from excel.command import main as excel_main
+
+    return excel_main(words)
+
+
+def diagnose(words: list[str]) -> int:
+    """Say line by line what is right and wrong with an installation."""
+    from diagnose import main as diagnose_main
+
+    return diagnose_main(words)
+
+
 COMMANDS = {
     "demo": (demo, "[FOLDER]"),
     "test": (test, "[PYTEST ARGUMENTS]"),
     "bench": (bench, "[check]"),
     "setup": (setup, ""),
+    "excel": (excel, "[--repair | --remove]"),
     "calc": (calc, "[--remove | --out FILE.oxt]"),
+    "diagnose": (diagnose, "[excel] [calc]"),
 }
 
 
