@@ -155,10 +155,11 @@ class _Progress:
 
 def _functions(options: argparse.Namespace) -> int:
     from cellfuncs.cells import catalogue
+    from cellfuncs.sheets import reference
 
     known = catalogue.functions()
     if options.name is None:
-        print(_listing(known.values()))
+        print(reference.listing(_width()))
         return FINE
     wanted = options.name.upper()
     name = wanted if wanted in known else f"CF_{wanted}"
@@ -168,48 +169,12 @@ def _functions(options: argparse.Namespace) -> int:
         near = difflib.get_close_matches(name, known, n=3, cutoff=0.5)
         hint = f"; near it: {', '.join(near)}" if near else ""
         return _refuse(f'no function "{options.name}"{hint}. `cellfuncs functions` lists all')
-    print(_in_full(known[name]))
+    print(reference.text(known[name], _width()))
     return FINE
 
 
-def _call(function) -> str:
-    """CF_X(a, b, [c]) as one reads it in a formula."""
-    words = [f"[{one.name}]" if one.optional else one.name for one in function.arguments]
-    return f"{function.name}({', '.join(words)})"
-
-
-def _listing(functions) -> str:
-    lines = []
-    family = None
-    for function in functions:
-        if function.family != family:
-            family = function.family
-            lines += ["", family] if lines else [family]
-        lines += ["  " + _call(function), *_wrapped(function.summary, "      ")]
-    return "\n".join(lines)
-
-
-def _in_full(function) -> str:
-    from cellfuncs.quantities import KINDS
-
-    lines = [_call(function), *_wrapped(function.summary, "  "), "", "Arguments"]
-    for one in function.arguments:
-        kind = KINDS.get(one.kind)
-        notes = [f"{kind.words}, SI unit {kind.si_unit}"] if kind else []
-        notes += ["optional"] if one.optional else []
-        lines.append(f"  {one.name}" + (f" ({', '.join(notes)})" if notes else ""))
-        lines += _wrapped(one.help, "      ")
-    if not function.arguments:
-        lines.append("  none")
-    lines += ["", f"Example: {function.example}", f"Answers a {function.returns}. Family {function.family}."]
-    if function.source:
-        lines += _wrapped(f"Source: {function.source}", "")
-    return "\n".join(lines)
-
-
-def _wrapped(text: str, indent: str) -> list[str]:
+def _width() -> int:
+    """Characters in a line of the terminal, within reason."""
     import shutil
-    import textwrap
 
-    width = min(100, shutil.get_terminal_size((100, 24)).columns)
-    return textwrap.wrap(text, width, initial_indent=indent, subsequent_indent=indent)
+    return min(100, shutil.get_terminal_size((100, 24)).columns)

@@ -1,17 +1,26 @@
-"""Builds the sample workbooks: case block, term table, chart of the shares, decision and caution.
+"""Builds the sample workbooks, the function reference and the self-test.
 
-Run it with ``python workbooks/build.py [FOLDER]``. The stored values come from the embedded host, so that a colleague
-without Cellfuncs sees every number. The scenario (the Veldermoor pilot line) is invented.
+Run it with ``python workbooks/build.py [FOLDER]``. Without a folder the answers of the catalogue's examples, which
+``cellfuncs functions NAME`` shows, are stored anew as well. The stored values come from the embedded host, so that a
+colleague without Cellfuncs sees every number. The scenario (the Veldermoor pilot line) is invented.
 """
 
+import json
 import sys
 import tempfile
 from pathlib import Path
 
 from cellfuncs.hosts import embedded
+from cellfuncs.sheets import examples, reference
 from cellfuncs.sheets.case_sheet import CaseSheet, write_book
+from cellfuncs.sheets.reference_book import write_reference
+from cellfuncs.sheets.reference_pages import write_pages
+from cellfuncs.sheets.self_test import write_self_test
+from cellfuncs.sources import DATA
 
-HERE = Path(__file__).parent
+HERE = Path(__file__).resolve().parent
+PUBLISHED = HERE.parent / "tests" / "published"
+REFERENCE, SELF_TEST = "functions.xlsx", "self_test.xlsx"
 
 COOLANT = CaseSheet(
     title="Coolant channel of a mould plate",
@@ -91,10 +100,42 @@ def build(name: str, folder: Path) -> Path:
     return folder / name
 
 
+def answer_examples() -> str:
+    """The text of the data file with the answers of all examples, computed for the coolant channel."""
+    with tempfile.TemporaryDirectory() as temporary:
+        asked = Path(temporary) / "questions.xlsx"
+        examples.write_questions(asked, COOLANT.rows)
+        result = embedded.recalc(asked, Path(temporary) / "answers.xlsx")
+    return examples.as_json(COOLANT.rows, examples.answers(result.areas))
+
+
+def build_reference(folder: Path) -> Path:
+    """Write the function reference, as a workbook and as pages beside it."""
+    write_reference(folder / REFERENCE)
+    write_pages(folder / "functions")
+    return folder / REFERENCE
+
+
+def build_self_test(folder: Path) -> Path:
+    """Write the self-test with its stored values; expected values come from the published rows of the tests."""
+    files = sorted(PUBLISHED.glob("*.json"))
+    published = [row for file in files for row in json.loads(file.read_text("utf-8"))]
+    with tempfile.TemporaryDirectory() as temporary:
+        raw = Path(temporary) / SELF_TEST
+        write_self_test(raw, published)
+        embedded.recalc(raw, folder / SELF_TEST)
+    return folder / SELF_TEST
+
+
 def main(arguments: list[str]) -> int:
     folder = Path(arguments[0]) if arguments else HERE
+    if not arguments:
+        (DATA / reference.EXAMPLES_FILE).write_text(answer_examples(), "utf-8", newline="\n")
+        reference.stored.cache_clear()
     for name in SAMPLES:
         print("built", build(name, folder))
+    print("built", build_reference(folder))
+    print("built", build_self_test(folder))
     return 0
 
 
