@@ -41,6 +41,12 @@ ERROR_TEXTS = frozenset(
 )
 
 
+# The embedded engine's names of the same errors.
+ERRORS_BY_KIND = dict(
+    Na="#N/A", Div="#DIV/0!", Value="#VALUE!", Num="#NUM!", Name="#NAME?", Ref="#REF!", Null="#NULL!", Spill="#SPILL!"
+)
+
+
 class Handed(Exception):
     """A fault that was handed in and goes out unchanged."""
 
@@ -80,7 +86,7 @@ def unwrap(value: Any) -> Any:
 def error_cell(value: Any) -> str | None:
     """The name of an error value of the host, or None."""
     if type(value) is dict:
-        return str(value.get("kind", "error")) + " error"
+        return ERRORS_BY_KIND.get(value.get("kind"), "#VALUE!")
     if type(value) is str and value in ERROR_TEXTS:
         return value
     return None
@@ -339,7 +345,7 @@ def plain_cell(value: Any) -> Any:
         return value
     if isinstance(value, str):
         text = value.strip()
-        return text or None
+        return f"#error {text}" if text in ERROR_TEXTS else text or None
     if isinstance(value, (bool, int)):
         return float(value)
     shown = error_cell(value)
