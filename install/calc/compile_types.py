@@ -1,6 +1,7 @@
 """Makes cellfuncs.idl and cellfuncs.rdb anew, after the catalogue has changed. Needs LibreOffice's SDK
 (Debian: libreoffice-dev)."""
 
+import hashlib
 import subprocess
 import sys
 import tempfile
@@ -35,6 +36,11 @@ def _more_types(office: Office) -> tuple[Path, ...]:
     return (office.folder / "types" / "offapi.rdb", resources / "ure" / "share" / "misc" / "types.rdb")
 
 
+def mark(types: bytes) -> str:
+    """The first line of cellfuncs.idl: which cellfuncs.rdb belongs to it."""
+    return f"// cellfuncs.rdb made from this: {hashlib.sha256(types).hexdigest()}\n"
+
+
 def main() -> int:
     """Write both files; 2 with one line when it cannot be done."""
     text = extension.idl()
@@ -43,8 +49,8 @@ def main() -> int:
     except Unusable as unusable:
         print(unusable, file=sys.stderr)
         return 2
-    IDL.write_text(text, "utf-8")
     extension.RDB.write_bytes(types)
+    IDL.write_text(mark(types) + text, "utf-8")
     print(f"wrote {IDL.name} and {extension.RDB.name}")
     return 0
 

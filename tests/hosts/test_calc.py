@@ -1,0 +1,273 @@
+"""The functions in a real LibreOffice Calc, cell by cell beside the embedded host."""
+
+import os
+import re
+import signal
+import subprocess
+import time
+import zipfile
+from pathlib import Path
+
+import openpyxl
+import pytest
+import xlsxwriter
+
+from cellfuncs.cells import catalogue
+from cellfuncs.hosts import embedded
+from cellfuncs.hosts.calc import helper
+
+ROOT = Path(__file__).resolve().parent.parent.parent
+SAMPLES = sorted((ROOT / "workbooks").glob("*.xlsx"))
+COOLANT = [
+    ("flow kind", "duct", ""),
+    ("substance", "water", ""),
+    ("velocity", 3, "m/s"),
+    ("diameter", 8, "mm"),
+    ("length", 1.2, "m"),
+    ("inlet temperature", 18, "degC"),
+    ("wall temperature", 45, "degC"),
+    ("pressure", 3.2, "bar"),
+]
+TOLERANCE = 1e-12
+
+
+def same(ours, theirs):
+    """Whether two cells hold the same: numbers to 1e-12, texts and errors equal, blank equal to blank."""
+    if isinstance(ours, (int, float)) and isinstance(theirs, (int, float)):
+        return ours == pytest.approx(theirs, rel=TOLERANCE, abs=1e-300)
+    return (ours or "") == (theirs or "")
+
+
+def differences(ours, theirs):
+    """Cells of two {place: value} that are not the same."""
+    places = sorted(set(ours) | set(theirs))
+    return {p: (ours.get(p), theirs.get(p)) for p in places if not same(ours.get(p), theirs.get(p))}
+
+
+def stored(path):
+    """The stored values of a workbook file: {sheet: {place: value}}; an error is its name in a list."""
+    book = openpyxl.load_workbook(path, data_only=True)
+    return {
+        sheet.title: {
+            cell.coordinate: [cell.value] if cell.data_type == "e" else cell.value
+            for row in sheet.iter_rows()
+            for cell in row
+            if cell.value is not None
+        }
+        for sheet in book.worksheets
+    }
+
+
+def shown(office):
+    """The values of the open document: {sheet: {place: value}}."""
+    found = {}
+    for name, (area, _) in office.sheets().items():
+        rows = office.read(f"{name}!{area}")
+        found[name] = {
+            f"{openpyxl.utils.get_column_letter(j)}{i}": value
+            for i, row in enumerate(rows, 1)
+            for j, value in enumerate(row, 1)
+            if value != ""
+        }
+    return found
+
+
+def in_both(calc, folder, formulas, cells=()):
+    """What the embedded host and Calc answer to the same workbook: two lists of values.
+
+    The first sheet holds `cells` and the formulas in column J, the second the block `coolant`.
+    """
+    path, out = folder / "both.xlsx", folder / "out.xlsx"
+    book = xlsxwriter.Workbook(path)
+    sheet = book.add_worksheet("Cells")
+    block = book.add_worksheet("Block")
+    for k, row in enumerate(COOLANT):
+        block.write_row(k, 0, row)
+    book.define_name("coolant", f"=Block!$A$1:$C${len(COOLANT) + 3}")
+    for (row, column), value in dict(cells).items():
+        sheet.write(row, column, value)
+    for k, formula in enumerate(formulas):
+        sheet.write_formula(k, 9, formula)
+    book.close()
+    embedded.recalc(path, out)
+    calc.open(path)
+    calc.recalculate()
+    place = f"J1:J{len(formulas)}"
+    calculated = stored(out)["Cells"]
+    return [calculated.get(f"J{k + 1}") for k in range(len(formulas))], [row[0] for row in calc.read(place)]
+
+
+def block_columns():
+    """Cells for the example of CF_BLOCK: labels, units and values in A, B and D from row 3 on."""
+    cells = {}
+    for k, (label, value, unit) in enumerate(COOLANT):
+        cells[k + 2, 0], cells[k + 2, 1], cells[k + 2, 3] = label, unit, value
+    return {place: value for place, value in cells.items() if value != ""}
+
+
+def test_every_function_answers_in_a_cell_as_in_the_embedded_host(calc, tmp_path):
+    functions = list(catalogue.functions().values())
+    ours, theirs = in_both(calc, tmp_path, [function.example for function in functions], block_columns())
+    wrong = {f.example: pair for f, *pair in zip(functions, ours, theirs, strict=True) if not same(*pair)}
+    assert wrong == {}
+    assert [value for value in theirs if isinstance(value, list) or str(value).startswith("! ")] == []
+
+
+WRONG = [
+    "=CF_REYNOLDS()",
+    "=CF_REYNOLDS(2)",
+    "=CF_REYNOLDS(A1,0.02,998,0.001)",
+    "=CF_REYNOLDS(0,0.02,998,0.001)",
+    '=CF_REYNOLDS("",0.02,998,0.001)',
+    "=CF_REYNOLDS(-2,0.02,998,0.001)",
+    '=CF_REYNOLDS("fast",0.02,998,0.001)',
+    '=CF_REYNOLDS("2 kg",0.02,998,0.001)',
+    '=CF_REYNOLDS("9**9**9",0.02,998,0.001)',
+    '=CF_REYNOLDS(2,0.02,998,"1 cSt")',
+    "=CF_REYNOLDS(1E+308,1E+308,998,0.001)",
+    '=CF_REYNOLDS("! velocity: handed on",0.02,998,0.001)',
+    "=CF_REYNOLDS(CF_REYNOLDS(-1,1,1,1),0.02,998,0.001)",
+    "=CF_REYNOLDS(B1,B2,998,0.001)",
+    '=CF_PROPERTY("watr","density",300)',
+    '=CF_PROPERTY("water","colour",300)',
+    '=CF_PROPERTY("water","density",40)',
+    '=CF_PROPERTY("water","density",3000)',
+    '=CF_PROPERTY("water","density",300,,"K")',
+    '=CF_PROPERTY("water","density",300,0,"lb/ft3")',
+    '=CF_PROPERTY("water","density",300,A1,A1)',
+    '=CF_PROPERTY(A1,"density",300)',
+    '=CF_PROPERTY(7,"density",300)',
+    "=CF_CASE(coolant)",
+    '=CF_CASE(A1:C9,"velocity")',
+    '=CF_CASE("coolant","velocity")',
+    '=CF_CASE(coolant,"flow kind")',
+    '=CF_CASE(coolant,"velocity","kg")',
+    '=CF_TERM(coolant,"viscous heating","colour")',
+    '=CF_TERM(coolant,"viscous heating","verdict")',
+    '=CF_TERM(CF_VARY(coolant,"velocity",-2.5),"viscous heating")',
+    '=CF_TERM(CF_VARY(coolant,"velocity",2.5),"viscous heating")',
+    '=CF_IN_UNIT(1,"ton","kg")',
+    '=CF_IN_UNIT("1,250.5","kPa","bar")',
+    '=CF_UNIT_FITS("W/m2K","velocity")',
+    '=CF_FAULTS(B1:B6)',
+    '=CF_SI(B3,B4)',
+    '=CF_IN_UNIT(12,"Straße","m")',
+]
+WRONG_CELLS = {(0, 1): "3 ft/s", (1, 1): "20 mm", (2, 1): 12.5, (3, 1): "kJ/kg-K", (4, 1): "! mass: none"}
+
+
+def test_wrong_arguments_show_the_texts_of_the_embedded_host(calc, tmp_path):
+    ours, theirs = in_both(calc, tmp_path, WRONG, WRONG_CELLS)
+    wrong = {f: pair for f, *pair in zip(WRONG, ours, theirs, strict=True) if not same(*pair)}
+    assert wrong == {}
+    assert sum(str(value).startswith("! ") for value in theirs) > 20
+
+
+@pytest.mark.parametrize("kind", ["table", "cell"])
+def test_a_range_answers_in_its_shape(calc, cf, kind):
+    calc.new()
+    rows = [[0.5 + k / 7, 290.0 + k] for k in range(50)]
+    calc.values("A1:B50", rows)
+    if kind == "cell":
+        got = calc.array("D1:D50", "=CF_REYNOLDS(A1:A50;0.02;998;0.001)")
+        assert got == cf("REYNOLDS", [[row[0]] for row in rows], 0.02, 998.0, 0.001)
+        got = calc.array("F1:G50", '=CF_PROPERTY("water";{"density"."viscosity"};B1:B50)')
+        assert got == cf("PROPERTY", "water", [["density", "viscosity"]], [[row[1]] for row in rows])
+    else:
+        calc.values("A1:C8", COOLANT)
+        got = calc.array("E1:J9", "=CF_TERMS(A1:C8)")
+        wanted = cf("TERMS", [list(row) for row in COOLANT])
+        assert [row[: len(wanted[0])] for row in got[: len(wanted)]] == wanted[:9]
+
+
+def test_a_range_answers_each_cell_with_its_own_fault(calc):
+    calc.new()
+    calc.values("A1:A4", [[2.0], ["fast"], [""], ["3 ft/s"]])
+    got = calc.array("C1:C4", "=CF_REYNOLDS(A1:A4;0.02;998;0.001)")
+    assert got[0] == [39920.0] and got[3][0] == pytest.approx(3 * 0.3048 * 19960)
+    assert got[1][0].startswith("! velocity: ") and got[2][0].startswith("! velocity: empty")
+    assert calc.formula("E1", "=CF_FAULTS(C1:C4)").startswith("2 faults, first: velocity: ")
+
+
+def test_texts_compare_as_texts_do(calc):
+    calc.new()
+    calc.values("A1:C8", COOLANT)
+    formula = '=IF(CF_TERM(A1:C8;"viscous heating";"verdict")="leave out";"left";"kept")'
+    assert calc.formula("E1", '=CF_TERM(A1:C8;"viscous heating";"verdict")') == "leave out"
+    assert calc.formula("E2", '=E1="leave out"') == 1.0
+    assert calc.formula("E3", formula) == "left"
+    assert calc.formula("E4", '=IF(CF_CASE(A1:C8;"flow kind")="duct";"yes";"no")') == "yes"
+
+
+def test_errors_of_cells_pass_through_and_are_counted(calc):
+    calc.new()
+    calc.fill("A1:A4", [["=NA()"], ["=1/0"], ["! mass: none"], ["=CF_REYNOLDS(A1;1;1;1)"]])
+    assert calc.read("A4") == [[["#N/A"]]]
+    assert calc.formula("B1", "=CF_FAULTS(A1:A4)") == "4 faults, first: #N/A"
+    assert calc.formula("B2", "=CF_FAULTS(A3:A3)") == "1 fault, first: mass: none"
+    assert calc.formula("B3", "=CF_FAULTS(D:E)") == 0.0
+
+
+def test_whole_columns_end_where_their_cells_do(calc, cf):
+    calc.new()
+    calc.values("A1:C8", COOLANT)
+    wanted = cf("CASE", [list(row) for row in COOLANT], "Reynolds number")
+    assert calc.formula("F1", '=CF_CASE(A:C;"Reynolds number")') == pytest.approx(wanted, rel=TOLERANCE)
+    calc.values("H1:H3", [[1.0], [2.0], [3.0]])
+    assert calc.array("I1:I4", "=CF_REYNOLDS(H:H;0.02;998;0.001)") == [[19960.0], [39920.0], [59880.0], [["#N/A"]]]
+
+
+def test_twenty_thousand_cells(calc):
+    calc.new()
+    count = 20_000
+    calc.values(f"A1:A{count}", [[0.5 + k * 1e-4] for k in range(count)])
+    calc.fill(f"B1:B{count}", [[f"=CF_REYNOLDS(A{k};0.05;998;0.001)"] for k in range(1, count + 1)])
+    assert calc.formula("D1", f"=COUNT(B1:B{count})") == count
+    assert calc.formula("D2", f"=SUMPRODUCT(ABS(B1:B{count}/(A1:A{count}*0.05*998/0.001)-1))") < count * 1e-15
+
+
+# -- the helper process ------------------------------------------------------------------------------
+
+
+def _waits(condition, seconds=20):
+    end = time.monotonic() + seconds
+    while not condition() and time.monotonic() < end:
+        time.sleep(0.05)
+    return condition()
+
+
+def test_a_helper_that_was_killed_starts_anew(calc):
+    calc.new()
+    assert calc.formula("A1", "=CF_REYNOLDS(2;0.02;998;0.001)") == 39920.0
+    (first,) = calc.helpers()
+    os.kill(first, signal.SIGKILL)
+    assert _waits(lambda: not Path(f"/proc/{first}/cmdline").read_bytes()) is True
+    assert calc.formula("A2", "=CF_REYNOLDS(4;0.02;998;0.001)") == 79840.0
+    assert first not in calc.helpers()
+
+
+def test_a_call_that_hangs_is_ended_and_the_next_one_works(calc):
+    calc.new()
+    assert calc.formula("A1", "=CF_REYNOLDS(2;0.02;998;0.001)") == 39920.0
+    (first,) = calc.helpers()
+    os.kill(first, signal.SIGSTOP)  # as a process that hangs: there, and silent
+    fault = calc.formula("A2", "=CF_REYNOLDS(4;0.02;998;0.001)")
+    assert re.fullmatch(r"! Cellfuncs: no answer within \d+ s, so the calculation was ended; .*", fault)
+    assert calc.formula("A3", "=CF_REYNOLDS(4;0.02;998;0.001)") == 79840.0
+    calc.recalculate()
+    assert calc.read("A1:A3") == [[39920.0], [79840.0], [79840.0]]
+
+
+def test_the_helper_starts_with_the_first_call_and_ends_with_the_office(libreoffice, calc, tmp_path):
+    """Through the command line of the office, which converts a file with names it has not resolved."""
+    path = tmp_path / "short names.xlsx"
+    book = xlsxwriter.Workbook(path)
+    sheet = book.add_worksheet()
+    sheet.write_formula(0, 0, "=CF_REYNOLDS(2,0.02,998,0.001)", None, 7)
+    sheet.write_formula(0, 1, "=CF_VERSION()")
+    sheet.protect()
+    book.close()
+    calc.open(path)
+    assert calc.formulas("A1") == [["=CELLFUNCS.FUNCTIONS.CF_REYNOLDS(2;0.02;998;0.001)"]]
+    assert calc.modified() is False
+    assert calc.read("A1")[0] == [39920.0]
