@@ -14,6 +14,7 @@ from typing import Any
 
 from cellfuncs.sources import read_table
 
+STEFAN_BOLTZMANN = 5.670374419e-8  # W/(m2 K4), CODATA 2018
 STANDARD_GRAVITY = 9.80665  # m/s2, exact by definition (NIST SP 811, table B.8)
 
 
@@ -129,6 +130,183 @@ def weber(velocity, length, density, surface_tension):
 def strouhal(velocity, length, frequency):
     """Sr = fL/U."""
     return frequency * length / velocity
+
+
+def drag_coefficient(velocity, area, density, force):
+    """c_D = 2F/(ρU²A)."""
+    return 2.0 * force / (density * velocity**2 * area)
+
+
+def pressure_coefficient(velocity, density, pressure_difference):
+    """c_p = 2Δp/(ρU²)."""
+    return 2.0 * pressure_difference / (density * velocity**2)
+
+
+def bejan(length, viscosity, diffusivity, pressure_difference):
+    """Be = ΔpL²/(μα)."""
+    return pressure_difference * length**2 / (viscosity * diffusivity)
+
+
+def bingham(velocity, length, viscosity, yield_stress):
+    """Bm = τ0L/(μU)."""
+    return yield_stress * length / (viscosity * velocity)
+
+
+def hedstrom(length, density, viscosity, yield_stress):
+    """He = τ0ρL²/μ²."""
+    return yield_stress * density * length**2 / viscosity**2
+
+
+def capillary(velocity, viscosity, surface_tension):
+    """Ca = μU/σ."""
+    return viscosity * velocity / surface_tension
+
+
+def ohnesorge(length, density, viscosity, surface_tension):
+    """Oh = μ/√(ρσL)."""
+    return viscosity / (density * surface_tension * length) ** 0.5
+
+
+def laplace(length, density, viscosity, surface_tension):
+    """La = σρL/μ²."""
+    return surface_tension * density * length / viscosity**2
+
+
+def bond(length, density, surface_tension, gravity=STANDARD_GRAVITY):
+    """Bo = ρgL²/σ."""
+    return density * gravity * length**2 / surface_tension
+
+
+def eotvos(length, density_difference, surface_tension, gravity=STANDARD_GRAVITY):
+    """Eo = ΔρgL²/σ."""
+    return density_difference * gravity * length**2 / surface_tension
+
+
+def morton(density, density_difference, viscosity, surface_tension, gravity=STANDARD_GRAVITY):
+    """Mo = gμ⁴Δρ/(ρ²σ³)."""
+    return gravity * viscosity**4 * density_difference / (density**2 * surface_tension**3)
+
+
+def dean(velocity, diameter, coil_diameter, kinematic_viscosity):
+    """De = (UD/ν)√(D/D_c)."""
+    return velocity * diameter / kinematic_viscosity * (diameter / coil_diameter) ** 0.5
+
+
+def womersley(length, kinematic_viscosity, angular_velocity):
+    """Wo = R√(ω/ν)."""
+    return length * (angular_velocity / kinematic_viscosity) ** 0.5
+
+
+def archimedes(length, density, density_difference, viscosity, gravity=STANDARD_GRAVITY):
+    """Ar = gL³ρΔρ/μ²."""
+    return gravity * length**3 * density * density_difference / viscosity**2
+
+
+def galilei(length, kinematic_viscosity, gravity=STANDARD_GRAVITY):
+    """Ga = gL³/ν²."""
+    return gravity * length**3 / kinematic_viscosity**2
+
+
+def rossby(velocity, length, angular_velocity):
+    """Ro = U/(2ΩL)."""
+    return velocity / (2.0 * angular_velocity * length)
+
+
+def ekman(length, kinematic_viscosity, angular_velocity):
+    """Ek = ν/(2ΩL²)."""
+    return kinematic_viscosity / (2.0 * angular_velocity * length**2)
+
+
+def taylor(length, kinematic_viscosity, angular_velocity):
+    """Ta = 4Ω²L⁴/ν²."""
+    return 4.0 * angular_velocity**2 * length**4 / kinematic_viscosity**2
+
+
+def atwood(density_1, density_2):
+    """At = (ρ1 − ρ2)/(ρ1 + ρ2)."""
+    return (density_1 - density_2) / (density_1 + density_2)
+
+
+def cavitation(velocity, density, pressure_absolute, vapour_pressure):
+    """σ_c = 2(p − p_v)/(ρU²)."""
+    return 2.0 * (pressure_absolute - vapour_pressure) / (density * velocity**2)
+
+
+def stefan(temperature_difference, specific_heat, latent_heat):
+    """Ste = cpΔT/h."""
+    return specific_heat * temperature_difference / latent_heat
+
+
+def jakob(temperature_difference, specific_heat, latent_heat):
+    """Ja = cpΔT/h_v."""
+    return specific_heat * temperature_difference / latent_heat
+
+
+def clausius(velocity, length, temperature_difference, density, conductivity):
+    """Cl = U³Lρ/(kΔT)."""
+    return velocity**3 * length * density / (conductivity * temperature_difference)
+
+
+def boltzmann(velocity, temperature, density, specific_heat, emissivity):
+    """Bz = ρcpU/(εσT³)."""
+    return density * specific_heat * velocity / (emissivity * STEFAN_BOLTZMANN * temperature**3)
+
+
+def stark(length, temperature, conductivity, emissivity):
+    """Sk = εσT³L/k."""
+    return emissivity * STEFAN_BOLTZMANN * temperature**3 * length / conductivity
+
+
+def pomerantsev(length, temperature_difference, conductivity, volumetric_source):
+    """Po = q‴L²/(kΔT)."""
+    return volumetric_source * length**2 / (conductivity * temperature_difference)
+
+
+def schmidt(kinematic_viscosity, mass_diffusivity):
+    """Sc = ν/D."""
+    return kinematic_viscosity / mass_diffusivity
+
+
+def lewis(diffusivity, mass_diffusivity):
+    """Le = α/D."""
+    return diffusivity / mass_diffusivity
+
+
+def sherwood(length, mass_diffusivity, mass_transfer_coefficient):
+    """Sh = k_mL/D."""
+    return mass_transfer_coefficient * length / mass_diffusivity
+
+
+def mass_peclet(velocity, length, mass_diffusivity):
+    """Pe* = UL/D."""
+    return velocity * length / mass_diffusivity
+
+
+def mass_stanton(velocity, mass_transfer_coefficient):
+    """St* = k_m/U."""
+    return mass_transfer_coefficient / velocity
+
+
+def mass_fourier(length, time, mass_diffusivity):
+    """Fo* = Dt/L²."""
+    return mass_diffusivity * time / length**2
+
+
+def mass_grashof(length, density, density_difference, kinematic_viscosity, gravity=STANDARD_GRAVITY):
+    """Gr* = gΔρL³/(ρν²)."""
+    return gravity * density_difference * length**3 / (density * kinematic_viscosity**2)
+
+
+def heat_colburn(velocity, density, viscosity, specific_heat, conductivity, coefficient):
+    """j_H = St·Pr^2/3."""
+    return (
+        coefficient / (density * velocity * specific_heat) * (viscosity * specific_heat / conductivity) ** (2.0 / 3.0)
+    )
+
+
+def mass_colburn(velocity, kinematic_viscosity, mass_diffusivity, mass_transfer_coefficient):
+    """j_M = St*·Sc^2/3."""
+    return mass_transfer_coefficient / velocity * (kinematic_viscosity / mass_diffusivity) ** (2.0 / 3.0)
 
 
 @cache

@@ -6,8 +6,9 @@ are both ρcpU·ΔT/L; molecular k over a turbulent layer never enters.
 
 from cellfuncs.answers import Solution
 from cellfuncs.answers.plate import PlateAnswers
+from cellfuncs.groups import STEFAN_BOLTZMANN
 from cellfuncs.terms.recovery import rise_or_bound
-from cellfuncs.terms.size import STEFAN_BOLTZMANN, Size, absent, num, percent
+from cellfuncs.terms.size import Size, absent, num, percent
 
 _HOLDS, _FAILS = 1000.0, 100.0  # Re_L of a boundary layer: premise holds above, fails below
 

@@ -2,8 +2,6 @@
 
 from dataclasses import dataclass
 
-STEFAN_BOLTZMANN = 5.670374419e-8  # W/(m2 K4), CODATA 2018
-
 
 @dataclass(frozen=True)
 class Size:
