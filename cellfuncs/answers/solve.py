@@ -7,15 +7,15 @@ from functools import cached_property
 from cellfuncs import groups
 from cellfuncs.answers.duct import DuctAnswers, solve_duct
 from cellfuncs.answers.gap import GapAnswers, solve_gap
-from cellfuncs.answers.plate import PlateAnswers, solve_plate
+from cellfuncs.answers.layer import LayerAnswers, solve_layer
 from cellfuncs.cases import labels
 from cellfuncs.cases.case import Case
 from cellfuncs.errors import CaseRefused
 
-Answers = DuctAnswers | PlateAnswers | GapAnswers
+Answers = DuctAnswers | LayerAnswers | GapAnswers
 _SOLVERS: Mapping[str, Callable[[Case], Answers]] = {
     "duct": solve_duct,
-    "plate": solve_plate,
+    "plate": solve_layer,
     "gap": solve_gap,
 }
 
@@ -49,7 +49,7 @@ class Solution:
         a = self.answers
         if isinstance(a, DuctAnswers):
             return a.shape.diameter
-        return a.length if isinstance(a, PlateAnswers) else a.gap
+        return a.length if isinstance(a, LayerAnswers) else a.gap
 
     def mach(self) -> float | None:
         sound = self.case.speed_of_sound(self.answers.property_temperature)

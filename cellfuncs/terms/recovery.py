@@ -1,12 +1,12 @@
 """The recovery rise of a case, or a safe bound of it where no published factor reaches."""
 
 from cellfuncs.answers.duct import DuctAnswers
-from cellfuncs.answers.plate import PlateAnswers
+from cellfuncs.answers.layer import LayerAnswers
 from cellfuncs.errors import OutOfRange
 from cellfuncs.methods import recovery
 
 
-def rise_or_bound(answers: DuctAnswers | PlateAnswers) -> tuple[float, str]:
+def rise_or_bound(answers: DuctAnswers | LayerAnswers) -> tuple[float, str]:
     """ΔT_rec [K], and a remark that it is only a bound from above (empty where it is known)."""
     try:
         return answers.recovery_rise, ""
@@ -25,7 +25,7 @@ def _duct_bound(answers: DuctAnswers) -> float:
     return max(bound, 2.0 * pr) if answers.reynolds < 1e4 else bound
 
 
-def _plate_bound(answers: PlateAnswers) -> float:
+def _plate_bound(answers: LayerAnswers) -> float:
     """Recovery of a laminar layer bounds the turbulent one above Pr 1, unity below; 0.1 below Pr 0.01."""
     pr = answers.properties.prandtl
     if answers.laminar:

@@ -4,7 +4,7 @@ from collections.abc import Callable, Mapping
 
 from cellfuncs.answers import Solution
 from cellfuncs.errors import UnknownName
-from cellfuncs.terms import duct, gap, plate
+from cellfuncs.terms import duct, gap, layer
 from cellfuncs.terms.size import Size, percent
 from cellfuncs.terms.verdicts import KEEP, LEAVE_OUT, Judged, judge, left_out
 
@@ -26,7 +26,7 @@ NO_MODEL = "no model"
 NO_SHARE = "no share"
 _SIZES: Mapping[str, Callable[[Solution], list[Size]]] = {
     "duct": duct.sizes,
-    "plate": plate.sizes,
+    "plate": layer.sizes,
     "gap": gap.sizes,
 }
 

@@ -5,7 +5,7 @@ are both ρcpU·ΔT/L; molecular k over a turbulent layer never enters.
 """
 
 from cellfuncs.answers import Solution
-from cellfuncs.answers.plate import PlateAnswers
+from cellfuncs.answers.layer import LayerAnswers
 from cellfuncs.groups import STEFAN_BOLTZMANN
 from cellfuncs.terms.recovery import rise_or_bound
 from cellfuncs.terms.size import Size, absent, num, percent
@@ -15,7 +15,7 @@ _HOLDS, _FAILS = 1000.0, 100.0  # Re_L of a boundary layer: premise holds above,
 
 def sizes(solution: Solution) -> list[Size]:
     """The terms of a plate in the order of the table."""
-    a: PlateAnswers = solution.answers
+    a: LayerAnswers = solution.answers
     balance = a.capacity_flux * solution.driving / a.length
     return [
         _storage(solution, a, balance),
@@ -33,11 +33,11 @@ def _kelvins(solution: Solution, share: float) -> float | None:
     return share * solution.driving if solution.case.answer == "wall temperature" else None
 
 
-def _peclet(a: PlateAnswers) -> float:
+def _peclet(a: LayerAnswers) -> float:
     return a.reynolds * a.properties.prandtl
 
 
-def _exchange(solution: Solution, a: PlateAnswers, balance: float) -> tuple[Size, Size]:
+def _exchange(solution: Solution, a: LayerAnswers, balance: float) -> tuple[Size, Size]:
     thickness = a.properties.conductivity / a.coefficient
     says = (
         f"h {num(a.coefficient)} W/(m2 K) ({a.method}), difference {num(solution.driving)} K, "
@@ -52,7 +52,7 @@ def _exchange(solution: Solution, a: PlateAnswers, balance: float) -> tuple[Size
     )
 
 
-def _conduction_along(a: PlateAnswers) -> Size:
+def _conduction_along(a: LayerAnswers) -> Size:
     re = a.reynolds
     settled = "leave out" if re >= _HOLDS else "borderline" if re >= _FAILS else "keep"
     state = {"leave out": "holds", "borderline": "is strained", "keep": "fails"}[settled]
@@ -60,7 +60,7 @@ def _conduction_along(a: PlateAnswers) -> Size:
     return Size("conduction along", 1.0 / _peclet(a), 0.0, says, asked=0.0, settled=settled, no_share=True)
 
 
-def _storage(solution: Solution, a: PlateAnswers, balance: float) -> Size:
+def _storage(solution: Solution, a: LayerAnswers, balance: float) -> Size:
     time = solution.case.get("time")
     if time is None:
         return absent("storage", "steady: no time scale is stated; add one to judge start-up or swings")
@@ -75,7 +75,7 @@ def _storage(solution: Solution, a: PlateAnswers, balance: float) -> Size:
     )
 
 
-def _viscous(solution: Solution, a: PlateAnswers, balance: float) -> Size:
+def _viscous(solution: Solution, a: LayerAnswers, balance: float) -> Size:
     p = a.properties
     rise, remark = rise_or_bound(a)
     share = rise / solution.driving
@@ -88,7 +88,7 @@ def _viscous(solution: Solution, a: PlateAnswers, balance: float) -> Size:
     return Size("viscous heating", ec_re, share * balance, says, kelvins=_kelvins(solution, share))
 
 
-def _source(solution: Solution, a: PlateAnswers) -> Size:
+def _source(solution: Solution, a: LayerAnswers) -> Size:
     q = solution.case.get("volumetric_source")
     if q is None:
         return absent("volumetric source", "no source is stated; add one for absorbed or reaction heat")
@@ -97,7 +97,7 @@ def _source(solution: Solution, a: PlateAnswers) -> Size:
     return Size("volumetric source", share, abs(q), says, kelvins=_kelvins(solution, share))
 
 
-def _radiation(solution: Solution, a: PlateAnswers, balance: float) -> Size:
+def _radiation(solution: Solution, a: LayerAnswers, balance: float) -> Size:
     case = solution.case
     if not (case.has("emissivity") and case.has("surroundings_temperature")) or a.wall is None:
         return absent(

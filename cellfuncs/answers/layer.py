@@ -10,7 +10,7 @@ from cellfuncs.methods import recovery
 
 
 @dataclass(frozen=True)
-class PlateAnswers:
+class LayerAnswers:
     """A solved plate; differences are wall minus stream. SI units."""
 
     case: Case
@@ -70,7 +70,7 @@ class PlateAnswers:
         return factor * self.velocity**2 / (2.0 * self.properties.specific_heat)
 
 
-def solve_plate(case: Case) -> PlateAnswers:
+def solve_layer(case: Case) -> LayerAnswers:
     """The answers of a plate case; with a prescribed flux it closes the loop on the film temperature."""
     length = case.need("length")
     transition = case.get("transition", methods.TRANSITION)
@@ -78,7 +78,7 @@ def solve_plate(case: Case) -> PlateAnswers:
     stream, difference = _temperatures(case)
     stated = case.get("property_temperature")
 
-    def at(temperature: float | None) -> PlateAnswers:
+    def at(temperature: float | None) -> LayerAnswers:
         p = case.properties(temperature)
         u = case.velocity(p.density)
         re = p.density * u * length / p.viscosity
@@ -89,7 +89,7 @@ def solve_plate(case: Case) -> PlateAnswers:
             nusselt, method, outside = methods.nusselt(re, p.prandtl, case.wall, transition, case.allow)
         h = nusselt * p.conductivity / length
         driving = flux / h if flux is not None else difference
-        return PlateAnswers(
+        return LayerAnswers(
             case, length, temperature, p, u, re, transition, nusselt, h, method, outside, driving, flux, stream
         )
 
