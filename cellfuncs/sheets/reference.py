@@ -217,7 +217,7 @@ def _answer_lines(example: Example | None, width: int) -> list[str]:
         return _wrapped(f"{gives} {example.single}", "  ", width)
     rows = [[shown(cell) for cell in row] for row in example.rows]
     widths = [max(map(len, column)) for column in zip(*rows, strict=True)]
-    lines = [f"  {gives}"]
+    lines = _wrapped(gives, "  ", width)
     for row in rows:
         line = "    " + "  ".join(cell.ljust(size) for cell, size in zip(row, widths, strict=True)).rstrip()
         lines.append(line if len(line) <= width else line[: width - 1].rstrip() + "…")

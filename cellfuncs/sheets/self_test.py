@@ -77,22 +77,24 @@ def _literal(value: Any, blocks: _Blocks) -> str:
     return repr(value).upper().removesuffix(".0")
 
 
-def checks(published: Iterable[Mapping[str, Any]]) -> tuple[list[Check], _Blocks]:
-    """All checks, function by function, and the blocks that their formulas name."""
+def checks(
+    published: Iterable[Mapping[str, Any]], called: Mapping[str, CellFunction] | None = None
+) -> tuple[list[Check], _Blocks]:
+    """All checks, function by function, and the blocks that their formulas name; ``called`` is the catalogue."""
     blocks = _Blocks()
     rows: dict[str, list[Mapping[str, Any]]] = {}
     for row in published:
         if row["kind"] in KINDS:
             rows.setdefault(row["call"], []).append(row)
     found = []
-    for name, function in functions().items():
+    for name, function in (functions() if called is None else called).items():
         chosen = _chosen(rows.get(name, ()))
         found += [_from_row(row, blocks) for row in chosen] or [_from_example(function)]
         found += [
-            Check(called, formula, expected, OWN_TOLERANCE * expected if isinstance(expected, float) else 0.0,
+            Check(name, formula, expected, OWN_TOLERANCE * expected if isinstance(expected, float) else 0.0,
                   "handing over", f"{shows}; the value follows from the definition")
-            for called, formula, expected, shows in HANDED_OVER
-            if called == name
+            for concerned, formula, expected, shows in HANDED_OVER
+            if concerned == name
         ]  # fmt: skip
     return found, blocks
 
