@@ -11,7 +11,7 @@ from pathlib import Path
 
 import environment
 from environment import LOCK_FILE, ROOT, Trouble, environment_folder, interpreter
-from findings import FAILS, NOT_SET_UP, NOTE, OK, Line, in_python
+from findings import FAILS, NOT_SET_UP, NOTE, OK, Line, in_python, print_any_letter
 
 SETUP = "python3 install/start.py setup"
 CALC = "python3 install/start.py calc"
@@ -33,6 +33,7 @@ def main(words: list[str]) -> int:
     """Print the lines; 1 when something fails, or when a host that is named (excel, calc) is not set up."""
     if [word for word in words if word not in HOSTS]:
         raise Trouble("diagnose takes excel, calc or nothing")
+    print_any_letter()
     found: list[Line] = []
     for subject, check in CHECKS.items():
         for line in looked_at(subject, check):
@@ -175,10 +176,16 @@ def calc_here() -> Iterator[Line]:
 
 
 def extensions_of(profile: Path, program: Path) -> list[Path]:
-    """helper.json of every installed copy of our extension, the user's own and those for all users."""
+    """helper.json of every installed copy of our extension, the user's own and those for all users.
+
+    LibreOffice keeps the files of a removed extension for a while and marks them beside their folder.
+    """
     shares = (program.parent / "share", program.parent / "Resources" / "share")
     caches = [folder / "uno_packages" / "cache" for folder in (profile / "user", *shares)]
-    return [file for cache in caches for file in sorted(cache.glob("uno_packages/*/cellfuncs.oxt/helper.json"))]
+    files = [file for cache in caches for file in sorted(cache.glob("uno_packages/*/cellfuncs.oxt/helper.json"))]
+    folders = [file.parent.parent for file in files]
+    marks = [folder.with_name(folder.name.removesuffix("_") + "removed") for folder in folders]
+    return [file for file, mark in zip(files, marks, strict=True) if not mark.exists()]
 
 
 def calc_extension(copies: list[Path]) -> Iterator[Line]:

@@ -1,6 +1,7 @@
-"""One line of a diagnosis, and a question put to another Python."""
+"""One line of a diagnosis, a question put to another Python, and output that no letter can break."""
 
 import subprocess
+import sys
 from dataclasses import dataclass
 from pathlib import Path
 
@@ -48,3 +49,9 @@ def in_python(python: Path, script: str) -> Answer:
         said = [line.strip() for line in done.stderr.splitlines() if line.strip()]
         return Answer(None, said[-1] if said else f"it ended with code {done.returncode}")
     return Answer(done.stdout.strip())
+
+
+def print_any_letter() -> None:
+    """A path may have letters that a redirected output cannot take: they are written as escapes then."""
+    if hasattr(sys.stdout, "reconfigure"):
+        sys.stdout.reconfigure(errors="backslashreplace")

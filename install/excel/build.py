@@ -1,4 +1,4 @@
-"""Makes the add-in file in the user's own Excel, proves it in a cell and puts it where Excel loads it at its start.
+"""Makes the add-in file in the user's own Excel, puts it where Excel loads it at its start and proves it in a cell.
 
 Runs inside the private environment, as `python -m excel.build` in the folder install/:
 `fingerprint` prints what an add-in made now would be made from; `make TEMPLATE` makes one from xlwings' template
@@ -92,8 +92,8 @@ def components_of(book):
     return components
 
 
-def make(excel, template: Path):
-    """Turn a copy of xlwings' template into our add-in and save it; the open workbook."""
+def make(excel, template: Path) -> None:
+    """Turn a copy of xlwings' template into our add-in and save it."""
     import xlwings
 
     book = excel.Workbooks.Open(str(template))
@@ -114,26 +114,24 @@ def make(excel, template: Path):
     xlwings.import_udfs(settings.MODULE, book)
     book.IsAddin = True
     book.Save()
-    return book
+    book.Close(False)
 
 
 def prove(excel) -> None:
     """Let a cell of a fresh workbook call two functions; Refused with what the cell shows instead."""
     from cellfuncs.cells import catalogue
 
-    book = excel.Workbooks.Add()
+    cell = excel.Workbooks.Add().Worksheets(1).Range("A1")
     for formula, wanted in (
         ("=CF_VERSION()", catalogue.functions()["CF_VERSION"].call()),
         ("=CF_REYNOLDS(2,0.05,998,0.001)", ANSWER_OF_REYNOLDS),
     ):
-        cell = book.Worksheets(1).Range("A1")
         cell.Formula = formula
         got = cell.Value
         if got == NAME_ERROR:
-            raise Refused("Excel did not run the add-in: macros are switched off (a policy of your organisation?)")
+            raise Refused("Excel did not run the add-in: macros are switched off there (by a policy?)")
         if got != wanted and not (isinstance(got, float) and abs(got - wanted) <= 1e-12 * abs(wanted)):
             raise Refused(f"a cell with {formula} shows {got!r} instead of {wanted!r}")
-    book.Close(False)
 
 
 def place(template: Path, startup: Path) -> Path:
@@ -149,6 +147,34 @@ def place(template: Path, startup: Path) -> Path:
     finally:
         part.unlink(missing_ok=True)
     return target
+
+
+@contextlib.contextmanager
+def on_trial(excel, template: Path, startup: Path) -> Iterator[Path]:
+    """The add-in where Excel loads it, and open; if it does not prove itself, what was there before comes back."""
+    from pywintypes import com_error
+
+    known = startup / settings.ADD_IN
+    before = known.read_bytes() if known.exists() else None
+    target = place(template, startup)
+    proved = False
+    try:
+        excel.Workbooks.Open(str(target))
+        yield target
+        proved = True
+    finally:
+        with contextlib.suppress(com_error):
+            close_all(excel)
+        if not proved and before is None:
+            target.unlink()
+        elif not proved:
+            target.write_bytes(before)
+
+
+def close_all(excel) -> None:
+    """Close every workbook of our Excel without saving."""
+    for number in range(excel.Workbooks.Count, 0, -1):
+        excel.Workbooks(number).Close(False)
 
 
 @contextlib.contextmanager
@@ -172,8 +198,7 @@ def started() -> Iterator:
         yield excel
     finally:
         with contextlib.suppress(com_error, AttributeError):
-            for number in range(excel.Workbooks.Count, 0, -1):
-                excel.Workbooks(number).Close(False)
+            close_all(excel)
         with contextlib.suppress(com_error, AttributeError):
             excel.Quit()
 
@@ -181,8 +206,8 @@ def started() -> Iterator:
 def told(error: Exception) -> str:
     """What COM says about an error, in one line."""
     details = error.args[2] if len(error.args) > 2 else None
-    text = details[2] if isinstance(details, tuple) and len(details) > 2 and details[2] else error.args[-1:]
-    return " ".join(str(text if isinstance(text, str) else error).split())
+    said = details[2] if isinstance(details, tuple) and len(details) > 2 else None
+    return " ".join(str(said or (error.args[1] if len(error.args) > 1 else error)).split())
 
 
 def tell(**what: object) -> None:
@@ -190,20 +215,19 @@ def tell(**what: object) -> None:
 
 
 def run(template: Path) -> None:
-    """Make, prove, place; tell where the add-in is."""
+    """Make, place, prove; tell where the add-in is."""
     from pywintypes import com_error
 
     try:
         with started() as excel:
-            startup = Path(excel.StartupPath)
             version = str(excel.Version)
-            # What is in the file is what was proved: it is saved before, and copied once it is closed.
-            book = make(excel, template)
-            prove(excel)
-            book.Close(False)
-        target = place(template, startup)
+            make(excel, template)
+            with on_trial(excel, template, Path(excel.StartupPath)) as target:
+                prove(excel)
     except com_error as error:
         raise Refused(f"Excel refused a step: {told(error)}") from error
+    except OSError as error:
+        raise Refused(f"{error.filename}: {error.strerror}") from error
     tell(
         add_in=str(target),
         fingerprint=fingerprint(),

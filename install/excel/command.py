@@ -8,6 +8,7 @@ import tempfile
 from pathlib import Path
 
 from environment import ROOT, Trouble, clean_variables, environment_folder, interpreter, prepare
+from findings import print_any_letter
 
 from . import office, settings
 
@@ -42,6 +43,7 @@ def main(words: list[str]) -> int:
         raise Trouble(ELSEWHERE)
     if words not in ([], ["--repair"], ["--remove"]):
         raise Trouble("excel takes --repair or --remove or nothing")
+    print_any_letter()
     return remove() if words == ["--remove"] else install(repair=words == ["--repair"])
 
 
@@ -115,10 +117,8 @@ def obstacles(excel: office.Excel) -> list[str]:
     if not security.trusts_access:
         words = "a policy of your organisation forbids it: ask your administrator" if security.by_policy else ""
         found.append(f"Excel does not let its VBA projects be seen. {words or office.TRUST_WORDS}")
-    if security.macros_off or security.add_ins_off or security.only_signed:
-        found.append(
-            "the Trust Center switches off macros, add-ins, or add-ins that are not signed: ask your administrator"
-        )
+    if security.add_ins_off or security.only_signed:
+        found.append("the Trust Center switches off add-ins, or those that are not signed: ask your administrator")
     if office.is_open():
         found.append(OPEN)
     for path in (ROOT, interpreter(environment_folder())):

@@ -44,7 +44,6 @@ def trust(excel: office.Excel) -> Iterator[Line]:
         who = "forbidden by a policy" if security.by_policy else "off"
         yield Line("trust setting", NOTE, f"access to the VBA project object model is {who}; installing needs it")
     switched = (
-        (security.macros_off, "macros are switched off by a policy"),
         (security.add_ins_off, "add-ins are switched off"),
         (security.only_signed, "only signed add-ins are loaded, and this one is made on the user's machine, unsigned"),
         (security.startup_not_trusted, "trusted locations, Excel's start folder among them, are switched off"),

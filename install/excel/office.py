@@ -44,7 +44,6 @@ class Security:
 
     trusts_access: bool
     by_policy: bool
-    macros_off: bool
     add_ins_off: bool
     only_signed: bool
     startup_not_trusted: bool
@@ -168,11 +167,9 @@ def security(version: str) -> Security:
         return None, False
 
     access, by_policy = setting("AccessVBOM")
-    macros, macros_by_policy = setting("VBAWarnings")
     return Security(
         trusts_access=access == 1,
         by_policy=by_policy,
-        macros_off=macros == 4 and macros_by_policy,
         add_ins_off=setting("DisableAllAddins")[0] == 1,
         only_signed=setting("RequireAddinSig")[0] == 1,
         startup_not_trusted=setting("AllLocationsDisabled", r"\Trusted Locations")[0] == 1,

@@ -32,6 +32,7 @@ def record_file() -> Path:
 
 
 def code_page() -> str:
+    """The encoding that VBA reads and writes files in (elsewhere than on Windows, for the tests, a common one)."""
     return "mbcs" if os.name == "nt" else "cp1252"
 
 
