@@ -1,17 +1,24 @@
-"""Answers of a flat plate in a parallel stream: mean coefficient, wall temperature, flux, duty."""
+"""Answers of a layer on a body in a stream: plate, cylinder, sphere, jet. Mean coefficient, wall, flux, duty.
 
+The length is that of the plate, the diameter of cylinder and sphere, the radius that a jet covers.
+"""
+
+import math
 from dataclasses import dataclass, replace
 
 from cellfuncs.answers.loop import settle
 from cellfuncs.cases.case import Case, Properties
 from cellfuncs.errors import CaseRefused
+from cellfuncs.methods import cross, recovery
 from cellfuncs.methods import plate as methods
-from cellfuncs.methods import recovery
 
 
 @dataclass(frozen=True)
 class LayerAnswers:
-    """A solved plate; differences are wall minus stream. SI units."""
+    """A solved layer; differences are wall minus stream. SI units.
+
+    ``group_length`` is what Re and Nu are on: the length, but the nozzle's diameter for a jet.
+    """
 
     case: Case
     length: float
@@ -27,6 +34,7 @@ class LayerAnswers:
     difference: float
     flux: float | None
     stream: float | None
+    group_length: float
 
     @property
     def laminar(self) -> bool:
@@ -47,20 +55,33 @@ class LayerAnswers:
 
     @property
     def local_flux(self) -> float:
-        """Wall flux at the far end [W/m2]."""
+        """Wall flux at the far end of a plate, the mean elsewhere [W/m2]."""
         if self.flux is not None:
             return self.flux
-        if self.laminar or self.method == "stated":
-            return 0.5 * self.mean_flux if self.laminar else self.mean_flux
+        if self.case.flow != "plate" or (self.method == "stated" and not self.laminar):
+            return self.mean_flux
+        if self.laminar:
+            return 0.5 * self.mean_flux
         local = methods.turbulent_local(self.reynolds, self.properties.prandtl)
         return local * self.properties.conductivity / self.length * self.difference
 
     @property
+    def surface(self) -> float:
+        """Exchanging surface [m2]: one side of a plate, all of a cylinder or sphere, the jet's circle."""
+        case, flow = self.case, self.case.flow
+        if flow == "sphere":
+            return math.pi * self.length**2
+        if flow == "jet":
+            return math.pi * self.length**2
+        across = {"plate": "width", "cylinder": "length"}[flow]
+        if not case.has(across):
+            raise CaseRefused(f'a duty needs the row "{across}"')
+        return case.get(across) * self.length * (math.pi if flow == "cylinder" else 1.0)
+
+    @property
     def duty(self) -> float:
-        """Heat given by one side of the plate [W]."""
-        if not self.case.has("width"):
-            raise CaseRefused('a duty needs the row "width"')
-        return self.mean_flux * self.length * self.case.get("width")
+        """Heat given to the stream [W]."""
+        return self.mean_flux * self.surface
 
     @property
     def recovery_rise(self) -> float:
@@ -71,42 +92,81 @@ class LayerAnswers:
 
 
 def solve_layer(case: Case) -> LayerAnswers:
-    """The answers of a plate case; with a prescribed flux it closes the loop on the film temperature."""
-    length = case.need("length")
-    transition = case.get("transition", methods.TRANSITION)
+    """The answers of an external flow; with a prescribed flux it closes the loop on the film temperature."""
+    length, group_length = _lengths(case)
+    transition = case.get("transition", methods.TRANSITION) if case.flow == "plate" else _BODY_TRANSITION
     flux = case.get("heat_flux")
-    stream, difference = _temperatures(case)
+    stream, difference = stream_and_difference(case)
     stated = case.get("property_temperature")
+    film = 0.0 if case.flow == "sphere" else 0.5  # Whitaker's sphere takes the stream's properties
 
     def at(temperature: float | None) -> LayerAnswers:
         p = case.properties(temperature)
         u = case.velocity(p.density)
-        re = p.density * u * length / p.viscosity
+        re = p.density * u * group_length / p.viscosity
         h = case.get("coefficient")
         if h is not None:
-            nusselt, method, outside = h * length / p.conductivity, "stated", ""
-        else:
+            nusselt, method, outside = h * group_length / p.conductivity, "stated", ""
+        elif case.flow == "plate":
             nusselt, method, outside = methods.nusselt(re, p.prandtl, case.wall, transition, case.allow)
-        h = nusselt * p.conductivity / length
+        else:
+            nusselt, method, outside = cross.nusselt(case.flow, re, p.prandtl, case.allow, **_shape(case, p, stream))
+        h = nusselt * p.conductivity / group_length
         driving = flux / h if flux is not None else difference
         return LayerAnswers(
-            case, length, temperature, p, u, re, transition, nusselt, h, method, outside, driving, flux, stream
+            case,
+            length,
+            temperature,
+            p,
+            u,
+            re,
+            transition,
+            nusselt,
+            h,
+            method,
+            outside,
+            driving,
+            flux,
+            stream,
+            group_length,
         )
 
     if stated is not None or stream is None:
         return at(stated)
     if case.fixed:
         found = at(None)
-        return replace(found, property_temperature=stream + 0.5 * found.difference)
-    if difference is not None:
-        found = at(stream + 0.5 * difference)
+        return replace(found, property_temperature=stream + film * found.difference)
+    if difference is not None or not film:
+        found = at(stream + film * (difference or 0.0))
     else:
-        found = at(settle(stream, lambda t: stream + 0.5 * at(t).difference, "film temperature"))
+        found = at(settle(stream, lambda t: stream + film * at(t).difference, "film temperature"))
     case.refuse_phase_change(stream, found.property_temperature)
     return found
 
 
-def _temperatures(case: Case) -> tuple[float | None, float | None]:
+_BODY_TRANSITION = 2e5  # Re from which the layer on a cylinder or sphere is turbulent, common practice
+
+
+def _lengths(case: Case) -> tuple[float, float]:
+    """Length of the layer, and the length that the groups are on."""
+    if case.flow == "plate":
+        return case.need("length"), case.need("length")
+    diameter = case.need("diameter")
+    return (case.need("radius"), diameter) if case.flow == "jet" else (diameter, diameter)
+
+
+def _shape(case: Case, p: Properties, stream: float | None) -> dict[str, float]:
+    """What the methods of cross-flow and jets ask for besides Re and Pr."""
+    if case.flow == "jet":
+        diameter = case.need("diameter")
+        return {"height": case.need("distance") / diameter, "radius": case.need("radius") / diameter}
+    if case.flow == "sphere" and case.has("wall_temperature") and stream is not None and not case.fixed:
+        return {"viscosity_ratio": p.viscosity / case.properties(case.get("wall_temperature")).viscosity}
+    return {}
+
+
+def stream_and_difference(case: Case) -> tuple[float | None, float | None]:
+    """Temperature of the stream or still fluid, and wall minus it, as far as they are stated."""
     stream = case.get("stream_temperature")
     if case.wall == "flux":
         if case.get("heat_flux") == 0:

@@ -6,16 +6,22 @@ from functools import cached_property
 
 from cellfuncs import groups
 from cellfuncs.answers.duct import DuctAnswers, solve_duct
+from cellfuncs.answers.free import FreeAnswers, solve_enclosure, solve_free
 from cellfuncs.answers.gap import GapAnswers, solve_gap
 from cellfuncs.answers.layer import LayerAnswers, solve_layer
 from cellfuncs.cases import labels
 from cellfuncs.cases.case import Case
 from cellfuncs.errors import CaseRefused
 
-Answers = DuctAnswers | LayerAnswers | GapAnswers
+Answers = DuctAnswers | LayerAnswers | FreeAnswers | GapAnswers
 _SOLVERS: Mapping[str, Callable[[Case], Answers]] = {
     "duct": solve_duct,
     "plate": solve_layer,
+    "cylinder": solve_layer,
+    "sphere": solve_layer,
+    "jet": solve_layer,
+    "free": solve_free,
+    "enclosure": solve_enclosure,
     "gap": solve_gap,
 }
 
@@ -49,7 +55,9 @@ class Solution:
         a = self.answers
         if isinstance(a, DuctAnswers):
             return a.shape.diameter
-        return a.length if isinstance(a, LayerAnswers) else a.gap
+        if isinstance(a, FreeAnswers):
+            return a.length
+        return a.group_length if isinstance(a, LayerAnswers) else a.gap
 
     def mach(self) -> float | None:
         sound = self.case.speed_of_sound(self.answers.property_temperature)
@@ -153,6 +161,8 @@ _DERIVED: Mapping[str, Callable[[Solution], float | str | None]] = {
     "graetz": _duct(lambda a: a.reynolds * a.properties.prandtl * a.shape.diameter / a.length),
     "euler": _duct(lambda a: a.pressure_drop / (a.properties.density * a.velocity**2)),
     "mach": lambda s: s.mach(),
+    "rayleigh": _attribute("rayleigh"),
+    "grashof": _attribute("grashof"),
     "transfer_units": _duct(lambda a: a.transfer_units),
     "coefficient": _attribute("coefficient"),
     "friction_factor": _attribute("friction"),

@@ -25,9 +25,15 @@ _OVERRIDES = {
     "specific_heat": "specific_heat",
     "expansion_coefficient": "expansion",
 }
+_EXTERNAL = ("coefficient", "wall temperature", "duty", "local flux")
 _ANSWERS = {
     "duct": ("outlet temperature", "wall temperature", "coefficient", "duty", "local flux", "pressure drop"),
-    "plate": ("coefficient", "wall temperature", "duty", "local flux"),
+    "plate": _EXTERNAL,
+    "cylinder": _EXTERNAL,
+    "sphere": _EXTERNAL,
+    "jet": _EXTERNAL,
+    "free": _EXTERNAL,
+    "enclosure": ("coefficient", "duty", "local flux"),
     "gap": ("peak temperature", "local flux"),
 }
 

@@ -155,12 +155,16 @@ def choice(key: str, text: str) -> str:
     return found
 
 
-def find(text: str, flow: str | None = None) -> str:
-    """The key of a label or derived quantity asked for by name or symbol."""
-    label, unit = split_unit(text)
-    keys = candidates(text) or candidates(label)
+def find_all(text: str) -> tuple[str, ...]:
+    """The keys that a label or derived quantity asked for by name or symbol may mean."""
+    keys = candidates(text) or candidates(split_unit(text)[0])
     keys = tuple(k for k in keys if dictionary()[k].role != "note")
     if not keys:
         known = nearest(text, ("stated", "choice", "text", "derived"))
         raise UnknownName(f'"{text[:60]}" is not known; the nearest is "{known}"')
-    return settle(text, keys, unit, flow)
+    return keys
+
+
+def find(text: str, flow: str | None = None) -> str:
+    """The one key that a name or symbol means, or a refusal that names those that remain."""
+    return settle(text, find_all(text), split_unit(text)[1], flow)

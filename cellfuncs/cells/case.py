@@ -5,7 +5,7 @@ from typing import Any
 from cellfuncs.cases import labels
 from cellfuncs.cells import convert, solved
 from cellfuncs.cells.catalogue import Answer, cell_function
-from cellfuncs.errors import CaseRefused, UnknownName
+from cellfuncs.errors import CaseRefused, CellfuncsError, UnknownName
 
 _SOURCE = "the labels of cellfuncs/data/labels.csv"
 
@@ -112,8 +112,24 @@ def _flow(rows: list[list[Any]]) -> str | None:
 )
 def case_value(block, what):
     solution = solved.solution(block)
-    key = labels.find(what, solution.case.flow)
+    key = _key_of(solution, what)
     value = solution.value(key)
     if isinstance(value, str):
         return value
     return Answer(float(value), labels.dictionary()[key].kind)
+
+
+def _key_of(solution: Any, what: str) -> str:
+    """What a name or symbol means in a case: of several meanings the one that the case has."""
+    keys = labels.find_all(what)
+    if len(keys) > 1:
+        keys = [key for key in keys if _has(solution, key)] or keys
+    return labels.settle(what, keys, labels.split_unit(what)[1], solution.case.flow)
+
+
+def _has(solution: Any, key: str) -> bool:
+    try:
+        solution.value(key)
+    except CellfuncsError:
+        return False
+    return True

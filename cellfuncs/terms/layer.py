@@ -1,8 +1,10 @@
-"""Sizes of the energy terms in the layer on a flat plate.
+"""Sizes of the energy terms in the layer on a plate, cylinder or sphere, or under a jet.
 
 The thickness comes from the energy integral, δ = hL/(ρcpU), so that conduction across and advection
 are both ρcpU·ΔT/L; molecular k over a turbulent layer never enters.
 """
+
+from typing import Any
 
 from cellfuncs.answers import Solution
 from cellfuncs.answers.layer import LayerAnswers
@@ -14,18 +16,18 @@ _HOLDS, _FAILS = 1000.0, 100.0  # Re_L of a boundary layer: premise holds above,
 
 
 def sizes(solution: Solution) -> list[Size]:
-    """The terms of a plate in the order of the table."""
+    """The terms of an external flow in the order of the table."""
     a: LayerAnswers = solution.answers
     balance = a.capacity_flux * solution.driving / a.length
     return [
         _storage(solution, a, balance),
         *_exchange(solution, a, balance),
         _conduction_along(a),
-        absent("wall conduction", "conduction along the plate itself is not judged here; a duct case does"),
+        absent("wall conduction", "conduction along the wall itself is not judged here; a duct case does"),
         _viscous(solution, a, balance),
-        absent("pressure work", "no pressure gradient along a flat plate; heat of compression is in the recovery"),
+        absent("pressure work", "the heat of compression is in the recovery rise, judged with viscous heating"),
         _source(solution, a),
-        _radiation(solution, a, balance),
+        radiation(solution, a, balance),
     ]
 
 
@@ -97,7 +99,8 @@ def _source(solution: Solution, a: LayerAnswers) -> Size:
     return Size("volumetric source", share, abs(q), says, kelvins=_kelvins(solution, share))
 
 
-def _radiation(solution: Solution, a: LayerAnswers, balance: float) -> Size:
+def radiation(solution: Solution, a: Any, balance: float) -> Size:
+    """Radiation of the wall to its surroundings, where both are stated."""
     case = solution.case
     if not (case.has("emissivity") and case.has("surroundings_temperature")) or a.wall is None:
         return absent(

@@ -4,7 +4,7 @@ from collections.abc import Callable, Mapping
 
 from cellfuncs.answers import Solution
 from cellfuncs.errors import UnknownName
-from cellfuncs.terms import duct, gap, layer
+from cellfuncs.terms import duct, free, gap, layer
 from cellfuncs.terms.size import Size, percent
 from cellfuncs.terms.verdicts import KEEP, LEAVE_OUT, Judged, judge, left_out
 
@@ -27,6 +27,11 @@ NO_SHARE = "no share"
 _SIZES: Mapping[str, Callable[[Solution], list[Size]]] = {
     "duct": duct.sizes,
     "plate": layer.sizes,
+    "cylinder": layer.sizes,
+    "sphere": layer.sizes,
+    "jet": layer.sizes,
+    "free": free.sizes,
+    "enclosure": free.enclosure_sizes,
     "gap": gap.sizes,
 }
 
