@@ -12,6 +12,7 @@ from typing import Any
 from cellfuncs import quantities, substances
 from cellfuncs.cases import labels
 from cellfuncs.cells.catalogue import CellFunction, functions
+from cellfuncs.cells.faults import is_fault
 from cellfuncs.errors import CellfuncsError
 from cellfuncs.sheets import reference
 
@@ -72,11 +73,16 @@ def places() -> Iterable[tuple[str, CellFunction]]:
 
 
 def answers(areas: Iterable[Any]) -> dict[str, dict[str, Any]]:
-    """Function -> formula, rows, number of rows and unit, from the areas of a recalculation."""
+    """Function -> formula, rows, number of rows and unit, from the areas of a recalculation.
+
+    Raises ValueError for an example that answers a fault or an error.
+    """
     found = {area.range.split(":")[0]: area.values for area in areas}
     kept = {}
     for place, function in places():
         rows = found[place]
+        if any(not isinstance(cell, (float, str)) or is_fault(cell) for row in rows for cell in row):
+            raise ValueError(f"{function.example} gives {rows[0][0]}")
         kept[function.name] = {
             "formula": function.example,
             "rows": [list(row) for row in rows[: reference.MOST_ROWS]],

@@ -114,10 +114,11 @@ class _Writer:
         for one in entries:
             row += 1
             group = one.group
-            for column, words in enumerate((group.name, group.formula, group.symbol, one.name, "")):
-                sheet.write(row, column, words, look.label())
+            for column, words in enumerate((group.name, group.formula, group.symbol)):
+                sheet.write(row, column, words, look.label(valign="top"))
+            sheet.merge_range(row, 3, row, 4, one.name, look.label(valign="top"))
             says = f"{group.compares}; {group.decides}"
-            sheet.write(row, 5, says, look.label(text_wrap=True))
+            sheet.write(row, 5, says, look.label(text_wrap=True, valign="top"))
             sheet.set_row(row, height_for(says, _HELP - 14))
         return row + 1
 

@@ -45,11 +45,19 @@ dd {{ margin: 0; min-width: 0; }}
 .quiet {{ color: {GREY}; font-size: .9rem; }}
 p {{ margin: .3rem 0; }}
 [hidden] {{ display: none; }}
-@media (max-width: 40rem) {{ dl {{ grid-template-columns: 1fr; }} nav form {{ margin-left: 0; }} }}
+@media (max-width: 40rem) {{
+  body {{ padding: .8rem; }}
+  dl {{ grid-template-columns: 1fr; }}
+  nav form {{ margin-left: 0; }}
+  .short {{ white-space: normal; }}
+  .list td:first-child {{ min-width: 0; }}
+  td:last-child {{ min-width: 10rem; }}
+}}
 @media print {{
-  :root {{ font-size: 10.5pt; }}
+  :root {{ font-size: 9.5pt; }}
   body {{ max-width: none; padding: 0; }}
   nav {{ display: none; }}
+  article {{ margin: 1.2rem 0; }}
   a {{ color: inherit; text-decoration: none; }}
   tr {{ break-inside: avoid; }}
   .wide {{ overflow: visible; }}

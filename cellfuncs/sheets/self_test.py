@@ -22,11 +22,11 @@ KINDS = ("published", "derived", "computed", "common practice", "memory")  # in 
 USUAL, MANY = 2, 6  # checks of a function; of one that many rows speak about
 MANY_ROWS = 15
 OWN_TOLERANCE = 1e-9  # relative; of values computed by Cellfuncs itself
-BLOCKS = "Blocks"
+SHEET, BLOCKS = "Self-test", "Blocks"
 RUN = "$C$6"
 FIRST = 9  # row of the first check, counted from 1
 HEADS = ("", "function", "formula", "answer", "expected", "difference", "tolerance", "", "kind of check", "source")
-_WIDTHS = (5, 20, 62, 18, 18, 13, 11, 10, 17, 90)
+_WIDTHS = (5, 27, 62, 18, 18, 13, 11, 10, 17, 90)
 
 
 @dataclass(frozen=True)
@@ -52,7 +52,7 @@ HANDED_OVER = (
 )
 
 
-class _Blocks:
+class Blocks:
     """Case blocks of published rows, each once, below each other on a sheet of their own."""
 
     def __init__(self) -> None:
@@ -68,7 +68,7 @@ class _Blocks:
         return f"{BLOCKS}!$A${first}:$C${first + len(rows) - 1}"
 
 
-def _literal(value: Any, blocks: _Blocks) -> str:
+def _literal(value: Any, blocks: Blocks) -> str:
     """An argument as it is typed in a formula."""
     if isinstance(value, list):
         return blocks.area(value)
@@ -79,9 +79,9 @@ def _literal(value: Any, blocks: _Blocks) -> str:
 
 def checks(
     published: Iterable[Mapping[str, Any]], called: Mapping[str, CellFunction] | None = None
-) -> tuple[list[Check], _Blocks]:
+) -> tuple[list[Check], Blocks]:
     """All checks, function by function, and the blocks that their formulas name; ``called`` is the catalogue."""
-    blocks = _Blocks()
+    blocks = Blocks()
     rows: dict[str, list[Mapping[str, Any]]] = {}
     for row in published:
         if row["kind"] in KINDS:
@@ -110,7 +110,7 @@ def _chosen(rows: Sequence[Mapping[str, Any]]) -> list[Mapping[str, Any]]:
     return [pool[k * len(pool) // count] for k in range(count)]
 
 
-def _from_row(row: Mapping[str, Any], blocks: _Blocks) -> Check:
+def _from_row(row: Mapping[str, Any], blocks: Blocks) -> Check:
     expected = row["expected"]
     number = not isinstance(expected, str)
     tolerance = max(row.get("rel_tol", 0.0) * abs(expected), row.get("abs_tol", 0.0)) if number else 0.0
@@ -153,14 +153,28 @@ def on_example_sheet(formula: str) -> str:
     return '"'.join(parts)
 
 
-def write_self_test(path: str | Path, published: Iterable[Mapping[str, Any]]) -> None:
+def differing(found: Sequence[Check], areas: Iterable[Any]) -> list[str]:
+    """The checks that do not agree after a recalculation, one line each: those no workbook may be given away with."""
+    (answers,) = (area.values for area in areas if area.sheet == SHEET and area.range.startswith(f"D{FIRST}:"))
+    lines = []
+    for check, (answer,) in zip(found, answers, strict=True):
+        expected = check.expected
+        if isinstance(expected, float) and isinstance(answer, float):
+            agrees = abs(answer - expected) <= check.tolerance
+        else:
+            agrees = answer == expected
+        if not agrees:
+            lines.append(f"{check.formula} gives {answer}, not {expected}")
+    return lines
+
+
+def write_self_test(path: str | Path, found: Sequence[Check], blocks: Blocks) -> None:
     """Write the workbook; its formulas have no values yet."""
     import xlsxwriter
 
-    found, blocks = checks(published)
     book = xlsxwriter.Workbook(str(path))
     look = Look(book)
-    sheet = book.add_worksheet("Self-test")
+    sheet = book.add_worksheet(SHEET)
     _write_checks(sheet, look, found)
     second = book.add_worksheet(examples.SHEET)
     examples.fill(book, second, reference.stored()["block"], look)
@@ -201,7 +215,7 @@ def _write_checks(sheet: Any, look: Look, found: Sequence[Check]) -> None:
         sheet.write_formula(at, 7, agrees, look.label(indent=1))
         sheet.write(at, 8, check.kind, look.label())
         sheet.write_string(at, 9, check.source, look.label(text_wrap=True, font_size=9.5))
-        lines = max(-(-len(check.formula) // 66), -(-len(check.source) // 100))
+        lines = max(-(-len(check.formula) // 66), -(-len(check.source) // 112))
         sheet.set_row(at, max(16, 13 * lines + 3))
     bold = look.style(bold=True)
     sheet.conditional_format(
@@ -245,7 +259,7 @@ def _write_head(sheet: Any, look: Look, last: int) -> None:
     sheet.write(5, 3, "as delivered this is 1, and the answers below are stored values", look.quiet())
 
 
-def _write_blocks(sheet: Any, look: Look, blocks: _Blocks) -> None:
+def _write_blocks(sheet: Any, look: Look, blocks: Blocks) -> None:
     for column, width in enumerate((28, 30, 12)):
         sheet.set_column(column, column, width)
     sheet.write(0, 0, "Case blocks that the checks mean", look.style(bold=True))

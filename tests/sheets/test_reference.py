@@ -1,6 +1,7 @@
 """The facts of the reference, and how they are told: on the command line, in pages, in a workbook."""
 
 import re
+import types
 from html.parser import HTMLParser
 
 import pytest
@@ -109,6 +110,16 @@ def test_what_comes_back_is_said_in_words(name, words):
 )
 def test_the_answer_of_an_example_has_its_unit(name, unit):
     assert examples.unit_of(catalogue.functions()[name]) == unit
+
+
+def test_an_example_that_answers_a_fault_is_refused():
+    places = dict(examples.places())
+    areas = [types.SimpleNamespace(range=place, values=((1.0,),)) for place in places]
+    assert examples.answers(areas).keys() == catalogue.functions().keys()
+    for bad in ("! velocity: gone", None):
+        areas[3] = types.SimpleNamespace(range=areas[3].range, values=((bad,),))
+        with pytest.raises(ValueError, match=re.escape(list(places.values())[3].example)):
+            examples.answers(areas)
 
 
 def test_every_family_says_what_it_is_for():

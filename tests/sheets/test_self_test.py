@@ -1,5 +1,7 @@
 """Which checks the self-test holds, and how their formulas are written."""
 
+import types
+
 import pytest
 
 from cellfuncs.cells import catalogue
@@ -101,3 +103,25 @@ def test_a_function_without_a_stored_answer_is_named(monkeypatch):
     monkeypatch.setattr(self_test.reference, "example_of", lambda function: None)
     with pytest.raises(ValueError, match="CF_IN_UNIT"):
         self_test.checks([])
+
+
+def area(*answers):
+    return types.SimpleNamespace(
+        sheet="Self-test", range=f"D9:D{8 + len(answers)}", values=tuple((a,) for a in answers)
+    )
+
+
+@pytest.mark.parametrize(
+    ("answers", "wrong"),
+    [((0.1, "keep"), 0), ((0.1 + 1e-8, "keep"), 0), ((0.1 + 1e-6, "keep"), 1), (("! gone", "leave out"), 2)],
+)
+def test_what_does_not_agree_is_named_before_it_is_given_away(answers, wrong):
+    found = [
+        self_test.Check("CF_MACH", "CF_MACH(34,340)", 0.1, 1e-7, "derived", "definition"),
+        self_test.Check("CF_TERM", 'CF_TERM(x,"y")', "keep", 0.0, "derived", "definition"),
+    ]
+    lines = self_test.differing(
+        found, [types.SimpleNamespace(sheet="Example", range="D9:D9", values=()), area(*answers)]
+    )
+    assert len(lines) == wrong
+    assert all(str(answers[-1 if wrong == 1 and k else k]) in line for k, line in enumerate(lines))
