@@ -23,16 +23,18 @@ def properties(**values):
 
 class Driver:
     def __init__(self, soffice, settings):
-        name = "cellfuncs%d" % os.getpid()
-        accept = "--accept=pipe,name=%s;urp" % name
+        name = f"cellfuncs{os.getpid()}"
+        accept = f"--accept=pipe,name={name};urp"
         words = ["--headless", "--norestore", "--nologo", "--nodefault", accept]
-        self.process = subprocess.Popen([soffice, *words, *settings], stdout=subprocess.DEVNULL, stdin=subprocess.DEVNULL)
+        self.process = subprocess.Popen(
+            [soffice, *words, *settings], stdout=subprocess.DEVNULL, stdin=subprocess.DEVNULL
+        )
         local = uno.getComponentContext()
         resolver = local.ServiceManager.createInstanceWithContext("com.sun.star.bridge.UnoUrlResolver", local)
         end = time.monotonic() + START
         while True:
             try:
-                self.context = resolver.resolve("uno:pipe,name=%s;urp;StarOffice.ComponentContext" % name)
+                self.context = resolver.resolve(f"uno:pipe,name={name};urp;StarOffice.ComponentContext")
                 break
             except NoConnectException:
                 if time.monotonic() > end or self.process.poll() is not None:
@@ -69,6 +71,10 @@ class Driver:
     def fill(self, place, rows):
         """Write rows of numbers, texts and formulas (with ; between arguments)."""
         self.cells(place).FormulaArray = tuple(tuple(str(cell) for cell in row) for row in rows)
+
+    def fill_down(self, place):
+        """Copy the first row of a range down to its end."""
+        self.cells(place).fillAuto(uno.Enum("com.sun.star.sheet.FillDirection", "TO_BOTTOM"), 1)
 
     def values(self, place, rows):
         """Write rows of numbers and texts."""
@@ -125,7 +131,10 @@ class Driver:
         for k in range(descriptions.Count):
             one = {part.Name: part.Value for part in descriptions.getByIndex(k)}
             if one["Name"].startswith(beginning):
-                found[one["Name"]] = [one["Description"], [[part.Name, part.Description] for part in one["Arguments"]]]
+                found[one["Name"]] = [
+                    one["Description"],
+                    [[part.Name, part.Description] for part in one["Arguments"] or ()],
+                ]
         return found
 
     def end(self):
@@ -146,7 +155,7 @@ def main():
         try:
             reply = {"result": getattr(driver, name)(*arguments)}
         except Exception as error:
-            reply = {"error": "%s: %s" % (type(error).__name__, error)}
+            reply = {"error": f"{type(error).__name__}: {error}"}
         lines.write(json.dumps(reply) + "\n")
         lines.flush()
         if name == "end":

@@ -3,10 +3,12 @@
 import os
 import re
 import signal
-import subprocess
+import sys
+import threading
 import time
 import zipfile
 from pathlib import Path
+from string import ascii_uppercase
 
 import openpyxl
 import pytest
@@ -14,7 +16,7 @@ import xlsxwriter
 
 from cellfuncs.cells import catalogue
 from cellfuncs.hosts import embedded
-from cellfuncs.hosts.calc import helper
+from tests.hosts.conftest import command, offices, with_mark
 
 ROOT = Path(__file__).resolve().parent.parent.parent
 SAMPLES = sorted((ROOT / "workbooks").glob("*.xlsx"))
@@ -31,17 +33,35 @@ COOLANT = [
 TOLERANCE = 1e-12
 
 
-def same(ours, theirs):
+def same(ours, theirs, scale=0.0):
     """Whether two cells hold the same: numbers to 1e-12, texts and errors equal, blank equal to blank."""
     if isinstance(ours, (int, float)) and isinstance(theirs, (int, float)):
-        return ours == pytest.approx(theirs, rel=TOLERANCE, abs=1e-300)
-    return (ours or "") == (theirs or "")
+        return ours == pytest.approx(theirs, rel=TOLERANCE, abs=TOLERANCE * scale)
+    return ("" if ours is None else ours) == ("" if theirs is None else theirs)
 
 
 def differences(ours, theirs):
-    """Cells of two {place: value} that are not the same."""
-    places = sorted(set(ours) | set(theirs))
-    return {p: (ours.get(p), theirs.get(p)) for p in places if not same(ours.get(p), theirs.get(p))}
+    """Cells of two {place: value} that are not the same.
+
+    A difference of two cells is as exact as these are, so the largest number of a row sets its scale.
+    """
+    scale = {}
+    for place, value in theirs.items():
+        if isinstance(value, (int, float)):
+            row = place.lstrip(ascii_uppercase)
+            scale[row] = max(scale.get(row, 0.0), abs(value))
+    wrong = {}
+    for place in sorted(set(ours) | set(theirs)):
+        pair = ours.get(place), theirs.get(place)
+        if not same(*pair, scale.get(place.lstrip(ascii_uppercase), 0.0)):
+            wrong[place] = pair
+    return wrong
+
+
+def all_differences(ours, wanted):
+    """The sheets of two {sheet: {place: value}} that are not the same, with their differences."""
+    found = {sheet: differences(ours.get(sheet, {}), wanted.get(sheet, {})) for sheet in {*ours, *wanted}}
+    return {sheet: wrong for sheet, wrong in found.items() if wrong}
 
 
 def stored(path):
@@ -149,8 +169,8 @@ WRONG = [
     '=CF_IN_UNIT(1,"ton","kg")',
     '=CF_IN_UNIT("1,250.5","kPa","bar")',
     '=CF_UNIT_FITS("W/m2K","velocity")',
-    '=CF_FAULTS(B1:B6)',
-    '=CF_SI(B3,B4)',
+    "=CF_FAULTS(B1:B6)",
+    "=CF_SI(B3,B4)",
     '=CF_IN_UNIT(12,"Straße","m")',
 ]
 WRONG_CELLS = {(0, 1): "3 ft/s", (1, 1): "20 mm", (2, 1): 12.5, (3, 1): "kJ/kg-K", (4, 1): "! mass: none"}
@@ -171,7 +191,7 @@ def test_a_range_answers_in_its_shape(calc, cf, kind):
     if kind == "cell":
         got = calc.array("D1:D50", "=CF_REYNOLDS(A1:A50;0.02;998;0.001)")
         assert got == cf("REYNOLDS", [[row[0]] for row in rows], 0.02, 998.0, 0.001)
-        got = calc.array("F1:G50", '=CF_PROPERTY("water";{"density"."viscosity"};B1:B50)')
+        got = calc.array("F1:G50", '=CF_PROPERTY("water";{"density";"viscosity"};B1:B50)')
         assert got == cf("PROPERTY", "water", [["density", "viscosity"]], [[row[1]] for row in rows])
     else:
         calc.values("A1:C8", COOLANT)
@@ -221,7 +241,8 @@ def test_twenty_thousand_cells(calc):
     calc.new()
     count = 20_000
     calc.values(f"A1:A{count}", [[0.5 + k * 1e-4] for k in range(count)])
-    calc.fill(f"B1:B{count}", [[f"=CF_REYNOLDS(A{k};0.05;998;0.001)"] for k in range(1, count + 1)])
+    calc.formula("B1", "=CF_REYNOLDS(A1;0.05;998;0.001)")
+    calc.fill_down(f"B1:B{count}")
     assert calc.formula("D1", f"=COUNT(B1:B{count})") == count
     assert calc.formula("D2", f"=SUMPRODUCT(ABS(B1:B{count}/(A1:A{count}*0.05*998/0.001)-1))") < count * 1e-15
 
@@ -229,11 +250,18 @@ def test_twenty_thousand_cells(calc):
 # -- the helper process ------------------------------------------------------------------------------
 
 
-def _waits(condition, seconds=20):
-    end = time.monotonic() + seconds
-    while not condition() and time.monotonic() < end:
-        time.sleep(0.05)
-    return condition()
+def _gone(process, seconds=20):
+    """Whether a process has ended, be it that nobody has waited for it yet (Linux)."""
+    end, folder = time.monotonic() + seconds, Path(f"/proc/{process}")
+    while time.monotonic() < end:
+        try:
+            state = (folder / "stat").read_text().rpartition(")")[2].split()[0]
+            if state == "Z" and len(list((folder / "task").iterdir())) == 1:
+                return True
+        except (FileNotFoundError, ProcessLookupError):
+            return True
+        time.sleep(0.02)
+    return False
 
 
 def test_a_helper_that_was_killed_starts_anew(calc):
@@ -241,9 +269,20 @@ def test_a_helper_that_was_killed_starts_anew(calc):
     assert calc.formula("A1", "=CF_REYNOLDS(2;0.02;998;0.001)") == 39920.0
     (first,) = calc.helpers()
     os.kill(first, signal.SIGKILL)
-    assert _waits(lambda: not Path(f"/proc/{first}/cmdline").read_bytes()) is True
+    assert _gone(first)
     assert calc.formula("A2", "=CF_REYNOLDS(4;0.02;998;0.001)") == 79840.0
     assert first not in calc.helpers()
+
+
+def test_a_helper_that_dies_at_work_is_told_in_the_cell(calc):
+    calc.new()
+    assert calc.formula("A1", "=CF_REYNOLDS(2;0.02;998;0.001)") == 39920.0
+    (first,) = calc.helpers()
+    os.kill(first, signal.SIGSTOP)
+    threading.Timer(0.5, os.kill, (first, signal.SIGKILL)).start()
+    fault = calc.formula("A2", "=CF_REYNOLDS(4;0.02;998;0.001)")
+    assert fault.startswith("! Cellfuncs: the calculation ended while it worked on this cell; ")
+    assert calc.formula("A3", "=CF_FAULTS(A1:A2)").startswith("1 fault, first: Cellfuncs: ")
 
 
 def test_a_call_that_hangs_is_ended_and_the_next_one_works(calc):
@@ -258,16 +297,126 @@ def test_a_call_that_hangs_is_ended_and_the_next_one_works(calc):
     assert calc.read("A1:A3") == [[39920.0], [79840.0], [79840.0]]
 
 
-def test_the_helper_starts_with_the_first_call_and_ends_with_the_office(libreoffice, calc, tmp_path):
-    """Through the command line of the office, which converts a file with names it has not resolved."""
+def test_the_helper_starts_with_the_first_call_and_ends_with_the_office(libreoffice, tmp_path, monkeypatch):
+    """Put in, one file converted on the command line, taken out; all in a folder of its own."""
+    office, _ = libreoffice
+    monkeypatch.setenv("CELLFUNCS_MARK", tmp_path.name)
+    private = tmp_path / "office"
+    assert "a cell answered" in command.install(office, lambda: Path(sys.executable), private)
+    assert all(map(_gone, with_mark(tmp_path.name)))
     path = tmp_path / "short names.xlsx"
+    book = xlsxwriter.Workbook(path)
+    book.add_worksheet().write_formula(0, 0, "=CF_REYNOLDS(2,0.02,998,0.001)+1", None, 7)
+    book.close()
+    words = ["--headless", "--convert-to", "csv", "--outdir", tmp_path, path]
+    offices.run([office.program("soffice"), *offices.settings_of(private), *words])
+    assert (tmp_path / "short names.csv").read_text().strip() == "39921"
+    assert all(map(_gone, with_mark(tmp_path.name)))
+    assert "is removed" in command.remove(office, private)
+    assert "nothing to remove" in command.remove(office, private)
+
+
+# -- files -------------------------------------------------------------------------------------------
+
+
+def test_a_file_with_short_names_is_mended_when_it_opens(calc, tmp_path):
+    path = tmp_path / "short.xlsx"
     book = xlsxwriter.Workbook(path)
     sheet = book.add_worksheet()
     sheet.write_formula(0, 0, "=CF_REYNOLDS(2,0.02,998,0.001)", None, 7)
-    sheet.write_formula(0, 1, "=CF_VERSION()")
+    sheet.write_formula(1, 0, '=A1&"CF_REYNOLDS(1)"', None, "as it was")
+    sheet.write_array_formula("B1:B2", "{=CF_REYNOLDS(C1:C2,0.02,998,0.001)}", None, 7)
+    sheet.write_column("C1", [1, 2])
     sheet.protect()
+    book.add_chart({"type": "line"})
     book.close()
     calc.open(path)
     assert calc.formulas("A1") == [["=CELLFUNCS.FUNCTIONS.CF_REYNOLDS(2;0.02;998;0.001)"]]
     assert calc.modified() is False
-    assert calc.read("A1")[0] == [39920.0]
+    assert calc.read("A1:B2") == [[39920.0, 19960.0], ["39920CF_REYNOLDS(1)", 39920.0]]
+
+
+def test_a_file_without_our_functions_is_left_alone(calc, tmp_path):
+    path = tmp_path / "other.xlsx"
+    book = xlsxwriter.Workbook(path)
+    sheet = book.add_worksheet()
+    sheet.write_formula(0, 0, "=1+1", None, 3)
+    sheet.write_formula(0, 1, '="=CF_REYNOLDS(1)"', None, "a text")
+    book.define_name("one", "=Sheet1!$A$1")
+    sheet.write_formula(0, 2, "=one+1", None, 5)
+    book.close()
+    calc.open(path)
+    assert calc.read("A1:C1") == [[3.0, "a text", 5.0]]
+
+
+OURS = re.compile(r'(<c r="([A-Z]+[0-9]+)"(?: s="[0-9]+")?><f>[^<]*CF_[^<]*</f><v>)[^<]*(</v>)')
+POISON = 123456.75
+
+
+def test_samples_hold_cells_to_poison(tmp_path):
+    assert [path.stem for path in SAMPLES if len(poisoned(path, tmp_path / "wrong.xlsx")) > 20]
+
+
+def poisoned(path, out):
+    """A copy with a wrong stored number in every cell with one of our functions; the places of these."""
+    places = set()
+    with zipfile.ZipFile(path) as source, zipfile.ZipFile(out, "w", zipfile.ZIP_DEFLATED) as copy:
+        for name in source.namelist():
+            data = source.read(name)
+            if name.startswith("xl/worksheets/sheet"):
+                text = data.decode("utf-8")
+                places |= {match[2] for match in OURS.finditer(text)}
+                data = OURS.sub(rf"\g<1>{POISON}\g<3>", text).encode("utf-8")
+            copy.writestr(name, data)
+    return places
+
+
+@pytest.mark.parametrize("sample", SAMPLES, ids=lambda path: path.stem)
+def test_samples_calculate_as_in_the_embedded_host(calc, tmp_path, sample):
+    wrong, out = tmp_path / "wrong.xlsx", tmp_path / "out.xlsx"
+    poisoned(sample, wrong)
+    embedded.recalc(sample, out)
+    wanted = stored(out)
+    calc.open(wrong)
+    calc.recalculate()
+    assert all_differences(shown(calc), wanted) == {}
+    for kind in ("xlsx", "ods"):
+        saved = tmp_path / f"saved.{kind}"
+        calc.open(wrong)
+        calc.recalculate()
+        calc.save(saved, kind)
+        for again in (False, True):
+            calc.open(saved)
+            if again:
+                calc.recalculate()
+            assert all_differences(shown(calc), wanted) == {}, (kind, again)
+    # Calc writes its own long names; the embedded host reads them.
+    embedded.recalc(tmp_path / "saved.xlsx", tmp_path / "again.xlsx")
+    assert all_differences(stored(tmp_path / "again.xlsx"), wanted) == {}
+
+
+@pytest.mark.parametrize("sample", SAMPLES, ids=lambda path: path.stem)
+def test_samples_show_their_stored_values_without_cellfuncs(bare_calc, tmp_path, sample):
+    wanted = stored(sample)
+    bare_calc.open(sample)
+    assert all_differences(shown(bare_calc), wanted) == {}
+    with zipfile.ZipFile(sample) as package:
+        charts = sum(name.startswith("xl/charts/chart") for name in package.namelist())
+    assert sum(count for _, count in bare_calc.sheets().values()) == charts
+    # A wrong stored value shows as it is: nothing was calculated above.
+    wrong = tmp_path / "wrong.xlsx"
+    places = poisoned(sample, wrong)
+    bare_calc.open(wrong)
+    assert {place for cells in shown(bare_calc).values() for place, cell in cells.items() if cell == POISON} == places
+
+
+def test_the_wizard_shows_help_of_the_catalogue(calc):
+    wizard = calc.wizard("CF_")
+    assert set(wizard) == set(catalogue.functions())
+    for name, function in catalogue.functions().items():
+        help_text, arguments = wizard[name]
+        assert help_text == f"{function.family}: {function.summary}"
+        assert [shown_name for shown_name, _ in arguments] == [a.name.replace("_", " ") for a in function.arguments]
+        for argument, (_, description) in zip(function.arguments, arguments, strict=True):
+            assert description.startswith(argument.help)
+            assert description.endswith("(required)") != argument.optional

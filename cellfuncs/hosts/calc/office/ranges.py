@@ -2,8 +2,15 @@
 
 ERROR = 4  # com.sun.star.sheet.FormulaResult
 MANY_ROWS = 10_000
-# What the office calls differently or has no name for.
-NAMES = {"#N/A", "#DIV/0!", "#VALUE!", "#REF!", "#NAME?", "#NUM!", "#NULL!"}
+# The office's numbers of errors; what it shows depends on its language.
+NAMES = {
+    503: "#NUM!",
+    521: "#NULL!",
+    524: "#REF!",
+    525: "#NAME?",
+    532: "#DIV/0!",
+    32767: "#N/A",
+}
 
 
 def rows_of(cells: object) -> "list[list]":
@@ -15,8 +22,7 @@ def rows_of(cells: object) -> "list[list]":
         for area in cells.queryFormulaCells(ERROR).RangeAddresses:
             for i in range(area.StartRow - corner.StartRow, area.EndRow - corner.StartRow + 1):
                 for j in range(area.StartColumn - corner.StartColumn, area.EndColumn - corner.StartColumn + 1):
-                    shown = cells.getCellByPosition(j, i).String
-                    rows[i][j] = shown if shown in NAMES else "#VALUE!"
+                    rows[i][j] = NAMES.get(cells.getCellByPosition(j, i).getError(), "#VALUE!")
     return rows
 
 
