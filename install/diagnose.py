@@ -13,8 +13,8 @@ import environment
 from environment import LOCK_FILE, ROOT, Trouble, environment_folder, interpreter
 from findings import FAILS, NOT_SET_UP, NOTE, OK, Line, in_python, print_any_letter
 
-SETUP = "python3 install/start.py setup"
-CALC = "python3 install/start.py calc"
+START = "python install\\start.py" if os.name == "nt" else "python3 install/start.py"
+SETUP, CALC = f"{START} setup", f"{START} calc"
 HOSTS = ("excel", "calc")
 
 # Water at 300 K: IAPWS R6-95(2018), table 7, has 99 241.8352 Pa at 996.556 kg/m3.
@@ -86,7 +86,7 @@ def environment_here() -> Iterator[Line]:
     elif stamp.get("state") != "ready":
         yield Line("environment", FAILS, f"{folder} is half made", SETUP)
     elif stamp.get("key") != environment._key(python):
-        text = f"{folder} was made for another lock file, another Python or another place of the project"
+        text = f"{folder} was made for other package versions, another Python or another place of the project"
         yield Line("environment", FAILS, text, SETUP)
     else:
         yield Line("environment", OK, f"{folder}, Python {version.text}")

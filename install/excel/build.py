@@ -157,14 +157,15 @@ def on_trial(excel, template: Path, startup: Path) -> Iterator[Path]:
     known = startup / settings.ADD_IN
     before = known.read_bytes() if known.exists() else None
     target = place(template, startup)
-    proved = False
+    add_in, proved = None, False
     try:
-        excel.Workbooks.Open(str(target))
+        add_in = excel.Workbooks.Open(str(target))
         yield target
         proved = True
     finally:
-        with contextlib.suppress(com_error):
-            close_all(excel)
+        if add_in is not None:
+            with contextlib.suppress(com_error):
+                add_in.Close(False)  # Excel does not count an add-in among its workbooks, but keeps its file open
         if not proved and before is None:
             target.unlink()
         elif not proved:

@@ -62,8 +62,14 @@ def install(repair: bool) -> int:
     if office.synced(environment_folder()):
         print(IN_STEP.format(folder=environment_folder()), file=sys.stderr)
     python = prepare()
+    fresh = not settings.file().exists()
     settings.save(wanted(python))
-    made = make_add_in(python)
+    try:
+        made = make_add_in(python)
+    except BaseException:
+        if fresh:
+            settings.remove()
+        raise
     before = settings.load_record().get("add_in")
     if before and before != made["add_in"]:
         Path(before).unlink(missing_ok=True)

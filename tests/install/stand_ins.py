@@ -218,15 +218,26 @@ class Book:
 
     def Close(self, save):
         assert save is False
+        self.Application.closed.append(str(self.path))
         self.Application.Workbooks.remove(self)
 
 
 class Books(Sheets):
-    """Workbooks."""
+    """Workbooks: an open add-in is not counted among them."""
 
     def __init__(self, excel):
         super().__init__()
         self.excel = excel
+
+    def visible(self):
+        return [book for book in self if not book.IsAddin]
+
+    @property
+    def Count(self):
+        return len(self.visible())
+
+    def __call__(self, number):
+        return self.visible()[number - 1]
 
     def Open(self, path):
         self.append(Book(self.excel, Path(path)))
@@ -245,7 +256,7 @@ class Excel:
     def __init__(self, startup, mood=""):
         self.StartupPath, self.mood = str(startup), mood
         self.Workbooks = Books(self)
-        self.options, self.saved, self.ended = [], None, False
+        self.options, self.closed, self.saved, self.ended = [], [], None, False
 
     def MacroOptions(self, name, **options):
         if any(book.IsAddin for book in self.Workbooks):
@@ -254,7 +265,9 @@ class Excel:
         self.options.append((name, options))
 
     def Quit(self):
+        assert self.DisplayAlerts is False, "else it would ask whether to save"
         self.ended = True
+        self.Workbooks.clear()
 
     def calculated(self, formula):
         """What a cell would show: the call goes the way that the imported VBA takes, through xlwings' server."""
@@ -265,7 +278,8 @@ class Excel:
         from xlwings import com_server
 
         name, given = re.match(r"=(\w+)\((.*)\)$", formula).groups()
-        vba = "\n".join(self.Workbooks(1).components("xlwings_udfs").CodeModule.lines)
+        (add_in,) = (book for book in self.Workbooks if book.IsAddin)
+        vba = "\n".join(add_in.components("xlwings_udfs").CodeModule.lines)
         module = re.search(rf'{name} = XLPy\.CallUDF\("([\w.]+)", "{name}", Array\(', vba)[1]
         values = tuple(float(word) for word in given.split(",") if word)
         answer = com_server.XLPython().CallUDF(module, name, values, None, MagicMock())

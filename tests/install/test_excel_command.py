@@ -122,6 +122,23 @@ def test_everything_in_the_way_is_told_at_once_and_nothing_is_written(machine, m
     assert done == [] and not settings.folder().exists()
 
 
+def test_an_add_in_that_cannot_be_made_leaves_nothing_new_behind(machine, monkeypatch):
+    def fail(python):
+        raise Trouble("Excel refused a step")
+
+    with monkeypatch.context() as failing:
+        failing.setattr(command, "make_add_in", fail)
+        with pytest.raises(Trouble, match="refused"):
+            command.main([])
+        assert not settings.folder().exists()
+    command.main([])
+    before = settings.load_record()
+    monkeypatch.setattr(command, "make_add_in", fail)
+    with pytest.raises(Trouble, match="refused"):
+        command.main(["--repair"])
+    assert settings.load_record() == before and settings.load() and command.add_in_file().exists()
+
+
 def test_a_policy_against_trust_sends_to_the_administrator(machine, monkeypatch):
     monkeypatch.setattr(office, "security", lambda version: office.Security(False, True, False, False, False))
     with pytest.raises(Trouble, match="policy of your organisation"):
