@@ -53,4 +53,4 @@ class Look:
         return self.style(font_color=GREY, font_size=9, **options)
 
     def link(self) -> Any:
-        return self.style(font_color=RULE, bottom=4, bottom_color=LINE)
+        return self.style(font_color=RULE, valign="top", bottom=4, bottom_color=LINE)

@@ -11,10 +11,10 @@ from cellfuncs.sheets.case_sheet import CAUTION, GREY, RULE
 from cellfuncs.sheets.look import Look, height_for
 from cellfuncs.sheets.reference import Example, Facts, Table
 
-_WIDTHS = (24, 30, 16, 15, 15, 74)
+_WIDTHS = (32, 30, 16, 15, 15, 72)
 _PLAIN_WIDTH = 9  # of a column nobody has set
 _PER_WIDTH = 1.1  # characters of our font in a unit of width, with some to spare
-_WHOLE, _HELP = 180, 96  # characters in a line of a whole row, and of the help's cells
+_WHOLE, _HELP = 186, 94  # characters in a line of a whole row, and of the help's cells
 _GROUP_HEADS = ("number", "formula", "symbol", "function", "", "what it compares; which decision uses it")
 
 
@@ -146,7 +146,7 @@ class _Writer:
     def _line(self, sheet: Any, row: int, head: str | None, words: str, tinted: bool = False) -> int:
         """A label and a text over the rest of the row, or a text over the whole row."""
         look = self.look
-        sheet.set_row(row, height_for(words, _WHOLE if head is None else _WHOLE - 26))
+        sheet.set_row(row, height_for(words, _WHOLE if head is None else _WHOLE - 34))
         if head is None:
             sheet.merge_range(row, 0, row, 5, words, look.ruled(text_wrap=True))
             return row + 1
