@@ -8,7 +8,8 @@ import math
 from dataclasses import dataclass, replace
 
 from cellfuncs.answers.loop import settle
-from cellfuncs.cases.case import Case, Duct, Properties
+from cellfuncs.cases.case import Case, Properties
+from cellfuncs.cases.sections import Duct
 from cellfuncs.errors import CaseRefused
 from cellfuncs.methods import duct as methods
 from cellfuncs.methods import recovery
@@ -86,8 +87,7 @@ class DuctAnswers:
     @property
     def duty(self) -> float:
         if self.shape.area is None:
-            missing = "width" if self.shape.section == "plates" else "flow area"
-            raise CaseRefused(f'a duty needs the row "{missing}"')
+            raise CaseRefused(f'a duty needs the row "{self.shape.area_needs}"')
         return self.capacity_flux * self.shape.area * self.bulk_rise
 
     @property
@@ -138,15 +138,17 @@ def _coefficient(
     case: Case, reynolds: float, p: Properties, x_star: float, shape: Duct
 ) -> tuple[float, float, str, str]:
     """Nu, Darcy f, the method and what lies outside its range; stated values stand before methods."""
-    section = "plates" if shape.section == "plates" else "tube"
     h, f = case.get("coefficient"), case.get("friction_factor")
     stated = None if h is None else h * shape.diameter / p.conductivity
     if stated is not None and f is not None:
         return stated, f, "stated", ""
     allow = case.allow or stated is not None  # then the method is only asked for its friction factor
+    section = "tube" if shape.section == "other" else shape.section
     nusselt, friction, method, outside = methods.nusselt_and_friction(
-        reynolds, p.prandtl, x_star, section, case.wall, shape.heated, allow
+        reynolds, p.prandtl, x_star, section, case.wall, shape.heated, allow, shape.ratio
     )
+    if case.has("roughness") and reynolds > methods.LAMINAR_UP_TO:
+        friction = max(friction, methods.rough_friction(reynolds, case.get("roughness") / shape.diameter))
     if f is not None:
         friction = f
     if stated is not None:

@@ -5,12 +5,12 @@ property temperature of some flows) comes from ``answers/``.
 """
 
 from collections.abc import Mapping
-from dataclasses import dataclass
 from functools import cached_property
 from typing import Any, NamedTuple
 
 from cellfuncs import substances
 from cellfuncs.cases import labels
+from cellfuncs.cases.sections import Duct, section_of
 from cellfuncs.errors import CaseRefused, CellfuncsError
 
 STANDARD_ATMOSPHERE = 101_325.0
@@ -54,21 +54,6 @@ class Properties(NamedTuple):
     @property
     def diffusivity(self) -> float:
         return self.conductivity / (self.density * self.specific_heat)
-
-
-@dataclass(frozen=True)
-class Duct:
-    """Cross-section of a duct: hydraulic diameter, area, and the shape the methods ask for."""
-
-    diameter: float
-    area: float | None
-    section: str  # tube, plates or other
-    heated: str  # both or one
-
-    @property
-    def heated_per_area(self) -> float:
-        """Heated perimeter over cross-section [1/m]: 4/D, or 2/D with one of two plates insulated."""
-        return (2.0 if self.heated == "one" else 4.0) / self.diameter
 
 
 class Case:
@@ -137,28 +122,8 @@ class Case:
 
     @cached_property
     def duct(self) -> Duct:
-        given = [k for k in ("diameter", "hydraulic_diameter", "gap") if self.has(k)]
-        if len(given) > 1:
-            names = " and ".join(f'"{self.stated[k].label}"' for k in given)
-            raise CaseRefused(f"{names} are both stated; one of them describes the section")
-        size = self.need("diameter", "hydraulic_diameter", "gap")
-        natural = {"diameter": "tube", "hydraulic_diameter": "other", "gap": "plates"}[given[0]]
-        section = self.get("section", natural)
-        heated = self.get("heated_walls", "both")
-        if section == "plates" and natural == "tube":
-            raise CaseRefused('parallel plates are described by their "gap", not by a diameter')
-        if natural == "plates" and section != "plates":
-            raise CaseRefused(f'a "gap" describes parallel plates, but the section is {section}')
-        if heated == "one" and section != "plates":
-            raise CaseRefused('"heated walls" one is for parallel plates')
-        area = self.get("flow_area")
-        if natural == "plates":
-            if area is None and self.has("width"):
-                area = size * self.need("width")
-            return Duct(2.0 * size, area, section, heated)
-        if area is None and section == "tube":
-            area = 0.7853981633974483 * size * size
-        return Duct(size, area, section, heated)
+        """The cross-section, from the rows that describe it."""
+        return section_of(self)
 
     def velocity(self, density: float) -> float:
         """Mean velocity [m/s], stated or from the one flow that is stated."""
@@ -173,7 +138,7 @@ class Case:
         flow = self.need("velocity", "volume_flow", "mass_flow")
         area = self.duct.area
         if area is None:
-            missing = "width" if self.duct.section == "plates" else "flow area"
+            missing = self.duct.area_needs
             raise CaseRefused(f'a velocity from "{self.stated[given[0]].label}" needs the row "{missing}"')
         return flow / area if self.has("volume_flow") else flow / (density * area)
 

@@ -4,7 +4,9 @@ f is Darcy's friction factor. Nusselt numbers are on the hydraulic diameter and 
 """
 
 import math
+from bisect import bisect_right
 
+from cellfuncs.errors import OutOfRange
 from cellfuncs.methods.base import METHODS, Range, method
 
 LAMINAR_UP_TO = 2300.0
@@ -19,7 +21,58 @@ DEVELOPED = {
     ("plates", "temperature", "one"): 4.8607,
     ("plates", "flux", "one"): 5.3846,
 }
-FRICTION_TIMES_RE = {"tube": 64.0, "plates": 96.0}
+LIQUID_METAL_PRANDTL = 0.1
+
+# annulus, one wall heated and the other insulated: inner over outer diameter -> Nu of the inner, of the outer wall,
+# at uniform temperature (first pair) and uniform flux (second pair); Shah and London 1978
+_ANNULUS_RATIOS = (0.05, 0.1, 0.25, 0.5, 1.0)
+_ANNULUS = {
+    ("inner", "temperature"): (17.46, 11.56, 7.37, 5.74, 4.86),
+    ("outer", "temperature"): (4.06, 4.11, 4.23, 4.43, 4.86),
+    ("inner", "flux"): (17.81, 11.91, 7.753, 6.181, 5.385),
+    ("outer", "flux"): (4.792, 4.834, 4.904, 5.036, 5.385),
+}
+_RECTANGLE = {
+    "temperature": (7.541, -2.610, 4.970, -5.119, 2.702, -0.548),
+    "flux": (8.235, -2.0421, 3.0853, -2.4765, 1.0578, -0.1861),
+    "friction": (96.0, -1.3553, 1.9467, -1.7012, 0.9564, -0.2537),
+}
+
+
+def _polynomial(what: str, ratio: float) -> float:
+    """Shah and London's polynomials in the short over the long side."""
+    lead, *rest = _RECTANGLE[what]
+    return lead * (1.0 + sum(c * ratio ** (k + 1) for k, c in enumerate(rest)))
+
+
+def developed_value(section: str, wall: str, heated: str, ratio: float = 1.0) -> float:
+    """Nu of developed laminar flow in any section."""
+    if section == "rectangle":
+        return _polynomial(wall, ratio)
+    if section == "annulus":
+        if heated == "both" or not _ANNULUS_RATIOS[0] <= ratio:
+            raise OutOfRange(
+                "laminar flow in an annulus is known with one wall heated and diameters from 1:20; "
+                "state heated walls inner or outer, or the coefficient"
+            )
+        values = _ANNULUS[heated, wall]
+        k = min(max(bisect_right(_ANNULUS_RATIOS, ratio) - 1, 0), len(values) - 2)
+        low, high = _ANNULUS_RATIOS[k], _ANNULUS_RATIOS[k + 1]
+        t = math.log(ratio / low) / math.log(high / low)
+        return values[k] + t * (values[k + 1] - values[k])
+    return DEVELOPED[section, wall, heated]
+
+
+def friction_times_re(section: str, ratio: float = 1.0) -> float:
+    """f·Re of developed laminar flow (Darcy): 64, 96, and the exact annulus."""
+    if section == "rectangle":
+        return _polynomial("friction", ratio)
+    if section == "annulus":
+        square = ratio * ratio
+        if 1.0 - ratio < 1e-6:
+            return 96.0
+        return 64.0 * (1.0 - ratio) ** 2 / (1.0 + square + (1.0 - square) / math.log(ratio))
+    return 96.0 if section == "plates" else 64.0
 
 
 @method(
@@ -30,9 +83,9 @@ FRICTION_TIMES_RE = {"tube": 64.0, "plates": 96.0}
     property_temperature="mean bulk",
     source="shah-london-1978",
 )
-def developed_laminar(section: str, wall: str, heated: str) -> float:
+def developed_laminar(section: str, wall: str, heated: str, ratio: float = 1.0) -> float:
     """Nu of developed laminar flow: tube 3.6568 and 48/11, plates 7.5407 and 140/17, one wall 4.8607 and 5.3846."""
-    return DEVELOPED[section, wall, heated]
+    return developed_value(section, wall, heated, ratio)
 
 
 @method(
@@ -107,6 +160,32 @@ def gnielinski(reynolds: float, prandtl: float, friction: float, diameter_over_l
 
 
 @method(
+    "liquid metal",
+    gives="mean Nu",
+    ranges=(Range("Pe", 100.0, 1e4), Range("Pr", 0.003, 0.1)),
+    scatter=0.2,
+    property_temperature="mean bulk",
+    source="lyon-1951;seban-shimazaki-1951",
+)
+def liquid_metal(peclet: float, wall: str) -> float:
+    """Nu of a liquid metal in a turbulent tube, 7 + 0.025 Pe^0.8 (flux, Lyon), 5 + ... (temperature, Seban)."""
+    return (7.0 if wall == "flux" else 5.0) + 0.025 * peclet**0.8
+
+
+@method(
+    "Haaland",
+    gives="Darcy friction factor",
+    ranges=(Range("Re", 4000.0, 1e8), Range("roughness", 0.0, 0.05)),
+    scatter=0.02,
+    property_temperature="mean bulk",
+    source="haaland-1983",
+)
+def rough_friction(reynolds: float, relative_roughness: float) -> float:
+    """f of a rough wall, 1/√f = −1.8 log10(6.9/Re + (ε/3.7D)^1.11)."""
+    return (-1.8 * math.log10(6.9 / reynolds + (relative_roughness / 3.7) ** 1.11)) ** -2.0
+
+
+@method(
     "laminar friction",
     gives="Darcy friction factor",
     ranges=(Range("Re", high=LAMINAR_UP_TO),),
@@ -114,9 +193,9 @@ def gnielinski(reynolds: float, prandtl: float, friction: float, diameter_over_l
     property_temperature="mean bulk",
     source="shah-london-1978",
 )
-def laminar_friction(reynolds: float, section: str) -> float:
+def laminar_friction(reynolds: float, section: str, ratio: float = 1.0) -> float:
     """f = 64/Re in a tube, 96/Re between plates (developed)."""
-    return FRICTION_TIMES_RE[section] / reynolds
+    return friction_times_re(section, ratio) / reynolds
 
 
 @method(
@@ -133,13 +212,13 @@ def smooth_friction(reynolds: float) -> float:
 
 
 def laminar_nusselt(
-    x_star: float, section: str, wall: str, heated: str, reynolds: float, allow: bool
+    x_star: float, section: str, wall: str, heated: str, reynolds: float, allow: bool, ratio: float = 1.0
 ) -> tuple[float, str, str]:
     """Nu of a laminar duct with the method chosen and what lies outside its range."""
-    if heated == "one" or x_star >= 10.0:
+    if heated != "both" or section in ("rectangle", "annulus") or x_star >= 10.0:
         name = "developed laminar"
         outside = METHODS[name].check(allow, **{"Re": reynolds, "x*": x_star})
-        return developed_laminar(section, wall, heated), name, outside
+        return developed_laminar(section, wall, heated, ratio), name, outside
     if wall == "flux":
         name, nusselt = "flux entry", flux_entry(x_star, section)
     elif section == "plates":
@@ -147,6 +226,34 @@ def laminar_nusselt(
     else:
         name, nusselt = "Hausen entry", hausen_entry(x_star)
     return nusselt, name, METHODS[name].check(allow, Re=reynolds)
+
+
+def _turbulent(
+    reynolds: float,
+    prandtl: float,
+    friction: float,
+    short: float,
+    wall: str,
+    factor: float,
+    allow: bool,
+    check_re: bool,
+) -> tuple[float, str, str]:
+    if prandtl <= LIQUID_METAL_PRANDTL:
+        peclet = reynolds * prandtl
+        return liquid_metal(peclet, wall), "liquid metal", METHODS["liquid metal"].check(allow, Pe=peclet, Pr=prandtl)
+    more = {"Re": reynolds} if check_re else {}
+    outside = METHODS["Gnielinski"].check(allow, Pr=prandtl, **more)
+    return factor * gnielinski(reynolds, prandtl, friction, short), "Gnielinski", outside
+
+
+def _annulus_factor(section: str, heated: str, ratio: float) -> float:
+    """Petukhov and Roizen 1964: a turbulent annulus over a tube of the same hydraulic diameter."""
+    if section != "annulus":
+        return 1.0
+    inner, outer = 0.86 * ratio**-0.16, 1.0 - 0.14 * ratio**0.6
+    if heated == "both":
+        return (inner * ratio + outer) / (1.0 + ratio)
+    return inner if heated == "inner" else outer
 
 
 def nusselt_and_friction(
@@ -157,6 +264,7 @@ def nusselt_and_friction(
     wall: str,
     heated: str,
     allow: bool = False,
+    ratio: float = 1.0,
 ) -> tuple[float, float, str, str]:
     """Nu, Darcy f, the method's name and what lies outside its range, for any Re.
 
@@ -165,20 +273,20 @@ def nusselt_and_friction(
     prescribed flux.
     """
     if reynolds <= LAMINAR_UP_TO:
-        nusselt, name, outside = laminar_nusselt(x_star, section, wall, heated, reynolds, allow)
-        return nusselt, laminar_friction(reynolds, section), name, outside
-    ratio = x_star * reynolds * prandtl
-    short = 1.0 / ratio if wall == "temperature" else 0.0
+        nusselt, name, outside = laminar_nusselt(x_star, section, wall, heated, reynolds, allow, ratio)
+        return nusselt, laminar_friction(reynolds, section, ratio), name, outside
+    length_ratio = x_star * reynolds * prandtl
+    short = 1.0 / length_ratio if wall == "temperature" else 0.0
+    factor = _annulus_factor(section, heated, ratio)
     if reynolds >= TURBULENT_FROM:
-        outside = METHODS["Gnielinski"].check(allow, Re=reynolds, Pr=prandtl)
         friction = smooth_friction(reynolds)
-        return gnielinski(reynolds, prandtl, friction, short), friction, "Gnielinski", outside
+        nusselt, name, outside = _turbulent(reynolds, prandtl, friction, short, wall, factor, allow, True)
+        return nusselt, friction, name, outside
     share = (reynolds - LAMINAR_UP_TO) / (TURBULENT_FROM - LAMINAR_UP_TO)
-    outside = METHODS["Gnielinski"].check(allow, Pr=prandtl)
-    x_laminar = ratio / (LAMINAR_UP_TO * prandtl)
-    low, _, outside_low = laminar_nusselt(x_laminar, section, wall, heated, LAMINAR_UP_TO, allow)
+    x_laminar = length_ratio / (LAMINAR_UP_TO * prandtl)
+    low, _, outside_low = laminar_nusselt(x_laminar, section, wall, heated, LAMINAR_UP_TO, allow, ratio)
     at_4000 = smooth_friction(TURBULENT_FROM)
-    high = gnielinski(TURBULENT_FROM, prandtl, at_4000, short)
-    friction = (1.0 - share) * laminar_friction(LAMINAR_UP_TO, section) + share * at_4000
+    high, _, outside = _turbulent(TURBULENT_FROM, prandtl, at_4000, short, wall, factor, allow, False)
+    friction = (1.0 - share) * laminar_friction(LAMINAR_UP_TO, section, ratio) + share * at_4000
     nusselt = (1.0 - share) * low + share * high
     return nusselt, friction, "transition blend", "; ".join(filter(None, (outside, outside_low)))

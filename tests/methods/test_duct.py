@@ -69,9 +69,9 @@ def test_no_jump_at_the_seams(seam):
 
 
 def test_range_refuses_in_words_and_allows_on_demand():
-    with pytest.raises(OutOfRange, match=r"Gnielinski.*Pr 0\.5 to 2000.*0\.01"):
-        duct.nusselt_and_friction(2e4, 0.01, 0.5, "tube", "temperature", "both")
-    nusselt, _, name, outside = duct.nusselt_and_friction(2e4, 0.01, 0.5, "tube", "temperature", "both", True)
+    with pytest.raises(OutOfRange, match=r"Gnielinski.*Pr 0\.5 to 2000.*0\.2"):
+        duct.nusselt_and_friction(2e4, 0.2, 0.5, "tube", "temperature", "both")
+    nusselt, _, name, outside = duct.nusselt_and_friction(2e4, 0.2, 0.5, "tube", "temperature", "both", True)
     assert nusselt > 0
     assert name == "Gnielinski"
     assert "Pr" in outside
@@ -113,3 +113,40 @@ def test_every_method_has_a_source_in_the_bibliography():
     for method in METHODS.values():
         assert cite(method.source)
         assert 0 <= method.scatter < 0.5
+
+
+@pytest.mark.parametrize(
+    ("ratio", "temperature", "flux", "friction"),
+    [(1.0, 2.976, 3.608, 56.91), (0.5, 3.391, 4.123, 62.19), (0.25, 4.439, 5.331, 72.93), (0.125, 5.597, 6.490, 82.34)],
+)
+def test_rectangles(ratio, temperature, flux, friction):
+    """Shah and London 1978, table of rectangular ducts: Nu_T, Nu_H1 and f·Re (Darcy); digits from memory."""
+    assert duct.developed_value("rectangle", "temperature", "both", ratio) == pytest.approx(temperature, rel=2e-3)
+    assert duct.developed_value("rectangle", "flux", "both", ratio) == pytest.approx(flux, rel=2e-3)
+    assert duct.friction_times_re("rectangle", ratio) == pytest.approx(friction, rel=2e-3)
+
+
+@pytest.mark.parametrize(("ratio", "friction"), [(0.05, 86.27), (0.1, 89.37), (0.5, 95.25), (1.0, 96.0)])
+def test_annulus_friction(ratio, friction):
+    """Shah and London 1978, table of concentric annuli: f·Re (Darcy); digits from memory."""
+    assert duct.friction_times_re("annulus", ratio) == pytest.approx(friction, rel=1e-3)
+
+
+def test_annulus_ends_in_plates():
+    for heated in ("inner", "outer"):
+        assert duct.developed_value("annulus", "flux", heated, 1.0) == pytest.approx(5.385, rel=1e-3)
+        assert duct.developed_value("annulus", "temperature", heated, 1.0) == pytest.approx(4.861, rel=1e-3)
+
+
+def test_haaland_against_colebrook():
+    """Colebrook 1939 solved to 1e-25 at Re 1e4, ε/D 1e-5: f = 0.03089842305; Haaland is within 2 %."""
+    assert duct.rough_friction(1e4, 1e-5) == pytest.approx(0.03089842305, rel=0.02)
+
+
+def test_liquid_metals():
+    """Lyon 1951, 7 + 0.025 Pe^0.8: Pe 1000 gives 13.28; Skupinski et al. 1965 give 10.42, within their scatter."""
+    assert duct.liquid_metal(1000.0, "flux") == pytest.approx(7 + 0.025 * 251.19, rel=1e-4)
+    assert duct.liquid_metal(1000.0, "temperature") == pytest.approx(5 + 0.025 * 251.19, rel=1e-4)
+    nusselt, _, name, _ = duct.nusselt_and_friction(5e4, 0.007, 0.5, "tube", "flux", "both")
+    assert name == "liquid metal"
+    assert nusselt == pytest.approx(duct.liquid_metal(350.0, "flux"))
