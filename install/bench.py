@@ -6,6 +6,7 @@ Plain times stand beside one fixed loop, so that runs on different machines can 
 """
 
 import contextlib
+import functools
 import gc
 import itertools
 import subprocess
@@ -347,6 +348,19 @@ ROWS = {
     "g": term_table,
     "h": worst_unit_text,
 }
+
+
+def calc_rows() -> dict[str, Callable[[], Row]]:
+    """Rows about LibreOffice Calc, where it is installed."""
+    from calc import bench as calc
+
+    def row(measure: Callable[[], tuple]) -> Callable[[], Row]:
+        return functools.wraps(measure)(lambda: Row(*measure()))
+
+    return {"i": row(calc.cells), "j": row(calc.column), "k": row(calc.opening)} if calc.available() else {}
+
+
+ROWS |= calc_rows()
 IN_SECONDS = {"s": 1.0, "ms": 1e-3, "µs": 1e-6}
 
 

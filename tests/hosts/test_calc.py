@@ -16,9 +16,15 @@ import xlsxwriter
 
 from cellfuncs.cells import catalogue
 from cellfuncs.hosts import embedded
-from tests.hosts.conftest import command, offices, with_mark
 
 ROOT = Path(__file__).resolve().parent.parent.parent
+if str(ROOT / "install") not in sys.path:
+    sys.path.insert(0, str(ROOT / "install"))
+
+from calc import command  # noqa: E402
+from calc import office as offices  # noqa: E402
+from calc.session import with_mark  # noqa: E402
+
 SAMPLES = sorted((ROOT / "workbooks").glob("*.xlsx"))
 COOLANT = [
     ("flow kind", "duct", ""),
@@ -299,7 +305,7 @@ def test_a_call_that_hangs_is_ended_and_the_next_one_works(calc):
 
 def test_the_helper_starts_with_the_first_call_and_ends_with_the_office(libreoffice, tmp_path, monkeypatch):
     """Put in, one file converted on the command line, taken out; all in a folder of its own."""
-    office, _ = libreoffice
+    office = libreoffice
     monkeypatch.setenv("CELLFUNCS_MARK", tmp_path.name)
     private = tmp_path / "office"
     assert "a cell answered" in command.install(office, lambda: Path(sys.executable), private)

@@ -1,4 +1,4 @@
-"""Runs a LibreOffice of its own and does what the tests ask; started under a Python that has `uno`.
+"""Runs a LibreOffice of its own and does what tests and bench ask; started under a Python that has `uno`.
 
 A line of JSON comes in, [name, arguments], and a line of JSON goes out, {"result": …} or {"error": text}.
 """
@@ -22,6 +22,8 @@ def properties(**values):
 
 
 class Driver:
+    """One office and the document that is open in it."""
+
     def __init__(self, soffice, settings):
         name = f"cellfuncs{os.getpid()}"
         accept = f"--accept=pipe,name={name};urp"
