@@ -6,7 +6,7 @@ from cellfuncs import groups, quantities, substances
 from cellfuncs.cases import labels
 from cellfuncs.cells import catalogue
 from cellfuncs.errors import UnknownName
-from cellfuncs.terms import MEASURES, TERMS
+from cellfuncs.terms import EQUATIONS, MEASURES, MOMENTUM_TERMS, TERMS
 
 
 def _labels(of: str | None) -> list[str]:
@@ -36,13 +36,24 @@ def _units(of: str | None) -> list[str]:
     return list(dict.fromkeys(unit for kind in quantities.KINDS.values() for unit in kind.units))
 
 
+def _terms(of: str | None) -> list[str]:
+    """Terms of one equation where it is named, else of both."""
+    if of is None:
+        return list(dict.fromkeys((*TERMS, *MOMENTUM_TERMS)))
+    by_equation = {"energy": TERMS, "momentum": MOMENTUM_TERMS}
+    if of.strip().casefold() not in by_equation:
+        raise UnknownName(f'"{of[:40]}" is no equation; write energy or momentum', argument="of")
+    return list(by_equation[of.strip().casefold()])
+
+
 _LISTS: Mapping[str, Callable[[str | None], list[str]]] = {
     "labels": _labels,
     "quantities": _derived,
     "choices": _choices,
     "units": _units,
     "kinds": lambda of: [kind.words for kind in quantities.KINDS.values()],
-    "terms": lambda of: list(TERMS),
+    "terms": _terms,
+    "equations": lambda of: list(EQUATIONS),
     "measures": lambda of: list(MEASURES),
     "answers": lambda of: list(labels.choices("answer")),
     "flow kinds": lambda of: list(labels.choices("flow_kind")),

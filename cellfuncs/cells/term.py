@@ -3,10 +3,16 @@
 from cellfuncs.cells import solved
 from cellfuncs.cells.catalogue import cell_function
 from cellfuncs.errors import UnknownName
-from cellfuncs.terms import COLUMNS, MEASURES, TERMS
-from cellfuncs.terms.table import ALL_LEFT_OUT
+from cellfuncs.terms import ALL_LEFT_OUT, COLUMNS, MEASURES, MOMENTUM_TERMS, TERMS
+from cellfuncs.terms.table import equation_of
 
-_SOURCE = "scaled energy equation; recovery and friction as cited by the methods used"
+_SOURCE = "scaled energy and momentum equations; recovery and friction as cited by the methods used"
+_NAMES = tuple(dict.fromkeys((*TERMS, *MOMENTUM_TERMS, ALL_LEFT_OUT)))
+
+
+def term_name(text: str) -> str:
+    """The name of a term of either equation."""
+    return _named(text, _NAMES, "term")
 
 
 def _named(text: str, admissible: tuple[str, ...], argument: str) -> str:
@@ -27,7 +33,8 @@ def _equation(text: str | None) -> str:
 @cell_function(
     "CF_TERMS",
     family="Terms",
-    summary="The term table of a case: how large each term of the energy equation is, its verdict and the reason.",
+    summary="The term table of a case: how large each term of the energy (or momentum) equation is, its verdict "
+    "and the reason.",
     returns="table",
     source=_SOURCE,
     example="=CF_TERMS(coolant)",
@@ -39,13 +46,14 @@ def terms(block, equation=None):
 @cell_function(
     "CF_TERM",
     family="Terms",
-    summary="One cell of the term table: the share of a term, or its one-scale size, effect, verdict or reason.",
+    summary="One cell of the term table: the share of a term, or its one-scale size, effect, verdict or reason. Terms "
+    "that only momentum has are looked up there.",
     returns="table",
     source=_SOURCE,
     example='=CF_TERM(coolant,"viscous heating","verdict")',
 )
 def term(block, term, measure=None):
-    name = _named(term, (*TERMS, ALL_LEFT_OUT), "term")
+    name = term_name(term)
     column = 2 if measure is None else COLUMNS.index(_named(measure, MEASURES, "measure"))
-    rows = solved.terms(block, "energy")
+    rows = solved.terms(block, equation_of(name))
     return next(row[column] for row in rows if row[0] == name)

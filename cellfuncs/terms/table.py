@@ -4,7 +4,7 @@ from collections.abc import Callable, Mapping
 
 from cellfuncs.answers import Solution
 from cellfuncs.errors import UnknownName
-from cellfuncs.terms import duct, free, gap, layer
+from cellfuncs.terms import duct, free, gap, layer, momentum
 from cellfuncs.terms.size import Size, percent
 from cellfuncs.terms.verdicts import KEEP, LEAVE_OUT, Judged, judge, left_out
 
@@ -21,6 +21,8 @@ TERMS = (
     "volumetric source",
     "wall radiation",
 )
+MOMENTUM_TERMS = momentum.TERMS
+EQUATIONS = ("energy", "momentum")
 ALL_LEFT_OUT = "all left out"
 NO_MODEL = "no model"
 NO_SHARE = "no share"
@@ -30,6 +32,9 @@ _SIZES: Mapping[str, Callable[[Solution], list[Size]]] = {
     "cylinder": layer.sizes,
     "sphere": layer.sizes,
     "jet": layer.sizes,
+    "bank": duct.sizes,
+    "bed": duct.sizes,
+    "falling film": duct.sizes,
     "free": free.sizes,
     "enclosure": free.enclosure_sizes,
     "gap": gap.sizes,
@@ -38,13 +43,25 @@ _SIZES: Mapping[str, Callable[[Solution], list[Size]]] = {
 Row = tuple[str, float, float | str, float | str, str, str]
 
 
+def judged(solution: Solution, equation: str = "energy") -> list[Judged]:
+    """Every term of an equation with its share and verdict."""
+    if equation not in EQUATIONS:
+        named = " or ".join(EQUATIONS)
+        raise UnknownName(f'"{equation[:40]}" is not an equation that is judged; write {named}', argument="equation")
+    case = solution.case
+    sizes = momentum.sizes(solution) if equation == "momentum" else _SIZES[case.flow](solution)
+    return judge(sizes, case.tolerance, case.smallest)
+
+
+def equation_of(term: str) -> str:
+    """The equation that has a term; storage and what both have is the energy equation's."""
+    return "energy" if term in (*TERMS, ALL_LEFT_OUT) else "momentum"
+
+
 def term_rows(solution: Solution, equation: str = "energy") -> list[Row]:
     """Rows of the term table (without the head): term, one-scale, share, effect, verdict, reason."""
-    if equation != "energy":
-        raise UnknownName(f'"{equation}" is not an equation that is judged; write energy', argument="equation")
-    case = solution.case
-    judged = judge(_SIZES[case.flow](solution), case.tolerance, case.smallest)
-    return [*map(_row, judged), _together(judged, case.tolerance)]
+    terms = judged(solution, equation)
+    return [*map(_row, terms), _together(terms, solution.case.tolerance)]
 
 
 def _row(j: Judged) -> Row:

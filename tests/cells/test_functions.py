@@ -4,7 +4,7 @@ import pytest
 
 from cellfuncs import __version__, groups, substances
 from cellfuncs.cases import labels
-from cellfuncs.terms import MEASURES, TERMS
+from cellfuncs.terms import MEASURES, MOMENTUM_TERMS, TERMS
 
 
 def test_faults_counts_and_names_the_first(cf):
@@ -23,7 +23,10 @@ def test_lists_are_columns_of_texts(cf, what):
 
 
 def test_lists_hold_what_may_be_typed(cf):
-    assert [row[0] for row in cf("LIST", "terms")] == list(TERMS)
+    assert [row[0] for row in cf("LIST", "terms", "energy")] == list(TERMS)
+    assert [row[0] for row in cf("LIST", "terms", "momentum")] == list(MOMENTUM_TERMS)
+    assert [row[0] for row in cf("LIST", "terms")] == list(dict.fromkeys((*TERMS, *MOMENTUM_TERMS)))
+    assert cf("LIST", "terms", "entropy").startswith("! of: ")
     assert [row[0] for row in cf("LIST", "measures")] == list(MEASURES)
     for (name,) in cf("LIST", "labels", "duct"):
         assert labels.candidates(name)
