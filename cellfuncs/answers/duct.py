@@ -5,6 +5,7 @@ by friction and pressure work are judged in ``terms/``, not mixed in here.
 """
 
 import math
+from collections.abc import Callable
 from dataclasses import dataclass, replace
 
 from cellfuncs.answers.loop import settle
@@ -105,11 +106,8 @@ def solve_duct(case: Case) -> DuctAnswers:
     """The answers of a duct case; closes the loop on the mean bulk temperature."""
     length = case.need("length")
     shape = case.duct
-    inlet, difference = _temperatures(case)
+    inlet, difference = temperatures(case)
     flux = case.get("heat_flux")
-    if flux == 0:
-        raise CaseRefused(f'"{case.stated["heat_flux"].label}" is zero; nothing is exchanged')
-    stated = case.get("property_temperature")
 
     def at(temperature: float | None) -> DuctAnswers:
         p = case.properties(temperature)
@@ -123,6 +121,16 @@ def solve_duct(case: Case) -> DuctAnswers:
             case, shape, length, temperature, p, u, re, nusselt, friction, h, method, outside, driving, flux, inlet
         )
 
+    return close_on_bulk(case, at, inlet, difference)
+
+
+def close_on_bulk(
+    case: Case, at: Callable[[float | None], DuctAnswers], inlet: float | None, difference: float | None
+) -> DuctAnswers:
+    """The answers at the mean bulk temperature, which they themselves set; or at the stated temperature."""
+    if case.get("heat_flux") == 0:
+        raise CaseRefused(f'"{case.stated["heat_flux"].label}" is zero; nothing is exchanged')
+    stated = case.get("property_temperature")
     if stated is not None or inlet is None:
         return at(stated)
     if case.fixed:
@@ -131,7 +139,19 @@ def solve_duct(case: Case) -> DuctAnswers:
     start = inlet if difference is None else inlet + 0.25 * difference
     found = at(settle(start, lambda t: inlet + 0.5 * at(t).bulk_rise, "mean bulk temperature"))
     case.refuse_phase_change(inlet, found.property_temperature, found.outlet)
+    _refuse_vacuum(case, found)
     return found
+
+
+def _refuse_vacuum(case: Case, found: DuctAnswers) -> None:
+    """Refuse a friction that would use up the pressure there is; a liquid's pressure counts only where it is stated."""
+    drop, pressure = found.pressure_drop, case.pressure
+    known = case.has("pressure") or case.has("gauge_pressure") or case.is_gas(found.property_temperature)
+    if known and drop >= pressure and case.flow != "falling film":
+        raise CaseRefused(
+            f"friction would take {drop / 1e5:.3g} bar, but the pressure is {pressure / 1e5:.3g} bar absolute; "
+            "the duct is too long or the flow too fast for it"
+        )
 
 
 def _coefficient(
@@ -156,7 +176,7 @@ def _coefficient(
     return nusselt, friction, method, outside
 
 
-def _temperatures(case: Case) -> tuple[float | None, float | None]:
+def temperatures(case: Case) -> tuple[float | None, float | None]:
     """Inlet temperature and driving difference, as far as they are stated."""
     inlet = case.get("inlet_temperature")
     if case.wall == "flux":
@@ -164,6 +184,8 @@ def _temperatures(case: Case) -> tuple[float | None, float | None]:
             case.need("inlet_temperature")
         return inlet, None
     wall, difference = case.get("wall_temperature"), case.get("temperature_difference")
+    if wall is None and difference is None:
+        return inlet, 0.0  # no exchange: friction alone
     if wall is not None and difference is not None:
         if inlet is not None:
             raise CaseRefused("wall temperature, inlet temperature and their difference are all stated; state two")

@@ -2,10 +2,11 @@
 
 from collections.abc import Callable
 
-from cellfuncs.errors import CellfuncsError, OutOfRange
+from cellfuncs.errors import NoModel, OutOfRange
 
 _SETTLED = 1e-9  # K, relative to a temperature of 1 K
 _MOST_ROUNDS = 60
+_FAR = 3000.0  # degC
 
 
 def settle(start: float, follow: Callable[[float], float], what: str) -> float:
@@ -32,5 +33,11 @@ def settle(start: float, follow: Callable[[float], float], what: str) -> float:
 def _gap(follow: Callable[[float], float], temperature: float, what: str) -> float:
     try:
         return follow(temperature) - temperature
-    except CellfuncsError as error:
-        raise type(error)(f"at the {what} of {temperature - 273.15:.1f} degC: {error}", error.argument) from None
+    except (OutOfRange, NoModel) as error:
+        celsius = temperature - 273.15
+        if not -273.15 < celsius < _FAR:
+            raise OutOfRange(
+                f"the {what} would come to {celsius:.2g} degC, far outside the range of the properties; "
+                "the fluid boils or freezes on the way, or the flow is too small for this heat"
+            ) from None
+        raise type(error)(f"at the {what} of {celsius:.1f} degC: {error}", error.argument) from None

@@ -1,5 +1,6 @@
 """One solution a case, and everything in it by name."""
 
+import math
 from collections.abc import Callable, Mapping
 from dataclasses import dataclass
 from functools import cached_property
@@ -9,9 +10,10 @@ from cellfuncs.answers.duct import DuctAnswers, solve_duct
 from cellfuncs.answers.free import FreeAnswers, solve_enclosure, solve_free
 from cellfuncs.answers.gap import GapAnswers, solve_gap
 from cellfuncs.answers.layer import LayerAnswers, solve_layer
+from cellfuncs.answers.through import solve_through
 from cellfuncs.cases import labels
 from cellfuncs.cases.case import Case
-from cellfuncs.errors import CaseRefused
+from cellfuncs.errors import CaseRefused, CellfuncsError
 
 Answers = DuctAnswers | LayerAnswers | FreeAnswers | GapAnswers
 _SOLVERS: Mapping[str, Callable[[Case], Answers]] = {
@@ -20,6 +22,9 @@ _SOLVERS: Mapping[str, Callable[[Case], Answers]] = {
     "cylinder": solve_layer,
     "sphere": solve_layer,
     "jet": solve_layer,
+    "bank": solve_through,
+    "bed": solve_through,
+    "falling film": solve_through,
     "free": solve_free,
     "enclosure": solve_enclosure,
     "gap": solve_gap,
@@ -35,7 +40,10 @@ class Solution:
 
     @cached_property
     def driving(self) -> float:
-        """Size of the driving difference [K]."""
+        """Size of the driving difference [K]; refused where nothing is exchanged."""
+        if not self.answers.difference:
+            self.case.need("wall_temperature", "heat_flux", "temperature_difference")
+            raise CaseRefused("wall and fluid have the same temperature; there is no driving difference to judge by")
         return abs(self.answers.difference)
 
     def value(self, key: str) -> float | str:
@@ -62,6 +70,20 @@ class Solution:
     def mach(self) -> float | None:
         sound = self.case.speed_of_sound(self.answers.property_temperature)
         return None if sound is None else groups.mach(self.answers.velocity, sound)
+
+    def nahme(self) -> float | None:
+        """b·μU²/k with the fall of the viscosity at the property temperature, or None where it is not known."""
+        at, p = self.answers.property_temperature, self.answers.properties
+        if self.case.fixed or at is None:
+            return None
+        try:
+            warmer = self.case.properties(at + 1.0).viscosity
+        except CellfuncsError:
+            return None
+        slope = math.log(p.viscosity / warmer)
+        if slope <= 0:
+            return None
+        return groups.nahme(self.answers.velocity, p.viscosity, p.conductivity, slope)
 
 
 def solve(case: Case) -> Solution:
@@ -161,6 +183,8 @@ _DERIVED: Mapping[str, Callable[[Solution], float | str | None]] = {
     "graetz": _duct(lambda a: a.reynolds * a.properties.prandtl * a.shape.diameter / a.length),
     "euler": _duct(lambda a: a.pressure_drop / (a.properties.density * a.velocity**2)),
     "mach": lambda s: s.mach(),
+    "nahme": lambda s: s.nahme(),
+    "bulk_rise": _attribute("bulk_rise"),
     "rayleigh": _attribute("rayleigh"),
     "grashof": _attribute("grashof"),
     "transfer_units": _duct(lambda a: a.transfer_units),

@@ -47,8 +47,18 @@ def read_case(rows: tuple[Row, ...]) -> Case:
                 f'rows {other.row} ("{other.label}") and {entry.row} ("{entry.label}") both state the '
                 f"{labels.dictionary()[entry.key].label}; keep one"
             )
+        _refuse_useless(entry, flow)
         stated[entry.key] = entry
     return Case(flow, stated)
+
+
+def _refuse_useless(entry: Stated, flow: str) -> None:
+    """Refuse a known row that this flow kind does not use: it would be ignored in silence."""
+    flows = labels.dictionary()[entry.key].flows
+    if flows and flow not in flows:
+        raise CaseRefused(
+            f'"{entry.label}" has no use in a {flow}; leave the row out, or put the word remark before its label'
+        )
 
 
 def _cells(row: Row) -> Row:
@@ -122,8 +132,7 @@ def _stated_row(
     if not keys:
         keys = labels.candidates(name)
     if not keys:
-        near = labels.nearest(name)
-        raise CaseRefused(f'row {number}: the label "{label[:60]}" is not known; the nearest is "{near}"')
+        raise CaseRefused(f'row {number}: the label "{label[:60]}" is not known; {labels.hint(name)}')
     key = labels.settle(label, keys, unit or bracket or _unit_within(value), flow)
     entry = labels.dictionary()[key]
     if entry.role == "note":
@@ -136,6 +145,8 @@ def _stated_row(
         if not isinstance(value, str):
             raise CaseRefused(f'"{label}" is a name; the cell holds the number {value:g}')
         return Stated(key, label, number, value, None, "")
+    if unit and bracket and entry.kind and _differs(bracket, unit, entry.kind):
+        raise CaseRefused(f'"{label}": the label says {bracket}, the unit column {unit}; keep one')
     return _quantity_row(entry, label, number, value, unit or bracket, plus_minus, atmosphere)
 
 
@@ -169,6 +180,8 @@ def _quantity_row(
             raise CaseRefused(f"has no unit; write one, for instance {_usual(entry.kind)}")
         understood = quantities.read_unit(unit, entry.kind, atmosphere) if unit else None
         si = reading * understood.factor + understood.offset if understood else reading
+        if understood and understood.offset and entry.kind == "pressure_absolute" and "absolute" in label.casefold():
+            raise CaseRefused(f"says absolute, but {unit} is a gauge unit; keep one")
         quantities.check_physical(si, entry.kind)
         _check_sign(entry.key, si)
         spread = _plus_minus(plus_minus, own_plus_minus, understood, entry.kind, si)

@@ -25,13 +25,17 @@ _OVERRIDES = {
     "specific_heat": "specific_heat",
     "expansion_coefficient": "expansion",
 }
+_THROUGH = ("outlet temperature", "wall temperature", "coefficient", "duty", "local flux", "pressure drop")
 _EXTERNAL = ("coefficient", "wall temperature", "duty", "local flux")
 _ANSWERS = {
-    "duct": ("outlet temperature", "wall temperature", "coefficient", "duty", "local flux", "pressure drop"),
+    "duct": _THROUGH,
     "plate": _EXTERNAL,
     "cylinder": _EXTERNAL,
     "sphere": _EXTERNAL,
     "jet": _EXTERNAL,
+    "bank": _THROUGH,
+    "bed": _THROUGH,
+    "falling film": _THROUGH,
     "free": _EXTERNAL,
     "enclosure": ("coefficient", "duty", "local flux"),
     "gap": ("peak temperature", "local flux"),
@@ -100,14 +104,14 @@ class Case:
         if self.has("heat_flux") and len(prescribed) > 1:
             names = " and ".join(f'"{self.stated[k].label}"' for k in prescribed)
             raise CaseRefused(f"{names} are both stated; prescribe the flux or the wall temperature, not both")
-        if not prescribed:
+        if not prescribed and self.flow != "duct":
             self.need("wall_temperature", "heat_flux", "temperature_difference")
         return "flux" if self.has("heat_flux") else "temperature"
 
     @cached_property
     def answer(self) -> str:
         """The answer the verdicts are for: the row, or the default of the flow kind."""
-        if self.flow == "duct":
+        if _ANSWERS[self.flow] is _THROUGH:
             default = "wall temperature" if self.wall == "flux" else "outlet temperature"
         else:
             default = _ANSWERS[self.flow][0]
@@ -156,7 +160,9 @@ class Case:
 
     @cached_property
     def pressure(self) -> float:
-        return self.get("pressure", self.get("atmosphere", STANDARD_ATMOSPHERE))
+        if self.has("pressure") and self.has("gauge_pressure"):
+            raise CaseRefused("pressure and gauge pressure are both stated; keep one")
+        return self.get("pressure", self.get("gauge_pressure", self.get("atmosphere", STANDARD_ATMOSPHERE)))
 
     @cached_property
     def fixed(self) -> bool:
@@ -171,7 +177,7 @@ class Case:
                 raise CaseRefused("viscosity and kinematic viscosity are both stated; keep one")
             if "density" in found:
                 found["viscosity"] = self.get("kinematic_viscosity") * found["density"]
-        if not self.has("substance") and "expansion_coefficient" not in found:
+        if "expansion_coefficient" not in found and not self.has("substance"):
             found["expansion_coefficient"] = 0.0  # said in the reason of pressure work
         return found
 
@@ -217,6 +223,12 @@ class Case:
                     f"{self.substance.name} is {first} where it enters and {then} at {temperature - 273.15:.1f} degC; "
                     "one phase is assumed: change temperatures or pressure, or split the case"
                 )
+
+    def is_gas(self, temperature: float | None) -> bool:
+        """Whether the substance is a gas there; False where all properties are stated."""
+        if self.fixed or temperature is None:
+            return False
+        return self.substance.phase(temperature, self.pressure) == "gas"
 
     def speed_of_sound(self, temperature: float | None) -> float | None:
         """Speed of sound of the substance, or None where it is not known."""

@@ -18,6 +18,9 @@ _BRACKETED = re.compile(r"[\[(]([^\[\]()]*)[\])]\s*$")
 _JOINTS = re.compile(r"[\s_,.\-]+")
 
 
+_REMARKS = ("remark ", "note ", "comment ")
+
+
 @dataclass(frozen=True)
 class Label:
     """An entry of the dictionary; ``role`` is stated, choice, text, note or derived."""
@@ -111,6 +114,8 @@ def split_unit(label: str) -> tuple[str, str]:
 def candidates(label: str) -> tuple[str, ...]:
     """All keys that a label may stand for, names before symbols; empty for an unknown label."""
     names, exact, loose = _index()
+    if _plain(label).startswith(_REMARKS):
+        return ("note",)
     found = names.get(_plain(label)) or exact.get(_symbol(label)) or loose.get(_symbol(label).casefold())
     return tuple(dict.fromkeys(found or ()))
 
@@ -141,8 +146,19 @@ def nearest(label: str, roles: tuple[str, ...] = ("stated", "choice", "text")) -
         if entry.role in roles
         for name in (entry.label, *entry.synonyms)
     }
-    match = process.extractOne(_plain(label), list(names), scorer=fuzz.WRatio)
-    return names[match[0]] if match else next(iter(names.values()))
+    match = process.extractOne(_plain(label), list(names), scorer=fuzz.ratio)
+    return names[match[0]]
+
+
+def hint(label: str, roles: tuple[str, ...] = ("stated", "choice", "text")) -> str:
+    """``the nearest is "velocity"``, or where the admissible labels are listed when nothing is near."""
+    from rapidfuzz import fuzz
+
+    near = nearest(label, roles)
+    known = [near, *next(e.synonyms for e in dictionary().values() if e.label == near)]
+    if max(fuzz.ratio(_plain(label), _plain(name)) for name in known) >= 60:
+        return f'the nearest is "{near}"'
+    return f'the nearest is "{near}", but none is near: =CF_LIST("labels") lists them'
 
 
 def choice(key: str, text: str) -> str:
@@ -160,8 +176,7 @@ def find_all(text: str) -> tuple[str, ...]:
     keys = candidates(text) or candidates(split_unit(text)[0])
     keys = tuple(k for k in keys if dictionary()[k].role != "note")
     if not keys:
-        known = nearest(text, ("stated", "choice", "text", "derived"))
-        raise UnknownName(f'"{text[:60]}" is not known; the nearest is "{known}"')
+        raise UnknownName(f'"{text[:60]}" is not known; {hint(text, ("stated", "choice", "text", "derived"))}')
     return keys
 
 

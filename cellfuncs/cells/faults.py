@@ -22,7 +22,8 @@ def clip(text: str, longest: int = LONGEST_TEXT) -> str:
 
 def fault(argument: str, text: str) -> str:
     """``! argument: text`` in at most 255 characters."""
-    return clip(f"{MARK}{argument.replace('_', ' ')}: {' '.join(text.split())}")
+    shown = argument if argument.startswith("CF_") else argument.replace("_", " ")
+    return clip(f"{MARK}{shown}: {' '.join(text.split())}")
 
 
 def from_error(error: BaseException, argument: str, names: Sequence[str] = ()) -> str:

@@ -3,27 +3,34 @@
 from cellfuncs.cells import solved
 from cellfuncs.cells.catalogue import cell_function
 from cellfuncs.errors import UnknownName
+from cellfuncs.sources import read_table
 from cellfuncs.terms import ALL_LEFT_OUT, COLUMNS, MEASURES, MOMENTUM_TERMS, TERMS
 from cellfuncs.terms.table import equation_of
 
 _SOURCE = "scaled energy and momentum equations; recovery and friction as cited by the methods used"
+_OTHER_NAMES = {name: row["term"] for row in read_table("term_names.csv") for name in row["names"].split(";")}
 _NAMES = tuple(dict.fromkeys((*TERMS, *MOMENTUM_TERMS, ALL_LEFT_OUT)))
 
 
 def term_name(text: str) -> str:
-    """The name of a term of either equation."""
-    return _named(text, _NAMES, "term")
+    """The name of a term of either equation, also by the other names that the trade has for it."""
+    return _OTHER_NAMES.get(_plain(text)) or _named(text, _NAMES, "term")
+
+
+def _plain(text: str) -> str:
+    return " ".join(text.replace("-", " ").replace("_", " ").split()).casefold()
 
 
 def _named(text: str, admissible: tuple[str, ...], argument: str) -> str:
-    plain = " ".join(text.replace("-", " ").replace("_", " ").split()).casefold()
+    plain = _plain(text)
     for name in admissible:
         if name.replace("-", " ") == plain:
             return name
     from rapidfuzz import process
 
-    near = process.extractOne(plain, admissible)[0]
-    raise UnknownName(f'"{text[:40]}" is not one; the nearest is "{near}"', argument=argument)
+    near, score, _ = process.extractOne(plain, admissible)
+    hint = f'the nearest is "{near}"' if score >= 75 else f"write one of: {', '.join(admissible)}"
+    raise UnknownName(f'"{text[:40]}" is not known; {hint}', argument=argument)
 
 
 def _equation(text: str | None) -> str:

@@ -145,7 +145,7 @@ def flux_entry(x_star: float, section: str) -> float:
 @method(
     "Gnielinski",
     gives="mean Nu",
-    ranges=(Range("Re", TURBULENT_FROM, 5e6), Range("Pr", 0.5, 2000.0)),
+    ranges=(Range("Re", TURBULENT_FROM, 5e6), Range("Pr", 0.5, 2000.0), Range("L/D", low=1.0)),
     scatter=0.1,
     property_temperature="mean bulk",
     source="gnielinski-1976",
@@ -242,6 +242,8 @@ def _turbulent(
         peclet = reynolds * prandtl
         return liquid_metal(peclet, wall), "liquid metal", METHODS["liquid metal"].check(allow, Pe=peclet, Pr=prandtl)
     more = {"Re": reynolds} if check_re else {}
+    if short:
+        more["L/D"] = 1.0 / short
     outside = METHODS["Gnielinski"].check(allow, Pr=prandtl, **more)
     return factor * gnielinski(reynolds, prandtl, friction, short), "Gnielinski", outside
 

@@ -196,13 +196,14 @@ class _Writer:
         self._decision(last + 3, first, last)
         span = f"A8:G{last + 3}"  # not the column for the chart: its #N/A are meant
         sheet.write_formula(self.faults_at, 1, f"=CF_FAULTS({span})", self.style(align="left"))
-        self._chart(first, last, last + 7)
+        self._chart(first, last, last + 8)
 
     def _decision(self, row: int, first: int, last: int) -> None:
         sheet = self.sheet
         sheet.write(row, 0, "Decision", self.style(bold=True, font_size=12))
-        for k, word in enumerate(("keep", "borderline", "leave out")):
-            parts = "&".join(f'IF(E{r + 1}="{word}",A{r + 1}&", ","")' for r in range(first, last + 1))
+        lines = ("keep", "borderline", "leave out", "not stated, so not judged")
+        for k, word in enumerate(lines):
+            parts = "&".join(f'IF({_listed(word, r + 1)},A{r + 1}&", ","")' for r in range(first, last + 1))
             sheet.write(row + 1 + k, 0, word, self.style(bold=word == "keep", indent=1))
             listed = f'=IF({parts}="","none",LEFT({parts},LEN({parts})-2))'
             sheet.write_formula(row + 1 + k, 1, listed, self.style())
@@ -242,3 +243,15 @@ class _Writer:
         sheet.set_margins(0.5, 0.5, 0.6, 0.6)
         sheet.print_area(0, 0, self.last_row, 6)
         sheet.set_footer(f"&L&8{CAUTION}&R&8&P/&N")
+
+
+def _listed(word: str, row: int) -> str:
+    """The condition under which a term of the table belongs to a line of the decision.
+
+    A share of exactly zero is a term that the case as stated does not have: it was not weighed.
+    """
+    if word == "leave out":
+        return f'AND(E{row}="leave out",C{row}<>0)'
+    if word.startswith("not stated"):
+        return f'AND(E{row}="leave out",C{row}=0)'
+    return f'E{row}="{word}"'

@@ -135,6 +135,8 @@ def _friction_pair(solution: Solution, a: DuctAnswers) -> tuple[Size, Size]:
     drop = abs(a.pressure_drop)
     heating = drop * a.velocity / a.length
     beta_t = p.expansion * a.property_temperature if a.property_temperature is not None else 0.0
+    if solution.case.flow == "falling film":
+        beta_t = 0.0  # weight drives the film, no pressure falls along it
     work = beta_t * heating
     net = (1.0 - beta_t) * heating
     rise, remark = rise_or_bound(a)
@@ -152,12 +154,15 @@ def _friction_pair(solution: Solution, a: DuctAnswers) -> tuple[Size, Size]:
         says += f" ({remark})"
     elif beta_t > 0:
         says += "; judged as a pair with pressure work" if beta_t < 0.999 or beta_t > 1.001 else ""
-    net_size = abs(net)
-    viscous = Size(
-        "viscous heating", ec_re, heating, says, asked=share, exact=exact, kelvins=kelvins, nets_to=net_size, pair=True
-    )
+    says += _compressible(solution, a)
+    apart = _uncancelled(solution, a, net, rise)
+    shared = {"asked": share, "exact": exact, "kelvins": kelvins, "pair": True, "uncancelled": apart}
+    viscous = Size("viscous heating", ec_re, heating, says, nets_to=abs(net), **shared)
     if beta_t == 0:
         why = "expansion coefficient 0: none"
+        if solution.case.flow == "falling film":
+            why = "no pressure falls along a film"
+            return viscous, absent("pressure work", why)
         if not (solution.case.has("substance") or solution.case.has("expansion")):
             why = "expansion coefficient not stated, taken as 0: state it (gases: 1/T)"
         elif a.property_temperature is None:
@@ -165,10 +170,30 @@ def _friction_pair(solution: Solution, a: DuctAnswers) -> tuple[Size, Size]:
         return viscous, absent("pressure work", why)
     takes = "takes" if beta_t > 0 else "adds"
     cools = f"βT {num(beta_t)}: expansion {takes} {percent(abs(beta_t))} of the friction heat; judged as a pair with it"
-    pressure = Size(
-        "pressure work", eu_ec, abs(work), cools, asked=share, exact=exact, kelvins=kelvins, nets_to=0.0, pair=True
-    )
-    return viscous, pressure
+    return viscous, Size("pressure work", eu_ec, abs(work), cools, nets_to=0.0, **shared)
+
+
+def _compressible(solution: Solution, a: DuctAnswers) -> str:
+    """A remark where kinetic energy and falling density count (above Δp/p 10 % or Ma 0.3, common practice)."""
+    mach = solution.mach()
+    fall = abs(a.pressure_drop) / solution.case.pressure
+    gas = mach is not None and a.properties.expansion * (a.property_temperature or 0.0) > 0.5
+    if gas and (mach > 0.3 or fall > 0.1):
+        return f"; Ma {num(mach)}, Δp/p {percent(fall)}: density falls along the duct, use the stagnation balance"
+    return ""
+
+
+def _uncancelled(solution: Solution, a: DuctAnswers, net: float, rise: float) -> float | None:
+    """The larger of bulk warming and recovery over the base, where a laminar profile is still developing.
+
+    The closed forms subtract a recovery that a developed profile has; on the way there the two do not cancel.
+    """
+    peclet = a.reynolds * a.properties.prandtl
+    developing = a.reynolds <= 2300.0 and a.length / a.shape.diameter / peclet < 0.05
+    if not developing or a.flux is not None or solution.case.answer != "outlet temperature":
+        return None
+    bulk = abs(net) * a.length / a.capacity_flux
+    return max(bulk, rise * -math.expm1(-a.transfer_units)) / solution.driving
 
 
 def _friction_share(solution: Solution, a: DuctAnswers, net: float, rise: float) -> tuple[float, bool]:

@@ -57,14 +57,23 @@ def _viscous(solution: Solution, a: GapAnswers) -> Size:
     one_scale = a.velocity**2 / (p.specific_heat * a.difference) / (p.density * a.velocity * a.length / p.viscosity)
     kelvins = a.peak_rise if solution.case.answer == "peak temperature" else None
     if not a.walls_apart:
-        says = f"heats the film by μU²/(8k) = {num(a.peak_rise)} K above its walls"
+        says = f"heats the film by μU²/(8k) = {num(a.peak_rise)} K above its walls{_feedback(solution)}"
         if kelvins is not None and kelvins >= solution.case.smallest:
-            return Size("viscous heating", one_scale, size, says, kelvins=kelvins, settled="keep")
+            return Size("viscous heating", one_scale, size, says, exact=True, kelvins=kelvins, settled="keep")
     elif a.peak_rise > 0:
-        says = f"Br {num(a.brinkman)}: a peak {num(a.peak_rise)} K above the hotter wall"
+        says = f"Br {num(a.brinkman)}: a peak {num(a.peak_rise)} K above the hotter wall{_feedback(solution)}"
     else:
         says = f"Br {num(a.brinkman)}: no peak inside below Br 2, the flux at a wall changes by Br/2"
-    return Size("viscous heating", one_scale, size, says, kelvins=kelvins)
+    return Size("viscous heating", one_scale, size, says, exact=True, kelvins=kelvins)
+
+
+def _feedback(solution: Solution) -> str:
+    """A remark where the warming thins the liquid so that a constant viscosity overrates it (Nahme number)."""
+    nahme = solution.nahme()
+    if nahme is None or nahme < 0.3:
+        return ""
+    state = "strained" if nahme < 1.0 else "no longer true: the rise is less"
+    return f"; Na {num(nahme)}, a constant viscosity is {state}"
 
 
 def _storage(solution: Solution, a: GapAnswers) -> Size:

@@ -14,13 +14,15 @@ def rise_or_bound(answers: DuctAnswers | LayerAnswers) -> tuple[float, str]:
         p = answers.properties
         factor = _duct_bound(answers) if isinstance(answers, DuctAnswers) else _plate_bound(answers)
         rise = factor * answers.velocity**2 / (2.0 * p.specific_heat)
-        return rise, "recovery factor outside its table, taken from above"
+        return rise, "an upper bound: outside the table of recovery factors"
 
 
 def _duct_bound(answers: DuctAnswers) -> float:
     """Three times the nearest value of the table, and at least the laminar one while Re is low."""
     re = min(max(answers.reynolds, 1e4), 1e6)
     pr = answers.properties.prandtl
+    if answers.case.flow != "duct":
+        return 2.0 * max(1.0, pr)  # laminar flow through a section: ΔT_rec = μU²/k, own bound
     bound = 3.0 * recovery.turbulent_tube(re, min(max(pr, 0.005), 500.0)) * max(1.0, pr / 500.0)
     return max(bound, 2.0 * pr) if answers.reynolds < 1e4 else bound
 

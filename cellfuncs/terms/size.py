@@ -12,7 +12,8 @@ class Size:
     ``kelvins`` is what leaving the term out may move the answer by, where the answer is a temperature.
     ``leading`` terms are never left out. ``thresholds`` replace the usual ones (leave out below, keep
     above). ``settled`` is a verdict that needs no share. ``nets_to`` is the size with which the term
-    enters the largest, where it cancels against its partner.
+    enters the largest, where it cancels against its partner. ``uncancelled`` is the share without a
+    cancellation that the share rests on, where that may not have developed.
     """
 
     term: str
@@ -28,6 +29,7 @@ class Size:
     nets_to: float | None = None
     pair: bool = False
     no_share: bool = False
+    uncancelled: float | None = None
 
 
 def num(value: float) -> str:

@@ -46,13 +46,19 @@ def _one(s: Size, largest: float, tolerance: float, smallest: float) -> Judged:
     against = f"tolerance {percent(tolerance)}"
     if s.thresholds:
         against = f"limits {num(low)} and {num(high)}"
+    if share < low and s.uncancelled is not None and s.uncancelled > tolerance:
+        why = (
+            f"share {percent(share)} rests on a cancellation that a developing profile does not have; "
+            f"apart {percent(s.uncancelled)}"
+        )
+        return Judged(s, share, BORDERLINE, why)
     if share < low:
         return Judged(s, share, LEAVE_OUT, f"share {percent(share)}, below a third of {against}" if not s.thresholds
                       else f"below {num(low)}")  # fmt: skip
     if share > high:
         return Judged(s, share, KEEP, f"share {percent(share)}, above three times {against}" if not s.thresholds
                       else f"above {num(high)}")  # fmt: skip
-    return Judged(s, share, BORDERLINE, f"share {percent(share)}, within three times of {against}")
+    return Judged(s, share, BORDERLINE, f"share {percent(share)}, between {percent(low)} and {percent(high)}")
 
 
 def left_out(judged: Sequence[Judged]) -> list[Judged]:
