@@ -73,7 +73,22 @@ def _parser() -> argparse.ArgumentParser:
     )
     recalc.add_argument("book", metavar="BOOK", help="the workbook")
     recalc.add_argument(
-        "-o", "--out", metavar="OUT", help="the copy to write (default: beside BOOK, NAME.recalculated.xlsx)"
+        "-o",
+        "--out",
+        metavar="OUT",
+        help="the copy to write (default: beside BOOK, NAME.recalculated.xlsx, with --values NAME.values.xlsx)",
+    )
+    form = recalc.add_mutually_exclusive_group()
+    form.add_argument(
+        "--values",
+        action="store_true",
+        help="for people without Cellfuncs: values in the place of our formulas, which are kept in notes",
+    )
+    form.add_argument(
+        "--for",
+        dest="written_for",
+        choices=("excel", "calc"),
+        help="write the names of our functions as this program reads them at once",
     )
     recalc.set_defaults(run=_recalc)
 
@@ -102,7 +117,14 @@ def _recalc(options: argparse.Namespace) -> int:
 
     show = _Progress()
     try:
-        result = embedded.recalc(options.book, out=options.out, progress=show)
+        result = embedded.recalc(
+            options.book,
+            out=options.out,
+            values=options.values,
+            written_for=options.written_for,
+            apart=not os.environ.get("CELLFUNCS_TRACEBACK"),  # whoever looks for an error wants it here
+            progress=show,
+        )
     finally:
         show.clear()
     print(embedded.render_areas(result.areas))

@@ -32,8 +32,9 @@ def engine(monkeypatch):
     fake.asked = []
     fake.error = None
 
-    def recalc(path, out=None, progress=None):
+    def recalc(path, out=None, progress=None, **how):
         fake.asked.append((path, out))
+        fake.how = how
         progress("reading")
         if fake.error:
             raise fake.error

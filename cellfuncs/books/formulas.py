@@ -81,8 +81,8 @@ class Normal(NamedTuple):
     ours: frozenset[str]
 
 
-def normalised(text: str, is_ours: IsOurs) -> Normal:
-    """Our functions under their plain names, whatever prefix stands in the file; the rest unchanged."""
+def normalised(text: str, is_ours: IsOurs, prefix: str = "") -> Normal:
+    """Our functions under their plain names behind `prefix`, whatever prefix stands in the file; the rest unchanged."""
     parts = pieces(text) if "(" in text else None
     if parts is None:
         return Normal(text, frozenset())
@@ -94,7 +94,7 @@ def normalised(text: str, is_ours: IsOurs) -> Normal:
             name = canonical(new[:-1], is_ours)
             if name:
                 names.add(name)
-                new = name + "("
+                new = prefix + name + "("
         written.append(new)
     return Normal("".join(written) if names else text, frozenset(names))
 

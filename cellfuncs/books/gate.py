@@ -217,7 +217,7 @@ class _Gate:
         def start(name: str, attributes: dict[str, str]) -> None:
             if name == f"{_PACKAGE_RELATIONS} Relationship" and attributes.get("TargetMode") != "External":
                 kind = attributes.get("Type", "").rpartition("/")[2]
-                found[attributes.get("Id", "")] = (kind, _resolved(folder, attributes.get("Target", "")))
+                found[attributes.get("Id", "")] = (kind, resolved(folder, attributes.get("Target", "")))
 
         self._scan(relations_part, start)
         return found
@@ -350,7 +350,7 @@ def _refuser(name: str) -> Callable[..., None]:
     return refuse
 
 
-def _resolved(folder: str, target: str) -> str:
+def resolved(folder: str, target: str) -> str:
     """A relation's target as a part name; `..` goes up inside the package only."""
     parts = [] if target.startswith("/") else [p for p in folder.split("/") if p]
     for piece in target.split("/"):

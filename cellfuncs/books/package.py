@@ -12,7 +12,7 @@ import struct
 import tempfile
 import zipfile
 import zlib
-from collections.abc import Iterator, Mapping
+from collections.abc import Collection, Iterator, Mapping
 from dataclasses import dataclass
 from itertools import pairwise
 from pathlib import Path
@@ -25,6 +25,7 @@ MAX_INFLATED = 200 * 1024 * 1024
 MAX_RATIO = 100
 RATIO_FROM = 1024 * 1024
 CHUNK = 64 * 1024
+_NO_DATE = (1980, 1, 1, 0, 0, 0)
 
 _DAMAGED = "The file is damaged: {}. Save it again in your spreadsheet program."
 
@@ -169,11 +170,16 @@ def _check_overlap(members: Mapping[str, Member]) -> None:
             raise BookRefused("Parts of the file lie on top of each other, as only a trap does.")
 
 
-def copy_with(package: Package, changed: Mapping[str, bytes]) -> bytes:
-    """A container with the parts in `changed` replaced; all others keep their packed bytes, name, order and date."""
+def copy_with(package: Package, changed: Mapping[str, bytes], dropped: Collection[str] = ()) -> bytes:
+    """A container with the parts in `changed` replaced, or added at the end, and those in `dropped` left out.
+
+    All others keep their packed bytes, name, order and date.
+    """
     out = io.BytesIO()
     with zipfile.ZipFile(out, "w", zipfile.ZIP_DEFLATED) as archive:
         for member in package.members.values():
+            if member.name in dropped:
+                continue
             info = _same_entry(member.info)
             if member.name in changed:
                 archive.writestr(info, changed[member.name], compress_type=zipfile.ZIP_DEFLATED)
@@ -193,6 +199,11 @@ def copy_with(package: Package, changed: Mapping[str, bytes]) -> bytes:
             archive.NameToInfo[info.filename] = info
             archive.start_dir = out.tell()
             archive._didModify = True
+        for name in changed:
+            if name not in package.members:
+                info = zipfile.ZipInfo(name, _NO_DATE)
+                info.create_system = 0  # the same bytes on every system
+                archive.writestr(info, changed[name], compress_type=zipfile.ZIP_DEFLATED)
     return out.getvalue()
 
 

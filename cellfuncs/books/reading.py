@@ -34,6 +34,7 @@ class Formula:
     kind: str
     area: Area
     stored: Value
+    shared: str | None = None  # key of the group of formulas that is written once
 
 
 class Piece(NamedTuple):
@@ -350,7 +351,8 @@ class _Reader:
                 f"The formulas of the sheet {shown(self.sheet.name)} are far longer than any program writes."
             )
         stored = self._stored(cell.get("t"))
-        self.sheet.formulas.append(Formula(row, column, text, kind, area, stored))
+        shared = attributes.get("si", "") if mark == "shared" else None
+        self.sheet.formulas.append(Formula(row, column, text, kind, area, stored, shared))
 
     def _stored(self, mark: str | None) -> Value:
         if self.value_text is None:

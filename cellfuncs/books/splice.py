@@ -5,10 +5,13 @@ from __future__ import annotations
 import re
 from bisect import bisect_left
 from collections.abc import Mapping
+from typing import Any
 
 from cellfuncs.books.grid import LAST_COLUMN, LAST_ROW, Area, area_text, column_letters, rectangle
 from cellfuncs.books.reading import Cell, Sheet, tag_end
-from cellfuncs.books.xmltext import Value, decoded, encoded
+from cellfuncs.books.xmltext import Value, decoded, encoded, escaped
+
+_KEPT = object()  # a formula that stays as it is
 
 
 def apply_edits(data: bytes, edits: list[tuple[int, int, bytes]]) -> bytes:
@@ -26,16 +29,18 @@ def set_values(
     sheet: Sheet,
     values: Mapping[tuple[int, int], Value],
     extents: Mapping[tuple[int, int], Area] | None = None,
+    formulas: Mapping[tuple[int, int], str | None] | None = None,
 ) -> bytes:
     """The sheet's text with `values` in their cells (None empties one) and new `extents` of array formulas.
 
-    Formulas, formats and everything else stay. Cells and rows that are not there yet are put in in order.
-    Where a cell already holds the value, its bytes are not touched.
+    Formulas stay, but for those in `formulas`, which get another text or, with None, go. Formats and everything
+    else stay. Cells and rows that are not there yet are put in in order. Where a cell already holds the value,
+    its bytes are not touched.
     """
-    extents = extents or {}
+    extents, formulas = extents or {}, formulas or {}
     edits: list[tuple[int, int, bytes]] = []
     missing: dict[int, dict[int, Value]] = {}
-    for row, column in sorted(set(values) | set(extents)):
+    for row, column in sorted(set(values) | set(extents) | set(formulas)):
         place = (row, column)
         index = sheet.at(row, column)
         if index is None:
@@ -43,7 +48,8 @@ def set_values(
                 missing.setdefault(row, {})[column] = values[place]
             continue
         old = sheet.cell(index)
-        new = _rewritten(sheet, old, values.get(place), place in values, extents.get(place))
+        formula = formulas.get(place) if place in formulas else _KEPT
+        new = _rewritten(sheet, old, values.get(place), place in values, extents.get(place), formula)
         if new is not None:
             edits.append((old.start, old.end, new))
     edits += _insertions(sheet, missing)
@@ -75,7 +81,9 @@ def _in_quotes(tag: bytes, at: int) -> bool:
     return bool(quote)
 
 
-def _rewritten(sheet: Sheet, cell: Cell, value: Value, set_value: bool, extent: Area | None) -> bytes | None:
+def _rewritten(
+    sheet: Sheet, cell: Cell, value: Value, set_value: bool, extent: Area | None, formula: Any = _KEPT
+) -> bytes | None:
     """The cell's new bytes, or None where nothing changes."""
     mark = cell.attributes.get("t")
     texts = [child.text for child in cell.children if child.name in ("v", "is")]
@@ -86,7 +94,12 @@ def _rewritten(sheet: Sheet, cell: Cell, value: Value, set_value: bool, extent: 
         raw = sheet.data[child.start : child.end]
         if child.name in ("v", "is") and renew:
             continue
-        if child.name == "f" and extent is not None:
+        if child.name == "f" and formula is not _KEPT:
+            changed = True
+            if formula is None:
+                continue
+            raw = _formula(sheet, raw, formula)
+        elif child.name == "f" and extent is not None:
             end = tag_end(raw, 0)
             if rectangle(_ref(raw[:end])) != extent:
                 raw = with_attribute(raw[:end], "ref", area_text(extent)) + raw[end:]
@@ -95,6 +108,8 @@ def _rewritten(sheet: Sheet, cell: Cell, value: Value, set_value: bool, extent: 
     if not changed:
         return None
     head = sheet.data[cell.start : cell.tag_end]
+    if formula is None:  # a plain value is no dynamic array and no rich value
+        head = with_attribute(with_attribute(head, "cm", None), "vm", None)
     if renew:
         new_mark, text = encoded(value)
         head = with_attribute(head, "t", new_mark)
@@ -106,6 +121,17 @@ def _rewritten(sheet: Sheet, cell: Cell, value: Value, set_value: bool, extent: 
         head = head[:-2].rstrip() + b">"
     tail = b"" if cell.closed and not inner else f"</{sheet.prefix}c>".encode()
     return head + inner + tail
+
+
+def _formula(sheet: Sheet, raw: bytes, text: str) -> bytes:
+    """A formula's element with another text; a shared one becomes one of its own."""
+    tag = raw[: tag_end(raw, 0)]
+    if tag.endswith(b"/>"):
+        tag = tag[:-2].rstrip() + b">"
+    if re.search(rb"\st\s*=\s*[\"']shared[\"']", tag):
+        for name in ("t", "ref", "si"):
+            tag = with_attribute(tag, name, None)
+    return tag + f"{escaped(text)}</{sheet.prefix}f>".encode()
 
 
 def _ref(tag: bytes) -> str:

@@ -22,6 +22,12 @@ if TYPE_CHECKING:
 
 MAX_SHOWN = 40  # rows of an area that are printed
 SECONDS = 600.0
+AUTHOR = "Cellfuncs"  # of notes
+LIST_NAME = "Formulas"  # the sheet for what finds no room in notes
+
+# What stands before our names in a formula's text, by the program that is to read it: Calc knows a function of
+# an extension by the name of its service and resolves that at once, Excel knows the bare name.
+PREFIXES = {"excel": "", "calc": "CELLFUNCS.FUNCTIONS."}
 
 
 @dataclass(frozen=True)
@@ -31,6 +37,15 @@ class Recalculation:
     areas: tuple[FoundArea, ...]
     warnings: tuple[str, ...]
     out: Path
+
+
+@dataclass(frozen=True)
+class Calculated:
+    """What was calculated, and the bytes of the file that holds it."""
+
+    areas: tuple[FoundArea, ...]
+    warnings: tuple[str, ...]
+    data: bytes
 
 
 def detect(functions: Mapping[str, Any]) -> Callable[[str], str | None]:
@@ -43,6 +58,9 @@ def recalc(
     path: str | Path,
     out: str | Path | None = None,
     *,
+    values: bool = False,
+    written_for: str | None = None,
+    apart: bool = False,
     progress: Callable[[str], None] | None = None,
     seconds: float = SECONDS,
     functions: Mapping[str, Any] | None = None,
@@ -52,15 +70,44 @@ def recalc(
     Only the cells that depend on our functions change, and cells that had no value; everything else in the
     file stays byte for byte, and the file at `path` itself is never written. Raises BookRefused for a file
     that cannot be used. `functions` is the catalogue unless another one is given.
+
+    With `values` the formulas that call our functions give way to their values and are kept in notes (default
+    `book.values.xlsx`). `written_for`, "excel" or "calc", writes the names of our functions as that program
+    reads them. `apart` calculates in a process of its own, whose memory and time are bounded; `functions` must
+    then be left out.
     """
+    path = Path(path)
+    target = _target(path, out, "values" if values else "recalculated")
+    if apart:
+        from cellfuncs.hosts.apart import calculated_apart
+
+        done = calculated_apart(path, values=values, written_for=written_for, progress=progress, seconds=seconds)
+    else:
+        done = calculated(
+            path, values=values, written_for=written_for, progress=progress, seconds=seconds, functions=functions
+        )
+    from cellfuncs.books.package import write_whole
+
+    write_whole(target, done.data)
+    return Recalculation(done.areas, done.warnings, target)
+
+
+def calculated(
+    path: Path,
+    *,
+    values: bool = False,
+    written_for: str | None = None,
+    progress: Callable[[str], None] | None = None,
+    seconds: float = SECONDS,
+    functions: Mapping[str, Any] | None = None,
+) -> Calculated:
+    """What :func:`recalc` writes, without writing it."""
     from cellfuncs.books import inspect
     from cellfuncs.books.areas import areas_of
     from cellfuncs.books.engine import evaluate
-    from cellfuncs.books.package import copy_with, write_whole
+    from cellfuncs.books.parts import Draft
     from cellfuncs.books.splice import set_values
 
-    path = Path(path)
-    target = _target(path, out)
     if progress is not None:
         progress("examining the file")
     book = inspect(path)
@@ -69,23 +116,38 @@ def recalc(
 
         functions = catalogue.functions()
     calls = {name: function.call for name, function in functions.items()}
-    result = evaluate(book, calls, detect(functions), seconds=seconds, progress=progress)
+    is_ours = detect(functions)
+    result = evaluate(book, calls, is_ours, seconds=seconds, progress=progress)
     if progress is not None:
         progress("writing")
-    changed: dict[str, bytes] = {}
-    for name, sheet in result.sheets.items():
-        data = set_values(sheet, result.values.get(name, {}), result.extents.get(name, {}))
-        if data != sheet.data:
-            changed[book.sheet(name).part] = data
     areas = tuple(areas_of(result))
-    warnings = tuple(result.warnings) + tuple(bare_numbers(result, functions))
-    write_whole(target, copy_with(book.package, changed) if changed else book.package.data)
-    return Recalculation(areas, warnings, target)
+    warnings = [*result.warnings, *bare_numbers(result, functions)]
+    draft = Draft(book)
+    if values:
+        from cellfuncs.books.share import share
+
+        warnings += share(result, draft, is_ours, AUTHOR, LIST_NAME)
+    else:
+        for name, sheet in result.sheets.items():
+            data = set_values(sheet, result.values.get(name, {}), result.extents.get(name, {}))
+            draft.write(book.sheet(name).part, data)
+    if written_for is not None:
+        _write_names(draft, is_ours, PREFIXES[written_for])
+    return Calculated(areas, tuple(warnings), draft.container())
 
 
-def _target(path: Path, out: str | Path | None) -> Path:
+def _write_names(draft: Any, is_ours: Callable[[str], str | None], prefix: str) -> None:
+    """The names of our functions behind `prefix`, in every formula of the workbook."""
+    from cellfuncs.books.formulas import normalised
+    from cellfuncs.books.rewrite import parts_with_formulas, rewritten
+
+    for part, _ in parts_with_formulas(draft.book):
+        draft.write(part, rewritten(draft.read(part), lambda text: normalised(text, is_ours, prefix).text))
+
+
+def _target(path: Path, out: str | Path | None, word: str) -> Path:
     suffix = path.suffix if path.suffix.lower() in (".xlsx", ".xlsm") else ".xlsx"
-    target = Path(out) if out is not None else path.with_name(f"{path.stem}.recalculated{suffix}")
+    target = Path(out) if out is not None else path.with_name(f"{path.stem}.{word}{suffix}")
     same = target.resolve() == path.resolve()
     if not same and target.exists() and path.exists():
         same = target.samefile(path)
