@@ -57,7 +57,8 @@ def caller(
     """What hosts call: reads the arguments, runs the function, lets only what may stand in cells go out."""
     names = tuple(a.name for a in arguments)
     parameters = inspect.signature(function).parameters
-    defaults = tuple(parameters[n].default if n in parameters else None for n in names)
+    optional = {n: p.default for n, p in parameters.items() if p.default is not p.empty}
+    defaults = tuple(optional.get(n) for n in names)
     count = len(arguments)
     required = sum(not a.optional for a in arguments)
     quantity = returns == "quantity"
