@@ -20,7 +20,7 @@ def cylinder(reynolds: float, prandtl: float) -> float:
 @method(
     "Whitaker",
     gives="mean Nu",
-    ranges=(Range("Re", 3.5, 7.6e4), Range("Pr", 0.71, 380.0), Range("viscosity ratio", 1.0, 3.2)),
+    ranges=(Range("Re", 3.5, 7.6e4), Range("Pr", 0.7, 380.0), Range("viscosity ratio", 1.0, 3.2)),
     scatter=0.3,
     property_temperature="stream",
     source="whitaker-1972",

@@ -55,7 +55,9 @@ class _Writer:
 
     def __init__(self, book: Any, content: CaseSheet):
         self.book, self.content = book, content
+        self.contents = book.add_worksheet("Contents")
         self.sheet = book.add_worksheet("Case")
+        self.places: list[tuple[str, str, str]] = []
         self.formats: dict[tuple[Any, ...], Any] = {}
 
     def style(self, **options):
@@ -81,11 +83,51 @@ class _Writer:
         self._terms(row)
         self._results(7)
         self._print()
+        self._contents()
+        self.sheet.activate()
         if content.protected:
             self.sheet.protect("", {"format_columns": True, "format_rows": True, "objects": True})
         about = {"title": content.title, "subject": "which terms matter", "comments": CAUTION}
         # a fixed date, so that the same content gives the same file
         self.book.set_properties(about | {"created": dt.datetime(2026, 1, 1)})
+
+    def _offered(self) -> list[str]:
+        """The labels that a block of this flow kind may have, for the lists in its spare rows."""
+        flow = next(value for label, value, *_ in self.content.rows if label == "flow kind")
+        entries = labels.dictionary().values()
+        stated = [e for e in entries if e.role in ("stated", "choice", "text") and (not e.flows or flow in e.flows)]
+        return [e.label for e in stated]
+
+    def _contents(self) -> None:
+        """The sheet that says what stands where."""
+        sheet = self.contents
+        sheet.hide_gridlines(2)
+        for column, width in enumerate((26, 8, 60, 4, 4, 30)):
+            sheet.set_column(column, column, width)
+        sheet.set_row(0, 24)
+        sheet.write(0, 0, self.content.title, self.style(bold=True, font_size=16))
+        sheet.write(1, 0, self.content.story, self.style(font_color=GREY, italic=True))
+        for column, word in ((0, "what"), (1, "where"), (2, "what it says"), (5, "labels a block may have")):
+            sheet.write(2, column, word, self.style(bold=True, bottom=1, bottom_color=INK))
+        order = {"Case block": 0, "What follows from it": 1, "Sweep": 2, "Term table": 3}
+        places = sorted(self.places, key=lambda place: order.get(place[0], 9))
+        for k, (what, where, says) in enumerate(places, start=3):
+            sheet.write_url(k, 0, f"internal:'Case'!{where}", self.style(font_color=RULE), what)
+            sheet.write(k, 1, where, self.style())
+            sheet.write(k, 2, says, self.style())
+        for k, label in enumerate(self._offered(), start=3):
+            sheet.write(k, 5, label, self.style(font_color=GREY))
+        notes = (
+            "Tinted cells with a rule at their left are inputs; everything else follows from them.",
+            "A text that begins with an exclamation mark is a fault and says what would do.",
+            "Shares are judged against the tolerance: below a third leave out, above three times keep.",
+            *(f"{sentence.rstrip('.')}." for sentence in CAUTION.split(". ")),
+        )
+        for k, note in enumerate(notes, start=5 + len(places)):
+            sheet.write(k, 0, note, self.style(font_color=GREY, font_size=9))
+        sheet.set_landscape()
+        sheet.set_paper(9)
+        sheet.fit_to_pages(1, 1)
 
     def _head(self) -> int:
         sheet, content = self.sheet, self.content
@@ -115,9 +157,12 @@ class _Writer:
                 sheet.data_validation(at, 1, at, 1, {"validate": "list", "source": list(labels.choices(key))})
         last = first + len(content.rows) + content.spare - 1
         for at in range(first + len(content.rows), last + 1):
-            sheet.write_blank(at, 0, None, self.style(bottom=4, bottom_color=LINE))
+            sheet.write_blank(at, 0, None, self.style(bottom=4, bottom_color=LINE, locked=False))
+            offered = {"validate": "list", "source": f"=Contents!$F$4:$F${3 + len(self._offered())}"}
+            sheet.data_validation(at, 0, at, 0, offered | {"error_type": "information", "ignore_blank": True})
             for column in range(1, 4):
                 sheet.write_blank(at, column, None, self.entry(ruled=column == 1))
+        self.places.append(("Case block", f"A{row + 1}", f"the workbook name {content.block}, with spare rows"))
         self.book.define_name(content.block, f"=Case!$A${first + 1}:$D${last + 1}")
         return last + 2
 
@@ -131,6 +176,7 @@ class _Writer:
         """Answers and characteristic numbers, right of the block: one formula a cell."""
         sheet, content = self.sheet, self.content
         top = row - 1
+        self.places.append(("What follows from it", f"F{top + 1}", "properties, characteristic numbers, answers"))
         sheet.write(top, 5, "What follows from it", self.style(bold=True, bottom=1, bottom_color=INK, indent=2))
         for k, (what, unit, shown) in enumerate(content.results):
             name = f"{what} [{unit}]" if unit else what
@@ -141,6 +187,7 @@ class _Writer:
         sheet.set_column(6, 6, 16)
         label, unit, values, term = content.sweep
         top = row + len(content.results) + 1
+        self.places.append(("Sweep", f"F{top + 1}", f"one row varied, and the share of {term}"))
         sheet.write(
             top,
             5,
@@ -157,6 +204,7 @@ class _Writer:
         sheet, content = self.sheet, self.content
         sheet.write(row, 0, content.question, self.style(bold=True, font_size=12))
         sheet.set_h_pagebreaks([row])
+        self.places.append(("Term table", f"A{row + 1}", "how large each term is, its verdict and why"))
         head = row + 1
         self._heading(head, COLUMNS)
         sheet.set_column(7, 7, 13)
@@ -200,6 +248,7 @@ class _Writer:
 
     def _decision(self, row: int, first: int, last: int) -> None:
         sheet = self.sheet
+        self.places.append(("Decision", f"A{row + 1}", "what to keep and what may be left out"))
         sheet.write(row, 0, "Decision", self.style(bold=True, font_size=12))
         lines = ("keep", "borderline", "leave out", "not stated, so not judged")
         for k, word in enumerate(lines):
@@ -232,6 +281,7 @@ class _Writer:
         chart.set_y_axis({"reverse": True, "num_font": font, "line": {"color": INK}})
         chart.set_legend({"none": True})
         chart.set_size({"width": 920, "height": 300})
+        self.places.append(("Chart", f"A{row + 1}", "the share of each term on a logarithmic axis"))
         self.sheet.insert_chart(row, 0, chart, {"x_offset": 4, "y_offset": 6})
         self.last_row = row + 16
 

@@ -76,7 +76,7 @@ def test_a_sheet_an_engineer_would_be_glad_of(path):
     assert {v for (_, place), v in stored.items() if place.startswith("A")} >= set(TERMS)
     with zipfile.ZipFile(path) as book:
         assert any(name.startswith("xl/charts/chart") for name in book.namelist())
-        sheet = book.read("xl/worksheets/sheet1.xml").decode()
+        sheet = book.read("xl/worksheets/sheet2.xml").decode()
         assert 't="array"' not in sheet
         assert "<dataValidations" in sheet
         assert "Print_Area" in book.read("xl/workbook.xml").decode()
