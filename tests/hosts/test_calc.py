@@ -26,15 +26,20 @@ from calc import office as offices  # noqa: E402
 from calc.session import with_mark  # noqa: E402
 
 SAMPLES = sorted((ROOT / "workbooks").glob("*.xlsx"))
+# The block of the sample workbook that the examples of the catalogue speak of.
 COOLANT = [
-    ("flow kind", "duct", ""),
-    ("substance", "water", ""),
-    ("velocity", 3, "m/s"),
-    ("diameter", 8, "mm"),
-    ("length", 1.2, "m"),
-    ("inlet temperature", 18, "degC"),
-    ("wall temperature", 45, "degC"),
-    ("pressure", 3.2, "bar"),
+    ("flow kind", "duct", "", ""),
+    ("substance", "ethylene glycol 30 % by mass", "", ""),
+    ("velocity", 3, "m/s", 0.1),
+    ("diameter", 8, "mm", ""),
+    ("length", 1.2, "m", ""),
+    ("inlet temperature", 18, "degC", 0.5),
+    ("wall temperature", 45, "degC", 1),
+    ("pressure", 3.2, "bar", ""),
+    ("time scale", 90, "s", ""),
+    ("answer", "outlet temperature", "", ""),
+    ("tolerance", 5, "%", ""),
+    ("smallest that matters", 0.1, "K", ""),
 ]
 TOLERANCE = 1e-12
 
@@ -109,7 +114,7 @@ def in_both(calc, folder, formulas, cells=()):
     block = book.add_worksheet("Block")
     for k, row in enumerate(COOLANT):
         block.write_row(k, 0, row)
-    book.define_name("coolant", f"=Block!$A$1:$C${len(COOLANT) + 3}")
+    book.define_name("coolant", f"=Block!$A$1:$D${len(COOLANT) + 3}")
     for (row, column), value in dict(cells).items():
         sheet.write(row, column, value)
     for k, formula in enumerate(formulas):
@@ -126,7 +131,7 @@ def in_both(calc, folder, formulas, cells=()):
 def block_columns():
     """Cells for the example of CF_BLOCK: labels, units and values in A, B and D from row 3 on."""
     cells = {}
-    for k, (label, value, unit) in enumerate(COOLANT):
+    for k, (label, value, unit, _) in enumerate(COOLANT):
         cells[k + 2, 0], cells[k + 2, 1], cells[k + 2, 3] = label, unit, value
     return {place: value for place, value in cells.items() if value != ""}
 
@@ -200,10 +205,10 @@ def test_a_range_answers_in_its_shape(calc, cf, kind):
         got = calc.array("F1:G50", '=CF_PROPERTY("water";{"density";"viscosity"};B1:B50)')
         assert got == cf("PROPERTY", "water", [["density", "viscosity"]], [[row[1]] for row in rows])
     else:
-        calc.values("A1:C8", COOLANT)
-        got = calc.array("E1:J9", "=CF_TERMS(A1:C8)")
+        calc.values("A1:D12", COOLANT)
+        got = calc.array("F1:K10", "=CF_TERMS(A1:D12)")
         wanted = cf("TERMS", [list(row) for row in COOLANT])
-        assert [row[: len(wanted[0])] for row in got[: len(wanted)]] == wanted[:9]
+        assert [row[: len(wanted[0])] for row in got[: len(wanted)]] == wanted[:10]
 
 
 def test_a_range_answers_each_cell_with_its_own_fault(calc):
@@ -217,12 +222,12 @@ def test_a_range_answers_each_cell_with_its_own_fault(calc):
 
 def test_texts_compare_as_texts_do(calc):
     calc.new()
-    calc.values("A1:C8", COOLANT)
-    formula = '=IF(CF_TERM(A1:C8;"viscous heating";"verdict")="leave out";"left";"kept")'
-    assert calc.formula("E1", '=CF_TERM(A1:C8;"viscous heating";"verdict")') == "leave out"
-    assert calc.formula("E2", '=E1="leave out"') == 1.0
-    assert calc.formula("E3", formula) == "left"
-    assert calc.formula("E4", '=IF(CF_CASE(A1:C8;"flow kind")="duct";"yes";"no")') == "yes"
+    calc.values("A1:D12", COOLANT)
+    formula = '=IF(CF_TERM(A1:D12;"viscous heating";"verdict")="leave out";"left";"kept")'
+    assert calc.formula("G1", '=CF_TERM(A1:D12;"viscous heating";"verdict")') == "leave out"
+    assert calc.formula("G2", '=G1="leave out"') == 1.0
+    assert calc.formula("G3", formula) == "left"
+    assert calc.formula("G4", '=IF(CF_CASE(A1:D12;"flow kind")="duct";"yes";"no")') == "yes"
 
 
 def test_errors_of_cells_pass_through_and_are_counted(calc):
@@ -236,9 +241,9 @@ def test_errors_of_cells_pass_through_and_are_counted(calc):
 
 def test_whole_columns_end_where_their_cells_do(calc, cf):
     calc.new()
-    calc.values("A1:C8", COOLANT)
+    calc.values("A1:D12", COOLANT)
     wanted = cf("CASE", [list(row) for row in COOLANT], "Reynolds number")
-    assert calc.formula("F1", '=CF_CASE(A:C;"Reynolds number")') == pytest.approx(wanted, rel=TOLERANCE)
+    assert calc.formula("F1", '=CF_CASE(A:D;"Reynolds number")') == pytest.approx(wanted, rel=TOLERANCE)
     calc.values("H1:H3", [[1.0], [2.0], [3.0]])
     assert calc.array("I1:I4", "=CF_REYNOLDS(H:H;0.02;998;0.001)") == [[19960.0], [39920.0], [59880.0], [["#N/A"]]]
 
@@ -339,7 +344,55 @@ def test_a_file_with_short_names_is_mended_when_it_opens(calc, tmp_path):
     calc.open(path)
     assert calc.formulas("A1") == [["=CELLFUNCS.FUNCTIONS.CF_REYNOLDS(2;0.02;998;0.001)"]]
     assert calc.modified() is False
+    assert calc.read("A1") == [[7.0]]
+    calc.recalculate()
     assert calc.read("A1:B2") == [[39920.0, 19960.0], ["39920CF_REYNOLDS(1)", 39920.0]]
+
+
+def test_stored_values_show_until_something_changes(calc, tmp_path):
+    """Each formula stands beside a wrong stored value and what is to show when the file is opened."""
+    path = tmp_path / "stored.xlsx"
+    rows = [
+        ("=CF_REYNOLDS(A2,0.02,998,0.001)", 11.0, 5.0 * 0.3048 * 19960),  # the next one is calculated, so this is too
+        ('=CF_IN_UNIT(A3,"ft/s","m/s")', 22.0, 5.0 * 0.3048),
+        ('=CF_SI(3,"m/s")+2', 33.0, 5.0),  # more than one call: calculated
+        ("=CF_REYNOLDS(B1,0.02,998,0.001)", 44.0, 44.0),
+        ('=CF_CASE(Sheet1!$C$1:$F$12,"substance")', "oil", "oil"),
+        ("=CF_REYNOLDS(A4,0.02,998,0.001)", 66.0, 66.0),
+        ("=A6+1", 77.0, 67.0),
+    ]
+    book = xlsxwriter.Workbook(path)
+    sheet = book.add_worksheet()
+    for k, (formula, value, _) in enumerate(rows):
+        sheet.write_formula(k, 0, formula, None, value)
+    sheet.write("B1", 2.0)
+    for k, row in enumerate(COOLANT):
+        sheet.write_row(k, 2, row)
+    book.close()
+    for hidden in (True, False):
+        calc.open(path, hidden)
+        assert [row[0] for row in calc.read("A1:A7")] == pytest.approx([show for _, _, show in rows])
+    calc.values("B1", [[4.0]])
+    assert calc.read("A4") == [[79840.0]]
+    calc.recalculate()
+    assert calc.read("A5") == [[COOLANT[1][1]]]
+
+
+def test_values_that_do_not_fit_are_calculated(calc, tmp_path):
+    """A cell with OFFSET is never stored for good; and zeros everywhere are no values."""
+    path = tmp_path / "offset.xlsx"
+    book = xlsxwriter.Workbook(path)
+    sheet = book.add_worksheet()
+    sheet.write_formula(0, 0, "=CF_REYNOLDS(OFFSET(B1,1,-1),0.02,998,0.001)", None, 5)
+    sheet.write_formula(1, 0, '=CF_SI(4,"m/s")', None, 6)
+    book.close()
+    calc.open(path)
+    assert calc.read("A1:A2") == [[6 * 19960.0], [6.0]]
+    book = xlsxwriter.Workbook(path)
+    book.add_worksheet().write_formula(0, 0, "=CF_REYNOLDS(2,0.02,998,0.001)")
+    book.close()
+    calc.open(path, False)
+    assert calc.read("A1") == [[39920.0]]
 
 
 def test_a_file_without_our_functions_is_left_alone(calc, tmp_path):
@@ -386,6 +439,9 @@ def test_samples_calculate_as_in_the_embedded_host(calc, tmp_path, sample):
     calc.open(wrong)
     calc.recalculate()
     assert all_differences(shown(calc), wanted) == {}
+    calc.open(sample, False)
+    assert all_differences(shown(calc), stored(sample)) == {}
+    assert calc.modified() is False
     for kind in ("xlsx", "ods"):
         saved = tmp_path / f"saved.{kind}"
         calc.open(wrong)

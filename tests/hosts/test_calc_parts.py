@@ -7,6 +7,7 @@ import sys
 import xml.etree.ElementTree as ElementTree
 import zipfile
 from pathlib import Path
+from types import SimpleNamespace
 
 import pytest
 from hypothesis import given
@@ -14,7 +15,7 @@ from hypothesis import strategies as st
 
 from cellfuncs.cells import catalogue
 from cellfuncs.hosts.calc import helper as helper_process
-from cellfuncs.hosts.calc.office import calls, pipe, repair
+from cellfuncs.hosts.calc.office import calls, pipe, repair, stored
 
 ROOT = Path(__file__).resolve().parent.parent.parent
 IN_OFFICE = sorted((ROOT / "cellfuncs" / "hosts" / "calc" / "office").glob("*.py"))
@@ -100,6 +101,70 @@ def test_arguments_left_out_at_the_end_are_not_sent():
 )
 def test_an_unresolved_name_is_found(formula, unresolved):
     assert repair.names_ours(formula) is unresolved
+
+
+@pytest.mark.parametrize(
+    ("formula", "one_call"),
+    [
+        ("=cf_term(cf_vary(coolant;1;2);A1)", True),
+        ("=CF_VERSION( ) ", True),
+        ('=cf_si(A1;"m/s)")', True),
+        ("=cf_si(A1;'a )'.B1)", True),
+        ("=cf_si(1;2)+1", False),
+        ("=cf_si(1;2)*cf_si(1;2)", False),
+        ("=-cf_si(1;2)", False),
+        ("=IF(A1;cf_si(1;2);0)", False),
+        ("{=cf_terms(coolant)}", False),
+        ("=cf_si(1;2", False),
+    ],
+)
+def test_a_formula_of_one_call_is_known(formula, one_call):
+    assert stored.is_one_call(formula) is one_call
+
+
+class Sheet:
+    """Stands for a document with one sheet, whose cells answer as they like."""
+
+    def __init__(self, values, areas=()):
+        self.values, self.areas, self.calculated = values, areas, 0
+        self.Sheets = self
+
+    def getByIndex(self, index):
+        return self
+
+    def isAutomaticCalculationEnabled(self):
+        return True
+
+    def calculateAll(self):
+        self.calculated += 1
+
+    def getCellByPosition(self, column, row):
+        return SimpleNamespace(
+            getError=lambda: 0,
+            DataArray=((self.values[row],),),
+            queryPrecedents=lambda all_of_them: SimpleNamespace(RangeAddresses=self.areas),
+        )
+
+
+def formulas(*values):
+    return [stored.Cell((0, row, 0), "=cf_si(1;2)", value) for row, value in enumerate(values)]
+
+
+def test_values_that_were_not_put_back_as_stored_are_all_calculated():
+    helper = SimpleNamespace(told=None)
+    right, wrong = Sheet([1.0, "x"]), Sheet([1.0, 1.0])
+    for sheet in (right, wrong):
+        stored.put_back(sheet, formulas(1.0, "x"), helper)
+        assert helper.told is None
+    assert (right.calculated, wrong.calculated) == (0, 1)
+
+
+def test_a_file_of_zeros_and_one_of_very_many_cells_is_left_to_be_calculated():
+    helper = SimpleNamespace(told=None)
+    for cells in (formulas(0.0, 0.0), formulas(*[1.0] * (stored.MOST_CELLS + 1))):
+        stored.put_back(Sheet([]), cells, helper)  # it has no cells to look at
+    everywhere = [SimpleNamespace(Sheet=0, StartRow=0, EndRow=500, StartColumn=0, EndColumn=0)] * 2000
+    stored.put_back(Sheet([1.0] * 200, everywhere), formulas(*[1.0] * 200), helper)
 
 
 # -- the helper process ------------------------------------------------------------------------------

@@ -69,7 +69,7 @@ def over_reference(name):
     """A method for a function that takes one reference, so that it sees cells with errors too."""
 
     def method(self, cells):
-        return helper.ask(name, (ranges.rows_of(cells),))
+        return helper.ask(name, (ranges.rows_of(cells) if helper.told is None else (),))
 
     return method
 
@@ -90,7 +90,7 @@ class Repair(unohelper.Base, XJob):
             if argument.Name == "Environment":
                 for part in argument.Value:
                     if part.Name == "Model":
-                        repair(part.Value)
+                        repair(part.Value, helper)
 
 
 g_ImplementationHelper = unohelper.ImplementationHelper()
