@@ -30,7 +30,7 @@ _START = (
     "import json, sys; sys.path[:] = json.loads(sys.stdin.buffer.readline());"
     " from cellfuncs.hosts.apart import main; main()"
 )
-_TOO_MUCH = f"The calculation needs more than {MEMORY // 1024**3} GB of memory and was stopped."
+_TOO_MUCH = "The calculation needs more than {:.3g} GB of memory and was stopped."
 _TOO_LONG = "The calculation took longer than it may and was stopped."
 _BROKEN = "The calculation broke off in the engine (code {}); no values were written."
 
@@ -54,7 +54,7 @@ def calculated_apart(path: Path, *, progress: Callable[[str], None] | None, seco
     try:
         with contextlib.suppress(BrokenPipeError):  # it died at once: the reading says so
             process.stdin.write(json.dumps(sys.path).encode() + b"\n")
-            pickle.dump((str(path.absolute()), seconds, how), process.stdin)
+            pickle.dump((str(path.absolute()), seconds, MEMORY, how), process.stdin)
             process.stdin.flush()
         while True:
             word, content = pickle.load(process.stdout)
@@ -70,7 +70,8 @@ def calculated_apart(path: Path, *, progress: Callable[[str], None] | None, seco
         if late.is_set():
             raise BookRefused(_TOO_LONG) from error
         # The engine aborts the process where it gets no memory.
-        raise BookRefused(_TOO_MUCH if code == -signal.SIGABRT else _BROKEN.format(code)) from error
+        text = _TOO_MUCH.format(MEMORY / 1024**3) if code == -signal.SIGABRT else _BROKEN.format(code)
+        raise BookRefused(text) from error
     finally:
         timer.cancel()
         process.kill()
@@ -91,15 +92,15 @@ def main() -> None:
         pickle.dump((word, content), outgoing)
         outgoing.flush()
 
+    path, seconds, memory, how = pickle.load(sys.stdin.buffer)
     try:
-        path, seconds, how = pickle.load(sys.stdin.buffer)
-        _bound_memory()
+        _bound_memory(memory)
         tell(
             "done",
             embedded.calculated(Path(path), progress=lambda text: tell("progress", text), seconds=seconds, **how),
         )
     except MemoryError:
-        tell("failed", BookRefused(_TOO_MUCH))
+        tell("failed", BookRefused(_TOO_MUCH.format(memory / 1024**3)))
     except (KeyboardInterrupt, BrokenPipeError):
         os._exit(130)  # the parent knows, or is gone
     except BaseException as error:
@@ -120,8 +121,8 @@ def _portable(error: BaseException) -> BaseException:
     return error
 
 
-def _bound_memory() -> None:
-    """Bound the memory of this process where the system can."""
+def _bound_memory(memory: int) -> None:
+    """Bound the memory [bytes] of this process where the system can."""
     try:
         import resource
     except ImportError:  # Windows
@@ -132,7 +133,7 @@ def _bound_memory() -> None:
     try:
         own = int(Path("/proc/self/statm").read_text().split()[0]) * resource.getpagesize()
         _, hard = resource.getrlimit(resource.RLIMIT_AS)
-        wanted = own + MEMORY
+        wanted = own + memory
         resource.setrlimit(resource.RLIMIT_AS, (wanted if hard < 0 else min(wanted, hard), hard))
     except (OSError, ValueError):  # no such file, or the system does not bound it
         return
