@@ -71,6 +71,7 @@ def opening() -> Measured:
         calc = _session(with_extension)
         calc.new()
         times = [calc.open(SAMPLE, False) for _ in range(ROUNDS)]
+        calc.new()  # gives the file free for the other office
         first[with_extension], best[with_extension] = times[0], min(times)
     more = max(first[True] - first[False], best[True] - best[False])
     note = f"{first[True]:.2f} beside {first[False]:.2f} s, later {best[True]:.2f} beside {best[False]:.2f} s"

@@ -58,6 +58,8 @@ class Driver:
         start = time.perf_counter()
         url = uno.systemPathToFileUrl(path) if path else "private:factory/scalc"
         self.document = self.desktop.loadComponentFromURL(url, "_blank", 0, properties(Hidden=hidden))
+        if self.document is None:
+            raise RuntimeError(f"{path} does not open; it may be open elsewhere")
         return time.perf_counter() - start
 
     def close(self):
