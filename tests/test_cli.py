@@ -56,7 +56,9 @@ def test_version_and_help():
     assert "recalc" in shown.stdout and "functions" in shown.stdout
 
 
-@pytest.mark.parametrize("words", [[], ["melt"], ["recalc"], ["functions", "a", "b"]])
+@pytest.mark.parametrize(
+    "words", [[], ["melt"], ["recalc"], ["functions", "a", "b"], ["recalc", "a", "--values", "--for", "calc"]]
+)
 def test_a_wrong_call_says_how_it_goes(words):
     done = run(*words)
     assert done.returncode == 2
@@ -111,6 +113,23 @@ def test_recalc_prints_areas_warnings_and_where_it_wrote(engine, capsys):
     assert engine.asked == [("a.xlsx", "b.xlsx")]
     assert said.out == "areas: Sheet1!B2\nwrote b.xlsx\n"
     assert said.err == "warning: B2 takes a bare number\n"
+
+
+@pytest.mark.parametrize(
+    ("words", "values", "written_for"),
+    [
+        ([], False, None),
+        (["--values"], True, None),
+        (["--for", "excel"], False, "excel"),
+        (["--for=calc"], False, "calc"),
+    ],
+)
+def test_recalc_hands_its_options_on(engine, monkeypatch, words, values, written_for):
+    assert cli.main(["recalc", "a.xlsx", *words]) == 0
+    assert engine.how == {"values": values, "written_for": written_for, "apart": True}
+    monkeypatch.setenv("CELLFUNCS_TRACEBACK", "1")
+    cli.main(["recalc", "a.xlsx", *words])
+    assert engine.how["apart"] is False
 
 
 @pytest.mark.parametrize(
@@ -198,6 +217,18 @@ def test_a_workbook_is_recalculated_into_a_copy(book, tmp_path):
 
     sheet = openpyxl.load_workbook(tmp_path / "out.xlsx", data_only=True)["Tube"]
     assert sheet["B3"].value == pytest.approx(199_600, rel=1e-12)
+
+
+def test_a_copy_with_values(book, tmp_path):
+    done = run("recalc", book, "--values")
+    assert (done.returncode, done.stderr) == (0, "")
+    out = tmp_path / "a sheet.values.xlsx"
+    assert "99800" in done.stdout and done.stdout.splitlines()[-1] == f"wrote {out}"
+    import openpyxl
+
+    cell = openpyxl.load_workbook(out)["Tube"]["B3"]
+    assert cell.value == pytest.approx(199_600, rel=1e-12)
+    assert cell.comment.text == "=CF_REYNOLDS(A3,0.05,998,0.001)"
 
 
 @pytest.mark.parametrize(

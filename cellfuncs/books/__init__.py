@@ -12,6 +12,10 @@ scans.py       what the gate looks for in the main part and in each worksheet
 reading.py     formulas, stored values and byte offsets of one sheet
 strings.py     shared strings, stored values of single cells
 splice.py      new values set into the sheet's own text
+rewrite.py     formulas changed wherever a part writes one
+parts.py       parts, relations and content types added and taken out
+notes.py       notes put on cells
+share.py       a copy with values in the place of some formulas, which are kept in notes
 xmltext.py     values as cell texts and back
 grid.py        rows, columns, areas
 formulas.py    formulas as texts: prefixes of names, shared formulas, references
