@@ -56,7 +56,7 @@ class Substance(ABC):
     """Base of all substances. All numbers are plain SI floats.
 
     `name` is the readable name, `family` one of "pure fluid", "solution", "liquid", "thermal oil",
-    "mineral oil", "moist air".
+    "mineral oil", "moist air", "liquid metal", "polymer melt", "solid", "own table".
     """
 
     name: str
@@ -101,7 +101,14 @@ class Substance(ABC):
 
     @abstractmethod
     def phase(self, temperature: float, pressure: float | None = None) -> str:
-        """Return "liquid", "gas" or "supercritical" at temperature [K] and pressure [Pa]."""
+        """Return "liquid", "gas", "supercritical" or "solid" at temperature [K] and pressure [Pa].
+
+        A table of the user's own is "as tabled".
+        """
+
+    def viscosity_at(self, temperature: float, shear_rate: float, pressure: float | None = None) -> float:
+        """Return the viscosity [Pa s] at temperature [K] and shear rate [1/s], on which only melts depend."""
+        return self.get("viscosity", temperature, pressure)
 
     def saturation(
         self,

@@ -14,6 +14,7 @@ from operator import call
 from typing import TYPE_CHECKING
 
 from ..errors import CellfuncsError, OutOfRange
+from .additions import AddedTransport, extrapolation_note
 from .base import ATMOSPHERE, PLAUSIBLE_PRESSURE, Limits, Substance, check_state, near_vacuum, phase_word
 from .engine import coolprop, open_state
 from .properties import property_key
@@ -39,7 +40,7 @@ if TYPE_CHECKING:
 from .texts import kelvin, pascal
 
 
-class PureFluid(SaturationLine, Substance):
+class PureFluid(SaturationLine, AddedTransport, Substance):
     """A pure or pseudo-pure fluid by its equation of state; made by ``names.find``, one object a fluid."""
 
     family = "pure fluid"
@@ -192,7 +193,7 @@ class PureFluid(SaturationLine, Substance):
         if key == "saturation_temperature":
             return self.saturation(key, phase, pressure=pressure)
         read = handle.read.get(key)
-        if read is None:
+        if read is None and not self._can_add(key):
             raise self._no_model(key)
         temperature, pressure = float(temperature), float(pressure)
         region = self._region(handle, temperature, pressure, phase)
@@ -208,7 +209,8 @@ class PureFluid(SaturationLine, Substance):
         if not self._near_critical(temperature, pressure) and phase is None:
             handle.t, handle.p = temperature, pressure
         try:
-            return self._checked(key, read(), temperature, pressure)
+            value = read() if read else self._added(handle, key, region)
+            return self._checked(key, value, temperature, pressure)
         except ValueError as error:
             if isinstance(error, CellfuncsError):
                 raise
@@ -267,6 +269,8 @@ class PureFluid(SaturationLine, Substance):
 
     def _on_the_line(self, handle: Handle, key: str, temperature: float, pressure: float, phase: str):
         """The stated phase within 1e-5 of the saturation pressure: the equation's root, else saturation."""
+        if key not in handle.read:
+            return self.saturation(key, phase, temperature=temperature)
         module, state = coolprop(), handle.state
         handle.t = math.nan
         try:
@@ -291,13 +295,15 @@ class PureFluid(SaturationLine, Substance):
     def source(self, what: str) -> str:
         """Return the bibliography key behind a property; several are parted by ";"."""
         key, row = property_key(what), self._row
-        parts = []
+        lacking = self._lacking(key)
+        if key == "emissivity" or (lacking and not self._can_add(key)):
+            raise self._no_model(key)
+        parts = list(self._added_texts(key)[0])
         if key == "surface_tension":
             parts.append(row["surface_tension_source"])
-        if key in NEEDS_VISCOSITY:
-            parts.append(row["viscosity_source"])
-        if key in NEEDS_CONDUCTIVITY:
-            parts.append(row["conductivity_source"])
+        for name, keys in (("viscosity", NEEDS_VISCOSITY), ("conductivity", NEEDS_CONDUCTIVITY)):
+            if key in keys and name not in lacking:
+                parts.append(row[name + "_source"])
         if key not in ("surface_tension", "viscosity", "conductivity"):
             parts.append(row["eos_source"])
         if "" in parts:
@@ -305,9 +311,9 @@ class PureFluid(SaturationLine, Substance):
         return ";".join(dict.fromkeys(";".join(parts).split(";")))
 
     def note(self, what: str) -> str:
-        """Return estimates with their model class and uncertainty, and reference states."""
+        """Return estimates with their model class and uncertainty, reference states, and extrapolations."""
         key = property_key(what)
-        notes = []
+        notes = list(self._added_texts(key)[1])
         for words, keys in (("viscosity", NEEDS_VISCOSITY), ("conductivity", NEEDS_CONDUCTIVITY)):
             estimate = ESTIMATES.get(self._row[words + "_model"].split(" ")[0])
             if key in keys and estimate:
@@ -317,7 +323,8 @@ class PureFluid(SaturationLine, Substance):
             notes.append(f"only differences count; reference: {reference}")
         if self.pseudo_pure:
             notes.append("mixture treated as one fluid (pseudo-pure)")
-        return "; ".join(notes)
+        notes.append(extrapolation_note(self.key, key))
+        return "; ".join(filter(None, notes))
 
     def limits(self) -> Limits:
         """Return the range of the equation of state."""

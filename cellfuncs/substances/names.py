@@ -1,7 +1,7 @@
 """From the name in a cell to the substance: aliases, a phase word, a concentration, an oil grade.
 
-The order: a fluid or liquid by one of its names; moist air; a solution with its concentration; an oil; each
-also with a phase word before or behind ("water liquid", "liquid nitrogen", "R134a vapour").
+The order: a fluid or liquid by one of its names; liquid metals, solids and melts; moist air; a solution with its
+concentration; an oil; each also with a phase word before or behind ("water liquid", "liquid nitrogen", "R134a vapour").
 """
 
 import re
@@ -13,12 +13,16 @@ from ..errors import UnknownName
 from ..sources import read_table
 from .base import PHASES, Substance
 from .fluids import PureFluid
+from .liquid_metals import find_liquid_metal, metal_rows
 from .moist import humid_air
 from .oils import oil
+from .polymer_text import find_polymer
+from .polymers import polymer_names
+from .solids import Solid, find_solid, solid_rows, surfaces_of
 from .solutions import Liquid, ask_concentration, liquid_names, liquid_rows, solution
 from .texts import folded, nearest, shown
 
-LONGEST_NAME = 120
+LONGEST_NAME = 200
 MOST_KEPT = 1000  # substances kept with their states; concentrations can be many
 _STEAM = frozenset(("steam", "watersteam", "watervapour", "watervapor"))
 _PHASE = re.compile(
@@ -68,7 +72,7 @@ def _read(text: str) -> Substance | None:
     key = _fluid_names().get(_REFRIGERANT.sub("r", name))
     if key:
         return _fluid(key)
-    found = humid_air(text)
+    found = find_liquid_metal(text) or find_solid(text) or find_polymer(text) or humid_air(text)
     if found is None:
         read = solution(text)
         if read is not None:
@@ -96,6 +100,11 @@ def _in_phase(substance: Substance, phase: str) -> Substance:
     """The substance with a stated phase; one object for each."""
     if isinstance(substance, PureFluid):
         return _kept(f"fluid {substance.key} {phase}", lambda: substance.in_phase(phase))
+    if isinstance(substance, Solid):
+        molten = find_liquid_metal(f"{phase} {substance.solid}")
+        if molten:
+            return _kept(molten.name, lambda: molten)
+        raise UnknownName(f"{substance.name} is a solid here; leave the phase out")
     if phase == ("gas" if substance.family == "moist air" else "liquid"):
         return substance
     raise UnknownName(f"{substance.name} has no {phase} here; leave the phase out")
@@ -125,14 +134,16 @@ def _fluid_names() -> dict[str, str]:
 def _all_names() -> tuple[str, ...]:
     """Every name that a hint may propose."""
     rows = (*read_table("fluid_names.csv"), *liquid_rows().values())
-    listed = (name for row in rows for name in (row["name"], *filter(None, row["aliases"].split(";"))))
-    return (*listed, "steam", "moist air", "mineral oil")
+    titled = [(row["name"], row["aliases"]) for row in rows]
+    titled += [(name, row["aliases"]) for table in (metal_rows(), solid_rows()) for name, row in table.items()]
+    listed = (name for title, others in titled for name in (title, *filter(None, others.split(";"))))
+    return (*listed, *polymer_names(), "steam", "moist air", "mineral oil", "polymer melt")
 
 
 def names(contains: str = "") -> list[tuple[str, str, str]]:
     """Return (name, family, other names) of every substance whose names contain the text.
 
-    Solutions stand with the way their concentration is written, oils and moist air with an example.
+    Solutions stand with the way their concentration is written, oils, melts and moist air with an example.
     """
     rows = [(row["name"], PureFluid.family, row["aliases"].replace(";", ", ")) for row in _fluid_titles().values()]
     for row in liquid_rows().values():
@@ -141,6 +152,14 @@ def names(contains: str = "") -> list[tuple[str, str, str]]:
             low, high = (100 * float(row[end]) for end in ("x_min", "x_max"))
             name += f", {low:g} % to {high:g} % by {row['basis']}"
         rows.append((name, row["family"], row["aliases"].replace(";", ", ")))
+    for name, row in metal_rows().items():
+        rows.append((name, "liquid metal", row["aliases"].replace(";", ", ")))
+    for name, row in solid_rows().items():
+        others = [*filter(None, row["aliases"].split(";")), *(f"{name} {surface}" for surface in surfaces_of(name))]
+        rows.append((name, "solid", ", ".join(others)))
+    for row in read_table("polymers.csv"):
+        rows.append((f"{row['polymer']} at 100 1/s", "polymer melt", row["aliases"].replace(";", ", ")))
+    rows.append(("polymer melt: 12000 Pa s^n at 230 degC, n 0.35, b 0.02 1/K at 100 1/s", "polymer melt", "any melt"))
     rows.append(("moist air 50 %", "moist air", "humid air, wet air"))
     rows.append(("ISO VG 46 VI 95", "mineral oil", "oil 46 cSt at 40 degC, 6.8 cSt at 100 degC, 870 kg/m3"))
     wanted = folded(contains)

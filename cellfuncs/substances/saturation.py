@@ -49,13 +49,15 @@ class SaturationLine:
         if key == "saturation_temperature":
             return self._checked(key, state.T(), *inputs[1:])
         read = handle.read.get(key)
-        if read is None:
+        if read is None and not self._can_add(key):
             raise self._no_model(key)
         if key in DIVERGING and self._near_critical(state.T(), state.p()):
             raise self._critical_text(key)
         try:
-            value = read()
+            value = read() if read else self._added(handle, key, phase)
         except ValueError as error:
+            if isinstance(error, CellfuncsError):
+                raise
             raise self._not_given(key, state.T(), state.p()) from error
         return self._checked(key, value, state.T(), state.p())
 

@@ -94,7 +94,7 @@ def test_every_group_says_what_it_compares():
         ("PROPERTY", ("water", "density", "3000 K"), "temperature"),
         ("PROPERTY", ("water", "density", 300.0, "20 GPa"), "pressure"),
         ("PROPERTY", ("water", "density", 300.0, 1.01), "pressure"),
-        ("PROPERTY", ("acetone", "viscosity", 300.0), "what"),
+        ("PROPERTY", ("1-butene", "viscosity", 300.0), "what"),
         ("MOIST_AIR", ("dew point", 300.0, 60.0), "relative humidity"),
         ("MOIST_AIR", ("dew", 300.0, 0.6), "what"),
         ("SATURATION", ("water", "density", "liquid", "700 K"), "temperature"),

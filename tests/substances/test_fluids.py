@@ -127,8 +127,8 @@ def test_columns_with_bad_points():
     assert np.isnan(values[:, [1, 2, 3]]).all()
     with pytest.raises(OutOfRange, match="value 2 of the column"):
         fluid.get_many(("density", "cp"), temperatures)
-    with pytest.raises(NoModel, match="acetone"):
-        find("acetone").get_many(("density", "viscosity"), temperatures[:1])
+    with pytest.raises(NoModel, match="1-butene"):
+        find("1-butene").get_many(("density", "viscosity"), temperatures[:1])
 
 
 def test_threads_have_their_own_states():

@@ -99,7 +99,7 @@ ASKS = {
     "watr": 'the nearest is "water"',
     "R134b": "the nearest is",
     "isobutan": 'the nearest is "isobutane"',
-    "NaK": "no substance",
+    "NaK": "write NaK-78",
     "": "a substance is wanted",
     "x" * 500: "too long",
 }

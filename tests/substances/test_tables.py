@@ -6,6 +6,9 @@ from CoolProp import CoolProp
 from cellfuncs.errors import UnknownName
 from cellfuncs.sources import bibliography, cite, read_table
 from cellfuncs.substances import PROPERTIES, find, names
+from cellfuncs.substances.liquid_metals import metal_names
+from cellfuncs.substances.polymers import polymer_names
+from cellfuncs.substances.solids import solid_names
 from cellfuncs.substances.solutions import liquid_rows
 from cellfuncs.substances.texts import folded
 
@@ -70,7 +73,22 @@ def test_liquid_limits_are_never_wider_than_those_of_coolprop(key):
 
 def test_every_source_exists():
     keys = set()
-    for name in ("coolprop_fluids", "coolprop_liquids", "solutes", "oil_grades", "viscosity_index"):
+    for name in (
+        "coolprop_fluids",
+        "coolprop_liquids",
+        "solutes",
+        "oil_grades",
+        "viscosity_index",
+        "solids",
+        "solid_properties",
+        "liquid_metals",
+        "liquid_metal_properties",
+        "polymers",
+        "polymer_viscosity",
+        "polymer_properties",
+        "transport_additions",
+        "published_ranges",
+    ):
         for row in read_table(f"{name}.csv"):
             columns = [column for column in row if column.endswith("_source")]
             if name != "coolprop_fluids":
@@ -110,6 +128,10 @@ def test_no_name_means_two_things():
             assert liquids.setdefault((bool(row["basis"]), folded(name)), key) == key, name
             if not row["basis"]:
                 assert folded(name) not in taken, name
+    for table in (metal_names(), solid_names(), {folded(name): polymer for name, polymer in polymer_names().items()}):
+        for name, means in table.items():
+            assert taken.setdefault(name, means) == means, name
+            assert (False, name) not in liquids, name
 
 
 def test_properties_have_units_and_words():
@@ -121,9 +143,8 @@ def test_properties_have_units_and_words():
 def test_list_of_substances():
     rows = names()
     assert len(rows) > 240
-    assert {"pure fluid", "solution", "thermal oil", "liquid", "moist air", "mineral oil"} == {
-        row[1] for row in rows
-    }
+    families = {"pure fluid", "solution", "thermal oil", "liquid", "moist air", "mineral oil"}
+    assert families | {"liquid metal", "solid", "polymer melt"} == {row[1] for row in rows}
     assert ("R134a", "pure fluid", "1,1,1,2-tetrafluoroethane") in names("r-134")
     assert names("no such thing") == []
     assert all(len(part) < 255 for row in rows for part in row)
