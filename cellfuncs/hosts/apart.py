@@ -41,7 +41,11 @@ def calculated_apart(path: Path, *, progress: Callable[[str], None] | None, seco
 
     # -P: a file beside the user's workbook must not be taken for a module.
     command = [sys.executable, "-P", "-X", "utf8", "-c", _START]
-    process = subprocess.Popen(command, stdin=subprocess.PIPE, stdout=subprocess.PIPE, stderr=subprocess.DEVNULL)
+    # A linear algebra library takes room for as many threads as there are processors, all within the bound.
+    variables = {"OPENBLAS_NUM_THREADS": "1", "OMP_NUM_THREADS": "1"} | os.environ
+    process = subprocess.Popen(
+        command, stdin=subprocess.PIPE, stdout=subprocess.PIPE, stderr=subprocess.DEVNULL, env=variables
+    )
     late = threading.Event()
 
     def end() -> None:
