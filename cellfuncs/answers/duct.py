@@ -9,6 +9,7 @@ from collections.abc import Callable
 from dataclasses import dataclass, replace
 
 from cellfuncs.answers.loop import settle
+from cellfuncs.answers.path import overall, refuse_without_ambient
 from cellfuncs.cases.case import Case, Properties
 from cellfuncs.cases.sections import Duct
 from cellfuncs.errors import CaseRefused
@@ -35,6 +36,7 @@ class DuctAnswers:
     difference: float  # wall − inlet, or q/h for a prescribed flux
     flux: float | None  # the prescribed one
     inlet: float | None
+    film: float = 0.0  # the inside coefficient, where ``coefficient`` is the overall one
 
     @property
     def exchange(self) -> float:
@@ -66,6 +68,8 @@ class DuctAnswers:
         """Wall temperature at the outlet end [K]."""
         if self.inlet is None:
             return None
+        if self.case.has("ambient_temperature"):
+            return self.inlet + self.bulk_rise + self.local_flux / self.film
         if self.flux is None:
             return self.inlet + self.difference
         return self.inlet + self.bulk_rise + self.difference
@@ -117,8 +121,26 @@ def solve_duct(case: Case) -> DuctAnswers:
         nusselt, friction, method, outside = _coefficient(case, re, p, x_star, shape)
         h = nusselt * p.conductivity / shape.diameter
         driving = flux / h if flux is not None else difference
+        film = h
+        if case.has("ambient_temperature"):
+            h, method = overall(case, shape, h), f"overall, inside {h:.4g} by {method}"
         return DuctAnswers(
-            case, shape, length, temperature, p, u, re, nusselt, friction, h, method, outside, driving, flux, inlet
+            case,
+            shape,
+            length,
+            temperature,
+            p,
+            u,
+            re,
+            nusselt,
+            friction,
+            h,
+            method,
+            outside,
+            driving,
+            flux,
+            inlet,
+            film,
         )
 
     return close_on_bulk(case, at, inlet, difference)
@@ -184,6 +206,10 @@ def temperatures(case: Case) -> tuple[float | None, float | None]:
             case.need("inlet_temperature")
         return inlet, None
     wall, difference = case.get("wall_temperature"), case.get("temperature_difference")
+    refuse_without_ambient(case)
+    if case.has("ambient_temperature"):
+        inlet = case.need("inlet_temperature")
+        return inlet, _nonzero(case.get("ambient_temperature") - inlet)
     if wall is None and difference is None:
         return inlet, 0.0  # no exchange: friction alone
     if wall is not None and difference is not None:

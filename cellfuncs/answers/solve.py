@@ -187,6 +187,7 @@ _DERIVED: Mapping[str, Callable[[Solution], float | str | None]] = {
     "bulk_rise": _attribute("bulk_rise"),
     "rayleigh": _attribute("rayleigh"),
     "grashof": _attribute("grashof"),
+    "overall_coefficient": _duct(lambda a: a.coefficient if a.case.has("ambient_temperature") else None),
     "transfer_units": _duct(lambda a: a.transfer_units),
     "coefficient": _attribute("coefficient"),
     "friction_factor": _attribute("friction"),

@@ -56,7 +56,7 @@ def _answers(
     driving = difference if flux is None else flux / h
     return ThroughAnswers(
         case, shape, length, temperature, p, velocity, reynolds, nusselt, friction, h, method, outside, driving, flux,
-        inlet, drop,
+        inlet, h, drop,
     )  # fmt: skip
 
 

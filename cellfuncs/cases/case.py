@@ -18,6 +18,7 @@ DEFAULT_TOLERANCE = 0.05
 DEFAULT_SMALLEST = 0.1  # K
 
 # property of a substance -> label that overrides it
+_PRESCRIBED = ("wall_temperature", "heat_flux", "temperature_difference", "ambient_temperature")
 _OVERRIDES = {
     "density": "density",
     "viscosity": "viscosity",
@@ -100,10 +101,13 @@ class Case:
     @cached_property
     def wall(self) -> str:
         """``temperature`` or ``flux``: what is prescribed at the wall."""
-        prescribed = [k for k in ("wall_temperature", "heat_flux", "temperature_difference") if self.has(k)]
+        prescribed = [k for k in _PRESCRIBED if self.has(k)]
         if self.has("heat_flux") and len(prescribed) > 1:
             names = " and ".join(f'"{self.stated[k].label}"' for k in prescribed)
             raise CaseRefused(f"{names} are both stated; prescribe the flux or the wall temperature, not both")
+        if self.has("ambient_temperature") and len(prescribed) > 1:
+            names = " and ".join(f'"{self.stated[k].label}"' for k in prescribed)
+            raise CaseRefused(f"{names} are both stated; give the wall or what lies beyond it")
         if not prescribed and self.flow != "duct":
             self.need("wall_temperature", "heat_flux", "temperature_difference")
         return "flux" if self.has("heat_flux") else "temperature"
