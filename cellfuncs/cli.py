@@ -130,6 +130,9 @@ def _recalc(options: argparse.Namespace) -> int:
     print(embedded.render_areas(result.areas))
     for warning in result.warnings:
         print(f"warning: {warning}", file=sys.stderr)
+    faults = embedded.fault_line(result.areas)
+    if faults:
+        print(faults)
     print(f"wrote {result.out}")
     return FINE
 

@@ -42,6 +42,7 @@ def engine(monkeypatch):
 
     fake.recalc = recalc
     fake.render_areas = lambda areas: f"areas: {', '.join(areas)}"
+    fake.fault_line = lambda areas: ""
     monkeypatch.setitem(sys.modules, "cellfuncs.hosts.embedded", fake)
     import cellfuncs.hosts
 

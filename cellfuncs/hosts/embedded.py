@@ -155,6 +155,8 @@ def _target(path: Path, out: str | Path | None, word: str) -> Path:
         raise BookRefused("The output would overwrite the workbook itself; give another name.")
     if target.is_dir():
         raise BookRefused(f"{target.name} is a folder; give the name of a file.")
+    if target.suffix.lower() != suffix.lower():
+        raise BookRefused(f"The copy of a {suffix} workbook is one too; write {target.stem or 'out'}{suffix}.")
     return target
 
 
@@ -163,6 +165,20 @@ def render_areas(areas: Sequence[FoundArea]) -> str:
     if not areas:
         return "The workbook holds no formulas with our functions."
     return "\n\n".join(_rendered(area) for area in areas)
+
+
+def fault_line(areas: Sequence[FoundArea]) -> str:
+    """How many faults stand in the areas, and the first; empty where there is none."""
+    found = [
+        f"{area.sheet}!{area.range}: {value}"
+        for area in areas
+        for row in area.values
+        for value in row
+        if isinstance(value, str) and value.startswith("! ")
+    ]
+    if not found:
+        return ""
+    return f"{len(found)} fault{'s' if len(found) > 1 else ''} in our formulas, first in {found[0]}"
 
 
 def _rendered(area: FoundArea) -> str:

@@ -242,6 +242,8 @@ def test_never_over_the_input(rich, tmp_path):
             recalc(rich, out)
     with pytest.raises(BookRefused, match="folder"):
         recalc(rich, tmp_path)
+    with pytest.raises(BookRefused, match=r"write out\.xlsx"):
+        recalc(rich, tmp_path / "out.pdf")
     with pytest.raises(BookRefused, match="Cannot write"):
         recalc(rich, tmp_path / "no such folder" / "a.xlsx")
 
@@ -391,3 +393,13 @@ def test_hostile_files_within_memory_and_time(build, tmp_path):
     assert done.returncode == 0 and text.endswith(".") and int(memory) < 1024 * 1024
     assert hashlib.sha256(path.read_bytes()).hexdigest() == digest
     assert [p.name for p in tmp_path.iterdir()] == ["hostile.xlsx"]
+
+
+def test_faults_are_counted_at_the_end():
+    from cellfuncs.books.areas import FoundArea
+    from cellfuncs.hosts.embedded import fault_line
+
+    fine = FoundArea("S", "A1:A2", ("", ""), ("",), ((1.0,), ("water",)))
+    bad = FoundArea("S", "B1:B2", ("", ""), ("",), (("! velocity: empty",), ("! length: empty",)))
+    assert fault_line([fine]) == ""
+    assert fault_line([fine, bad]) == "2 faults in our formulas, first in S!B1:B2: ! velocity: empty"
