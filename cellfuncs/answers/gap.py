@@ -80,6 +80,8 @@ def solve_gap(case: Case) -> GapAnswers:
             raise CaseRefused("both wall temperatures and a temperature difference are stated; keep one")
         apart = abs(second - first)
     cold = first if second is None or first is None else min(first, second)
+    if cold is None and not (case.fixed or case.has("property_temperature")):
+        case.need("wall_temperature")
     mean = None if cold is None else cold + 0.5 * apart
     at = case.get("property_temperature", mean)
     p = case.properties(at)
