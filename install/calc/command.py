@@ -2,6 +2,7 @@
 
 import subprocess
 import tempfile
+import time
 from collections.abc import Callable
 from pathlib import Path
 
@@ -12,6 +13,8 @@ from .office import Office, Unusable
 
 HERE = Path(__file__).resolve().parent
 IDENTIFIER = "cellfuncs.calc"
+# The first start after a change may fail while another one is still ending.
+ATTEMPTS, PAUSE = 2, 2.0  # s
 EXPECTED = 2 * 0.02 * 998 / 0.001
 # A workbook in one text file, as the office itself would write it.
 TRIED = """<?xml version="1.0" encoding="UTF-8"?>
@@ -114,7 +117,11 @@ def _tried(office: Office, private: Path | None, folder: Path) -> str:
     book = folder / "tried.fods"
     book.write_text(TRIED, "utf-8")
     words = ["--headless", "--convert-to", "csv", "--outdir", folder, book]
-    done = offices.run([office.program("soffice"), *offices.settings_of(private), *words])
+    for _ in range(ATTEMPTS):
+        done = offices.run([office.program("soffice"), *offices.settings_of(private), *words])
+        if (folder / "tried.csv").exists():
+            break
+        time.sleep(PAUSE)
     try:
         line = (folder / "tried.csv").read_text("utf-8").strip()
     except FileNotFoundError:

@@ -316,8 +316,9 @@ def test_without_libreoffice_it_says_so(machine, monkeypatch):
 
 
 @pytest.mark.skipif(os.name == "nt", reason="the office of this test is made of shell scripts")
-def test_what_stands_in_the_way_is_told(machine):
+def test_what_stands_in_the_way_is_told(machine, monkeypatch):
     folder, say = machine
+    monkeypatch.setattr(command, "PAUSE", 0.0)
     assert "did not calculate" in refused()
     say("ERROR: The following extension cannot be read", 1)
     assert refused() == "unopkg add failed: ERROR: The following extension cannot be read"
