@@ -207,11 +207,13 @@ def _usual(kind: str) -> str:
 
 
 # stated quantities for which only a value above zero makes sense
-_SIGNED = frozenset({"temperature_difference", "heat_flux", "expansion", "volumetric_source", "pressure_drop"})
+SIGNED = frozenset(
+    {"temperature_difference", "heat_flux", "expansion", "volumetric_source", "pressure_drop", "inclination"}
+)
 
 
 def _check_sign(key: str, si: float) -> None:
-    if key in _SIGNED:
+    if key in SIGNED:
         return
     if key in ("emissivity", "tolerance", "smallest"):
         if not si >= 0:

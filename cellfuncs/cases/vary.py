@@ -6,14 +6,13 @@ from typing import Any
 
 from cellfuncs import quantities
 from cellfuncs.cases import labels
-from cellfuncs.cases.block import Stated
+from cellfuncs.cases.block import SIGNED, Stated
 from cellfuncs.cases.case import Case
 from cellfuncs.errors import CellfuncsError, UnknownName
 
 _PER_DECADE = 4
 _DECADES = 3  # both ways from the stated value
 _DECADES_UNSTATED = 6  # both ways from the usual size of the kind
-_SIGNED = frozenset({"heat_flux", "temperature_difference", "volumetric_source", "expansion", "pressure_drop"})
 _OFFSETS = (0.01, 0.1, 1.0, 3.0, 10.0, 30.0, 100.0, 300.0)  # K from every stated temperature
 _LOWEST, _HIGHEST = 1.0, 3000.0  # K, where no substance sets the range
 _STEPS = 30
@@ -61,7 +60,7 @@ def places(case: Case, key: str) -> list[float]:
     found = [size * 10.0 ** (k / _PER_DECADE) for k in range(-_PER_DECADE * decades, _PER_DECADE * decades + 1)]
     if kind == "fraction":
         found = [x for x in found if x < 1.0] + [1.0]
-    if key in _SIGNED:
+    if key in SIGNED:
         found = sorted([-x for x in found] + found)
     return found
 

@@ -20,7 +20,7 @@ from cellfuncs.sources import read_table
 __all__ = ["Answer", "Argument", "CellFunction", "cell_function", "functions"]
 
 FAMILIES = ("Quantities", "Substances", "Groups", "Cases", "Terms")
-MODULES = ("quantity", "substance", "group", "case", "term", "limit")
+MODULES = ("quantity", "substance", "group", "case", "term", "limit", "premise")
 RETURNS = ("quantity", "number", "text", "table")
 LONGEST_HELP = 255
 LONGEST_NAMES = 254  # number of arguments plus the length of their names, for the function wizard

@@ -6,6 +6,7 @@ from typing import Any
 from cellfuncs.answers import Solution, solve
 from cellfuncs.cases import read_case
 from cellfuncs.terms import term_rows
+from cellfuncs.terms.premises import premise_rows
 
 _MOST_BLOCKS = 512
 
@@ -22,3 +23,9 @@ def solution(block: Block) -> Solution:
 def terms(block: Block, equation: str) -> tuple[tuple[Any, ...], ...]:
     """The rows of the term table of a block."""
     return tuple(term_rows(solution(block), equation))
+
+
+@lru_cache(maxsize=_MOST_BLOCKS)
+def premises(block: Block) -> tuple[tuple[Any, ...], ...]:
+    """The rows of the table of premises of a block."""
+    return tuple(premise_rows(solution(block)))

@@ -14,6 +14,7 @@ from cellfuncs.cases.case import Properties
 from cellfuncs.errors import CellfuncsError, NoModel
 from cellfuncs.groups import STANDARD_GRAVITY
 
+FALLING_FILM = "falling film"
 GAS_CONSTANT = 8.31446261815324  # J/(mol K), exact by definition of the SI
 
 
@@ -42,11 +43,11 @@ class Facts:
             return "layer"
         return "other" if hasattr(a, "velocity") else "body"
 
-    def attribute(self, name: str, words: str) -> float:
-        """A number of the answers, or a refusal that says that this flow has none."""
+    def attribute(self, name: str, words: str) -> Any:
+        """A field of the answers, or a refusal that says that this flow has none."""
         value = getattr(self.answers, name, None)
         if value is None:
-            raise NoModel(f"the {words} is not known in this {self.flow}")
+            raise NoModel(f"the {words} is not known for this {self.flow}")
         return value
 
     def stated(self, key: str) -> float:
@@ -59,7 +60,7 @@ class Facts:
 
     @property
     def properties(self) -> Properties:
-        return self.answers.properties
+        return self.attribute("properties", "fluid")
 
     @property
     def velocity(self) -> float:
@@ -100,8 +101,9 @@ class Facts:
 
     @cached_property
     def drop(self) -> float:
-        """Frictional pressure drop; zero where a flow has none."""
-        return abs(self.answers.pressure_drop) if self.family == "through" else 0.0
+        """Frictional pressure drop; zero where a flow has none. A falling film has a weight, no pressure drop."""
+        through = self.family == "through" and self.flow != FALLING_FILM
+        return abs(self.answers.pressure_drop) if through else 0.0
 
     @property
     def gravity(self) -> float:
@@ -147,8 +149,11 @@ class Facts:
         return self.attribute("property_temperature", "property temperature")
 
     @cached_property
-    def wall(self) -> float:
-        return self.attribute("wall", "wall temperature")
+    def far(self) -> tuple[str, float]:
+        """Where the fluid differs most from where properties are taken: the wall, in a film the peak."""
+        if self.family == "gap":
+            return "peak", self.attribute("peak", "peak temperature")
+        return "wall", self.attribute("wall", "wall temperature")
 
     @property
     def lowest_pressure(self) -> float:
@@ -192,15 +197,15 @@ class Facts:
         thermal = math.sqrt(math.pi * GAS_CONSTANT * self.temperature / (2.0 * molar_mass))
         return self.properties.viscosity / self.case.pressure * thermal
 
-    def at_wall(self) -> Properties:
-        """Properties at the wall's temperature, in the phase of the stream; or a refusal."""
+    def far_properties(self) -> Properties:
+        """Properties there, in the phase of the stream; or a refusal."""
         if self.case.fixed:
             raise NoModel("all properties are stated, so that their change with temperature is not known")
         if self.case.substance is not None:
-            other = self.case.substance.phase(self.wall, self.case.pressure)
+            other = self.case.substance.phase(self.far[1], self.case.pressure)
             if {other, self.phase} == {"liquid", "gas"}:
-                raise NoModel(f"at the wall the fluid is {other}, in the stream {self.phase}")
-        return self.case.properties(self.wall)
+                raise NoModel(f"at the {self.far[0]} the fluid is {other}, in the stream {self.phase}")
+        return self.case.properties(self.far[1])
 
     @cached_property
     def thinning(self) -> float:

@@ -11,8 +11,9 @@ from cellfuncs.answers.layer import LayerAnswers
 from cellfuncs.groups import STEFAN_BOLTZMANN
 from cellfuncs.terms.recovery import rise_or_bound
 from cellfuncs.terms.size import Size, absent, num, percent
+from cellfuncs.terms.thresholds import FAILS, HOLDS, STRAINED, threshold
 
-_HOLDS, _FAILS = 1000.0, 100.0  # Re_L of a boundary layer: premise holds above, fails below
+_VERDICTS = {HOLDS: "leave out", STRAINED: "borderline", FAILS: "keep"}  # of conduction along, by the thin layer
 
 
 def sizes(solution: Solution) -> list[Size]:
@@ -56,10 +57,10 @@ def _exchange(solution: Solution, a: LayerAnswers, balance: float) -> tuple[Size
 
 def _conduction_along(a: LayerAnswers) -> Size:
     re = a.reynolds
-    settled = "leave out" if re >= _HOLDS else "borderline" if re >= _FAILS else "keep"
-    state = {"leave out": "holds", "borderline": "is strained", "keep": "fails"}[settled]
-    says = f"no share: it is the premise of a thin layer, Re from {_HOLDS:g}; here Re {num(re)}, so it {state}"
-    return Size("conduction along", 1.0 / _peclet(a), 0.0, says, asked=0.0, settled=settled, no_share=True)
+    limits = threshold("thin layer")
+    state = limits.state(re)
+    says = f"no share: it is the premise of a thin layer, Re from {limits.strained:g}; here Re {num(re)}: {state}"
+    return Size("conduction along", 1.0 / _peclet(a), 0.0, says, asked=0.0, settled=_VERDICTS[state], no_share=True)
 
 
 def _storage(solution: Solution, a: LayerAnswers, balance: float) -> Size:

@@ -7,8 +7,8 @@ Eu, buoyancy Ri, gravity 1/Fr², rotation 2ΩL/U, surface tension 1/We, storage 
 from typing import NamedTuple
 
 from cellfuncs.answers import Solution
-from cellfuncs.errors import CellfuncsError
-from cellfuncs.terms.facts import Facts
+from cellfuncs.errors import CellfuncsError, NoModel
+from cellfuncs.terms.facts import FALLING_FILM, Facts
 from cellfuncs.terms.size import Size, absent, num, percent
 
 TERMS = (
@@ -24,7 +24,8 @@ TERMS = (
 )
 # what the entrance of a duct costs beyond developed friction, in dynamic heads (Shah and London 1978; turbulent
 # common practice)
-_ENTRANCE = {("tube", True): 1.25, ("plates", True): 0.67, ("tube", False): 0.05, ("plates", False): 0.05}
+_LAMINAR_ENTRANCE = {"plates": 0.67, "tube": 1.25}
+_TURBULENT_ENTRANCE = 0.05
 
 
 class _Balance(NamedTuple):
@@ -38,6 +39,8 @@ class _Balance(NamedTuple):
 def sizes(solution: Solution) -> list[Size]:
     """The terms of the momentum equation in the order of the table."""
     f = Facts(solution)
+    if f.family == "body":
+        raise NoModel(f"nothing flows in the flow kind {f.flow}: it has no momentum equation", argument="block")
     balance = {"through": _through, "layer": _layer, "gap": _gap, "free": _free}.get(f.family, _other)(f)
     return [
         _storage(f),
@@ -66,25 +69,33 @@ def _viscous_one_scale(f: Facts) -> float:
 
 
 def _through(f: Facts) -> _Balance:
+    if f.flow == FALLING_FILM:
+        return _falling(f)
     a = f.answers
     friction = f.drop / f.length
     inertia = _inertia(f)
-    shape = getattr(a, "shape", None)
-    if shape is None:
-        entrance, says = 0.0, "developed: no entrance is counted"
-    else:
-        head = _ENTRANCE.get((shape.section, f.laminar), _ENTRANCE["tube", f.laminar])
+    entrance, says = 0.0, "form drag is counted with friction"
+    if f.flow == "duct":
+        head = _LAMINAR_ENTRANCE.get(a.shape.section, 1.25) if f.laminar else _TURBULENT_ENTRANCE
         entrance = head * inertia / 2.0
         says = f"zero when developed; the entrance costs {num(head)} dynamic heads"
-    rise = abs(f.properties.expansion * getattr(a, "bulk_rise", 0.0))
-    heating = inertia * rise
+    rise = abs(f.properties.expansion * a.bulk_rise)
     if rise:
         says += f"; the stream speeds up by {percent(rise)} on heating"
     drop = f"{num(f.drop)} Pa over {num(f.length)} m"
     return _Balance(
-        Size("inertia", 1.0, entrance + heating, says),
+        Size("inertia", 1.0, entrance + inertia * rise, says),
         Size("viscous across", _viscous_one_scale(f), friction, f"friction at the wall takes {drop}", leading=True),
         Size("pressure", _one_scale(f, friction), friction, f"pressure pays for friction, {drop}", leading=True),
+    )
+
+
+def _falling(f: Facts) -> _Balance:
+    weight = abs(f.answers.pressure_drop) / f.length
+    return _Balance(
+        Size("inertia", 1.0, _inertia(f), "none once the film is developed; ρU²/L bounds it"),
+        Size("viscous across", _viscous_one_scale(f), weight, "friction at the wall carries the weight", leading=True),
+        absent("pressure", "a free surface: the ambient pressure all along"),
     )
 
 
@@ -184,7 +195,8 @@ def _buoyancy(f: Facts) -> Size:
 def _gravity(f: Facts) -> Size:
     """Weight: carried by hydrostatic pressure where no surface is free, so that the pair nets to nothing."""
     size = f.properties.density * f.gravity
-    if f.flow == "film":
+    if f.flow == FALLING_FILM:
+        size = abs(f.answers.pressure_drop) / f.length
         return Size("gravity", _one_scale(f, size), size, "the weight drives the film", leading=True)
     says = f"weight {num(size)} N/m3 is carried by hydrostatic pressure: the pair cancels without a free surface"
     return Size("gravity", _one_scale(f, size), size, says, asked=0.0, nets_to=0.0)
@@ -201,12 +213,13 @@ def _rotation(f: Facts) -> Size:
 
 def _surface_tension(f: Facts) -> Size:
     tension = f.case.get("surface_tension")
-    if tension is None and f.flow == "film":
+    if tension is None and f.flow == FALLING_FILM:
         try:
             tension = f.substance.saturation("surface_tension", temperature=f.temperature)
         except CellfuncsError:
             tension = None
     if tension is None:
-        return absent("surface tension", "no free surface" if f.flow != "film" else "surface tension is not stated")
+        why = "surface tension is not stated" if f.flow == FALLING_FILM else "no free surface"
+        return absent("surface tension", why)
     size = tension / f.length**2
     return Size("surface tension", _one_scale(f, size), size, f"σ/L² over {num(f.length)} m")

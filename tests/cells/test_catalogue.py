@@ -28,6 +28,7 @@ SETTLED = {
     "CF_CASE": "block what [unit]",
     "CF_TERMS": "block [equation]",
     "CF_TERM": "block term [measure]",
+    "CF_PREMISES": "block",
     "CF_VALUE_FOR": "block vary what target [unit]",
     "CF_TERM_LIMIT": "block term vary [level] [unit]",
 }
