@@ -43,6 +43,11 @@ _ANSWERS = {
 }
 
 
+def answers_of(flow: str) -> tuple[str, ...]:
+    """The answers that the verdicts of a flow kind may be for."""
+    return _ANSWERS[flow]
+
+
 class Properties(NamedTuple):
     """Properties at one temperature, SI."""
 

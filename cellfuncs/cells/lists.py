@@ -4,6 +4,7 @@ from collections.abc import Callable, Mapping
 
 from cellfuncs import groups, quantities, substances
 from cellfuncs.cases import labels
+from cellfuncs.cases.case import answers_of
 from cellfuncs.cells import catalogue
 from cellfuncs.errors import UnknownName
 from cellfuncs.terms import EQUATIONS, MEASURES, MOMENTUM_TERMS, TERMS
@@ -28,6 +29,11 @@ def _choices(of: str | None) -> list[str]:
     if labels.dictionary()[key].role != "choice":
         raise UnknownName(f'"{of[:40]}" has no list of choices', argument="of")
     return list(labels.choices(key))
+
+
+def _answers(of: str | None) -> list[str]:
+    """Answers, of one flow kind where it is named."""
+    return list(answers_of(labels.choice("flow_kind", of)) if of else labels.choices("answer"))
 
 
 def _units(of: str | None) -> list[str]:
@@ -55,7 +61,7 @@ _LISTS: Mapping[str, Callable[[str | None], list[str]]] = {
     "terms": _terms,
     "equations": lambda of: list(EQUATIONS),
     "measures": lambda of: list(MEASURES),
-    "answers": lambda of: list(labels.choices("answer")),
+    "answers": _answers,
     "flow kinds": lambda of: list(labels.choices("flow_kind")),
     "properties": lambda of: [p.words for p in substances.PROPERTIES.values()],
     "moist air": lambda of: [p.words for p in substances.MOIST_AIR.values()],
