@@ -6,7 +6,7 @@ from dataclasses import dataclass
 from typing import Any
 
 from cellfuncs import quantities
-from cellfuncs.cells import convert, faults
+from cellfuncs.cells import convert, faults, table
 from cellfuncs.cells.grid import Grid, common_shape, positions
 from cellfuncs.errors import CellfuncsError, OutOfRange
 
@@ -36,6 +36,8 @@ def reader(argument: Argument, row: Mapping[str, str]) -> Callable[[Any], Any]:
         return convert.QuantityReader(row["kind"], row["zero"], argument.optional)
     if argument.form in ("text", "unit"):
         return convert.TextReader(argument.optional, argument.help)
+    if argument.form == "substance":
+        return table.SubstanceReader(argument.optional, argument.help)
     if argument.form == "block":
         return convert.read_block
     if argument.form == "range":
@@ -62,7 +64,7 @@ def caller(
     count = len(arguments)
     required = sum(not a.optional for a in arguments)
     quantity = returns == "quantity"
-    ranges = any(a.form in ("quantity", "text", "unit") for a in arguments) and returns != "table"
+    ranges = any(a.form in ("quantity", "text", "unit", "substance") for a in arguments) and returns != "table"
     first = names[0] if names else name
 
     def call(*given: Any) -> Any:

@@ -22,14 +22,19 @@ def _blamed(argument: str, function: Callable[..., Any], *arguments: Any) -> Any
         raise
 
 
-def _property_columns(substance: str, what: Any, temperature: Any, pressure: Any = None) -> Answer:
+def _found(given: Any) -> substances.Substance:
+    """The substance of a name, or the table that the reader has made one."""
+    return given if isinstance(given, substances.Substance) else substances.find(given)
+
+
+def _property_columns(substance: Any, what: Any, temperature: Any, pressure: Any = None) -> Answer:
     """Columns of properties: one state a temperature, whatever the number of properties."""
     import numpy as np
 
-    if not isinstance(substance, str) or (isinstance(what, list) and len(what) > 1):
+    if isinstance(substance, list) or (isinstance(what, list) and len(what) > 1):
         raise NumberRefused("one substance and one row of properties in a call over a range")
     keys = [substances.property_key(name) for name in (what[0] if isinstance(what, list) else [what])]
-    found = substances.find(substance)
+    found = _found(substance)
     states = np.broadcast_arrays(np.atleast_2d(temperature), np.atleast_2d(np.nan if pressure is None else pressure))
     shape = states[0].shape
     if len(keys) > 1 and shape[1] > 1:
@@ -52,7 +57,7 @@ def _property_columns(substance: str, what: Any, temperature: Any, pressure: Any
 )
 def property_of(substance, what, temperature, pressure=None):
     key = _blamed("what", substances.property_key, what)
-    found = substances.find(substance)
+    found = _found(substance)
     return Answer(_blamed("temperature", found.get, key, temperature, pressure), _KINDS[key])
 
 
@@ -65,7 +70,7 @@ def property_of(substance, what, temperature, pressure=None):
     example='=CF_PROPERTIES("ethylene glycol 30 % by mass","20 degC")',
 )
 def properties(substance, temperature, pressure=None):
-    found = substances.find(substance)
+    found = _found(substance)
     rows: list[list[Any]] = [["property", "value", "unit", "source"]]
     first_problem = None
     answered = False
@@ -108,7 +113,7 @@ def saturation(substance, what, phase, temperature=None, pressure=None):
     if (temperature is None) == (pressure is None):
         given = "both are" if temperature is not None else "none is"
         raise NumberRefused(f"give either a temperature or a pressure; {given} given", argument="temperature")
-    found = substances.find(substance)
+    found = _found(substance)
     given = "temperature" if pressure is None else "pressure"
     value = _blamed(given, found.saturation, key, phase, temperature, pressure)
     return Answer(value, _KINDS[key])

@@ -139,7 +139,8 @@ class Related(Substance):
         """Return property `what` [SI]; see ``Substance.get``. Refused outside the property's own range."""
         found = self._relations.get(what)
         if found is not None and pressure is None and phase is None and found.t_min <= temperature <= found.t_max:
-            self._check_boiling(temperature, ATMOSPHERE)
+            if what != "saturation_pressure":
+                self._check_boiling(temperature, ATMOSPHERE)
             return found.value(temperature)
         key = property_key(what)
         self._check_phase(phase)

@@ -4,7 +4,7 @@ import math
 from collections.abc import Mapping, Sequence
 from itertools import pairwise
 
-from ..errors import NumberRefused, OutOfRange
+from ..errors import NoModel, NumberRefused, OutOfRange
 from .curve import Curve
 from .properties import PROPERTIES, property_key
 from .relations import EXPONENTIAL, Related, Relation
@@ -22,6 +22,9 @@ class UserTable(Related):
 
     def _check_phase(self, phase: str | None) -> None:
         """The table holds for the phase that its user means."""
+
+    def _no_model(self, key: str) -> NoModel:
+        return NoModel(f"the table has no column from which the {PROPERTIES[key].words} follows")
 
 
 def from_table(
