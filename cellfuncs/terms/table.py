@@ -6,6 +6,7 @@ from cellfuncs.answers import Solution
 from cellfuncs.errors import UnknownName
 from cellfuncs.terms import duct, free, gap, layer, momentum
 from cellfuncs.terms.size import Size, percent
+from cellfuncs.terms.spread import Survival, survival
 from cellfuncs.terms.verdicts import KEEP, LEAVE_OUT, Judged, judge, left_out
 
 COLUMNS = ("term", "one-scale", "share", "effect", "verdict", "reason")
@@ -49,8 +50,11 @@ def judged(solution: Solution, equation: str = "energy") -> list[Judged]:
         named = " or ".join(EQUATIONS)
         raise UnknownName(f'"{equation[:40]}" is not an equation that is judged; write {named}', argument="equation")
     case = solution.case
-    sizes = momentum.sizes(solution) if equation == "momentum" else _SIZES[case.flow](solution)
-    return judge(sizes, case.tolerance, case.smallest)
+    return judge(_sizes_of(case.flow, equation)(solution), case.tolerance, case.smallest)
+
+
+def _sizes_of(flow: str, equation: str) -> Callable[[Solution], list[Size]]:
+    return momentum.sizes if equation == "momentum" else _SIZES[flow]
 
 
 def equation_of(term: str) -> str:
@@ -61,11 +65,13 @@ def equation_of(term: str) -> str:
 def term_rows(solution: Solution, equation: str = "energy") -> list[Row]:
     """Rows of the term table (without the head): term, one-scale, share, effect, verdict, reason."""
     terms = judged(solution, equation)
-    return [*map(_row, terms), _together(terms, solution.case.tolerance)]
+    survives = survival(solution, terms, _sizes_of(solution.case.flow, equation))
+    rows = [_row(j, survives.get(j.size.term)) for j in terms]
+    return [*rows, _together(terms, solution.case.tolerance)]
 
 
-def _row(j: Judged) -> Row:
-    reason = f"{j.why}; {j.size.says}" if j.why else j.size.says
+def _row(j: Judged, survives: Survival | None) -> Row:
+    reason = "; ".join(filter(None, (j.why, survives.words() if survives else "", j.size.says)))
     share = NO_SHARE if j.size.no_share else j.share
     return j.size.term, j.size.one_scale, share, NO_MODEL, j.verdict, reason
 

@@ -1,0 +1,180 @@
+"""Whether verdicts survive the ± of the inputs: 2,000 normal samples with a fixed seed.
+
+Solving every sample would take too long for a cell, so the sizes of the terms are taken from a surrogate: each
+input is moved alone to seven places within three standard uncertainties, each size is read between them (in its
+logarithm where it is positive), and the changes by several inputs are put together, as is exact for products of
+powers. The verdicts of the samples are made by the same rule as ever. The surrogate is compared with solved samples;
+where it does not reproduce their verdicts, or where a place is refused, 500 samples are solved instead, and the
+words say so.
+"""
+
+from collections.abc import Callable, Sequence
+from dataclasses import dataclass, fields
+from typing import Any
+
+from cellfuncs.answers import Solution, solve
+from cellfuncs.cases.block import SIGNED
+from cellfuncs.cases.case import Case
+from cellfuncs.cases.vary import with_value
+from cellfuncs.errors import CellfuncsError, OutOfRange
+from cellfuncs.terms.size import Size
+from cellfuncs.terms.verdicts import Judged, judge
+
+SAMPLES = 2000
+SOLVED = 500  # samples where every one is solved
+SEED = 20260101
+_PLACES = (-3.0, -2.0, -1.0, 0.0, 1.0, 2.0, 3.0)
+_CHECKED = 24  # samples that are also solved
+_MOST_WRONG = 1  # of these, a term may have another verdict than by the surrogate
+_NUMBERS = ("size", "asked", "kelvins", "nets_to", "uncancelled")
+_FIXED = ("tolerance", "smallest")  # rows of ours that a ± says nothing about
+
+SizesOf = Callable[[Solution], Sequence[Size]]
+
+
+@dataclass(frozen=True)
+class Survival:
+    """In how many of the samples that could be answered a term has the verdict of the table."""
+
+    kept: int
+    answered: int
+    drawn: int
+
+    def words(self) -> str:
+        if self.answered == 0:
+            return "no sample within ± can be answered"
+        of = f"{self.answered:,} samples within ±"
+        if self.answered < self.drawn:
+            of += f" ({self.drawn - self.answered:,} are refused)"
+        if self.kept == self.answered:
+            return f"holds in all {of}"
+        return f"holds in {1000 * self.kept // self.answered / 10:g} % of {of}"
+
+
+class _Sampled:
+    """A size whose numbers are set anew for each sample; the rule of verdicts reads it like a Size."""
+
+    __slots__ = tuple(f.name for f in fields(Size))
+
+    def __init__(self, size: Size):
+        for name in self.__slots__:
+            setattr(self, name, getattr(size, name))
+
+
+def uncertain(case: Case) -> list[tuple[str, float, float]]:
+    """Key, value and standard uncertainty of every row with a ±, in a fixed order."""
+    return sorted(
+        (key, float(entry.value), entry.plus_minus)
+        for key, entry in case.stated.items()
+        if entry.plus_minus and key not in _FIXED
+    )
+
+
+def survival(solution: Solution, judged: Sequence[Judged], sizes_of: SizesOf) -> dict[str, Survival]:
+    """Term -> how its verdict survives the ± of the case; empty without ±, and without terms that could change."""
+    rows = uncertain(solution.case)
+    if not rows:
+        return {}
+    import numpy as np
+
+    draws = np.random.default_rng(SEED).standard_normal((SAMPLES, len(rows)))
+    sampling = _Sampling(solution.case, rows, judged, sizes_of)
+    counted = sampling.by_surrogate(draws)
+    if counted is None:
+        counted = sampling.by_solving(draws[:SOLVED])
+    return counted
+
+
+class _Sampling:
+    """One case with its uncertain rows."""
+
+    def __init__(self, case: Case, rows: list[tuple[str, float, float]], judged: Sequence[Judged], sizes_of: SizesOf):
+        self.case = case
+        self.rows = rows
+        self.judged = judged
+        self.sizes_of = sizes_of
+        self.base = [j.size for j in judged]
+
+    def sizes(self, deviates: Sequence[float]) -> Sequence[Size]:
+        """The sizes with every uncertain row moved by so many standard uncertainties; or a refusal."""
+        case = self.case
+        for (key, value, spread), z in zip(self.rows, deviates, strict=True):
+            moved = value + z * spread
+            if moved <= 0 < value and key not in SIGNED:
+                raise OutOfRange("not above zero")
+            case = with_value(case, key, moved)
+        try:
+            return self.sizes_of(solve(case))
+        except (ArithmeticError, ValueError) as error:
+            raise error if isinstance(error, CellfuncsError) else OutOfRange(str(error)) from None
+
+    def verdicts(self, sizes: Sequence[Any]) -> list[str]:
+        return [j.verdict for j in judge(sizes, self.case.tolerance, self.case.smallest)]
+
+    def by_solving(self, draws: Any) -> dict[str, Survival]:
+        """Every sample solved."""
+        found = []
+        for deviates in draws.tolist():
+            try:
+                found.append(self.verdicts(self.sizes(deviates)))
+            except CellfuncsError:
+                continue
+        return self._counted(found, len(draws))
+
+    def by_surrogate(self, draws: Any) -> dict[str, Survival] | None:
+        """Every sample from the surrogate; None where it may not be trusted."""
+        try:
+            moves = [[self._moved(k, z) for z in _PLACES] for k in range(len(self.rows))]
+            solved = [self.verdicts(self.sizes(deviates)) for deviates in draws[:_CHECKED].tolist()]
+        except CellfuncsError:
+            return None
+        samples = [_Sampled(size) for size in self.base]
+        columns = []
+        for t, sample in enumerate(samples):
+            across = [[sizes[t] for sizes in row] for row in moves]
+            if any(_kind(size) != _kind(self.base[t]) for row in across for size in row):
+                return None
+            for name in _NUMBERS:
+                column = _column([[getattr(size, name) for size in row] for row in across], draws)
+                if column is not None:
+                    columns.append((sample, name, column))
+        found = []
+        for n in range(len(draws)):
+            for sample, name, column in columns:
+                setattr(sample, name, column[n])
+            found.append(self.verdicts(samples))
+        wrong = [sum(s[t] != f[t] for s, f in zip(solved, found, strict=False)) for t in range(len(samples))]
+        return None if max(wrong) > _MOST_WRONG else self._counted(found, len(draws))
+
+    def _moved(self, k: int, z: float) -> Sequence[Size]:
+        """The sizes with one row alone moved."""
+        return self.sizes([z if i == k else 0.0 for i in range(len(self.rows))]) if z else self.base
+
+    def _counted(self, found: list[list[str]], drawn: int) -> dict[str, Survival]:
+        return {
+            j.size.term: Survival(sum(verdicts[t] == j.verdict for verdicts in found), len(found), drawn)
+            for t, j in enumerate(self.judged)
+            if not j.size.leading and (j.share != 0 or j.size.settled)
+        }
+
+
+def _kind(size: Size) -> tuple[Any, ...]:
+    """What a surrogate cannot carry over: settled verdicts, leading terms, which numbers there are."""
+    return size.settled, size.leading, size.thresholds, *(getattr(size, name) is None for name in _NUMBERS)
+
+
+def _column(by_row: list[list[float | None]], draws: Any) -> list[float] | None:
+    """One number of one term in all samples; None where no input moves it."""
+    import numpy as np
+
+    if by_row[0][0] is None or all(value == by_row[0][0] for row in by_row for value in row):
+        return None
+    values = np.array(by_row, dtype=float)
+    logarithmic = bool((values > 0).all())
+    if logarithmic:
+        values = np.log(values)
+    middle = values[0, len(_PLACES) // 2]
+    total = np.full(len(draws), middle)
+    for k, row in enumerate(values):
+        total += np.interp(draws[:, k], _PLACES, row) - middle
+    return (np.exp(total) if logarithmic else total).tolist()
