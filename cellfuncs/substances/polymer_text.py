@@ -5,12 +5,14 @@ Parts in any order, parted by commas:
 * ``12000 Pa s^n at 230 degC`` (power law) or ``15000 Pa s at 230 degC`` with ``time 0.5 s`` (Carreau)
 * ``n 0.35``, the power-law exponent
 * how it falls with temperature: ``b 0.02 1/K``, ``E 40 kJ/mol`` (Arrhenius), or ``C1 8.86, C2 101.6 K`` (WLF)
-* where wanted: ``190 to 270 degC`` (else 30 K each way), density, conductivity and specific heat with their units
+* where wanted: ``190 to 270 degC`` (else 30 K each way), density, conductivity and specific heat with their units,
+  and ``expansion 0.0007 1/K`` of a density that holds at the temperature of the constants
 * the shear rate at the end: ``at 100 1/s``
 """
 
 import re
 import unicodedata
+from functools import cache
 
 from .. import quantities
 from ..errors import CellfuncsError, NumberRefused, OutOfRange, UnknownName
@@ -44,6 +46,7 @@ _NAMED = {
     "n": re.compile(r"n\s*=?\s*" + NUMBER.format("value"), re.I),
     "b": re.compile(r"b\s*=?\s*" + NUMBER.format("value") + r"\s*(?:1/k|/k|k\^?-1|1/degc|1/°c)", re.I),
     "energy": re.compile(r"(?:ea?|activation energy)\s*=?\s*" + NUMBER.format("value") + r"\s*(?P<kilo>k?)j/mol", re.I),
+    "expansion": re.compile(r"(?:expansion|beta)\s*=?\s*" + NUMBER.format("value") + r"\s*1/(?:k|degc|°c)", re.I),
     "c1": re.compile(r"c1\s*=?\s*" + NUMBER.format("value"), re.I),
     "c2": re.compile(r"c2\s*=?\s*" + NUMBER.format("value") + r"\s*k", re.I),
     "time": re.compile(r"(?:time|relaxation time|lambda)\s*=?\s*" + NUMBER.format("value") + r"\s*s", re.I),
@@ -68,13 +71,19 @@ def find_polymer(text: str) -> PolymerMelt | None:
     return melt if rate is None else melt.at(rate)
 
 
-def _published(text: str) -> PolymerMelt | None:
+@cache
+def _spellings() -> dict[str, str]:
+    """Folded spelling -> polymer."""
     names = {}
     for name, polymer in polymer_names().items():
         bare = name.removesuffix(" melt")
         for spelling in (name, f"molten {bare}", f"{bare} molten", f"{bare} liquid", f"liquid {bare}"):
             names[folded(spelling)] = polymer
-    polymer = names.get(folded(text))
+    return names
+
+
+def _published(text: str) -> PolymerMelt | None:
+    polymer = _spellings().get(folded(text))
     if polymer is None and folded(text) in ("polymermelt", "moltenpolymer", "polymer"):
         raise UnknownName(f"which polymer: write for instance LDPE melt at 100 1/s, or {_EXAMPLE}")
     return None if polymer is None else published_melt(polymer)
@@ -108,6 +117,8 @@ def _from_constants(text: str) -> PolymerMelt:
         key: Relation(lambda temperature, value=value: value, low, high, SOURCE, "constant, as given", True)
         for key, value in thermal.items()
     }
+    if "expansion" in named:
+        relations["density"] = _expanding(thermal.get("density"), named["expansion"], reference, low, high)
     name = "polymer melt: " + ", ".join(said)
     return PolymerMelt(name, Rheology(law, low, high, *RATES, SOURCE, note), relations)
 
@@ -142,6 +153,15 @@ def _shift(named: dict[str, float], reference: float):
     if named["c2"] <= EITHER_SIDE:
         raise OutOfRange(f"C2 must be above {EITHER_SIDE:g} K, about 50 to 150 K for most polymers")
     return wlf_shift(named["c1"], named["c2"], reference)
+
+
+def _expanding(density: float | None, expansion: float, reference: float, low: float, high: float) -> Relation:
+    """Density from its value at the temperature of the constants and the expansion coefficient there."""
+    if density is None:
+        raise NumberRefused("an expansion coefficient goes with a density: add it, for instance 740 kg/m3")
+    if not 0 <= expansion * (high - low) < 0.5:
+        raise OutOfRange(f"an expansion of {expansion:g} 1/K is none of a melt, about 0.0005 to 0.001 1/K")
+    return Relation(lambda t: density / (1 + expansion * (t - reference)), low, high, SOURCE, "as given")
 
 
 def _thermal(part: str) -> tuple[str, float]:

@@ -188,6 +188,9 @@ class Related(Substance):
             f"{kelvin(found.t_min)} to {kelvin(found.t_max)}"
         )
 
+    def _no_model(self, key: str) -> NoModel:
+        return NoModel(f"no published model of the {PROPERTIES[key].words} of {self.spoken} is at hand")
+
     def _check_phase(self, phase: str | None) -> None:
         if phase_word(phase) not in (None, self.state):
             raise NoModel(f"{self.spoken} is a {self.state} here; no model of another phase is at hand")

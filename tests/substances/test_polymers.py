@@ -77,6 +77,14 @@ def test_carreau_and_shifts():
     assert moved.viscosity_at(483.15, 1e-3) == pytest.approx(8000 * factor, rel=1e-6)
 
 
+def test_expansion_of_the_user():
+    melt = find(OWN + ", 740 kg/m3, expansion 0.0007 1/K")
+    assert melt.get("density", 503.15) == pytest.approx(740)
+    assert melt.get("beta", 503.15) == pytest.approx(7e-4, rel=1e-6)
+    with pytest.raises(NoModel, match="of the polymer melt is at hand"):
+        find(OWN + ", 740 kg/m3").get("beta", 503.15)
+
+
 REFUSED = {
     "polymer melt": "which polymer",
     "polymer melt: n 0.35": "needs its constants",
@@ -88,6 +96,7 @@ REFUSED = {
     "polymer melt: 12000 Pa s^n at 230 degC, n 3, b 0.02 1/K": "n lies between",
     "polymer melt: 12000 Pa s at 230 degC, n 0.35, b 0.02 1/K": "add its time",
     "polymer melt: 12000 Pa s^n at 230 degC, time 2 s, n 0.35, b 0.02 1/K": "a power law",
+    "polymer melt: 12000 Pa s^n at 230 degC, n 0.35, b 0.02 1/K, beta 7e-4 1/K": "goes with a density",
     "polymer melt: 12000 Pa s^n at 230 degC, n 0.35, b 0.02 1/K, sticky": "not understood",
     "polymer melt: 12000 Pa s^n at 230 degC, n 0.35, b 0.02 1/K, 250 to 300 degC": "inside its range",
     "polymer melt: 12000 Pa s^n at 230 degC, n 0.35, C1 8.86, C2 20 K": "C2 must be above",
