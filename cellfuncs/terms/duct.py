@@ -84,7 +84,7 @@ def _conduction_along(solution: Solution, a: DuctAnswers) -> Size:
     if solution.case.answer == "duty" and a.flux is None:
         reach = a.shape.diameter / math.sqrt(8.0 * peclet)
         ends = 0.35 * reach / a.length
-        share = max(ends, size / balance(solution, a))
+        share = ends if ends > size / balance(solution, a) else None
         says += f"; about {percent(ends)} of the duty by the step at the inlet"
     ratio = size / balance(solution, a)
     kelvins = _kelvins(solution, a, 3.0 * ratio)
