@@ -350,17 +350,21 @@ ROWS = {
 }
 
 
-def calc_rows() -> dict[str, Callable[[], Row]]:
-    """Rows about LibreOffice Calc, where it is installed."""
+def outside_rows() -> dict[str, Callable[[], Row]]:
+    """Rows measured in files of their own; those about LibreOffice Calc where it is installed."""
+    import spread_bench as spread
     from calc import bench as calc
 
     def row(measure: Callable[[], tuple]) -> Callable[[], Row]:
         return functools.wraps(measure)(lambda: Row(*measure()))
 
-    return {"i": row(calc.cells), "j": row(calc.column), "k": row(calc.opening)} if calc.available() else {}
+    found = {"l": row(spread.stated), "m": row(spread.with_properties)}
+    if calc.available():
+        found |= {"i": row(calc.cells), "j": row(calc.column), "k": row(calc.opening)}
+    return dict(sorted(found.items()))
 
 
-ROWS |= calc_rows()
+ROWS |= outside_rows()
 IN_SECONDS = {"s": 1.0, "ms": 1e-3, "µs": 1e-6}
 
 
