@@ -2,7 +2,7 @@
 
 from cellfuncs.cells import solved
 from cellfuncs.cells.catalogue import cell_function
-from cellfuncs.terms.premises import COLUMNS
+from cellfuncs.terms import determined, premises
 
 
 @cell_function(
@@ -14,5 +14,18 @@ from cellfuncs.terms.premises import COLUMNS
     source="the limits and sources of cellfuncs/data/premises.csv",
     example="=CF_PREMISES(coolant)",
 )
-def premises(block):
-    return [list(COLUMNS), *map(list, solved.premises(block))]
+def premise_table(block):
+    return [list(premises.COLUMNS), *map(list, solved.premises(block))]
+
+
+@cell_function(
+    "CF_GROUPS",
+    family="Cases",
+    summary="The characteristic numbers that a case determines: name, symbol, value, what each compares and what the "
+    "value says here.",
+    returns="table",
+    source="definitions of cellfuncs/data/groups.csv, limits of cellfuncs/data/premises.csv",
+    example="=CF_GROUPS(coolant)",
+)
+def group_table(block):
+    return [list(determined.COLUMNS), *map(list, determined.group_rows(solved.solution(block)))]

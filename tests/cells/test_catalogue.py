@@ -29,6 +29,7 @@ SETTLED = {
     "CF_TERMS": "block [equation]",
     "CF_TERM": "block term [measure]",
     "CF_PREMISES": "block",
+    "CF_GROUPS": "block",
     "CF_VALUE_FOR": "block vary what target [unit]",
     "CF_TERM_LIMIT": "block term vary [level] [unit]",
 }
