@@ -30,10 +30,18 @@ def group_rows(solution: Solution) -> list[tuple[str, str, float, str, str]]:
             continue
         try:
             value = _value(key, facts)
-            rows.append((group.name, group.symbol, value, group.compares, _HERE[key](value, facts)))
         except (CellfuncsError, AttributeError, TypeError, ArithmeticError):
             continue  # the case does not have what the definition asks for
+        rows.append((group.name, group.symbol, value, group.compares, _here(key, value, facts)))
     return rows
+
+
+def _here(key: str, value: float, f: Facts) -> str:
+    """What the value says; what the group decides where nothing is known about it in this flow."""
+    try:
+        return _HERE[key](value, f)
+    except CellfuncsError:
+        return f"decides: {groups.table()[key].decides}"
 
 
 @cache
@@ -107,7 +115,7 @@ _ONLY: Mapping[str, Callable[[Facts], bool]] = {
     "graetz": lambda f: f.family == "through",
     "stanton": lambda f: f.family in ("through", "layer"),
     "heat_colburn": lambda f: f.family in ("through", "layer"),
-    "nahme": lambda f: f.family in ("through", "gap") and f.laminar and (f.case.substance is None or f.phase != "gas"),
+    "nahme": lambda f: f.flow in ("duct", "gap") and f.laminar and (f.case.substance is None or f.phase != "gas"),
     "richardson": lambda f: f.family in ("through", "layer"),
     "strouhal": lambda f: f.family != "free",
     "galilei": lambda f: f.flow == FALLING_FILM,

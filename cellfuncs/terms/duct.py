@@ -97,27 +97,45 @@ def _storage(solution: Solution, a: DuctAnswers) -> Size:
         return absent("storage", "steady: no time scale is stated; add one to judge start-up or swings")
     p = a.properties
     moving = max(solution.driving, abs(a.bulk_rise))
-    size = p.density * p.specific_heat * moving / time
+    wall, words = _wall_capacity(solution, a, time)
+    size = p.density * p.specific_heat * moving / time * (1.0 + wall)
     passing = a.length / (a.velocity * time)
     return Size(
         "storage",
         passing,
         size,
-        f"the stream passes in {num(a.length / a.velocity)} s, the change takes {num(time)} s; wall not counted",
+        f"the stream passes in {num(a.length / a.velocity)} s, the change takes {num(time)} s; {words}",
         kelvins=_kelvins(solution, a, 3.0 * size / balance(solution, a)),
     )
+
+
+def _metal_over_flow(a: DuctAnswers, thickness: float) -> float:
+    """Cross-section of the wall over that of the stream."""
+    d = a.shape.diameter
+    if a.shape.section == "plates":
+        return 2.0 * thickness / (d / 2.0)
+    return 4.0 * thickness * (d + thickness) / d**2
+
+
+def _wall_capacity(solution: Solution, a: DuctAnswers, time: float) -> tuple[float, str]:
+    """Capacity of the wall over that of the fluid, where the change is slower than the wall's own time ρcs/h."""
+    case = solution.case
+    if not all(map(case.has, ("wall_thickness", "wall_density", "wall_specific_heat"))):
+        return 0.0, "wall not counted"
+    s, volume = case.get("wall_thickness"), case.get("wall_density") * case.get("wall_specific_heat")
+    if time <= volume * s / a.coefficient:
+        return 0.0, f"the wall is too slow to follow ({num(volume * s / a.coefficient)} s)"
+    p = a.properties
+    ratio = volume * _metal_over_flow(a, s) / (p.density * p.specific_heat)
+    return ratio, f"the wall stores {num(ratio)} times as much as the fluid"
 
 
 def _wall_conduction(solution: Solution, a: DuctAnswers) -> Size:
     case = solution.case
     if not (case.has("wall_thickness") and case.has("wall_conductivity")):
         return absent("wall conduction", "no wall is stated; add wall thickness and wall conductivity to judge it")
-    s, k, d = case.get("wall_thickness"), case.get("wall_conductivity"), a.shape.diameter
-    if a.shape.section == "plates":
-        metal_over_flow = 2.0 * s / (d / 2.0)
-    else:
-        metal_over_flow = 4.0 * s * (d + s) / d**2
-    m = k * metal_over_flow / (a.length * a.capacity_flux)
+    metal = _metal_over_flow(a, case.get("wall_thickness"))
+    m = case.get("wall_conductivity") * metal / (a.length * a.capacity_flux)
     thresholds = _LOCAL if case.answer in _LOCAL_ANSWERS else _MEANS
     return Size(
         "wall conduction",
@@ -140,6 +158,9 @@ def _friction_pair(solution: Solution, a: DuctAnswers) -> tuple[Size, Size]:
     work = beta_t * heating
     net = (1.0 - beta_t) * heating
     rise, remark = rise_or_bound(a)
+    if solution.case.get("temperature_basis") == "stagnation":
+        # the wall then misses only what recovery leaves of the dynamic temperature, (1 − r)U²/(2cp)
+        rise = abs(a.velocity**2 / (2.0 * p.specific_heat) - rise)
     share, exact = _friction_share(solution, a, net, rise)
     if remark:
         exact = False
@@ -222,6 +243,10 @@ def _friction_share(solution: Solution, a: DuctAnswers, net: float, rise: float)
 
 def _source(solution: Solution, a: DuctAnswers) -> Size:
     q = solution.case.get("volumetric_source")
+    if solution.case.has("electric_power"):
+        if a.shape.area is None:
+            solution.case.need("flow_area")
+        q = (q or 0.0) + solution.case.get("electric_power") / (a.shape.area * a.length)
     if q is None:
         return absent("volumetric source", "no source is stated; add one for electric, absorbed or reaction heat")
     one_scale = abs(q) * a.length / (a.capacity_flux * solution.driving)

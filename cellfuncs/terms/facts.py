@@ -81,9 +81,10 @@ class Facts:
 
     @property
     def coefficient(self) -> float:
+        """The coefficient between fluid and wall (not the overall one to the surroundings)."""
         if self.family == "gap":
             return self.properties.conductivity / self.answers.gap
-        return self.attribute("coefficient", "coefficient")
+        return getattr(self.answers, "film", 0.0) or self.attribute("coefficient", "coefficient")
 
     @property
     def driving(self) -> float:
@@ -155,9 +156,18 @@ class Facts:
             return "peak", self.attribute("peak", "peak temperature")
         return "wall", self.attribute("wall", "wall temperature")
 
-    @property
+    @cached_property
     def lowest_pressure(self) -> float:
-        return self.case.pressure - self.drop
+        """The pressure behind the friction; where none is stated the atmosphere is taken to stand there."""
+        return self.case.pressure - self.drop if self.pressure_stated else self.case.pressure
+
+    @property
+    def pressure_stated(self) -> bool:
+        return self.case.has("pressure") or self.case.has("gauge_pressure")
+
+    @property
+    def pressure_remark(self) -> str:
+        return "" if self.pressure_stated else "; no pressure is stated, the atmosphere is taken"
 
     @property
     def substance(self) -> Any:

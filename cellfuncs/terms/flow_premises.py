@@ -224,8 +224,8 @@ def nahme(f: Facts) -> float:
 
 def viscosity_feedback(f: Facts) -> Figure:
     """Na: how far friction heat thins the liquid that makes it."""
-    if f.family not in ("through", "gap"):
-        raise NoModel("concerns films and ducts")
+    if f.flow not in ("duct", "gap"):
+        raise NoModel("concerns ducts and sheared films")
     if not f.laminar:
         raise NoModel("turbulent: friction hardly feels viscosity")
     if f.case.substance is not None and f.phase == "gas":
@@ -233,4 +233,3 @@ def viscosity_feedback(f: Facts) -> Figure:
     value = nahme(f)
     falls = f"shear falls by about {percent(value / 12.0)}" if value < 1 else "shear falls without measure"
     return Figure(value, f"b {num(f.thinning)} 1/K; {falls} (Na/12, two equal walls)")
-

@@ -39,7 +39,8 @@ def boiling(f: Facts) -> Figure:
     where, hot = f.hottest()
     lowest = f.lowest_pressure
     if lowest <= 0:
-        return Figure(1.0, f"friction takes {num(f.drop)} Pa, more than the pressure of {num(f.case.pressure)} Pa")
+        reason = f"friction takes {num(f.drop)} Pa, more than the pressure of {num(f.case.pressure)} Pa"
+        return Figure(1.0, reason, state=FAILS)
     limits = f.case.substance.limits() if f.case.substance is not None else None
     if limits is not None and limits.p_critical is not None and lowest > limits.p_critical:
         reason = f"the lowest pressure, {num(lowest)} Pa, is above the critical one: no boiling"
@@ -49,7 +50,8 @@ def boiling(f: Facts) -> Figure:
     vapour = _vapour_pressure(f, hot)
     return Figure(
         vapour / lowest,
-        f"hottest is the {where}, {celsius(hot)}: vapour pressure {num(vapour)} Pa, lowest pressure {num(lowest)} Pa",
+        f"hottest is the {where}, {celsius(hot)}: vapour pressure {num(vapour)} Pa, lowest pressure {num(lowest)} Pa"
+        f"{f.pressure_remark}",
     )
 
 
@@ -115,8 +117,8 @@ def choking(f: Facts) -> Figure:
 def choking_length(mach: float, heat_ratio: float) -> float:
     """fL/D (Darcy) from a Mach number to 1, adiabatic flow of a perfect gas with friction (Shapiro 1953)."""
     m2, above = mach * mach, heat_ratio + 1.0
-    swallowed = above * m2 / (2.0 + (heat_ratio - 1.0) * m2)
-    return (1.0 - m2) / (heat_ratio * m2) + above / (2.0 * heat_ratio) * math.log(swallowed)
+    squared_ratio = above * m2 / (2.0 + (heat_ratio - 1.0) * m2)  # of the velocity to that at Mach 1
+    return (1.0 - m2) / (heat_ratio * m2) + above / (2.0 * heat_ratio) * math.log(squared_ratio)
 
 
 def cavitation(f: Facts) -> Figure:
@@ -133,7 +135,7 @@ def cavitation(f: Facts) -> Figure:
     return Figure(
         (lowest - vapour) / head,
         f"lowest mean pressure {num(lowest)} Pa, vapour pressure {num(vapour)} Pa at the {where}, dynamic head "
-        f"{num(head)} Pa",
+        f"{num(head)} Pa{f.pressure_remark}",
     )
 
 

@@ -19,6 +19,8 @@ def viscosity(f: Facts) -> Figure:
 
 def viscosity_friction(f: Facts) -> Figure:
     """Change of viscosity as friction feels it, for liquids."""
+    if f.flow not in ("duct", "gap"):
+        raise NoModel("concerns ducts and films")
     if f.case.substance is not None and f.phase == "gas":
         raise NoModel("a gas: its friction follows the change of density")
     limits = "constant viscosity, friction" if f.laminar else "constant viscosity, turbulent friction"

@@ -4,7 +4,7 @@ from collections.abc import Callable, Mapping
 
 from cellfuncs.answers import Solution
 from cellfuncs.errors import UnknownName
-from cellfuncs.terms import duct, free, gap, layer, momentum
+from cellfuncs.terms import body, duct, free, gap, layer, momentum
 from cellfuncs.terms.size import Size, percent
 from cellfuncs.terms.spread import Survival, survival
 from cellfuncs.terms.verdicts import KEEP, LEAVE_OUT, Judged, judge, left_out
@@ -38,6 +38,8 @@ _SIZES: Mapping[str, Callable[[Solution], list[Size]]] = {
     "falling film": duct.sizes,
     "free": free.sizes,
     "enclosure": free.enclosure_sizes,
+    "mixed": layer.sizes,
+    "body": body.sizes,
     "gap": gap.sizes,
 }
 

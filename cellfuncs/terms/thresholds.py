@@ -28,9 +28,9 @@ class Threshold:
     def state(self, value: float, scale: float = 1.0) -> str:
         """The state of a figure; both limits are multiplied by ``scale``."""
         sign = -1.0 if self.fails < self.strained else 1.0
-        if sign * value >= sign * self.fails * scale:
+        if sign * value > sign * self.fails * scale:
             return FAILS
-        return STRAINED if sign * value >= sign * self.strained * scale else HOLDS
+        return STRAINED if sign * value > sign * self.strained * scale else HOLDS
 
 
 @cache
