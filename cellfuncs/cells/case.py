@@ -112,14 +112,14 @@ def _flow(rows: list[list[Any]]) -> str | None:
 )
 def case_value(block, what):
     solution = solved.solution(block)
-    key = _key_of(solution, what)
+    key = quantity_key(solution, what)
     value = solution.value(key)
     if isinstance(value, str):
         return value
     return Answer(float(value), labels.dictionary()[key].kind)
 
 
-def _key_of(solution: Any, what: str) -> str:
+def quantity_key(solution: Any, what: str) -> str:
     """What a name or symbol means in a case: of several meanings the one that the case has."""
     keys = labels.find_all(what)
     if len(keys) > 1:

@@ -8,10 +8,11 @@ from typing import Any
 from cellfuncs import quantities
 from cellfuncs.cases import labels, read_case
 from cellfuncs.cases.vary import row_key
-from cellfuncs.cells import convert
+from cellfuncs.cells import convert, solved
+from cellfuncs.cells.case import quantity_key
 from cellfuncs.cells.catalogue import Answer, cell_function
 from cellfuncs.cells.term import term_name
-from cellfuncs.errors import CellfuncsError, NoModel, NumberRefused, OutOfRange, UnknownName
+from cellfuncs.errors import CaseRefused, CellfuncsError, NoModel, NumberRefused, OutOfRange, UnknownName
 from cellfuncs.terms import limits
 
 _MOST_SEARCHES = 512
@@ -30,7 +31,7 @@ _SOURCE = "bracketing root search (Brent 1973) on the case"
 def value_for(block, vary, what, target):
     case = read_case(block)
     key = _row(case, vary)
-    wanted = _wanted(what, case.flow)
+    wanted = _wanted(block, what, case.flow)
     aim, unit = _target(target, labels.dictionary()[wanted].kind)
     return Answer(_value_for(block, key, wanted, aim, unit), labels.dictionary()[key].kind)
 
@@ -85,9 +86,13 @@ def _row(case: Any, text: str) -> str:
         return row_key(case, text)
 
 
-def _wanted(text: str, flow: str) -> str:
+def _wanted(block: Any, text: str, flow: str) -> str:
+    """The quantity aimed at; of several meanings the one that the case has, where it has any yet."""
     with _blaming("what"):
-        key = labels.find(text, flow)
+        try:
+            key = labels.find(text, flow)
+        except CaseRefused:
+            key = quantity_key(solved.solution(block), text)
         entry = labels.dictionary()[key]
         if entry.role not in ("stated", "derived"):
             raise UnknownName(f'"{entry.label}" is no number; name a quantity or answer')
