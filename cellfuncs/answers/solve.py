@@ -6,16 +6,18 @@ from dataclasses import dataclass
 from functools import cached_property
 
 from cellfuncs import groups
+from cellfuncs.answers.body import BodyAnswers, solve_body
 from cellfuncs.answers.duct import DuctAnswers, solve_duct
 from cellfuncs.answers.free import FreeAnswers, solve_enclosure, solve_free
 from cellfuncs.answers.gap import GapAnswers, solve_gap
 from cellfuncs.answers.layer import LayerAnswers, solve_layer
+from cellfuncs.answers.mixed import solve_mixed
 from cellfuncs.answers.through import solve_through
 from cellfuncs.cases import labels
 from cellfuncs.cases.case import Case
 from cellfuncs.errors import CaseRefused, CellfuncsError
 
-Answers = DuctAnswers | LayerAnswers | FreeAnswers | GapAnswers
+Answers = DuctAnswers | LayerAnswers | FreeAnswers | GapAnswers | BodyAnswers
 _SOLVERS: Mapping[str, Callable[[Case], Answers]] = {
     "duct": solve_duct,
     "plate": solve_layer,
@@ -27,6 +29,8 @@ _SOLVERS: Mapping[str, Callable[[Case], Answers]] = {
     "falling film": solve_through,
     "free": solve_free,
     "enclosure": solve_enclosure,
+    "mixed": solve_mixed,
+    "body": solve_body,
     "gap": solve_gap,
 }
 
@@ -49,6 +53,8 @@ class Solution:
     def value(self, key: str) -> float | str:
         """A stated or derived quantity in SI, or the text of a choice."""
         derived = _DERIVED.get(key)
+        if key in _OF_A_FLOW and isinstance(self.answers, BodyAnswers):
+            derived = None
         found = derived(self) if derived else None
         if found is None and self.case.has(key):
             found = self.case.get(key)
@@ -63,7 +69,7 @@ class Solution:
         a = self.answers
         if isinstance(a, DuctAnswers):
             return a.shape.diameter
-        if isinstance(a, FreeAnswers):
+        if isinstance(a, FreeAnswers | BodyAnswers):
             return a.length
         return a.group_length if isinstance(a, LayerAnswers) else a.gap
 
@@ -95,8 +101,8 @@ def _attribute(name: str) -> Callable[[Solution], float | None]:
     return lambda s: getattr(s.answers, name, None)
 
 
-def _property(name: str) -> Callable[[Solution], float]:
-    return lambda s: getattr(s.answers.properties, name)
+def _property(name: str) -> Callable[[Solution], float | None]:
+    return lambda s: getattr(s.answers.properties, name, None)
 
 
 def _duct(find: Callable[[DuctAnswers], float | None]) -> Callable[[Solution], float | None]:
@@ -188,6 +194,10 @@ _DERIVED: Mapping[str, Callable[[Solution], float | str | None]] = {
     "rayleigh": _attribute("rayleigh"),
     "grashof": _attribute("grashof"),
     "overall_coefficient": _duct(lambda a: a.coefficient if a.case.has("ambient_temperature") else None),
+    "biot": _attribute("biot"),
+    "fourier": _attribute("fourier"),
+    "time_constant": _attribute("time_constant"),
+    "final_temperature": _attribute("final_temperature"),
     "transfer_units": _duct(lambda a: a.transfer_units),
     "coefficient": _attribute("coefficient"),
     "friction_factor": _attribute("friction"),
@@ -199,3 +209,20 @@ _DERIVED: Mapping[str, Callable[[Solution], float | str | None]] = {
     "wall_shear": _wall_shear,
     "friction_power": _friction_power,
 }
+
+# what a solid body does not have
+_OF_A_FLOW = frozenset(
+    {
+        "kinematic_viscosity",
+        "peclet",
+        "eckert",
+        "brinkman",
+        "stanton",
+        "mach",
+        "nahme",
+        "local_flux",
+        "viscosity",
+        "expansion",
+        "prandtl",
+    }
+)

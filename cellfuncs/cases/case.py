@@ -38,6 +38,8 @@ _ANSWERS = {
     "bed": _THROUGH,
     "falling film": _THROUGH,
     "free": _EXTERNAL,
+    "mixed": _EXTERNAL,
+    "body": ("wall temperature", "duty"),
     "enclosure": ("coefficient", "duty", "local flux"),
     "gap": ("peak temperature", "local flux"),
 }
@@ -125,11 +127,17 @@ class Case:
         else:
             default = _ANSWERS[self.flow][0]
         wanted = self.get("answer", default)
-        if wanted not in _ANSWERS[self.flow] or (wanted == "wall temperature" and self.wall == "temperature"):
+        if wanted not in _ANSWERS[self.flow] or self._wall_is_given(wanted):
             why = "the wall temperature is prescribed" if wanted == "wall temperature" else f"a {self.flow} has none"
-            rest = [a for a in _ANSWERS[self.flow] if a != "wall temperature" or self.wall == "flux"]
+            rest = [a for a in _ANSWERS[self.flow] if not self._wall_is_given(a)]
             raise CaseRefused(f'"answer" is {wanted}, but {why}; write one of: {", ".join(rest)}')
         return wanted
+
+    def _wall_is_given(self, answer: str) -> bool:
+        """Whether the answer is the wall's temperature where that is prescribed."""
+        if answer != "wall temperature" or self.flow == "body" or self.has("ambient_temperature"):
+            return False
+        return self.wall == "temperature"
 
     # -- geometry and flow ------------------------------------------------------------------
 
@@ -213,6 +221,17 @@ class Case:
         if "viscosity" not in known:
             known["viscosity"] = self.get("kinematic_viscosity") * known["density"]
         return Properties(*(known[name] for name in _OVERRIDES))
+
+    def property_of(self, name: str, temperature: float | None) -> float:
+        """One property of the substance, or the row that overrides it."""
+        stated = self._stated_properties.get(name)
+        if stated is not None:
+            return stated
+        if self.substance is None:
+            self.need(_OVERRIDES[name])
+        if temperature is None:
+            self.need("property_temperature")
+        return self.substance.get(name, temperature, self.pressure)
 
     def _from_substance(self, wanted: tuple[str, ...], temperature: float) -> dict[str, float]:
         get, pressure = self.substance.get, self.pressure
