@@ -100,8 +100,11 @@ _INPUTS: Mapping[str, Callable[[Facts], float]] = {
 _OWN_INPUTS: Mapping[str, Mapping[str, Callable[[Facts], float]]] = {
     "strouhal": {"length": lambda f: f.length},
     "biot": {
-        "length": lambda f: f.stated("wall_thickness"),
-        "conductivity": lambda f: f.stated("wall_conductivity"),
+        "length": lambda f: f.length if f.family == "body" else f.stated("wall_thickness"),
+        "conductivity": lambda f: (
+            f.properties.conductivity if f.family == "body" else f.stated("wall_conductivity")
+        ),
+        "coefficient": lambda f: f.coefficient,
     },
     "cavitation": {
         "pressure_absolute": lambda f: f.lowest_pressure,
@@ -119,6 +122,7 @@ _ONLY: Mapping[str, Callable[[Facts], bool]] = {
     "richardson": lambda f: f.family in ("through", "layer"),
     "strouhal": lambda f: f.family != "free",
     "galilei": lambda f: f.flow == FALLING_FILM,
+    "nusselt": lambda f: f.family != "body",  # the conductivity of a body is not that of the fluid
     "froude": lambda f: f.flow == FALLING_FILM,
 }
 
@@ -212,8 +216,8 @@ _HERE: Mapping[str, Words] = {
     "stanton": lambda value, f: f"exchanges {percent(value)} of what it could, on a wall as large as the flow area",
     "graetz": _graetz,
     "biot": _by_limits(
-        "lumped body", "the wall has one temperature across", "the wall's inside begins to lag",
-        "the wall's inside rules",
+        "lumped body", "one temperature inside", "the inside begins to lag",
+        "the inside rules",
     ),
     "fourier": _fourier,
     "mach": _by_limits(

@@ -79,6 +79,8 @@ def steady_stream(f: Facts) -> Figure:
 
 def steady_layer(f: Facts) -> Figure:
     """δT²/(α·t*) with δT = k/h: above it the coefficient itself is unsteady."""
+    if f.family == "body":
+        raise NoModel("what a body stores is a term of its own, see the term table")
     time = f.stated("time")
     thickness = f.properties.conductivity / f.coefficient
     settles = thickness**2 / f.properties.diffusivity
@@ -94,6 +96,8 @@ def regime(f: Facts) -> Figure:
         limit = gap_answers.TURBULENT_FROM
         state = FAILS if f.reynolds > limit else HOLDS
         return Figure(f.reynolds, f"laminar up to {num(limit)} on the gap", limit=limit, state=state)
+    if f.family == "body":
+        raise NoModel("nothing flows")
     if f.family == "free":
         words = f"Ra: {'laminar up to' if f.laminar else 'turbulent from'} {num(TURBULENT_FROM)}"
         return Figure(f.answers.rayleigh, words, limit=TURBULENT_FROM, state=HOLDS)
@@ -114,9 +118,10 @@ def regime(f: Facts) -> Figure:
     raise NoModel(f"the method's range covers the regimes of a {f.flow}")
 
 
-def _entry(f: Facts, prandtl: float) -> tuple[float, str]:
+def _entry(f: Facts, thermal: bool) -> tuple[float, str]:
     if f.flow != "duct":
         raise NoModel("concerns ducts")
+    prandtl = f.properties.prandtl if thermal else 1.0
     diameter = f.answers.shape.diameter
     entry = (_ENTRY_LAMINAR * f.reynolds * prandtl if f.laminar else _ENTRY_TURBULENT) * diameter
     return entry, f"entry {num(entry)} m of {num(f.length)} m"
@@ -124,13 +129,13 @@ def _entry(f: Facts, prandtl: float) -> tuple[float, str]:
 
 def developed_velocity(f: Facts) -> Figure:
     """Hydrodynamic entry length over length."""
-    entry, words = _entry(f, 1.0)
+    entry, words = _entry(f, thermal=False)
     return Figure(entry / f.length, words)
 
 
 def developed_temperature(f: Facts) -> Figure:
     """Thermal entry length over length."""
-    entry, words = _entry(f, f.properties.prandtl)
+    entry, words = _entry(f, thermal=True)
     if f.answers.method in _METHODS_WITH_ENTRY:
         words += f"; the coefficient ({f.answers.method}) counts the entry in, developed values would not hold early on"
     return Figure(entry / f.length, words)
@@ -184,6 +189,8 @@ def _mixed_layer(f: Facts) -> Figure:
     upright, remark = _way(f)
     gr = _grashof(f, f.group_length, f.driving)
     re = f.reynolds
+    if f.flow == "mixed":
+        return Figure(gr / re**2, "Gr/Re²; the blend counts both", "mixed convection, upright surface", state=HOLDS)
     if upright or f.flow != "plate":
         return Figure(gr / re**2, f"Gr/Re² with Gr {num(gr)}{remark}", "mixed convection, upright surface")
     return Figure(gr / re**2.5, f"Gr/Re^5/2 with Gr {num(gr)}, level", "mixed convection, level surface")

@@ -101,7 +101,7 @@ def _falling(f: Facts) -> _Balance:
 
 def _layer(f: Facts) -> _Balance:
     inertia = _inertia(f)
-    body = f.flow != "plate"
+    body = f.flow != "plate" and f.case.get("surface") != "vertical plate"
     pressure = absent("pressure", "no pressure gradient along a flat plate")
     if body:
         says = "around a body pressure and inertia are of one size"

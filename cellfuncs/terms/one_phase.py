@@ -29,8 +29,12 @@ def _vapour_pressure(f: Facts, temperature: float) -> float:
 
 
 def _needs_liquid(f: Facts, words: str) -> None:
-    if f.case.substance is not None and f.phase == "gas":
+    if f.case.substance is None:
+        return
+    if f.phase == "gas":
         raise NoModel(f"{f.substance.name} is a gas here: {words}")
+    if f.phase == "solid":
+        raise NoModel(f"{f.substance.name} is a solid; the fluid around it is judged in a case of its own")
 
 
 def boiling(f: Facts) -> Figure:
