@@ -16,6 +16,8 @@ from cellfuncs.errors import CaseRefused, CellfuncsError
 Row = tuple[Any, ...]  # number of the row in the block, label, value, unit, ±
 _HEAD_WORDS = frozenset({"value", "values", "unit", "units", "quantity"})
 _COLUMNS = 5
+# SI; far beyond any case, and near enough that no formula runs out of numbers
+_SMALLEST, _LARGEST = 1e-30, 1e30
 _UNITLESS_KINDS = frozenset({"dimensionless", "fraction"})
 
 
@@ -183,6 +185,8 @@ def _quantity_row(
         if understood and understood.offset and entry.kind == "pressure_absolute" and "absolute" in label.casefold():
             raise CaseRefused(f"says absolute, but {unit} is a gauge unit; keep one")
         quantities.check_physical(si, entry.kind)
+        if si and not _SMALLEST <= abs(si) <= _LARGEST:
+            raise CaseRefused(f"{si:.3g} {quantities.KINDS[entry.kind].si_unit} is beyond anything physical")
         _check_sign(entry.key, si)
         spread = _plus_minus(plus_minus, own_plus_minus, understood, entry.kind, si)
     except CellfuncsError as error:

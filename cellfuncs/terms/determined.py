@@ -144,6 +144,8 @@ def _beside_one(first: str, second: str) -> Words:
     def words(value: float, f: Facts) -> str:
         if value > 3.0:
             return f"{first} outweighs {second}, {num(value)} to 1"
+        if value == 0.0:
+            return f"no {first}"
         if value < 1.0 / 3.0:
             return f"{second} outweighs {first}, {num(1.0 / value)} to 1"
         return f"{first} and {second} are of one size"

@@ -184,3 +184,9 @@ def test_identities_of_a_case(cf):
     assert get("Re") == pytest.approx(
         cf("REYNOLDS", get("velocity"), get("diameter"), get("density"), get("viscosity"))
     )
+
+
+@pytest.mark.parametrize("value", [1e300, 1e-300])
+def test_a_number_beyond_anything_physical_is_refused(cf, value):
+    answer = cf("TERMS", [["flow kind", "duct", ""], ["velocity", value, "m/s"]])
+    assert answer.startswith('! block: "velocity"') and "beyond anything physical" in answer
