@@ -160,7 +160,7 @@ def excel_here() -> Iterator[Line]:
 
 
 def calc_here() -> Iterator[Line]:
-    from calc import office as offices
+    from calc import libreoffice as offices
 
     try:
         office = offices.find()
@@ -189,6 +189,8 @@ def extensions_of(profile: Path, program: Path) -> list[Path]:
 
 
 def calc_extension(copies: list[Path]) -> Iterator[Line]:
+    from calc import interpreter as of_user
+
     if not copies:
         yield Line("Calc extension", NOT_SET_UP, "not installed for this user", CALC)
         return
@@ -199,7 +201,11 @@ def calc_extension(copies: list[Path]) -> Iterator[Line]:
     )
     for copy in copies:
         made = json.loads(copy.read_text("utf-8"))
-        python = Path(made["command"][0])
+        try:
+            python = Path((made["command"] or of_user.find())[0])
+        except of_user.Unknown as unknown:
+            yield Line("Calc extension", FAILS, f"it names no Python: {unknown}", CALC)
+            continue
         if not python.exists():
             yield Line("Calc extension", FAILS, f"its interpreter {python} is not there", CALC)
         elif here.text is None:

@@ -7,8 +7,7 @@ import tempfile
 from functools import cache
 from pathlib import Path
 
-from . import command
-from . import office as offices
+from . import installer, libreoffice
 from .session import Session
 
 SAMPLE = Path(__file__).resolve().parent.parent.parent / "workbooks" / "coolant_channel.xlsx"
@@ -23,9 +22,9 @@ Measured = tuple[str, float, float, str, str]
 def _session(with_extension: bool) -> Session:
     folder = Path(tempfile.mkdtemp(prefix="cellfuncs-bench-"))
     atexit.register(shutil.rmtree, folder, ignore_errors=True)
-    office = offices.find()
+    office = libreoffice.find()
     if with_extension:
-        command.install(office, lambda: Path(sys.executable), folder)
+        installer.install(office, lambda: Path(sys.executable), folder)
     session = Session(office, folder)
     atexit.register(session.close)
     return session
@@ -81,7 +80,7 @@ def opening() -> Measured:
 def available() -> bool:
     """Whether there is a LibreOffice to measure."""
     try:
-        offices.find()
-    except offices.Unusable:
+        libreoffice.find()
+    except libreoffice.Unusable:
         return False
     return True

@@ -1,5 +1,8 @@
-"""Makes cellfuncs.idl and cellfuncs.rdb anew, after the catalogue has changed. Needs LibreOffice's SDK
-(Debian: libreoffice-dev)."""
+"""Makes cellfuncs.idl, cellfuncs.rdb and cellfuncs.oxt anew, after the catalogue or hosts/calc/office has changed.
+
+Run it in Cellfuncs' environment. A function that is new, gone or has other arguments needs LibreOffice's SDK
+(Debian: libreoffice-dev); other changes do not.
+"""
 
 import hashlib
 import subprocess
@@ -9,9 +12,9 @@ from pathlib import Path
 
 sys.path.insert(0, str(Path(__file__).resolve().parent.parent))
 
-from calc import extension
-from calc import office as offices
-from calc.office import Office, Unusable
+from calc import extension, libreoffice
+from cellfuncs.hosts.calc.installer import READY
+from cellfuncs.hosts.calc.libreoffice import Office, Unusable
 
 IDL = extension.HERE / "cellfuncs.idl"
 
@@ -41,17 +44,28 @@ def mark(types: bytes) -> str:
     return f"// cellfuncs.rdb made from this: {hashlib.sha256(types).hexdigest()}\n"
 
 
-def main() -> int:
-    """Write both files; 2 with one line when it cannot be done."""
-    text = extension.idl()
+def in_order(text: str) -> bool:
+    """Whether both files in the repository are those of this interface."""
     try:
-        types = compile_types(offices.find(), text)
-    except Unusable as unusable:
-        print(unusable, file=sys.stderr)
-        return 2
-    extension.RDB.write_bytes(types)
-    IDL.write_text(mark(types) + text, "utf-8")
-    print(f"wrote {IDL.name} and {extension.RDB.name}")
+        return IDL.read_text("utf-8") == mark(extension.RDB.read_bytes()) + text
+    except FileNotFoundError:
+        return False
+
+
+def main() -> int:
+    """Write the files; 2 with one line when it cannot be done."""
+    text = extension.idl()
+    if not in_order(text):
+        try:
+            types = compile_types(libreoffice.find(), text)
+        except Unusable as unusable:
+            print(unusable, file=sys.stderr)
+            return 2
+        extension.RDB.write_bytes(types)
+        IDL.write_text(mark(types) + text, "utf-8", newline="\n")
+        print(f"wrote {IDL} and {extension.RDB}")
+    extension.build(READY)
+    print(f"wrote {READY}")
     return 0
 
 

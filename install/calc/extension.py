@@ -1,34 +1,27 @@
-"""Builds the extension for LibreOffice Calc from the catalogue: `extension.py OUT.oxt`.
+"""The files of the extension for LibreOffice Calc, from the catalogue; `compile_types.py` writes them.
 
 The interface of the functions is compiled to cellfuncs.rdb, which stays in the repository because users have no
-SDK; `compile_types.py` makes it anew when the catalogue has changed.
+SDK, and so does the whole extension (`installer.READY`), which names no Python.
 """
 
 import json
-import sys
-import zipfile
 from pathlib import Path
 from xml.sax.saxutils import escape, quoteattr
 
+import cellfuncs
+from cellfuncs.cells import catalogue
+from cellfuncs.hosts.calc.installer import IDENTIFIER, SETTINGS, pack
+
 HERE = Path(__file__).resolve().parent
-ROOT = HERE.parent.parent
-sys.path.insert(0, str(ROOT))
-
-import cellfuncs  # noqa: E402
-from cellfuncs.cells import catalogue  # noqa: E402
-from cellfuncs.hosts.calc import helper  # noqa: E402
-
-IDENTIFIER = "cellfuncs.calc"
 SERVICE = "cellfuncs.Functions"  # Calc writes it before our names: CELLFUNCS.FUNCTIONS.CF_…
 INTERFACE = "XFunctions"
 REPAIR = "cellfuncs.Repair"
 DOCUMENT = "com.sun.star.sheet.SpreadsheetDocument"
 EVENTS = ("onDocumentAdded", "onDocumentOpened")  # loaded, with a window or without; shown in a window
 RDB = HERE / "cellfuncs.rdb"
-IN_OFFICE = ROOT / "cellfuncs" / "hosts" / "calc" / "office"
+IN_OFFICE = Path(cellfuncs.__file__).resolve().parent / "hosts" / "calc" / "office"
 OLDEST_OFFICE = "7.0"
 CATEGORY = "Add-In"  # Calc knows no groups but its own; the family stands first in the help
-SAME_TIME = (1980, 1, 1, 0, 0, 0)  # the same input makes the same file
 
 # In the catalogue these count as tables, yet their answer is one cell: a text there must compare as a text does.
 ONE_CELL = {"CF_FAULTS", "CF_TERM"}
@@ -161,36 +154,26 @@ def description() -> str:
     )
 
 
-def contents(command: list[str]) -> dict[str, bytes]:
-    """Every file of the extension; `command` starts the helper process."""
+def contents() -> dict[str, bytes]:
+    """Every file of the extension."""
     kinds = {function.name: kind_of(function) for function in catalogue.functions().values()}
-    settings = {"version": cellfuncs.__version__, "command": command, "functions": kinds}
+    settings = {"version": cellfuncs.__version__, "command": [], "functions": kinds}
     texts = {
         "META-INF/manifest.xml": manifest(),
         "description.xml": description(),
         "cellfuncs.components": components(),
         "CalcAddIns.xcu": add_ins(),
         "Jobs.xcu": jobs(),
-        "helper.json": json.dumps(settings, indent=1),
+        SETTINGS: json.dumps(settings, indent=1),
     }
     files = {name: text.encode("utf-8") for name, text in texts.items()}
     files["cellfuncs.rdb"] = RDB.read_bytes()
     for path in sorted(IN_OFFICE.glob("*.py")):
         place = "" if path.name == "component.py" else "pythonpath/cellfuncs_in_office/"
-        files[place + path.name] = path.read_bytes()
+        files[place + path.name] = path.read_text("utf-8").encode("utf-8")  # the same line ends everywhere
     return files
 
 
-def build(out: Path, python: str = sys.executable, folder: Path = ROOT) -> Path:
-    """Write the extension to `out`; `python` runs the helper, which finds Cellfuncs in `folder`."""
-    with zipfile.ZipFile(out, "w") as file:
-        for name, data in contents(helper.command(python, str(folder))).items():
-            entry = zipfile.ZipInfo(name, SAME_TIME)
-            file.writestr(entry, data, zipfile.ZIP_DEFLATED)
-    return out
-
-
-if __name__ == "__main__":
-    if len(sys.argv) != 2:
-        sys.exit("extension.py OUT.oxt")
-    print(build(Path(sys.argv[1])))
+def build(out: Path) -> None:
+    """Write the extension, without a Python in it."""
+    pack(out, contents())

@@ -7,18 +7,18 @@ import uuid
 from pathlib import Path
 from typing import Any
 
-from . import office as offices
-from .office import Office, Unusable
+from . import libreoffice
 
 DRIVER = Path(__file__).resolve().parent / "driver.py"
 
 
-def python_with_uno(office: Office) -> Path:
+def python_with_uno(office: libreoffice.Office) -> Path:
     """A Python that can talk to the office. Raises Unusable."""
     for python in office.pythons_with_uno():
-        if subprocess.run([python, "-c", "import uno"], capture_output=True, env=offices.variables()).returncode == 0:
+        tried = subprocess.run([python, "-c", "import uno"], capture_output=True, env=libreoffice.variables())
+        if tried.returncode == 0:
             return python
-    raise Unusable(offices.NO_PYTHON)
+    raise libreoffice.Unusable(libreoffice.NO_PYTHON)
 
 
 class Session:
@@ -27,11 +27,11 @@ class Session:
     `patience` [s] is how long a cell waits for its answer there.
     """
 
-    def __init__(self, office: Office, folder: Path, patience: float = 30.0) -> None:
+    def __init__(self, office: libreoffice.Office, folder: Path, patience: float = 30.0) -> None:
         self.mark = uuid.uuid4().hex
-        variables = offices.variables() | {"CELLFUNCS_PATIENCE": str(patience), "CELLFUNCS_MARK": self.mark}
+        variables = libreoffice.variables() | {"CELLFUNCS_PATIENCE": str(patience), "CELLFUNCS_MARK": self.mark}
         self._process = subprocess.Popen(
-            [python_with_uno(office), DRIVER, office.program("soffice"), *offices.settings_of(folder)],
+            [python_with_uno(office), DRIVER, office.program("soffice"), *libreoffice.settings_of(folder)],
             stdin=subprocess.PIPE,
             stdout=subprocess.PIPE,
             stderr=subprocess.DEVNULL,

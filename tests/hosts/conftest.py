@@ -10,8 +10,8 @@ INSTALL = Path(__file__).resolve().parent.parent.parent / "install"
 if str(INSTALL) not in sys.path:
     sys.path.insert(0, str(INSTALL))
 
-from calc import command, session  # noqa: E402
-from calc import office as offices  # noqa: E402
+from calc import installer, session  # noqa: E402
+from calc import libreoffice as offices  # noqa: E402
 
 PATIENCE = 10.0  # s; a call that hangs on purpose is waited for
 
@@ -33,7 +33,7 @@ def libreoffice():
 def calc(libreoffice, tmp_path_factory):
     """Calc with the extension, put in by the installer into a folder with a space and an umlaut."""
     folder = tmp_path_factory.mktemp("Büro neu")
-    command.install(libreoffice, lambda: Path(sys.executable), folder)
+    installer.install(libreoffice, lambda: Path(sys.executable), folder)
     running = session.Session(libreoffice, folder, PATIENCE)
     yield running
     running.close()

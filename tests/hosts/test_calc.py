@@ -14,6 +14,7 @@ import openpyxl
 import pytest
 import xlsxwriter
 
+from cellfuncs import __version__
 from cellfuncs.cells import catalogue
 from cellfuncs.hosts import embedded
 
@@ -21,8 +22,8 @@ ROOT = Path(__file__).resolve().parent.parent.parent
 if str(ROOT / "install") not in sys.path:
     sys.path.insert(0, str(ROOT / "install"))
 
-from calc import command  # noqa: E402
-from calc import office as offices  # noqa: E402
+from calc import installer, interpreter  # noqa: E402
+from calc import libreoffice as offices  # noqa: E402
 from calc.session import with_mark  # noqa: E402
 
 SAMPLES = sorted((ROOT / "workbooks").glob("*.xlsx"))
@@ -309,11 +310,12 @@ def test_a_call_that_hangs_is_ended_and_the_next_one_works(calc):
 
 
 def test_the_helper_starts_with_the_first_call_and_ends_with_the_office(libreoffice, tmp_path, monkeypatch):
-    """Put in, one file converted on the command line, taken out; all in a folder of its own."""
+    """Put in from an activated environment, one file converted on the command line, taken out; all in one folder."""
     office = libreoffice
+    monkeypatch.setenv("PATH", os.pathsep.join((str(Path(sys.executable).parent), os.environ["PATH"])))
     monkeypatch.setenv("CELLFUNCS_MARK", tmp_path.name)
     private = tmp_path / "office"
-    assert "a cell answered" in command.install(office, lambda: Path(sys.executable), private)
+    assert "a cell answered" in installer.install(office, lambda: Path(sys.executable), private)
     assert all(map(_gone, with_mark(tmp_path.name)))
     path = tmp_path / "short names.xlsx"
     book = xlsxwriter.Workbook(path)
@@ -323,8 +325,19 @@ def test_the_helper_starts_with_the_first_call_and_ends_with_the_office(libreoff
     offices.run([office.program("soffice"), *offices.settings_of(private), *words])
     assert (tmp_path / "short names.csv").read_text().strip() == "39921"
     assert all(map(_gone, with_mark(tmp_path.name)))
-    assert "is removed" in command.remove(office, private)
-    assert "nothing to remove" in command.remove(office, private)
+    assert "is removed" in installer.remove(office, private)
+    assert "nothing to remove" in installer.remove(office, private)
+
+
+@pytest.mark.skipif(os.name == "nt", reason="the place of the user is set as other systems do")
+def test_an_extension_put_in_by_hand_calculates_with_the_noted_python(libreoffice, tmp_path, monkeypatch):
+    private = tmp_path / "office"
+    monkeypatch.setenv("HOME", str(tmp_path))
+    monkeypatch.setenv("PATH", "/usr/bin:/bin")
+    with pytest.raises(offices.Unusable, match=re.escape(interpreter.UNKNOWN[:60])):
+        installer.add(libreoffice, installer.READY, private)
+    installer.use(Path(sys.executable))
+    assert installer.calculated(libreoffice, private) == f"{__version__},39920"
 
 
 # -- files -------------------------------------------------------------------------------------------

@@ -14,16 +14,16 @@ from hypothesis import given
 from hypothesis import strategies as st
 
 from cellfuncs.cells import catalogue
-from cellfuncs.hosts.calc import helper as helper_process
-from cellfuncs.hosts.calc.office import calls, pipe, repair, stored
+from cellfuncs.hosts.calc import __main__ as package_command
+from cellfuncs.hosts.calc.office import calls, interpreter, pipe, repair, stored
 
 ROOT = Path(__file__).resolve().parent.parent.parent
 IN_OFFICE = sorted((ROOT / "cellfuncs" / "hosts" / "calc" / "office").glob("*.py"))
 if str(ROOT / "install") not in sys.path:
     sys.path.insert(0, str(ROOT / "install"))
 
-from calc import command, compile_types, extension  # noqa: E402
-from calc import office as offices  # noqa: E402
+from calc import command, compile_types, extension, installer  # noqa: E402
+from calc import libreoffice as offices  # noqa: E402
 from environment import Trouble  # noqa: E402
 
 # -- what runs inside the office ---------------------------------------------------------------------
@@ -175,7 +175,7 @@ def helper():
     made = []
 
     def make(words=None, patience=10.0):
-        words = helper_process.command(sys.executable, str(ROOT)) if words is None else words
+        words = interpreter.command(sys.executable, str(ROOT)) if words is None else words
         made.append(calls.Helper(words, patience))
         return made[-1]
 
@@ -196,7 +196,6 @@ def test_the_helper_answers_as_the_catalogue_does(helper, cf):
 @pytest.mark.parametrize(
     ("words", "said"),
     [
-        ([], "none recorded"),
         (["/nowhere/python"], "/nowhere/python"),
         ([sys.executable, "-I", "-c", "raise SystemExit('no module of that name')"], "no module of that name"),
         ([sys.executable, "-I", "-c", "print('not a message')"], "does not start"),
@@ -221,7 +220,7 @@ def test_a_calculation_that_hangs_is_ended(helper):
 
 # -- the extension -----------------------------------------------------------------------------------
 
-STALE = "the catalogue has changed: run install/calc/compile_types.py (needs LibreOffice's SDK) and commit both files"
+STALE = "the catalogue or the office files have changed: run install/calc/compile_types.py and commit its three files"
 
 
 def test_the_types_are_those_of_the_catalogue():
@@ -254,9 +253,21 @@ def test_a_function_that_answers_in_one_cell_is_declared_so(cf):
             assert extension.kind_of(function) == "cell"
 
 
-def test_the_extension_holds_what_its_manifest_names(tmp_path):
-    path = extension.build(tmp_path / "x.oxt", "/a place/ä/python", tmp_path)
-    with zipfile.ZipFile(path) as file:
+def test_the_ready_extension_is_that_of_the_catalogue(tmp_path):
+    extension.build(tmp_path / "x.oxt")
+    assert (tmp_path / "x.oxt").read_bytes() == installer.READY.read_bytes(), STALE
+
+
+def test_what_is_in_order_is_not_compiled_again(monkeypatch, tmp_path):
+    monkeypatch.setattr(compile_types, "compile_types", None)
+    monkeypatch.setattr(compile_types, "READY", tmp_path / "x.oxt")
+    assert compile_types.in_order(extension.idl()) and not compile_types.in_order(extension.idl() + "\n")
+    assert compile_types.main() == 0
+    assert (tmp_path / "x.oxt").exists()
+
+
+def test_the_extension_holds_what_its_manifest_names():
+    with zipfile.ZipFile(installer.READY) as file:
         names = set(file.namelist())
         listed = {
             value
@@ -270,17 +281,109 @@ def test_the_extension_holds_what_its_manifest_names(tmp_path):
                 ElementTree.fromstring(file.read(name))
         settings = json.loads(file.read("helper.json"))
         assert b"AdminTime" not in file.read("Jobs.xcu")
-    assert settings["command"][0] == "/a place/ä/python" and settings["command"][-1] == str(tmp_path)
+    assert settings["command"] == []
     assert set(settings["functions"]) == set(catalogue.functions())
-    again = extension.build(tmp_path / "y.oxt", "/a place/ä/python", tmp_path)
-    assert again.read_bytes() == path.read_bytes()
+
+
+def test_what_is_installed_names_its_python_and_is_else_the_same(tmp_path):
+    installer.write(tmp_path / "x.oxt", Path("/a place/ä/python"))
+    with zipfile.ZipFile(installer.READY) as ready, zipfile.ZipFile(tmp_path / "x.oxt") as written:
+        assert ready.namelist() == written.namelist()
+        assert [name for name in ready.namelist() if ready.read(name) != written.read(name)] == ["helper.json"]
+        settings, before = json.loads(written.read("helper.json")), json.loads(ready.read("helper.json"))
+    assert settings == before | {"command": interpreter.command("/a place/ä/python", str(ROOT))}
+
+
+# -- which Python calculates -------------------------------------------------------------------------
+
+
+@pytest.fixture
+def home(tmp_path, monkeypatch):
+    """A user without any note, and nothing on PATH."""
+    home = tmp_path / "home"
+    home.mkdir()
+    for variable in ("HOME", "USERPROFILE"):
+        monkeypatch.setenv(variable, str(home))
+    monkeypatch.setenv("PATH", "")
+    return home
+
+
+def with_command(folder, mode=0o755):
+    """A folder with the command `cellfuncs` and a Python beside it."""
+    folder.mkdir(parents=True)
+    end = ".exe" if os.name == "nt" else ""
+    for name in ("cellfuncs", "python" if end else "python3"):
+        (folder / (name + end)).write_text("")
+        (folder / (name + end)).chmod(mode)
+    return folder
+
+
+def test_a_cell_says_when_no_python_is_known(helper, home):
+    fault = helper([]).ask("CF_VERSION", ())
+    assert fault == calls.fault(interpreter.UNKNOWN) and "python -m cellfuncs.hosts.calc use" in fault
+    assert len(fault) < 255
+
+
+def test_the_python_that_a_user_noted_calculates(helper, home, capsys):
+    one = helper([])
+    assert one.ask("CF_VERSION", ()).startswith("! ")
+    assert package_command.main(["use"]) == 0
+    assert str(installer.READY) in capsys.readouterr().out
+    one.failed = ("", 0.0)  # as after the pause
+    assert isinstance(one.ask("CF_REYNOLDS", (2.0, 0.02, 998.0, 0.001)), float)
+    assert package_command.main(["use"]) == 0  # again, over the note before
+
+
+def test_a_note_goes_before_path(home, monkeypatch, tmp_path):
+    folder = with_command(tmp_path / "bin")
+    monkeypatch.setenv("PATH", str(folder))
+    assert interpreter.find()[0].startswith(str(folder / "python"))
+    installer.use(Path(sys.executable))
+    assert interpreter.find() == interpreter.command(sys.executable, str(ROOT))
+
+
+@pytest.mark.parametrize("text", ["", "[1]", '{"python": "python3", "folder": "/x"}', '{"python": 3, "folder": "/x"}'])
+def test_a_damaged_note_is_told_and_nothing_else_is_started(home, monkeypatch, tmp_path, text):
+    monkeypatch.setenv("PATH", str(with_command(tmp_path / "bin")))
+    (home / ".cellfuncs").mkdir()
+    (home / ".cellfuncs" / "calc.json").write_text(text)
+    with pytest.raises(interpreter.Unknown, match="is damaged"):
+        interpreter.find()
+
+
+@pytest.mark.skipif(os.name == "nt", reason="there the folder of a user belongs to the user")
+def test_a_note_that_others_may_write_is_not_used(home, monkeypatch):
+    installer.use(Path(sys.executable))
+    note = home / ".cellfuncs" / "calc.json"
+    assert note.stat().st_mode & 0o077 == 0
+    note.chmod(0o666)
+    with pytest.raises(interpreter.Unknown, match="others may write"):
+        interpreter.find()
+    note.chmod(0o600)
+    monkeypatch.setattr(os, "geteuid", lambda: note.stat().st_uid + 1)
+    with pytest.raises(interpreter.Unknown, match="others may write"):
+        interpreter.find()
+
+
+@pytest.mark.skipif(os.name == "nt", reason="links and rights of other systems")
+def test_path_is_searched_in_whole_folders_only(home, monkeypatch, tmp_path):
+    folder = with_command(tmp_path / "bin")
+    monkeypatch.chdir(folder)
+    for path in ("", ".", f"{os.pathsep}bin", str(with_command(tmp_path / "not to run", 0o644))):
+        monkeypatch.setenv("PATH", path)
+        with pytest.raises(interpreter.Unknown):
+            interpreter.find()
+    (tmp_path / "links").mkdir()
+    (tmp_path / "links" / "cellfuncs").symlink_to(folder / "cellfuncs")
+    monkeypatch.setenv("PATH", os.pathsep.join(("links", str(tmp_path / "links"))))
+    assert interpreter.find() == interpreter.command(str(folder / "python3"))
 
 
 # -- the installer -----------------------------------------------------------------------------------
 
 
 @pytest.fixture
-def machine(tmp_path, monkeypatch):
+def machine(tmp_path, monkeypatch, home):
     """An office of shell scripts; `say` sets what unopkg prints and its code."""
     program = tmp_path / "program"
     program.mkdir()
@@ -306,6 +409,17 @@ def refused(*words):
     return text
 
 
+@pytest.mark.parametrize("mark", ["pyvenv.cfg", "conda-meta"])
+def test_an_activated_environment_is_kept_from_the_office(home, monkeypatch, tmp_path, mark):
+    folders = [with_command(tmp_path / name / "bin") for name in ("before", "environment", "after")]
+    (tmp_path / "environment" / mark).mkdir()
+    monkeypatch.setenv("PATH", os.pathsep.join(map(str, folders)))
+    monkeypatch.setenv("VIRTUAL_ENV", str(tmp_path / "environment"))
+    variables = offices.variables()
+    assert variables["PATH"].split(os.pathsep) == [str(folders[0]), str(folders[2])]
+    assert "VIRTUAL_ENV" not in variables
+
+
 def test_without_libreoffice_it_says_so(machine, monkeypatch):
     monkeypatch.setenv("CELLFUNCS_OFFICE", str(machine[0] / "nowhere"))
     assert "there is no soffice" in refused()
@@ -318,7 +432,7 @@ def test_without_libreoffice_it_says_so(machine, monkeypatch):
 @pytest.mark.skipif(os.name == "nt", reason="the office of this test is made of shell scripts")
 def test_what_stands_in_the_way_is_told(machine, monkeypatch):
     folder, say = machine
-    monkeypatch.setattr(command, "PAUSE", 0.0)
+    monkeypatch.setattr(installer, "PAUSE", 0.0)
     assert "did not calculate" in refused()
     say("ERROR: The following extension cannot be read", 1)
     assert refused() == "unopkg add failed: ERROR: The following extension cannot be read"
@@ -334,8 +448,23 @@ def test_what_stands_in_the_way_is_told(machine, monkeypatch):
 
 @pytest.mark.skipif(os.name == "nt", reason="the office of this test is made of shell scripts")
 def test_removing_what_is_not_there_is_no_error(machine, capsys):
+    installer.use(Path(sys.executable))
     assert command.main(["--remove"]) == 0
     assert "nothing to remove" in capsys.readouterr().out
+    assert not os.path.exists(interpreter.user_file())
+
+
+@pytest.mark.skipif(os.name == "nt", reason="the office of this test is made of shell scripts")
+def test_the_command_of_the_package_says_the_same(machine, monkeypatch, capsys):
+    monkeypatch.setattr(installer, "PAUSE", 0.0)
+    assert package_command.main(["remove"]) == 0
+    assert package_command.main(["install"]) == 2
+    monkeypatch.setenv("CELLFUNCS_OFFICE", str(machine[0] / "nowhere"))
+    assert package_command.main(["install"]) == 2
+    said = capsys.readouterr()
+    assert "nothing to remove" in said.out
+    first, second = said.err.splitlines()
+    assert "did not calculate" in first and "there is no soffice" in second
 
 
 def test_the_extension_alone_is_written(machine, capsys):

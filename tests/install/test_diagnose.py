@@ -319,10 +319,13 @@ def test_an_extension_in_order(extension, tmp_path):
         ({"version": "0.0.1"}, "version 0.0.1"),
         ({"functions": {"CF_A": "number"}}, "other functions"),
         ({"command": ["/gone/python"]}, "interpreter /gone/python"),
+        ({"command": []}, "it names no Python"),
     ],
 )
-def test_an_extension_that_does_not_fit(extension, change, words):
+def test_an_extension_that_does_not_fit(extension, change, words, tmp_path, monkeypatch):
     file, made = extension
+    for variable in ("HOME", "USERPROFILE", "PATH"):
+        monkeypatch.setenv(variable, str(tmp_path))
     file.write_text(json.dumps(made | change), "utf-8")
     (line,) = diagnose.calc_extension([file])
     assert line.state == FAILS and words in line.text and "start.py calc" in line.advice
@@ -336,7 +339,7 @@ def test_a_removed_extension_does_not_count(extension, tmp_path):
 
 
 def test_no_libreoffice_and_one_without_python(monkeypatch, tmp_path):
-    from calc import office as offices
+    from calc import libreoffice as offices
 
     monkeypatch.setenv("CELLFUNCS_OFFICE", str(tmp_path))
     assert [line.state for line in diagnose.calc_here()] == [NOT_SET_UP]

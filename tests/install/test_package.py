@@ -2,6 +2,7 @@
 
 import ast
 import email
+import json
 import os
 import re
 import shutil
@@ -17,6 +18,7 @@ import cellfuncs
 
 ROOT = Path(__file__).resolve().parent.parent.parent
 PACKAGE = ROOT / "cellfuncs"
+EXTENSION = "cellfuncs/hosts/calc/cellfuncs.oxt"
 BUILD = "import sys; from setuptools import build_meta as b; out = sys.argv[1]; b.build_wheel(out); b.build_sdist(out)"
 # Modules of the office itself, and the name under which it holds our files; they come from no package index.
 OFFICE = {"uno", "unohelper", "com", "cellfuncs_in_office"}
@@ -57,7 +59,7 @@ def test_the_wheel_holds_the_package_with_its_data_and_nothing_else(wheel):
         assert file.testzip() is None
         names = set(file.namelist())
     assert {name for name in names if ".dist-info/" not in name} == files_of_package()
-    assert {"cellfuncs/LICENSE", "cellfuncs/CHANGES.md", "cellfuncs/data/units.csv"} <= names
+    assert {"cellfuncs/LICENSE", "cellfuncs/CHANGES.md", "cellfuncs/data/units.csv", EXTENSION} <= names
     assert any(name.endswith(".dist-info/licenses/cellfuncs/LICENSE") for name in names)
 
 
@@ -65,7 +67,7 @@ def test_the_sdist_holds_what_the_wheel_is_made_of(built):
     (path,) = built.glob("*.tar.gz")
     with tarfile.open(path) as file:
         names = {name.partition("/")[2] for name in file.getnames()}
-    assert files_of_package() | {"pyproject.toml", "README.md"} <= names
+    assert files_of_package() | {"pyproject.toml", "README.md", EXTENSION} <= names
 
 
 def test_name_version_and_licence(wheel, metadata):
@@ -116,6 +118,7 @@ def unpacked(wheel, tmp_path_factory):
 
 def run(unpacked, folder, *words):
     variables = os.environ | {"PYTHONPATH": str(unpacked), "PYTHONDONTWRITEBYTECODE": "1", "PYTHONUTF8": "1"}
+    variables |= {"HOME": str(folder), "USERPROFILE": str(folder)}
     return subprocess.run(
         [sys.executable, *map(str, words)], cwd=folder, env=variables, capture_output=True, encoding="utf-8"
     )
@@ -141,3 +144,11 @@ def test_the_command_of_the_wheel_is_the_command_line(wheel, unpacked, tmp_path)
     assert re.search(r"^cellfuncs\s*=\s*cellfuncs\.cli:main$", points, re.MULTILINE)
     shown = run(unpacked, tmp_path, "-c", "import sys; from cellfuncs.cli import main; sys.exit(main(['--version']))")
     assert shown.stdout.strip() == f"cellfuncs {cellfuncs.__version__}"
+
+
+def test_the_extension_for_calc_is_found_in_what_the_wheel_holds(unpacked, tmp_path):
+    done = run(unpacked, tmp_path, "-m", "cellfuncs.hosts.calc", "use")
+    assert (done.returncode, done.stderr) == (0, "")
+    assert str(unpacked / EXTENSION) in done.stdout
+    noted = json.loads((tmp_path / ".cellfuncs" / "calc.json").read_text("utf-8"))
+    assert noted == {"python": sys.executable, "folder": str(unpacked)}

@@ -1,6 +1,6 @@
 """The helper process: answers the calls of cells that the office sends over a pipe.
 
-Started by the extension as ``python -I -c "…" FOLDER`` in Cellfuncs' own environment. It ends when the pipe does,
+Started by the extension (``interpreter.command``) in Cellfuncs' own environment. It ends when the pipe does,
 which is when the office ends.
 """
 
@@ -12,17 +12,9 @@ import time
 from typing import Any
 
 from cellfuncs import __version__
-from cellfuncs.hosts.calc.office import pipe
+from cellfuncs.hosts.calc.office import calls, pipe
 
 LONGEST_CALL = 120.0  # s; the office ends a call long before, unless the office itself is gone
-
-# What the extension records as the command: no packages but the environment's own, the folder of Cellfuncs first.
-START = "import sys; sys.path.insert(0, sys.argv[1]); from cellfuncs.hosts.calc.helper import main; main()"
-
-
-def command(python: str, folder: str) -> list[str]:
-    """The command line that starts the helper."""
-    return [python, "-I", "-X", "utf8", "-c", START, folder]
 
 
 def answer(call: list[Any], functions: Any) -> Any:
@@ -30,7 +22,7 @@ def answer(call: list[Any], functions: Any) -> Any:
     name, *values = call
     function = functions.get(name)
     if function is None:
-        return f"! {name}: not in Cellfuncs {__version__}; run install/start.py calc again"
+        return f"! {name}: not in Cellfuncs {__version__}; {calls.AGAIN}"
     return function.call(*values)
 
 

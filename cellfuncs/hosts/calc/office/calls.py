@@ -9,13 +9,13 @@ import os
 import threading
 import time
 
-from . import pipe
+from . import interpreter, pipe
 
 PATIENCE = 30.0  # s for one call
 START = 90.0  # s until the helper answers for the first time; slow disks and virus scanners take their share
 REST = 5.0  # s before a start that failed is tried again
 WHOLE_COLUMN = 1_048_576  # rows of a sheet
-AGAIN = "run install/start.py calc again"
+AGAIN = "put it in again: install/start.py calc, or python -m cellfuncs.hosts.calc install"
 SEARCHED = ("PYTHONHOME", "PYTHONPATH", "PYTHONSTARTUP", "PYTHONEXECUTABLE", "LD_LIBRARY_PATH", "LD_PRELOAD")
 
 
@@ -30,7 +30,10 @@ class Failed(Exception):
 
 
 class Helper:
-    """The helper process as the cells see it. `command` starts it, `patience` [s] ends a call that hangs."""
+    """The helper process as the cells see it. `patience` [s] ends a call that hangs.
+
+    `command` starts it; an empty one is looked for anew at each start.
+    """
 
     def __init__(self, command: "list[str]", patience: "float | None" = None) -> None:
         self.command = command
@@ -109,14 +112,18 @@ class Helper:
         import subprocess
         import tempfile
 
-        program = self.command[0] if self.command else ""
+        try:
+            command = self.command or interpreter.find()
+        except interpreter.Unknown as unknown:
+            raise Failed(str(unknown)) from None
+        program = command[0]
         if not os.path.exists(program):
-            raise Failed("its Python (%s) is not there; %s" % (program or "none recorded", AGAIN))
+            raise Failed("its Python (%s) is not there; %s" % (program, AGAIN))
         variables = {name: value for name, value in os.environ.items() if name not in SEARCHED}
         with tempfile.TemporaryFile() as complaints:
             try:
                 self.process = subprocess.Popen(
-                    self.command,
+                    command,
                     stdin=subprocess.PIPE,
                     stdout=subprocess.PIPE,
                     stderr=complaints,

@@ -145,4 +145,13 @@ def run(command: list[object], seconds: float = SECONDS) -> subprocess.Completed
 def variables() -> dict[str, str]:
     """The environment variables without those that would mix another Python into the office's own."""
     unwanted = ("PYTHONHOME", "PYTHONPATH", "PYTHONNOUSERSITE", "PYTHONUTF8", "VIRTUAL_ENV")
-    return {name: value for name, value in os.environ.items() if name not in unwanted}
+    kept = {name: value for name, value in os.environ.items() if name not in unwanted}
+    # An office that uses the system's Python takes the first python3 of PATH for it, and in an activated
+    # environment there is no `uno`.
+    folders = [folder for folder in kept.get("PATH", "").split(os.pathsep) if not _of_environment(Path(folder))]
+    return kept | {"PATH": os.pathsep.join(folders)}
+
+
+def _of_environment(folder: Path) -> bool:
+    """Whether the programs in a folder are those of a virtual environment or of conda's."""
+    return any((place / mark).exists() for place in (folder, folder.parent) for mark in ("pyvenv.cfg", "conda-meta"))
