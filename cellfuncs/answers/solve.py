@@ -55,9 +55,9 @@ class Solution:
         derived = _DERIVED.get(key)
         if key in _OF_A_FLOW and isinstance(self.answers, BodyAnswers):
             derived = None
-        found = derived(self) if derived else None
-        if found is None and self.case.has(key):
-            found = self.case.get(key)
+        found = self.case.get(key)
+        if found is None and derived:
+            found = derived(self)
         if found is None:
             entry = labels.dictionary()[key]
             raise CaseRefused(f'"{entry.label}" is neither stated nor does it follow for this {self.case.flow}')
