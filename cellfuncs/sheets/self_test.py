@@ -84,7 +84,7 @@ def checks(
     blocks = Blocks()
     rows: dict[str, list[Mapping[str, Any]]] = {}
     for row in published:
-        if row["kind"] in KINDS:
+        if row["kind"] in KINDS and "pick" not in row:  # a row that picks from a table is no single cell
             rows.setdefault(row["call"], []).append(row)
     found = []
     for name, function in (functions() if called is None else called).items():
