@@ -63,7 +63,10 @@ def kelvin_limit(case: Case, vary: str, term: str, level: float) -> float:
 
 
 def _judged(solution: Solution, term: str) -> Judged:
-    return next(j for j in judged(solution, equation_of(term)) if j.size.term == term)
+    for j in judged(solution, equation_of(term)):
+        if j.size.term == term:
+            return j
+    raise NoModel(f'"{term}" is the sum of several terms; ask for one of them', argument="term")
 
 
 def _share(j: Judged) -> float:
