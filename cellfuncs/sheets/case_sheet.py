@@ -11,15 +11,10 @@ from pathlib import Path
 from typing import Any
 
 from cellfuncs.cases import labels
+from cellfuncs.sheets.inks import CAUTION, GREY, INK, LINE, RULE, SHARES, TINT
+from cellfuncs.sheets.premises_sheet import write_premises
 from cellfuncs.terms import COLUMNS, MEASURES, TERMS
 from cellfuncs.terms.table import ALL_LEFT_OUT
-
-INK, GREY, LINE, TINT, RULE = "#1F2A30", "#7A858C", "#D5D9DC", "#F3EEF7", "#6B4C8A"
-SHARES = '[=0]"0";0.0E+00'
-CAUTION = (
-    "Supports a licensed engineer's judgement and does not replace it. Pressure equipment, hot surfaces, "
-    "flammable or toxic fluids, freezing and boiling are governed by your local codes."
-)
 
 
 @dataclass(frozen=True)
@@ -57,6 +52,7 @@ class _Writer:
         self.book, self.content = book, content
         self.contents = book.add_worksheet("Contents")
         self.sheet = book.add_worksheet("Case")
+        self.premises = book.add_worksheet("Premises")
         self.places: list[tuple[str, str, str]] = []
         self.formats: dict[tuple[Any, ...], Any] = {}
 
@@ -83,10 +79,13 @@ class _Writer:
         self._terms(row)
         self._results(7)
         self._print()
+        write_premises(self.premises, self.style, content.block, content.title)
+        self.places.append(("Premises", "Premises!A1", "what the calculation rests on, safety first"))
         self._contents()
         self.sheet.activate()
         if content.protected:
-            self.sheet.protect("", {"format_columns": True, "format_rows": True, "objects": True})
+            for sheet in (self.sheet, self.premises):
+                sheet.protect("", {"format_columns": True, "format_rows": True, "objects": True})
         about = {"title": content.title, "subject": "which terms matter", "comments": CAUTION}
         # a fixed date, so that the same content gives the same file
         self.book.set_properties(about | {"created": dt.datetime(2026, 1, 1)})
@@ -112,7 +111,8 @@ class _Writer:
         order = {"Case block": 0, "What follows from it": 1, "Sweep": 2, "Term table": 3}
         places = sorted(self.places, key=lambda place: order.get(place[0], 9))
         for k, (what, where, says) in enumerate(places, start=3):
-            sheet.write_url(k, 0, f"internal:'Case'!{where}", self.style(font_color=RULE), what)
+            target = where if "!" in where else f"Case!{where}"
+            sheet.write_url(k, 0, f"internal:{target}", self.style(font_color=RULE), what)
             sheet.write(k, 1, where, self.style())
             sheet.write(k, 2, says, self.style())
         for k, label in enumerate(self._offered(), start=3):

@@ -2,7 +2,7 @@
 
 from typing import Any
 
-from cellfuncs.sheets.case_sheet import GREY, INK, LINE, RULE, TINT
+from cellfuncs.sheets.inks import GREY, INK, LINE, RULE, TINT
 
 LINE_HEIGHT = 15
 

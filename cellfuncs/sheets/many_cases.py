@@ -6,7 +6,7 @@ from dataclasses import dataclass
 from pathlib import Path
 from typing import Any
 
-from cellfuncs.sheets.case_sheet import CAUTION, SHARES
+from cellfuncs.sheets.inks import CAUTION, SHARES
 from cellfuncs.sheets.look import Look
 
 _TOP = 7  # first row of the cases, counted from 1

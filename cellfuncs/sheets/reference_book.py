@@ -7,7 +7,7 @@ from typing import Any
 
 from cellfuncs import __version__
 from cellfuncs.sheets import examples, reference
-from cellfuncs.sheets.case_sheet import CAUTION, GREY, RULE
+from cellfuncs.sheets.inks import CAUTION, GREY, RULE
 from cellfuncs.sheets.look import Look, height_for
 from cellfuncs.sheets.reference import Example, Facts, Table
 

@@ -10,7 +10,7 @@ from typing import Any
 
 from cellfuncs import __version__
 from cellfuncs.sheets import reference
-from cellfuncs.sheets.case_sheet import CAUTION, GREY, INK, LINE, RULE, TINT
+from cellfuncs.sheets.inks import CAUTION, GREY, INK, LINE, RULE, TINT
 from cellfuncs.sheets.reference import Example, Facts, Table
 
 _STYLE = f"""

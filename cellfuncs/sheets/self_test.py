@@ -15,7 +15,7 @@ from typing import Any
 from cellfuncs import __version__
 from cellfuncs.cells.catalogue import CellFunction, functions
 from cellfuncs.sheets import examples, reference
-from cellfuncs.sheets.case_sheet import CAUTION, GREY
+from cellfuncs.sheets.inks import CAUTION, GREY
 from cellfuncs.sheets.look import Look
 
 KINDS = ("published", "derived", "computed", "common practice", "memory")  # in the order they are taken

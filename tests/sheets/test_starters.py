@@ -18,7 +18,7 @@ def test_a_starter_recalculates_without_a_fault(kind, tmp_path):
     starters.write_starter(kind, raw)
     embedded.recalc(raw, out)
     book = openpyxl.load_workbook(out, data_only=True)
-    assert book.sheetnames == ["Contents", "Case"]
+    assert book.sheetnames == ["Contents", "Case", "Premises"]
     sheet = book["Case"]
     texts = [cell.value for row in sheet.iter_rows() for cell in row if isinstance(cell.value, str)]
     assert not [text for text in texts if text.startswith("! ")]
