@@ -18,6 +18,7 @@ NO_PYTHON = (
     " (Debian, Ubuntu: apt install python3-uno; Fedora: dnf install libreoffice-pyuno)"
 )
 SECONDS = 180
+SYSTEM_FOLDERS = (Path("/usr/bin"), Path("/bin"))
 
 
 class Unusable(Exception):
@@ -146,12 +147,14 @@ def variables() -> dict[str, str]:
     """The environment variables without those that would mix another Python into the office's own."""
     unwanted = ("PYTHONHOME", "PYTHONPATH", "PYTHONNOUSERSITE", "PYTHONUTF8", "VIRTUAL_ENV")
     kept = {name: value for name, value in os.environ.items() if name not in unwanted}
-    # An office that uses the system's Python takes the first python3 of PATH for it, and in an activated
-    # environment there is no `uno`.
-    folders = [folder for folder in kept.get("PATH", "").split(os.pathsep) if not _of_environment(Path(folder))]
+    # An office that uses the system's Python takes the first python3 of PATH for it, and in any other Python
+    # (an activated environment, a version manager's) there is no `uno`.
+    folders = [folder for folder in kept.get("PATH", "").split(os.pathsep) if not _with_another_python(Path(folder))]
     return kept | {"PATH": os.pathsep.join(folders)}
 
 
-def _of_environment(folder: Path) -> bool:
-    """Whether the programs in a folder are those of a virtual environment or of conda's."""
-    return any((place / mark).exists() for place in (folder, folder.parent) for mark in ("pyvenv.cfg", "conda-meta"))
+def _with_another_python(folder: Path) -> bool:
+    """Whether the programs in a folder include a Python that is not the system's."""
+    if any((place / mark).exists() for place in (folder, folder.parent) for mark in ("pyvenv.cfg", "conda-meta")):
+        return True
+    return folder not in SYSTEM_FOLDERS and (folder / "python3").exists()
