@@ -411,7 +411,10 @@ def refused(*words):
 
 @pytest.mark.parametrize("mark", ["pyvenv.cfg", "conda-meta"])
 def test_an_activated_environment_is_kept_from_the_office(home, monkeypatch, tmp_path, mark):
-    folders = [with_command(tmp_path / name / "bin") for name in ("before", "environment", "after")]
+    folders = [tmp_path / name / "bin" for name in ("before", "environment", "after", "versions")]
+    for folder in folders:
+        folder.mkdir(parents=True)
+    (folders[3] / "python3").touch()  # a version manager's Python: no `uno` in it either
     (tmp_path / "environment" / mark).mkdir()
     monkeypatch.setenv("PATH", os.pathsep.join(map(str, folders)))
     monkeypatch.setenv("VIRTUAL_ENV", str(tmp_path / "environment"))
