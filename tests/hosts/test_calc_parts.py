@@ -474,3 +474,21 @@ def test_the_extension_alone_is_written(machine, capsys):
     out = machine[0] / "with a space.oxt"
     assert command.main(["--out", str(out)]) == 0
     assert zipfile.is_zipfile(out) and str(out) in capsys.readouterr().out
+
+
+@pytest.mark.parametrize(
+    ("formula", "answer"),
+    [
+        ('=CF_TERM(coolant,"storage")', 2.0),
+        ("=INDEX(CF_PREMISES(coolant),2,3)", [[2.0] * 3] * 2),
+        ("=index(cf_terms(a1:c9);1;1)", [[2.0]]),
+        ("=INDEX(CF_TERMS(a)*2,1,1)", None),
+        ("=INDEX(CF_TERMS(a),1,1)+1", None),
+        ("=INDEX(A1:B9,1,1)", None),
+        ("=INDEX(CF_TERMS(a),B1,1)", None),
+    ],
+)
+def test_what_is_answered_so_that_a_stored_value_shows(formula, answer):
+    from cellfuncs.hosts.calc.office.stored import answer_for
+
+    assert answer_for(formula, 2.0) == answer

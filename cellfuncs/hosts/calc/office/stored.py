@@ -2,8 +2,8 @@
 
 Resolving makes a cell forget its value, and to calculate every cell while a file opens would make her wait for
 the helper to start. So each cell is calculated once with the stored value as the answer of its function. This
-only works where the formula is one call, and where no other cell that still has to be calculated is drawn in;
-the other cells are calculated when they are first looked at, as any cell is.
+only works where the formula is one call, or one cell of its table by INDEX, and where no other cell that still has
+to be calculated is drawn in; the other cells are calculated when they are first looked at, as any cell is.
 """
 
 import re
@@ -12,6 +12,7 @@ from collections import namedtuple
 MOST_CELLS = 500  # more are calculated anew; finding what they depend on would take longer
 MOST_LOOKED_AT = 200_000  # pairs of a cell and a range
 OPENING = re.compile(r"=\s*cf_[a-z0-9_]+\s*\(", re.IGNORECASE)
+ONE_OF_TABLE = re.compile(r"=\s*index\s*\((.*)[,;]\s*(\d{1,3})\s*[,;]\s*(\d{1,2})\s*\)\s*$", re.IGNORECASE)
 IN_QUOTES = re.compile(r"\"[^\"]*\"|'[^']*'")
 
 # place: (sheet, row, column), from 0; value: None where an error is stored
@@ -20,7 +21,8 @@ Cell = namedtuple("Cell", "place formula value")
 
 def put_back(document: object, cells: list, helper: object) -> None:
     """Give the cells their stored values back where that is possible; `helper` answers with what it is told."""
-    whole = {cell.place: cell.value for cell in cells if cell.value is not None and is_one_call(cell.formula)}
+    answers = {cell.place: answer_for(cell.formula, cell.value) for cell in cells if cell.value is not None}
+    whole = {cell.place: cell.value for cell in cells if answers.get(cell.place) is not None}
     # Some programs store 0 in every cell because they do not calculate.
     if not any(whole.values()) or len(cells) > MOST_CELLS or not document.isAutomaticCalculationEnabled():
         return
@@ -30,12 +32,22 @@ def put_back(document: object, cells: list, helper: object) -> None:
     order = sorted((place for place in needs if needs[place] <= set(whole)), key=lambda place: len(needs[place]))
     try:
         for place in order:
-            helper.told = (whole[place],)
+            helper.told = (answers[place],)
             _cell(document, place).getError()  # asks for the result, so it is calculated
     finally:
         helper.told = None
     if any(_cell(document, place).DataArray[0][0] != whole[place] for place in order):
         document.calculateAll()
+
+
+def answer_for(formula: str, value: object) -> object:
+    """What our function has to answer so that the cell shows a value; None where the formula is more than that."""
+    if is_one_call(formula):
+        return value
+    picked = ONE_OF_TABLE.match(formula)
+    if picked and is_one_call("=" + picked.group(1)):
+        return [[value] * int(picked.group(3)) for _ in range(int(picked.group(2)))]
+    return None
 
 
 def is_one_call(formula: str) -> bool:
