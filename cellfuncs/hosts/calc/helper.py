@@ -39,6 +39,7 @@ def main() -> None:
     try:
         pipe.send(outgoing, {"version": __version__})
         while True:
+            pipe.look_out(incoming, pipe.MOMENT)
             call = pipe.receive(incoming)
             state["since"] = time.monotonic()
             pipe.send(outgoing, answer(call, functions))

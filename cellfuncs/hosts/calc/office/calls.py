@@ -89,6 +89,7 @@ class Helper:
         self.due = time.monotonic() + self.patience
         pipe.send(process.stdin.fileno(), message)
         try:
+            pipe.look_out(process.stdout.fileno(), pipe.MOMENT)
             reply = pipe.receive(process.stdout.fileno())
         except OSError:
             raise pipe.Closed from None

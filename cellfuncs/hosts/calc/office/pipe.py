@@ -5,8 +5,11 @@ JSON writes a float with the digits that read back as the same float, and can ca
 
 import json
 import os
+import select
+import time
 
 CHUNK = 1 << 16
+MOMENT = 0.0002  # s that a side stays awake for the other
 LONGEST = 1 << 30
 encode = json.JSONEncoder(separators=(",", ":"), check_circular=False).encode
 _decode = json.JSONDecoder().raw_decode
@@ -28,6 +31,16 @@ def send(descriptor: int, message: object) -> None:
     sent = os.write(descriptor, data)
     while sent < len(data):
         sent += os.write(descriptor, data[sent : sent + CHUNK])
+
+
+def look_out(descriptor: int, seconds: float) -> None:
+    """Wait awake for the next message for a moment: to be woken costs more than most calls take."""
+    if os.name != "posix":
+        return
+    end = time.monotonic() + seconds
+    while not select.select((descriptor,), (), (), 0.0)[0]:
+        if time.monotonic() > end:
+            return
 
 
 def receive(descriptor: int) -> object:
