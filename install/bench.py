@@ -359,6 +359,7 @@ def outside_rows() -> dict[str, Callable[[], Row]]:
         return functools.wraps(measure)(lambda: Row(*measure()))
 
     found = {"l": row(spread.stated), "m": row(spread.with_properties)}
+    found |= {"n": row(spread.flow_kinds), "o": row(spread.twenty_cases)}
     if calc.available():
         found |= {"i": row(calc.cells), "j": row(calc.column), "k": row(calc.opening)}
     return dict(sorted(found.items()))

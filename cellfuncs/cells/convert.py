@@ -65,8 +65,11 @@ def as_rows(value: Any) -> list[list[Any]]:
         return [[None]]
     if not is_range(value[0]):
         return [[cell] for cell in value]
-    width = max(len(row) for row in value)
-    rows = [list(row) + [None] * (width - len(row)) for row in value]
+    width = max(map(len, value))
+    rows = list(map(list, value))
+    for row in rows:
+        if len(row) < width:
+            row += [None] * (width - len(row))
     return rows if width else [[None]]
 
 
@@ -340,7 +343,10 @@ class TextReader:
 
 def plain_cell(value: Any) -> Any:
     """A cell of a block or list as float, text or None; faults and errors stay recognisable texts."""
-    value = unwrap(value)
+    if value is None or type(value) is float:
+        return value
+    if type(value) is not str:
+        value = unwrap(value)
     if value is None or type(value) is float:
         return value
     if isinstance(value, str):
@@ -382,7 +388,7 @@ def read_block(value: Any) -> tuple[tuple[Any, ...], ...]:
         if cells.count(None) == len(cells):
             continue
         for cell in cells:
-            if faults.is_fault(cell):
+            if type(cell) is str and cell[0] == "!" and faults.is_fault(cell):
                 raise Handed(cell)
         if len(rows) >= MOST_BLOCK_ROWS:
             raise NumberRefused(f"more than {MOST_BLOCK_ROWS:,} filled rows; a block is one case")
