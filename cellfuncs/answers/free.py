@@ -1,10 +1,9 @@
 """Answers of free convection: a surface in a still fluid, or a layer between two walls."""
 
 import math
-from dataclasses import dataclass, replace
+from dataclasses import dataclass
 
-from cellfuncs.answers.layer import stream_and_difference
-from cellfuncs.answers.loop import settle
+from cellfuncs.answers.layer import close_on_film, stream_and_difference
 from cellfuncs.cases.case import Case, Properties
 from cellfuncs.errors import CaseRefused
 from cellfuncs.groups import STANDARD_GRAVITY, rayleigh
@@ -83,7 +82,6 @@ def solve_free(case: Case) -> FreeAnswers:
     flux = case.get("heat_flux")
     size = _size(case, surface)
     gravity = case.get("gravity", STANDARD_GRAVITY) * math.cos(case.get("inclination", 0.0))
-    stated = case.get("property_temperature")
 
     def with_difference(p: Properties, driving: float, temperature: float | None) -> FreeAnswers:
         if p.expansion <= 0:
@@ -121,17 +119,7 @@ def solve_free(case: Case) -> FreeAnswers:
         driving = _for_flux(lambda d: with_difference(p, math.copysign(d, flux), temperature).coefficient, abs(flux))
         return with_difference(p, math.copysign(driving, flux), temperature)
 
-    if stated is not None or stream is None:
-        return at(stated)
-    if case.fixed:
-        found = at(None)
-        return replace(found, property_temperature=stream + 0.5 * found.difference)
-    if difference is not None:
-        found = at(stream + 0.5 * difference)
-    else:
-        found = at(settle(stream, lambda t: stream + 0.5 * at(t).difference, "film temperature"))
-    case.refuse_phase_change(stream, found.property_temperature)
-    return found
+    return close_on_film(case, at, stream, difference)
 
 
 def _for_flux(coefficient, flux: float) -> float:

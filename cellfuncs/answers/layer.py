@@ -4,7 +4,9 @@ The length is that of the plate, the diameter of cylinder and sphere, the radius
 """
 
 import math
+from collections.abc import Callable
 from dataclasses import dataclass, replace
+from typing import Any
 
 from cellfuncs.answers.loop import settle
 from cellfuncs.cases.case import Case, Properties
@@ -97,7 +99,6 @@ def solve_layer(case: Case) -> LayerAnswers:
     transition = case.get("transition", methods.TRANSITION) if case.flow == "plate" else _BODY_TRANSITION
     flux = case.get("heat_flux")
     stream, difference = stream_and_difference(case)
-    stated = case.get("property_temperature")
     film = 0.0 if case.flow == "sphere" else 0.5  # Whitaker's sphere takes the stream's properties
 
     def at(temperature: float | None) -> LayerAnswers:
@@ -131,6 +132,17 @@ def solve_layer(case: Case) -> LayerAnswers:
             group_length,
         )
 
+    return close_on_film(case, at, stream, difference, film)
+
+
+def close_on_film(
+    case: Case, at: Callable[[float | None], Any], stream: float | None, difference: float | None, film: float = 0.5
+) -> Any:
+    """The answers at the film temperature, which a prescribed flux sets itself; or at the stated temperature.
+
+    ``film`` is the part of the difference that lies between the stream and the temperature of the properties.
+    """
+    stated = case.get("property_temperature")
     if stated is not None or stream is None:
         return at(stated)
     if case.fixed:

@@ -242,7 +242,7 @@ class QuantityReader:
         if width == 2 and all(_pair(row) for row in rows) and any(isinstance(row[1], str) for row in rows):
             pairs = [[self._from_pair(row)] for row in rows]
             if height == 1:
-                return self.read_cell_result(pairs[0][0])
+                return pairs[0][0]()
             rows = pairs
         grid = Grid(rows=rows)
         if all(type(cell) is float and self.low < cell < self.high for row in rows for cell in row) and not (
@@ -275,10 +275,6 @@ class QuantityReader:
             return si
 
         return read
-
-    @staticmethod
-    def read_cell_result(read: Callable[[], Any]) -> Any:
-        return read()
 
 
 def _pair(row: list[Any]) -> bool:

@@ -1,7 +1,5 @@
 """Tube banks, beds of particles and falling films: coefficients and friction."""
 
-import math
-
 from cellfuncs.methods.base import METHODS, Range, method
 
 # Žukauskas 1972: arrangement -> rows of (Re from, C, exponent); C of the staggered bank from Re 1e3 also
@@ -112,11 +110,3 @@ def film_thickness(flow: float, density: float, viscosity: float, gravity: float
 
 def film_outside(flow: float, viscosity: float, allow: bool) -> str:
     return METHODS["laminar film"].check(allow, **{"film Re": 4.0 * flow / viscosity})
-
-
-def arrangement_is_open(across: float, along: float, arrangement: str) -> bool:
-    """Whether the narrowest section of a bank is the one between two tubes of a row."""
-    if arrangement == "inline":
-        return True
-    diagonal = math.hypot(along, across / 2.0)
-    return diagonal >= (across + 1.0) / 2.0

@@ -101,9 +101,7 @@ _OWN_INPUTS: Mapping[str, Mapping[str, Callable[[Facts], float]]] = {
     "strouhal": {"length": lambda f: f.length},
     "biot": {
         "length": lambda f: f.length if f.family == "body" else f.stated("wall_thickness"),
-        "conductivity": lambda f: (
-            f.properties.conductivity if f.family == "body" else f.stated("wall_conductivity")
-        ),
+        "conductivity": lambda f: f.properties.conductivity if f.family == "body" else f.stated("wall_conductivity"),
         "coefficient": lambda f: f.coefficient,
     },
     "cavitation": {

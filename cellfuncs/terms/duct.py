@@ -8,8 +8,9 @@ import math
 
 from cellfuncs.answers import Solution
 from cellfuncs.answers.duct import DuctAnswers
+from cellfuncs.methods.duct import LAMINAR_UP_TO
 from cellfuncs.terms.recovery import rise_or_bound
-from cellfuncs.terms.size import Size, absent, num, percent
+from cellfuncs.terms.size import STEADY, Size, absent, num, percent
 
 _MEANS = (0.01, 0.03)  # wall conduction number: leave out below, keep above, for mean answers
 _LOCAL = (0.003, 0.009)  # ... for local answers (Maranzana et al. 2004)
@@ -61,7 +62,7 @@ def _exchange(solution: Solution, a: DuctAnswers) -> tuple[Size, Size]:
         across = abs(a.flux) * a.exchange
         says = f"flux {num(abs(a.flux))} W/m2 given; h {num(a.coefficient)} W/(m2 K) ({a.method})"
         says += f", q/h {num(solution.driving)} K"
-    if a.shape.section == "other" and a.reynolds < 2300:
+    if a.shape.section == "other" and a.reynolds < LAMINAR_UP_TO:
         says += "; tube value, by shape -35 to +50 %"
     if a.outside:
         says += f"; beyond range: {a.outside}"
@@ -94,7 +95,7 @@ def _conduction_along(solution: Solution, a: DuctAnswers) -> Size:
 def _storage(solution: Solution, a: DuctAnswers) -> Size:
     time = solution.case.get("time")
     if time is None:
-        return absent("storage", "steady: no time scale is stated; add one to judge start-up or swings")
+        return absent("storage", STEADY)
     p = a.properties
     moving = max(solution.driving, abs(a.bulk_rise))
     wall, words = _wall_capacity(solution, a, time)
@@ -210,7 +211,7 @@ def _uncancelled(solution: Solution, a: DuctAnswers, net: float, rise: float) ->
     The closed forms subtract a recovery that a developed profile has; on the way there the two do not cancel.
     """
     peclet = a.reynolds * a.properties.prandtl
-    developing = a.reynolds <= 2300.0 and a.length / a.shape.diameter / peclet < 0.05
+    developing = a.reynolds <= LAMINAR_UP_TO and a.length / a.shape.diameter / peclet < 0.05
     if not developing or a.flux is not None or solution.case.answer != "outlet temperature":
         return None
     bulk = abs(net) * a.length / a.capacity_flux

@@ -13,6 +13,7 @@ from cellfuncs.cases import labels
 from cellfuncs.cases.case import Properties
 from cellfuncs.errors import CellfuncsError, NoModel
 from cellfuncs.groups import STANDARD_GRAVITY
+from cellfuncs.methods.duct import LAMINAR_UP_TO
 
 FALLING_FILM = "falling film"
 GAS_CONSTANT = 8.31446261815324  # J/(mol K), exact by definition of the SI
@@ -98,7 +99,7 @@ class Facts:
             return a.laminar
         if hasattr(a, "turbulent"):
             return not a.turbulent
-        return self.family == "gap" or self.reynolds <= 2300.0
+        return self.family == "gap" or self.reynolds <= LAMINAR_UP_TO
 
     @cached_property
     def drop(self) -> float:

@@ -8,7 +8,7 @@ advection, pressure work βT·gL/(cpΔT) (Gebhart 1962). The upright extent stan
 from cellfuncs.answers import Solution
 from cellfuncs.answers.free import FreeAnswers
 from cellfuncs.terms.layer import radiation
-from cellfuncs.terms.size import Size, absent, num
+from cellfuncs.terms.size import STEADY, Size, absent, num
 
 _CRITICAL = 1708.0  # Ra of a layer heated from below
 
@@ -75,7 +75,7 @@ def _gebhart(solution: Solution, a: FreeAnswers, advection: float) -> tuple[Size
 def _storage(solution: Solution, a: FreeAnswers, advection: float) -> Size:
     time = solution.case.get("time")
     if time is None:
-        return absent("storage", "steady: no time scale is stated; add one to judge start-up or swings")
+        return absent("storage", STEADY)
     p = a.properties
     size = p.density * p.specific_heat * solution.driving / time
     return Size(

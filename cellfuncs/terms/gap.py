@@ -2,7 +2,7 @@
 
 from cellfuncs.answers import Solution
 from cellfuncs.answers.gap import GapAnswers
-from cellfuncs.terms.size import Size, absent, num
+from cellfuncs.terms.size import STEADY, Size, absent, num
 
 _BETWEEN_WALLS = "none across a thin liquid film"
 
@@ -79,7 +79,7 @@ def _feedback(solution: Solution) -> str:
 def _storage(solution: Solution, a: GapAnswers) -> Size:
     time = solution.case.get("time")
     if time is None:
-        return absent("storage", "steady: no time scale is stated; add one to judge start-up or swings")
+        return absent("storage", STEADY)
     p = a.properties
     settles = a.gap**2 / p.diffusivity
     return Size(

@@ -10,7 +10,7 @@ from cellfuncs.answers import Solution
 from cellfuncs.answers.layer import LayerAnswers
 from cellfuncs.groups import STEFAN_BOLTZMANN
 from cellfuncs.terms.recovery import rise_or_bound
-from cellfuncs.terms.size import Size, absent, num, percent
+from cellfuncs.terms.size import STEADY, Size, absent, num, percent
 from cellfuncs.terms.thresholds import FAILS, HOLDS, STRAINED, threshold
 
 _VERDICTS = {HOLDS: "leave out", STRAINED: "borderline", FAILS: "keep"}  # of conduction along, by the thin layer
@@ -66,7 +66,7 @@ def _conduction_along(a: LayerAnswers) -> Size:
 def _storage(solution: Solution, a: LayerAnswers, balance: float) -> Size:
     time = solution.case.get("time")
     if time is None:
-        return absent("storage", "steady: no time scale is stated; add one to judge start-up or swings")
+        return absent("storage", STEADY)
     p = a.properties
     size = p.density * p.specific_heat * solution.driving / time
     return Size(

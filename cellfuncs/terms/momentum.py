@@ -9,7 +9,7 @@ from typing import NamedTuple
 from cellfuncs.answers import Solution
 from cellfuncs.errors import CellfuncsError, NoModel
 from cellfuncs.terms.facts import FALLING_FILM, Facts
-from cellfuncs.terms.size import Size, absent, num, percent
+from cellfuncs.terms.size import STEADY, Size, absent, num, percent
 
 TERMS = (
     "storage",
@@ -157,7 +157,7 @@ def _other(f: Facts) -> _Balance:
 def _storage(f: Facts) -> Size:
     time = f.case.get("time")
     if time is None:
-        return absent("storage", "steady: no time scale is stated; add one to judge start-up or swings")
+        return absent("storage", STEADY)
     size = f.properties.density * f.velocity / time
     says = f"the stream passes in {num(f.length / f.velocity)} s, the change takes {num(time)} s"
     return Size("storage", f.length / (f.velocity * time), size, says)

@@ -48,6 +48,9 @@ def percent(share: float) -> str:
     return f"{100 * share:.3g} %"
 
 
+STEADY = "steady: no time scale is stated; add one to judge start-up or swings"
+
+
 def absent(term: str, why: str) -> Size:
     """A term that the case as stated does not have."""
     return Size(term, 0.0, 0.0, why, asked=0.0)
