@@ -1,6 +1,6 @@
 """Starter workbooks: one a flow kind, to be filled with the engineer's own case.
 
-The values in them (``data/starters.csv``) are placeholders that give a plausible case, not data of anything.
+The values in them (``data/starters.csv``) are invented starting values that give a plausible case.
 A row is label, value, unit; a result what, unit, number format; the sweep label, unit, values, term.
 """
 
