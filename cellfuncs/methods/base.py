@@ -1,18 +1,76 @@
-"""What a method is, and the check of its range."""
+"""What a method is, the check of its range, and how it is evaluated by name."""
 
+import inspect
 import math
-from collections.abc import Callable
-from dataclasses import dataclass
+from collections.abc import Callable, Mapping
+from dataclasses import dataclass, field
+from functools import cached_property, lru_cache
 from typing import Any
 
-from cellfuncs.errors import OutOfRange
+from cellfuncs.errors import NumberRefused, OutOfRange
+from cellfuncs.sources import read_table
 
 METHODS: dict[str, "Method"] = {}
+
+# what a method may give; the words that tables show
+GIVES = (
+    "mean Nu",
+    "local Nu",
+    "mean coefficient",
+    "heat flux",
+    "Darcy friction factor",
+    "pressure drop",
+    "pressure gradient",
+    "loss coefficient",
+    "drag coefficient",
+    "recovery factor",
+    "reference temperature",
+    "factor",
+    "efficiency",
+    "effectiveness",
+    "temperature ratio",
+    "resistance",
+    "length",
+)
+# the temperatures at which authors meant properties to be taken
+PROPERTY_TEMPERATURES = (
+    "mean bulk",
+    "film",
+    "stream",
+    "wall",
+    "inlet",
+    "mean of the walls",
+    "reference",
+    "saturation",
+    "vapour film",
+    "solid",
+    "none",
+)
+
+
+@dataclass(frozen=True)
+class Input:
+    """A parameter that methods may have: its symbol, its words, its sign, and its kind where it has a dimension."""
+
+    parameter: str
+    symbol: str
+    words: str
+    sign: str  # positive, zero (zero or above), any, choice
+    kind: str
+
+
+@lru_cache(maxsize=1)
+def inputs() -> Mapping[str, Input]:
+    """Every parameter of every method, by its name in Python (``data/method_inputs.csv``)."""
+    found = {}
+    for row in read_table("method_inputs.csv"):
+        found[row["parameter"]] = Input(row["parameter"], row["symbol"], row["words"], row["sign"], row["kind"])
+    return found
 
 
 @dataclass(frozen=True)
 class Range:
-    """Closed interval of one variable in which a method was published."""
+    """Closed interval of one variable in which a method was published; ``variable`` is an input's symbol."""
 
     variable: str
     low: float = -math.inf
@@ -30,9 +88,10 @@ class Range:
 class Method:
     """A published correlation.
 
-    ``gives`` is what comes out: ``mean Nu``, ``local Nu`` or ``Darcy friction factor``. ``scatter`` is
-    the published relative scatter. The function's parameters that carry a range have the names that
-    ``inputs`` lists, in order.
+    ``gives`` is one of ``GIVES``. ``scatter`` is the published relative scatter. ``flows`` are the flow kinds of
+    cases it answers for, ``where`` the choices that must hold (``{"section": ("tube",)}``). ``length`` says what
+    length Nu is on. ``warning`` is a line that goes with every answer. The parameters of ``function`` have the
+    names of ``data/method_inputs.csv``; ranges name their variables by the symbols there.
     """
 
     name: str
@@ -42,6 +101,30 @@ class Method:
     property_temperature: str
     source: str
     function: Callable[..., Any]
+    flows: tuple[str, ...] = ()
+    where: Mapping[str, tuple[str, ...]] = field(default_factory=dict)
+    length: str = ""
+    warning: str = ""
+
+    @cached_property
+    def inputs(self) -> tuple[str, ...]:
+        """Names of the function's parameters, in order."""
+        return tuple(inspect.signature(self.function).parameters)
+
+    @cached_property
+    def needed(self) -> tuple[str, ...]:
+        """The parameters that have no default."""
+        parameters = inspect.signature(self.function).parameters.values()
+        return tuple(p.name for p in parameters if p.default is p.empty)
+
+    @property
+    def summary(self) -> str:
+        """What it is, in one sentence."""
+        return (self.function.__doc__ or "").strip().split("\n")[0]
+
+    def applies(self, **choices: str) -> bool:
+        """Whether nothing that is known of the case contradicts what the method is for."""
+        return all(choices.get(key) is None or choices[key] in allowed for key, allowed in self.where.items())
 
     def outside(self, **variables: float) -> str:
         """What lies outside the range, in words; empty when all is inside."""
@@ -62,6 +145,50 @@ class Method:
             )
         return missed
 
+    def evaluate(self, given: Mapping[str, Any], allow: bool = False) -> Any:
+        """The answer for inputs by their names in Python (floats, choices, or arrays of one shape).
+
+        Every number is checked: finite, of the sign that the input has, inside the range unless ``allow``.
+        Further variables that only a range speaks of may be given too. Raises NumberRefused or OutOfRange.
+        """
+        missing = [inputs()[name].words for name in self.needed if given.get(name) is None]
+        if missing:
+            raise NumberRefused(f"{self.name} needs {' and '.join(missing)}")
+        known = {name: value for name, value in given.items() if value is not None}
+        for name, value in known.items():
+            _check_sign(inputs()[name], value)
+        self._check_range(known, allow)
+        return self.function(**{name: known[name] for name in self.inputs if name in known})
+
+    def _check_range(self, known: Mapping[str, Any], allow: bool) -> None:
+        by_symbol = {inputs()[name].symbol: value for name, value in known.items()}
+        worst = {}
+        for r in self.ranges:
+            value = by_symbol.get(r.variable)
+            if value is None:
+                continue
+            if not isinstance(value, (float, int)):
+                low, high = float(value.min()), float(value.max())
+                value = low if low < r.low else high
+            worst[r.variable] = value
+        self.check(allow, **worst)
+
+
+def _check_sign(known: Input, value: Any) -> None:
+    if known.sign == "choice":
+        return
+    if isinstance(value, (float, int)):
+        smallest = value if value - value == 0 else math.nan
+    else:
+        import numpy as np
+
+        smallest = float(np.min(value)) if np.isfinite(value).all() else math.nan
+    if smallest != smallest:
+        raise NumberRefused(f"{known.words} is not a finite number")
+    if (known.sign == "positive" and smallest <= 0) or (known.sign == "zero" and smallest < 0):
+        least = "above" if known.sign == "positive" else "at least"
+        raise NumberRefused(f"{known.words} is {smallest:.4g}; it must be {least} zero")
+
 
 def method(
     name: str,
@@ -71,13 +198,21 @@ def method(
     scatter: float,
     property_temperature: str,
     source: str,
+    flows: tuple[str, ...] = (),
+    where: Mapping[str, tuple[str, ...]] | None = None,
+    length: str = "",
+    warning: str = "",
 ) -> Callable[[Callable[..., Any]], Callable[..., Any]]:
     """Record a published correlation under its usual name; the function is returned unchanged."""
 
     def record(function: Callable[..., Any]) -> Callable[..., Any]:
         if name in METHODS:
             raise TypeError(f"method {name} is there already")
-        METHODS[name] = Method(name, gives, ranges, scatter, property_temperature, source, function)
+        if gives not in GIVES or property_temperature not in PROPERTY_TEMPERATURES:
+            raise TypeError(f"method {name}: {gives} or {property_temperature} is no word of the list")
+        METHODS[name] = Method(
+            name, gives, ranges, scatter, property_temperature, source, function, flows, where or {}, length, warning
+        )
         return function
 
     return record

@@ -1,0 +1,62 @@
+"""Elementary functions that take a float quickly and an array as one call: methods are written with these."""
+
+import math
+from typing import Any
+
+
+def exp(x: Any) -> Any:
+    return math.exp(x) if isinstance(x, (float, int)) else _numpy().exp(x)
+
+
+def log(x: Any) -> Any:
+    return math.log(x) if isinstance(x, (float, int)) else _numpy().log(x)
+
+
+def log10(x: Any) -> Any:
+    return math.log10(x) if isinstance(x, (float, int)) else _numpy().log10(x)
+
+
+def sqrt(x: Any) -> Any:
+    return math.sqrt(x) if isinstance(x, (float, int)) else _numpy().sqrt(x)
+
+
+def tanh(x: Any) -> Any:
+    return math.tanh(x) if isinstance(x, (float, int)) else _numpy().tanh(x)
+
+
+def cos(x: Any) -> Any:
+    return math.cos(x) if isinstance(x, (float, int)) else _numpy().cos(x)
+
+
+def where(condition: Any, yes: Any, no: Any) -> Any:
+    """One of two values by a condition, element by element; both are computed."""
+    return (yes if condition else no) if isinstance(condition, bool) else _numpy().where(condition, yes, no)
+
+
+def larger(a: Any, b: Any) -> Any:
+    scalar = isinstance(a, (float, int)) and isinstance(b, (float, int))
+    return max(a, b) if scalar else _numpy().maximum(a, b)
+
+
+def smaller(a: Any, b: Any) -> Any:
+    scalar = isinstance(a, (float, int)) and isinstance(b, (float, int))
+    return min(a, b) if scalar else _numpy().minimum(a, b)
+
+
+def between(x: Any, known_x: tuple[float, ...], known_y: tuple[float, ...]) -> Any:
+    """Linear interpolation in a published table; the ends are held, ranges are checked by the caller."""
+    if not isinstance(x, (float, int)):
+        return _numpy().interp(x, known_x, known_y)
+    if x <= known_x[0]:
+        return known_y[0]
+    for k in range(1, len(known_x)):
+        if x <= known_x[k]:
+            t = (x - known_x[k - 1]) / (known_x[k] - known_x[k - 1])
+            return known_y[k - 1] + t * (known_y[k] - known_y[k - 1])
+    return known_y[-1]
+
+
+def _numpy() -> Any:
+    import numpy
+
+    return numpy
