@@ -23,7 +23,8 @@ _REMARKS = ("remark ", "note ", "comment ")
 
 @dataclass(frozen=True)
 class Label:
-    """An entry of the dictionary; ``role`` is stated, choice, text, note or derived."""
+    """An entry of the dictionary; ``role`` is stated, choice, text, note, derived, or sheet: only other people's
+    sheets state it, case blocks do not."""
 
     key: str
     label: str
@@ -111,13 +112,20 @@ def split_unit(label: str) -> tuple[str, str]:
 
 
 @cache
-def candidates(label: str) -> tuple[str, ...]:
-    """All keys that a label may stand for, names before symbols; empty for an unknown label."""
+def candidates(label: str, sheets: bool = False) -> tuple[str, ...]:
+    """All keys that a label may stand for, names before symbols; empty for an unknown label.
+
+    What only other people's sheets state stands behind what case blocks know, unless ``sheets``.
+    """
     names, exact, loose = _index()
     if _plain(label).startswith(_REMARKS):
         return ("note",)
-    found = names.get(_plain(label)) or exact.get(_symbol(label)) or loose.get(_symbol(label).casefold())
-    return tuple(dict.fromkeys(found or ()))
+    places = (names.get(_plain(label)), exact.get(_symbol(label)), loose.get(_symbol(label).casefold()))
+    found = [tuple(dict.fromkeys(place)) for place in places if place]
+    if sheets:
+        return found[0] if found else ()
+    own = [tuple(key for key in place if dictionary()[key].role != "sheet") for place in found]
+    return next(filter(None, [*own, *found]), ())
 
 
 def settle(label: str, keys: Iterable[str], unit: str, flow: str | None) -> str:

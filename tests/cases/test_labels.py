@@ -14,10 +14,14 @@ def test_a_label_finds_itself(key):
     entry = ENTRIES[key]
     assert labels.candidates(entry.label) == (key,)
     assert labels.candidates(entry.label.upper()) == (key,)
-    for name in (*entry.synonyms, *entry.symbols):
-        assert key in labels.candidates(name)
-    assert entry.role in ("stated", "choice", "text", "note", "derived")
-    if entry.role in ("stated", "derived"):
+    for name in entry.synonyms:
+        assert key in labels.candidates(name, sheets=entry.role == "sheet")
+    for symbol in entry.symbols:
+        own = labels.candidates(symbol, sheets=entry.role == "sheet")
+        # a symbol that is another quantity's name as well is that: P beside perimeter
+        assert key in own or entry.role == "sheet"
+    assert entry.role in ("stated", "choice", "text", "note", "derived", "sheet")
+    if entry.role in ("stated", "derived", "sheet"):
         assert entry.kind in quantities.KINDS
 
 
@@ -28,11 +32,19 @@ def test_choices_read_themselves(key):
         assert labels.choice(key, choice.upper()) == choice
 
 
+def test_case_blocks_keep_their_meaning_of_a_shared_name():
+    """A name that sheets use for more stays what it is in a case block."""
+    assert labels.candidates("A") == ("flow_area",)
+    assert "area" in labels.candidates("A", sheets=True) and "flow_area" in labels.candidates("A", sheets=True)
+    assert labels.candidates("lmtd") == ("log_mean_difference",)
+
+
 def test_a_shared_name_is_settled_by_unit_or_flow_or_asked():
     """Names with several entries: the unit or the flow kind settles them, or the text names all."""
     shared = {
         name: labels.candidates(name)
         for entry in ENTRIES.values()
+        if entry.role != "sheet"
         for name in (*entry.synonyms, *entry.symbols)
         if len(labels.candidates(name)) > 1
     }
