@@ -57,7 +57,7 @@ def build_reference(folder: Path) -> Path:
 
 def build_self_test(folder: Path) -> Path:
     """Write the self-test with its stored values; expected values come from the published rows of the tests."""
-    files = sorted(PUBLISHED.glob("*.json"))
+    files = sorted(file for file in PUBLISHED.glob("*.json") if not file.name.startswith("methods_"))
     published = [row for file in files for row in json.loads(file.read_text("utf-8"))]
     found, blocks = self_test.checks(published)
     with tempfile.TemporaryDirectory() as temporary:
