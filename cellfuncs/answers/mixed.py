@@ -19,7 +19,7 @@ def solve_mixed(case: Case) -> LayerAnswers:
     if case.has("heat_flux"):
         raise CaseRefused("mixed convection is blended at a prescribed wall temperature; state that, not a flux")
     stated = {key: entry for key, entry in case.stated.items() if key not in ("surface", "flow_direction")}
-    forced = solve_layer(Case(_FORCED[surface], stated))
+    forced = solve_layer(case.stating(stated, _FORCED[surface]))
     p, g = forced.properties, case.get("gravity", STANDARD_GRAVITY)
     nu = p.viscosity / p.density
     size = forced.length

@@ -16,6 +16,7 @@ from cellfuncs.answers.through import solve_through
 from cellfuncs.cases import labels
 from cellfuncs.cases.case import Case
 from cellfuncs.errors import CaseRefused, CellfuncsError
+from cellfuncs.methods.duct import LAMINAR_UP_TO
 
 Answers = DuctAnswers | LayerAnswers | FreeAnswers | GapAnswers | BodyAnswers
 _SOLVERS: Mapping[str, Callable[[Case], Answers]] = {
@@ -132,6 +133,18 @@ def _wall_shear(s: Solution) -> float | None:
     return None
 
 
+def _shear_rate(s: Solution) -> float | None:
+    """At the wall: of a melt as it thins, of other fluids in laminar flow τ/μ."""
+    if isinstance(s.answers, BodyAnswers):
+        return None
+    sheared = s.case.sheared(s.answers.property_temperature)
+    if sheared is not None:
+        return sheared.wall
+    laminar = isinstance(s.answers, GapAnswers) or s.answers.reynolds <= LAMINAR_UP_TO
+    stress = _wall_shear(s) if laminar else None
+    return None if stress is None else stress / s.answers.properties.viscosity
+
+
 def _friction_rise(s: Solution) -> float | None:
     a = s.answers
     if not isinstance(a, DuctAnswers):
@@ -206,6 +219,7 @@ _DERIVED: Mapping[str, Callable[[Solution], float | str | None]] = {
     "local_flux": _local_flux,
     "recovery_rise": _attribute("recovery_rise"),
     "friction_rise": _friction_rise,
+    "shear_rate": _shear_rate,
     "wall_shear": _wall_shear,
     "friction_power": _friction_power,
 }

@@ -9,7 +9,7 @@ from dataclasses import dataclass
 from typing import Any
 
 from cellfuncs import quantities
-from cellfuncs.cases import labels
+from cellfuncs.cases import labels, tabled
 from cellfuncs.cases.case import Case
 from cellfuncs.errors import CaseRefused, CellfuncsError
 
@@ -38,10 +38,14 @@ def read_case(rows: tuple[Row, ...]) -> Case:
     texts = [_cells(row) for row in rows]
     flow = _flow_kind(texts)
     stated: dict[str, Stated] = {}
+    points: list[tabled.Point] = []
     atmosphere = _atmosphere(texts, flow)
     for number, label, value, unit, plus_minus in texts:
         entry = _stated_row(number, label, value, unit, plus_minus, flow, atmosphere)
         if entry is None:
+            continue
+        if isinstance(entry, tabled.Point):
+            points.append(entry)
             continue
         other = stated.get(entry.key)
         if other is not None:
@@ -51,7 +55,10 @@ def read_case(rows: tuple[Row, ...]) -> Case:
             )
         _refuse_useless(entry, flow)
         stated[entry.key] = entry
-    return Case(flow, stated)
+    for point in points:
+        if point.key in stated:
+            raise CaseRefused(f'"{stated[point.key].label}" and "{point.label}" are both stated; keep one')
+    return Case(flow, stated, tuple(points))
 
 
 def _refuse_useless(entry: Stated, flow: str) -> None:
@@ -124,7 +131,7 @@ def _atmosphere(rows: list[Row], flow: str) -> float:
 
 def _stated_row(
     number: int, label: Any, value: Any, unit: Any, plus_minus: Any, flow: str, atmosphere: float
-) -> Stated | None:
+) -> Stated | tabled.Point | None:
     if label is None or _is_head(value, unit):
         return None
     if isinstance(unit, float):
@@ -134,6 +141,9 @@ def _stated_row(
     if not keys:
         keys = labels.candidates(name)
     if not keys:
+        point = _point(number, name, value, unit or bracket, plus_minus, atmosphere)
+        if point is not None:
+            return point
         raise CaseRefused(f'row {number}: the label "{label[:60]}" is not known; {labels.hint(name)}')
     key = labels.settle(label, keys, unit or bracket or _unit_within(value), flow)
     entry = labels.dictionary()[key]
@@ -150,6 +160,20 @@ def _stated_row(
     if unit and bracket and entry.kind and _differs(bracket, unit, entry.kind):
         raise CaseRefused(f'"{label}": the label says {bracket}, the unit column {unit}; keep one')
     return _quantity_row(entry, label, number, value, unit or bracket, plus_minus, atmosphere)
+
+
+def _point(
+    number: int, label: str, value: Any, unit: str, plus_minus: Any, atmosphere: float
+) -> tabled.Point | None:
+    """A property at a temperature, or None for a label that is no such thing."""
+    parts = tabled.split_temperature(label)
+    key = tabled.property_key(parts[0]) if parts else None
+    if key is None:
+        return None
+    if plus_minus is not None:
+        raise CaseRefused(f'"{label}": a value of a table has no ±; state the property itself for that')
+    row = _quantity_row(labels.dictionary()[key], label, number, value, unit, None, atmosphere)
+    return tabled.Point(key, parts[1], row.value, label)
 
 
 def _choice_row(key: str, label: str, number: int, value: Any) -> Stated:

@@ -9,7 +9,7 @@ from functools import cached_property
 from typing import Any, NamedTuple
 
 from cellfuncs import substances
-from cellfuncs.cases import labels
+from cellfuncs.cases import labels, shear, tabled
 from cellfuncs.cases.sections import Duct, section_of
 from cellfuncs.errors import CaseRefused, CellfuncsError
 
@@ -71,9 +71,14 @@ class Properties(NamedTuple):
 class Case:
     """One operating point: a flow kind and its stated rows."""
 
-    def __init__(self, flow: str, stated: Mapping[str, Any]):
+    def __init__(self, flow: str, stated: Mapping[str, Any], points: tuple[tabled.Point, ...] = ()):
         self.flow = flow
         self.stated = stated
+        self.points = points  # properties at temperatures
+
+    def stating(self, stated: Mapping[str, Any], flow: str | None = None) -> "Case":
+        """The case with other rows, of another flow kind where one is named."""
+        return Case(flow or self.flow, stated, self.points)
 
     def get(self, key: str, default: Any = None) -> Any:
         """The stated value in SI, or the default."""
@@ -167,13 +172,22 @@ class Case:
 
     @cached_property
     def substance(self) -> Any:
-        """The substance, or None when every property is stated."""
+        """The substance named, or the table of the block, or None when every property is stated."""
+        found = self.table
         if self.has("substance"):
             try:
-                return substances.find(self.get("substance"))
+                found = substances.find(self.get("substance"))
             except CellfuncsError as error:
                 raise CaseRefused(f'"{self.stated["substance"].label}": {error}') from None
-        return None
+        if self.has("shear_rate") and not shear.thins(found):
+            label = self.stated["shear_rate"].label
+            raise CaseRefused(f'"{label}" is for a melt whose name leaves its shear rate open')
+        return found
+
+    @cached_property
+    def table(self) -> Any:
+        """The table that rows such as ``viscosity at 40 degC`` make, or None."""
+        return tabled.substance_of(self.points) if self.points else None
 
     @cached_property
     def pressure(self) -> float:
@@ -194,9 +208,16 @@ class Case:
                 raise CaseRefused("viscosity and kinematic viscosity are both stated; keep one")
             if "density" in found:
                 found["viscosity"] = self.get("kinematic_viscosity") * found["density"]
-        if "expansion_coefficient" not in found and not self.has("substance"):
+        if "expansion_coefficient" not in found and not self._expands:
             found["expansion_coefficient"] = 0.0  # said in the reason of pressure work
         return found
+
+    @property
+    def _expands(self) -> bool:
+        """Whether an expansion coefficient follows; constants of a melt or a table may leave it open."""
+        if self.table is not None and self.table.has("expansion_coefficient"):
+            return True
+        return self.has("substance") and getattr(self.substance, "expands", True)
 
     @cached_property
     def _wanted(self) -> tuple[str, ...]:
@@ -217,7 +238,7 @@ class Case:
                 raise CaseRefused(
                     'properties need a temperature; add the row "property temperature" or the temperatures of the flow'
                 )
-            known.update(self._from_substance(wanted, temperature))
+            self._from_substance(known, wanted, temperature)
         if "viscosity" not in known:
             known["viscosity"] = self.get("kinematic_viscosity") * known["density"]
         return Properties(*(known[name] for name in _OVERRIDES))
@@ -231,11 +252,34 @@ class Case:
             self.need(_OVERRIDES[name])
         if temperature is None:
             self.need("property_temperature")
-        return self.substance.get(name, temperature, self.pressure)
+        return self._source_of(name).get(name, temperature, self.pressure)
 
-    def _from_substance(self, wanted: tuple[str, ...], temperature: float) -> dict[str, float]:
-        get, pressure = self.substance.get, self.pressure
-        return {name: get(name, temperature, pressure) for name in wanted}
+    def _source_of(self, name: str) -> Any:
+        """The table of the block where it has the property, else the substance named."""
+        table = self.table
+        return table if table is not None and table.has(name) else self.substance
+
+    def _from_substance(self, known: dict[str, float], wanted: tuple[str, ...], temperature: float) -> None:
+        """Put the wanted properties at a temperature into ``known``; density stands first in the order."""
+        pressure = self.pressure
+        for name in wanted:
+            source = self.substance if self.table is None else self._source_of(name)
+            if name == "viscosity":
+                if self.table is not None and self.table.has_column("kinematic_viscosity"):
+                    nu = self.table.get("kinematic_viscosity", temperature, pressure)
+                    known[name] = nu * known["density"]
+                    continue
+                if shear.thins(source):
+                    known[name] = shear.sheared(self, source, temperature, known["density"]).viscosity
+                    continue
+            known[name] = source.get(name, temperature, pressure)
+
+    def sheared(self, temperature: float | None) -> shear.Sheared | None:
+        """The melt of the case at the shear rate it has, or None where no melt is named or its rate is."""
+        if "viscosity" not in self._wanted or temperature is None or not shear.thins(self._source_of("viscosity")):
+            return None
+        density = self.property_of("density", temperature)
+        return shear.sheared(self, self._source_of("viscosity"), temperature, density)
 
     def refuse_phase_change(self, entering: float | None, *others: float | None) -> None:
         """Refuse a fluid that is liquid where it enters and gas elsewhere, or the other way round."""

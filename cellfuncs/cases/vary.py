@@ -38,7 +38,7 @@ def with_value(case: Case, key: str, value: float) -> Case:
     entry = case.stated.get(key)
     if entry is None:
         entry = Stated(key, labels.dictionary()[key].label, 0, value, None, "")
-    return Case(case.flow, {**case.stated, key: replace(entry, value=value)})
+    return case.stating({**case.stated, key: replace(entry, value=value)})
 
 
 def start_of(case: Case, key: str) -> float | None:

@@ -3,7 +3,7 @@
 from typing import Any
 
 from cellfuncs.cases import labels
-from cellfuncs.cells import convert, solved
+from cellfuncs.cells import convert, solved, table
 from cellfuncs.cells.catalogue import Answer, cell_function
 from cellfuncs.errors import CaseRefused, CellfuncsError, UnknownName
 
@@ -52,11 +52,13 @@ def _column(rows: list[list[Any]], name: str) -> list[Any]:
 )
 def vary(block, label, value, unit=None):
     value = convert.unwrap(value)
+    rows = [list(cells) + [None] * (4 - len(cells)) for _, *cells in block]
+    if convert.is_range(value) and "substance" in labels.candidates(label):
+        return _with_table(rows, convert.as_rows(value))
     convert.refuse_foreign(value)
     value = convert.plain_cell(value)
     if value is None:
         raise CaseRefused("empty; give the value to put in its place", argument="value")
-    rows = [list(cells) + [None] * (4 - len(cells)) for _, *cells in block]
     wanted = set(labels.candidates(label) or labels.candidates(labels.split_unit(label)[0]))
     if not wanted:
         near = labels.nearest(label)
@@ -69,6 +71,21 @@ def vary(block, label, value, unit=None):
         kept = unit if unit is not None else old[2]
         rows[place] = [old[0], value, None if isinstance(value, str) and unit is None else kept, None]
     return [["" if cell is None else cell for cell in row] for row in rows]
+
+
+def _with_table(rows: list[list[Any]], given: list[list[Any]]) -> list[list[Any]]:
+    """The block with the user's own table in the place of its substance."""
+    tabled = table.block_rows(given)
+    kept = [
+        row for row in rows
+        if not (isinstance(row[0], str) and ("substance" in labels.candidates(row[0]) or table.is_point(row[0])))
+    ]  # fmt: skip
+    if len(kept) + len(tabled) > convert.MOST_BLOCK_ROWS:
+        raise CaseRefused(
+            f"the table would put {len(tabled):,} rows into the block, which has at most {convert.MOST_BLOCK_ROWS:,}",
+            argument="value",
+        )
+    return [["" if cell is None else cell for cell in row] for row in [*kept, *tabled]]
 
 
 def _place(rows: list[list[Any]], label: str, wanted: set[str]) -> int | None:

@@ -10,6 +10,8 @@ from functools import lru_cache
 from typing import Any
 
 from cellfuncs import quantities, substances
+from cellfuncs.cases import labels
+from cellfuncs.cases.tabled import PROPERTY_OF, property_key, split_temperature
 from cellfuncs.cells import convert, faults
 from cellfuncs.errors import CellfuncsError, NumberRefused, UnitRefused, UnknownName
 
@@ -54,6 +56,11 @@ def _is_temperature(cell: Any) -> bool:
 
 def from_rows(rows: list[list[Any]]) -> substances.Substance:
     """The substance of a table; a fault or an error value in any of its cells goes out as it is."""
+    return _remembered(_plain(rows))
+
+
+def _plain(rows: list[list[Any]]) -> tuple[tuple[Any, ...], ...]:
+    """The rows that are not blank, with plain cells."""
     if len(rows) > MOST_ROWS or len(rows[0]) > MOST_COLUMNS:
         raise NumberRefused(f"a table of at most {MOST_ROWS:,} rows and {MOST_COLUMNS} columns is wanted")
     plain = []
@@ -64,11 +71,39 @@ def from_rows(rows: list[list[Any]]) -> substances.Substance:
                 raise convert.Handed(cell)
         if any(cell is not None for cell in cells):
             plain.append(cells)
-    return _remembered(tuple(plain))
+    return tuple(plain)
+
+
+def block_rows(rows: list[list[Any]]) -> list[list[Any]]:
+    """The table as rows of a case block: ``viscosity at 313.15 K``, value, unit; refused where it is none.
+
+    Only properties that cases use are put into the block.
+    """
+    from_rows(rows)
+    temperatures, columns = _columns(_plain(rows))
+    found = []
+    for label, key in PROPERTY_OF.items():
+        entry = labels.dictionary()[label]
+        unit = quantities.KINDS[entry.kind].si_unit
+        for temperature, value in zip(temperatures, columns.get(key, ()), strict=False):
+            if value is not None:
+                found.append([f"{entry.label} at {temperature!r} K", value, unit, None])
+    return found
 
 
 @lru_cache(maxsize=REMEMBERED)
 def _remembered(rows: tuple[tuple[Any, ...], ...]) -> substances.Substance:
+    return substances.from_table(*_columns(rows))
+
+
+def is_point(label: str) -> bool:
+    """Whether a label of a block states a property at a temperature."""
+    parts = split_temperature(label)
+    return parts is not None and property_key(parts[0]) is not None
+
+
+def _columns(rows: tuple[tuple[Any, ...], ...]) -> tuple[list[float], dict[str, list[float | None]]]:
+    """Temperatures, and the values of each property, SI."""
     if not rows or not any(map(_is_temperature, rows[0])):
         raise NumberRefused(f"a table of properties begins with a row of heads: {EXAMPLE}")
     heads = [_head(cell) for cell in rows[0]]
@@ -91,7 +126,7 @@ def _remembered(rows: tuple[tuple[Any, ...], ...]) -> substances.Substance:
             if one is not None and temperatures[k] is None:
                 raise NumberRefused(f"row {body[k][0]} of the table has a {key.replace('_', ' ')} but no temperature")
         columns[key] = [values[k] for k in filled]
-    return substances.from_table([temperatures[k] for k in filled], columns)
+    return [temperatures[k] for k in filled], columns
 
 
 def _head(cell: Any) -> tuple[str, str, str]:

@@ -75,6 +75,11 @@ class PolymerMelt(Related):
             return self.viscosity_at(temperature, self.shear_rate)
         return super()._value(key, temperature)
 
+    @property
+    def expands(self) -> bool:
+        """Whether an expansion coefficient follows: not from constants without one."""
+        return self._has("expansion_coefficient")
+
     def _has(self, key: str) -> bool:
         return key == "viscosity" or super()._has(key)
 

@@ -20,6 +20,14 @@ class UserTable(Related):
     state = "as tabled"
     p_max = None
 
+    def has(self, what: str) -> bool:
+        """Whether a property stands in the table or follows from it."""
+        return self._has(what)
+
+    def has_column(self, what: str) -> bool:
+        """Whether a property stands in the table itself."""
+        return what in self._relations
+
     def _check_phase(self, phase: str | None) -> None:
         """The table holds for the phase that its user means."""
 

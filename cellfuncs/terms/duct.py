@@ -177,6 +177,9 @@ def _friction_pair(solution: Solution, a: DuctAnswers) -> tuple[Size, Size]:
     elif beta_t > 0:
         says += "; judged as a pair with pressure work" if beta_t < 0.999 or beta_t > 1.001 else ""
     says += _compressible(solution, a)
+    sheared = solution.case.sheared(a.property_temperature)
+    if sheared is not None:
+        says += f"; {sheared.words()}"
     apart = _uncancelled(solution, a, net, rise)
     shared = {"asked": share, "exact": exact, "kelvins": kelvins, "pair": True, "uncancelled": apart}
     viscous = Size("viscous heating", ec_re, heating, says, nets_to=abs(net), **shared)
@@ -185,7 +188,7 @@ def _friction_pair(solution: Solution, a: DuctAnswers) -> tuple[Size, Size]:
         if solution.case.flow == "falling film":
             why = "no pressure falls along a film"
             return viscous, absent("pressure work", why)
-        if not (solution.case.has("substance") or solution.case.has("expansion")):
+        if not solution.case.has("expansion") and p.expansion == 0:
             why = "expansion coefficient not stated, taken as 0: state it (gases: 1/T)"
         elif a.property_temperature is None:
             why = "no temperature is stated, so that βT is not known and taken as 0"

@@ -56,14 +56,16 @@ def _viscous(solution: Solution, a: GapAnswers) -> Size:
     size = p.viscosity * a.velocity**2 / a.gap**2
     one_scale = a.velocity**2 / (p.specific_heat * a.difference) / (p.density * a.velocity * a.length / p.viscosity)
     kelvins = a.peak_rise if solution.case.answer == "peak temperature" else None
+    sheared = solution.case.sheared(a.property_temperature)
+    melt = f"; {sheared.words()}" if sheared is not None else ""
     if not a.walls_apart:
-        says = f"heats the film by μU²/(8k) = {num(a.peak_rise)} K above its walls{_feedback(solution)}"
+        says = f"heats the film by μU²/(8k) = {num(a.peak_rise)} K above its walls{_feedback(solution)}{melt}"
         if kelvins is not None and kelvins >= solution.case.smallest:
             return Size("viscous heating", one_scale, size, says, exact=True, kelvins=kelvins, settled="keep")
     elif a.peak_rise > 0:
-        says = f"Br {num(a.brinkman)}: a peak {num(a.peak_rise)} K above the hotter wall{_feedback(solution)}"
+        says = f"Br {num(a.brinkman)}: a peak {num(a.peak_rise)} K above the hotter wall{_feedback(solution)}{melt}"
     else:
-        says = f"Br {num(a.brinkman)}: no peak inside below Br 2, the flux at a wall changes by Br/2"
+        says = f"Br {num(a.brinkman)}: no peak inside below Br 2, the flux at a wall changes by Br/2{melt}"
     return Size("viscous heating", one_scale, size, says, exact=True, kelvins=kelvins)
 
 
