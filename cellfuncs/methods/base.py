@@ -7,7 +7,7 @@ from dataclasses import dataclass, field
 from functools import cached_property, lru_cache
 from typing import Any
 
-from cellfuncs.errors import NumberRefused, OutOfRange
+from cellfuncs.errors import CellfuncsError, NumberRefused, OutOfRange
 from cellfuncs.sources import read_table
 
 METHODS: dict[str, "Method"] = {}
@@ -31,6 +31,7 @@ GIVES = (
     "temperature ratio",
     "resistance",
     "length",
+    "transition Reynolds number",
 )
 # the temperatures at which authors meant properties to be taken
 PROPERTY_TEMPERATURES = (
@@ -158,7 +159,26 @@ class Method:
         for name, value in known.items():
             _check_sign(inputs()[name], value)
         self._check_range(known, allow)
-        return self.function(**{name: known[name] for name in self.inputs if name in known})
+        return self._finite({name: known[name] for name in self.inputs if name in known})
+
+    def _finite(self, taken: Mapping[str, Any]) -> Any:
+        """The function's value; beyond its range a formula may have none."""
+        try:
+            if all(isinstance(value, (float, int, str)) for value in taken.values()):
+                found = self.function(**taken)
+                if not isinstance(found, complex) and found - found == 0:
+                    return found
+            else:
+                import numpy as np
+
+                with np.errstate(all="ignore"):
+                    found = self.function(**taken)
+                if np.isfinite(found).all():
+                    return found
+        except (ZeroDivisionError, OverflowError, ValueError) as fault:
+            if isinstance(fault, CellfuncsError):
+                raise
+        raise NumberRefused(f"{self.name} has no finite value there")
 
     def _check_range(self, known: Mapping[str, Any], allow: bool) -> None:
         by_symbol = {inputs()[name].symbol: value for name, value in known.items()}
