@@ -33,7 +33,7 @@ class Finding:
     """One finding.
 
     ``stated`` is the number as the sheet shows it, ``recomputed`` what comes out, both in ``unit`` (None where there is
-    no number); ``code`` is one of ``CAUSES``, ``cause`` the same in words with the numbers in it, ``confidence`` 0 to 1.
+    none); ``code`` is one of ``CAUSES``, ``cause`` the same in words with the numbers in it, ``confidence`` 0 to 1.
     ``inherited`` are cells that are wrong only because of this one. ``reasoning`` are lines with the numbers.
     """
 
