@@ -3,7 +3,7 @@
 from typing import Any
 
 from cellfuncs.answers import Solution
-from cellfuncs.groups import STEFAN_BOLTZMANN
+from cellfuncs.methods import radiation
 from cellfuncs.terms.size import Size, absent, num, percent
 
 
@@ -42,7 +42,7 @@ def _radiation(solution: Solution, a: Any, exchange: float) -> Size:
     if not (case.has("emissivity") and case.has("surroundings_temperature") and case.has("initial_temperature")):
         return absent("wall radiation", "not stated; add emissivity and surroundings temperature to judge it")
     hot, cold = case.get("initial_temperature"), case.get("surroundings_temperature")
-    flux = case.get("emissivity") * STEFAN_BOLTZMANN * (hot**4 - cold**4)
+    flux = radiation.to_surroundings(hot, cold, case.get("emissivity")) * (hot - cold)
     share = abs(flux) / (a.coefficient * solution.driving)
     says = f"the body radiates {num(flux)} W/m2 at the start, {percent(share)} of what it gives to the fluid"
     return Size("wall radiation", share, share * exchange, says)

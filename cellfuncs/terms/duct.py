@@ -8,6 +8,7 @@ import math
 
 from cellfuncs.answers import Solution
 from cellfuncs.answers.duct import DuctAnswers
+from cellfuncs.methods import radiation as radiative
 from cellfuncs.methods.duct import LAMINAR_UP_TO
 from cellfuncs.terms.recovery import rise_or_bound
 from cellfuncs.terms.size import STEADY, Size, absent, num, percent
@@ -27,8 +28,29 @@ def sizes(solution: Solution) -> list[Size]:
         _wall_conduction(solution, a),
         *_friction_pair(solution, a),
         _source(solution, a),
-        absent("wall radiation", "a clear gas inside a duct of one wall temperature, or an opaque liquid: none"),
+        _radiation(solution, a),
     ]
+
+
+def _radiation(solution: Solution, a: DuctAnswers) -> Size:
+    """Radiation from the heated wall through a clear gas to what else it sees: q_r·a, a the heated part of 4/D."""
+    case = solution.case
+    if case.flow == "falling film":
+        return absent("wall radiation", "the film between wall and surroundings is opaque")
+    if not (case.has("emissivity") and case.has("surroundings_temperature")) or a.wall is None:
+        return absent(
+            "wall radiation",
+            "none at one wall temperature; where the wall sees another (an open end, an insulated wall) add emissivity "
+            "and surroundings temperature",
+        )
+    if case.substance is not None and case.substance.phase(a.property_temperature, case.pressure) == "liquid":
+        return absent("wall radiation", "the liquid is opaque")
+    around = case.get("surroundings_temperature")
+    flux = radiative.to_surroundings(a.wall, around, case.get("emissivity")) * (a.wall - around)
+    size = abs(flux) * a.exchange
+    ratio = size / balance(solution, a)
+    says = f"the wall radiates {num(flux)} W/m2 to what it sees at {num(around - 273.15)} degC, view factor 1 taken"
+    return Size("wall radiation", ratio, size, says, kelvins=_kelvins(solution, a, 3.0 * ratio))
 
 
 def _base(solution: Solution, a: DuctAnswers) -> float:

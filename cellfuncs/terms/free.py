@@ -7,8 +7,9 @@ advection, pressure work βT·gL/(cpΔT) (Gebhart 1962). The upright extent stan
 
 from cellfuncs.answers import Solution
 from cellfuncs.answers.free import FreeAnswers
+from cellfuncs.methods import radiation as radiative
 from cellfuncs.terms.layer import radiation
-from cellfuncs.terms.size import STEADY, Size, absent, num
+from cellfuncs.terms.size import STEADY, Size, absent, num, percent
 
 _CRITICAL = 1708.0  # Ra of a layer heated from below
 
@@ -57,8 +58,28 @@ def enclosure_sizes(solution: Solution) -> list[Size]:
         absent("wall conduction", "the walls' temperatures are prescribed"),
         *_gebhart(solution, a, 0.0 if still else across),
         _source(solution, a),
-        absent("wall radiation", "radiation between the two walls is not judged here; add it to the coefficient"),
+        _between_walls(solution, a, across),
     ]
+
+
+def _between_walls(solution: Solution, a: FreeAnswers, across: float) -> Size:
+    """Radiation across an enclosure, beside what the fluid carries; liquids are opaque."""
+    case = solution.case
+    known = case.substance is not None and a.property_temperature is not None
+    if known and case.substance.phase(a.property_temperature, case.pressure) == "liquid":
+        return absent("wall radiation", "the liquid between the walls is opaque")
+    if not case.has("emissivity") or a.stream is None:
+        return absent(
+            "wall radiation", "not stated; add emissivity, second emissivity and the walls' temperatures to judge it"
+        )
+    one = case.get("emissivity")
+    other = case.get("second_emissivity", one)
+    if not one or not other:
+        return absent("wall radiation", "emissivity 0: none")
+    h = radiative.between_walls(a.stream + a.difference, a.stream, one, other)
+    share = h / a.coefficient
+    says = f"the walls exchange {num(h * a.difference)} W/m2, {percent(share)} of what the fluid carries"
+    return Size("wall radiation", share, share * across, says, kelvins=None)
 
 
 def _gebhart(solution: Solution, a: FreeAnswers, advection: float) -> tuple[Size, Size]:

@@ -8,7 +8,7 @@ from typing import Any
 
 from cellfuncs.answers import Solution
 from cellfuncs.answers.layer import LayerAnswers
-from cellfuncs.groups import STEFAN_BOLTZMANN
+from cellfuncs.methods import radiation as radiative
 from cellfuncs.terms.recovery import rise_or_bound
 from cellfuncs.terms.size import STEADY, Size, absent, num, percent
 from cellfuncs.terms.thresholds import FAILS, HOLDS, STRAINED, threshold
@@ -107,7 +107,8 @@ def radiation(solution: Solution, a: Any, balance: float) -> Size:
         return absent(
             "wall radiation", "not stated; add emissivity and surroundings temperature to judge radiation from the wall"
         )
-    flux = case.get("emissivity") * STEFAN_BOLTZMANN * (a.wall**4 - case.get("surroundings_temperature") ** 4)
+    around = case.get("surroundings_temperature")
+    flux = radiative.to_surroundings(a.wall, around, case.get("emissivity")) * (a.wall - around)
     share = abs(flux) / (a.coefficient * solution.driving)
     says = f"the wall radiates {num(flux)} W/m2, {percent(share)} of what it gives to the stream"
     return Size(

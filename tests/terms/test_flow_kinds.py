@@ -102,7 +102,7 @@ def test_a_missing_row_is_asked_for_by_name(cf, kind):
 @pytest.mark.parametrize(
     ("kind", "label", "cells"),
     [
-        ("duct", "emissivity", (0.9,)),
+        ("duct", "particle diameter", (3.0, "mm")),
         ("plate", "diameter", (20.0, "mm")),
         ("gap", "heat flux", (1.0, "kW/m2")),
         ("jet", "roughness", (1.0, "mm")),
@@ -155,3 +155,25 @@ def test_a_thin_film_says_when_its_viscosity_gives_way(cf):
     slow, fast = (cf("TERM", block_of("gap", velocity=(u, "m/s")), "viscous heating", "reason") for u in (1.0, 30.0))
     assert "Na" not in slow
     assert "Na" in fast
+
+
+def test_radiation_across_an_enclosure_is_that_of_its_two_walls(cf):
+    walls = {"wall temperature": (40.0, "degC"), "second wall temperature": (20.0, "degC"), "emissivity": (0.9,)}
+    block = block_of("enclosure", **walls)
+    sigma, factor = 5.670374419e-8, 1 / (2 / 0.9 - 1)
+    flux = factor * sigma * (313.15**4 - 293.15**4)
+    carried = 20 * cf("CASE", block, "coefficient")
+    assert f"{flux:.3g} W/m2" in cf("TERM", block, "wall radiation", "reason")
+    lower = cf("TERM", [*block, ["second emissivity", 0.05, "", ""]], "wall radiation")
+    assert lower == pytest.approx(flux / carried / factor / (1 / 0.9 + 1 / 0.05 - 1), rel=1e-6)
+
+
+def test_radiation_inside_a_duct_needs_another_temperature_and_a_clear_gas(cf):
+    gas = {"substance": ("air",), "velocity": (5.0, "m/s")}
+    seen = {"emissivity": (0.8,), "surroundings temperature": (20.0, "degC")}
+    assert cf("TERM", block_of("duct", **gas), "wall radiation") == 0
+    block = block_of("duct", **gas, **seen)
+    flux = 0.8 * 5.670374419e-8 * (323.15**4 - 293.15**4)
+    assert cf("TERM", block, "wall radiation") > 0
+    assert f"{flux:.3g} W/m2" in cf("TERM", block, "wall radiation", "reason")
+    assert "opaque" in cf("TERM", block_of("duct", **seen), "wall radiation", "reason")
