@@ -24,7 +24,8 @@ _REMARKS = ("remark ", "note ", "comment ")
 @dataclass(frozen=True)
 class Label:
     """An entry of the dictionary; ``role`` is stated, choice, text, note, derived, or sheet: only other people's
-    sheets state it, case blocks do not."""
+    sheets state it, case blocks do not. ``in_sheets`` are names and symbols that only other people's sheets use for it.
+    """
 
     key: str
     label: str
@@ -33,6 +34,7 @@ class Label:
     symbols: tuple[str, ...]
     synonyms: tuple[str, ...]
     flows: tuple[str, ...]
+    in_sheets: tuple[str, ...] = ()
 
 
 def _split(text: str) -> tuple[str, ...]:
@@ -45,7 +47,7 @@ def dictionary() -> Mapping[str, Label]:
     return {
         row["key"]: Label(
             row["key"], row["label"], row["role"], row["kind"],
-            _split(row["symbols"]), _split(row["synonyms"]), _split(row["flows"]),
+            _split(row["symbols"]), _split(row["synonyms"]), _split(row["flows"]), _split(row.get("in_sheets") or ""),
         )
         for row in read_table("labels.csv")
     }  # fmt: skip
@@ -126,6 +128,34 @@ def candidates(label: str, sheets: bool = False) -> tuple[str, ...]:
         return found[0] if found else ()
     own = [tuple(key for key in place if dictionary()[key].role != "sheet") for place in found]
     return next(filter(None, [*own, *found]), ())
+
+
+_LONGEST_SYMBOL = 5
+
+
+@cache
+def _sheet_index() -> tuple[dict[str, list[str]], dict[str, list[str]], dict[str, list[str]]]:
+    """As ``_index``, with what only other people's sheets write."""
+    names, exact, loose = ({text: list(keys) for text, keys in table.items()} for table in _index())
+    for key, entry in dictionary().items():
+        for text in entry.in_sheets:
+            names.setdefault(_plain(text), [])
+            if len(text) > _LONGEST_SYMBOL:
+                names[_plain(text)].append(key)
+            else:
+                exact.setdefault(_symbol(text), []).append(key)
+                loose.setdefault(_symbol(text).casefold(), []).append(key)
+    return names, exact, loose
+
+
+@cache
+def in_sheets(label: str) -> tuple[str, ...]:
+    """All keys that a label of somebody's sheet may stand for: by its name, as a symbol, as one in any case."""
+    names, exact, loose = _sheet_index()
+    if _plain(label).startswith(_REMARKS):
+        return ("note",)
+    places = (names.get(_plain(label)), exact.get(_symbol(label)), loose.get(_symbol(label).casefold()))
+    return tuple(dict.fromkeys(key for place in places for key in place or ()))
 
 
 def settle(label: str, keys: Iterable[str], unit: str, flow: str | None) -> str:
