@@ -1,6 +1,7 @@
 """Elementary functions that take a float quickly and an array as one call: methods are written with these."""
 
 import math
+from bisect import bisect_right
 from typing import Any
 
 
@@ -54,6 +55,14 @@ def between(x: Any, known_x: tuple[float, ...], known_y: tuple[float, ...]) -> A
             t = (x - known_x[k - 1]) / (known_x[k] - known_x[k - 1])
             return known_y[k - 1] + t * (known_y[k] - known_y[k - 1])
     return known_y[-1]
+
+
+def steps(x: Any, starts: tuple[float, ...], values: tuple[float, ...]) -> Any:
+    """The value of the step that x lies in; step k runs from starts[k]; below the first the first holds."""
+    if isinstance(x, (float, int)):
+        return values[max(bisect_right(starts, x) - 1, 0)]
+    numpy = _numpy()
+    return numpy.asarray(values)[numpy.maximum(numpy.searchsorted(starts, x, side="right") - 1, 0)]
 
 
 def _numpy() -> Any:

@@ -11,6 +11,8 @@ from cellfuncs.errors import CellfuncsError, NumberRefused, OutOfRange
 from cellfuncs.sources import read_table
 
 METHODS: dict[str, "Method"] = {}
+# what ranges speak of and follows from inputs: symbol -> (names of the inputs, function of them)
+_FOLLOWS: dict[str, tuple[tuple[str, ...], Callable[..., Any]]] = {}
 
 # what a method may give; the words that tables show
 GIVES = (
@@ -23,8 +25,10 @@ GIVES = (
     "pressure gradient",
     "loss coefficient",
     "drag coefficient",
+    "local friction coefficient",
     "recovery factor",
     "reference temperature",
+    "reference enthalpy",
     "factor",
     "efficiency",
     "effectiveness",
@@ -185,6 +189,10 @@ class Method:
         worst = {}
         for r in self.ranges:
             value = by_symbol.get(r.variable)
+            if value is None and r.variable in _FOLLOWS:
+                names, function = _FOLLOWS[r.variable]
+                if all(name in known for name in names):
+                    value = function(*(known[name] for name in names))
             if value is None:
                 continue
             if not isinstance(value, (float, int)):
@@ -192,6 +200,21 @@ class Method:
                 value = low if low < r.low else high
             worst[r.variable] = value
         self.check(allow, **worst)
+
+
+def follows(symbol: str) -> Callable[[Callable[..., Any]], Callable[..., Any]]:
+    """Record how a variable that ranges speak of follows from inputs, where a case does not hand it over itself."""
+
+    def record(function: Callable[..., Any]) -> Callable[..., Any]:
+        _FOLLOWS[symbol] = (tuple(inspect.signature(function).parameters), function)
+        return function
+
+    return record
+
+
+@follows("Pe")
+def _peclet(reynolds: Any, prandtl: Any) -> Any:
+    return reynolds * prandtl
 
 
 def _check_sign(known: Input, value: Any) -> None:
