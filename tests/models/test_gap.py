@@ -1,6 +1,7 @@
 """The heated film: closed forms, a manufactured solution, turning points, and what is refused."""
 
 import math
+from itertools import pairwise
 
 import numpy as np
 import pytest
@@ -99,7 +100,7 @@ def test_a_manufactured_solution_is_met_with_spectral_decay():
         heat = 0.8 * solver.spread(theta(solver.x))[3]
         state = solver.solve(heat, theta(solver.x))
         errors.append(float(abs(state.theta - theta(solver.x)).max()))
-    assert all(later < earlier / 30 for earlier, later in zip(errors, errors[1:], strict=False)), errors
+    assert all(later < earlier / 30 for earlier, later in pairwise(errors)), errors
     assert errors[-1] < 1e-10
 
 

@@ -75,7 +75,7 @@ def test_means():
 
 @pytest.mark.parametrize("prandtl", [0.0, 9e-4, 1.1e4, -1.0, math.nan, math.inf])
 def test_other_fluids_are_refused(prandtl):
-    with pytest.raises(OutOfRange, match="0.001 to 10000|0.001 to 1e"):
+    with pytest.raises(OutOfRange, match="solved for Pr"):
         model.plate(prandtl)
 
 
