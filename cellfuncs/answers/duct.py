@@ -9,7 +9,7 @@ from collections.abc import Callable
 from dataclasses import dataclass, replace
 
 from cellfuncs.answers.loop import settle
-from cellfuncs.answers.path import overall, refuse_without_ambient
+from cellfuncs.answers.path import far_temperature, overall, refuse_without_end
 from cellfuncs.cases.case import Case, Properties
 from cellfuncs.cases.sections import Duct
 from cellfuncs.errors import CaseRefused
@@ -68,7 +68,7 @@ class DuctAnswers:
         """Wall temperature at the outlet end [K]."""
         if self.inlet is None:
             return None
-        if self.case.has("ambient_temperature"):
+        if far_temperature(self.case) is not None:
             return self.inlet + self.bulk_rise + self.local_flux / self.film
         if self.flux is None:
             return self.inlet + self.difference
@@ -122,7 +122,7 @@ def solve_duct(case: Case) -> DuctAnswers:
         h = nusselt * p.conductivity / shape.diameter
         driving = flux / h if flux is not None else difference
         film = h
-        if case.has("ambient_temperature"):
+        if far_temperature(case) is not None:
             h, method = overall(case, shape, h), f"overall, inside {h:.4g} by {method}"
         return DuctAnswers(
             case,
@@ -201,15 +201,16 @@ def _coefficient(
 def temperatures(case: Case) -> tuple[float | None, float | None]:
     """Inlet temperature and driving difference, as far as they are stated."""
     inlet = case.get("inlet_temperature")
+    refuse_without_end(case)
     if case.wall == "flux":
         if inlet is None and not (case.fixed or case.has("property_temperature")):
             case.need("inlet_temperature")
         return inlet, None
     wall, difference = case.get("wall_temperature"), case.get("temperature_difference")
-    refuse_without_ambient(case)
-    if case.has("ambient_temperature"):
+    far = far_temperature(case)
+    if far is not None:
         inlet = case.need("inlet_temperature")
-        return inlet, _nonzero(case.get("ambient_temperature") - inlet)
+        return inlet, _nonzero(far - inlet)
     if wall is None and difference is None:
         return inlet, 0.0  # no exchange: friction alone
     if wall is not None and difference is not None:

@@ -3,7 +3,9 @@
 import math
 from dataclasses import dataclass
 
+from cellfuncs.answers import driving as driving_difference
 from cellfuncs.answers.layer import close_on_film, stream_and_difference
+from cellfuncs.answers.loop import told
 from cellfuncs.cases.case import Case, Properties
 from cellfuncs.errors import CaseRefused
 from cellfuncs.groups import STANDARD_GRAVITY, rayleigh
@@ -61,6 +63,14 @@ class FreeAnswers:
         return None if self.stream is None else self.stream + self.difference
 
     @property
+    def second_wall(self) -> float | None:
+        """The other wall of an enclosure [K]; with a stated flux the one that gives it."""
+        if self.case.flow != "enclosure" or self.stream is None:
+            return None
+        stated = self.case.get("wall_temperature")
+        return self.stream if stated is not None and stated > self.stream else self.wall
+
+    @property
     def mean_flux(self) -> float:
         return self.coefficient * self.difference
 
@@ -79,11 +89,11 @@ def solve_free(case: Case) -> FreeAnswers:
     """Free convection at a surface; closes the loops on film temperature and, for a flux, on Ra itself."""
     surface = case.need("surface")
     stream, difference = stream_and_difference(case)
-    flux = case.get("heat_flux")
     size = _size(case, surface)
     gravity = case.get("gravity", STANDARD_GRAVITY) * math.cos(case.get("inclination", 0.0))
 
-    def with_difference(p: Properties, driving: float, temperature: float | None) -> FreeAnswers:
+    def at(temperature: float | None, driving: float, allow: bool) -> FreeAnswers:
+        p = case.properties(temperature)
         if p.expansion <= 0:
             raise CaseRefused("free convection needs an expansion coefficient above zero; state it (gases: 1/T)")
         nu = p.viscosity / p.density
@@ -93,44 +103,16 @@ def solve_free(case: Case) -> FreeAnswers:
             nusselt, method, outside = h * size.length / p.conductivity, "stated", ""
         else:
             more = _more(case, surface, size.length, ra, p.prandtl)
-            nusselt, method, outside = methods.nusselt(surface, ra, p.prandtl, case.allow, **more)
+            nusselt, method, outside = methods.nusselt(surface, ra, p.prandtl, allow, **more)
             h = nusselt * p.conductivity / size.length
+        flux = case.get("heat_flux")
         return FreeAnswers(
-            case,
-            size.length,
-            temperature,
-            p,
-            ra,
-            nusselt,
-            h,
-            method,
-            outside,
-            driving,
-            flux,
-            stream,
-            gravity,
+            case, size.length, temperature, p, ra, nusselt, h, method, outside, driving, flux, stream, gravity,
             size.area,
-        )
+        )  # fmt: skip
 
-    def at(temperature: float | None) -> FreeAnswers:
-        p = case.properties(temperature)
-        if flux is None:
-            return with_difference(p, difference, temperature)
-        driving = _for_flux(lambda d: with_difference(p, math.copysign(d, flux), temperature).coefficient, abs(flux))
-        return with_difference(p, math.copysign(driving, flux), temperature)
-
-    return close_on_film(case, at, stream, difference)
-
-
-def _for_flux(coefficient, flux: float) -> float:
-    """The difference at which h·ΔT is the flux; h grows slowly with ΔT, so that halving the step converges."""
-    driving = 10.0
-    for _ in range(100):
-        new = flux / coefficient(driving)
-        if abs(new - driving) <= 1e-12 * new:
-            return new
-        driving = math.sqrt(new * driving)  # ΔT ~ q^4/5: the mean in the logarithm damps the swing
-    return driving
+    form = "cylinder" if surface.endswith("cylinder") else "sphere" if surface == "sphere" else "plane"
+    return close_on_film(case, at, stream, difference, 0.5, form, case.get("diameter", 0.0) / 2.0)
 
 
 @dataclass(frozen=True)
@@ -172,26 +154,59 @@ def _more(case: Case, surface: str, length: float, ra: float, prandtl: float) ->
 
 
 def solve_enclosure(case: Case) -> FreeAnswers:
-    """A layer of still fluid between two walls; properties at the mean of the walls."""
+    """A layer of still fluid between two walls; properties at the mean of the walls.
+
+    With a heat flux and one wall temperature the other wall follows: it gives the flux to the fluid.
+    """
     gap = case.need("gap")
     heated = case.get("heated_from", "from the side")
+    width, length = case.get("width"), case.get("length")
+    aspect = case.need("length") / gap if heated == "from the side" else 1.0
+    area = None if width is None or length is None else width * length
+    gravity = case.get("gravity", STANDARD_GRAVITY)
+    flux = case.get("heat_flux")
+    known, apart = _walls(case)
+    stated = case.get("property_temperature")
+
+    def at(driving: float, allow: bool) -> FreeAnswers:
+        temperature = stated if stated is not None or known is None else known + 0.5 * driving
+        p = case.properties(temperature)
+        nu = p.viscosity / p.density
+        ra = rayleigh(gap, abs(driving), nu, p.diffusivity, max(p.expansion, 1e-12), gravity)
+        nusselt, method, outside = methods.enclosure(ra, p.prandtl, aspect, heated, allow)
+        h = nusselt * p.conductivity / gap
+        cold = None if known is None else min(known, known + driving)
+        return FreeAnswers(
+            case, gap, temperature, p, ra, nusselt, h, method, outside, abs(driving), flux, cold, gravity, area
+        )
+
+    def coefficient(driving: float) -> float:
+        if known is None:
+            return at(driving, True).coefficient
+        return told(lambda _: at(driving, True).coefficient, known + 0.5 * driving, "mean of the walls")
+
+    if apart is None:
+        apart = driving_difference.for_flux(coefficient, flux)
+    return at(apart, case.allow)
+
+
+def _walls(case: Case) -> tuple[float | None, float | None]:
+    """One wall's temperature, and how far the other is from it; None for what is not known."""
     one, other = case.get("wall_temperature"), case.get("second_wall_temperature")
     apart = case.get("temperature_difference")
+    flux = case.get("heat_flux")
+    if flux is not None:
+        if flux == 0:
+            raise CaseRefused(f'"{case.stated["heat_flux"].label}" is zero; nothing is exchanged')
+        if apart is not None or (one is not None and other is not None):
+            raise CaseRefused("a heat flux goes with one wall temperature; the other one follows")
+        known = other if one is None else one
+        if known is None and not (case.fixed or case.has("property_temperature")):
+            case.need("wall_temperature")
+        return known, None
     if one is not None and other is not None:
-        apart = abs(one - other)
+        one, apart = min(one, other), abs(one - other)
     if not apart:
         case.need("second_wall_temperature" if one is not None else "wall_temperature")
         raise CaseRefused("both walls have the same temperature; there is no driving difference to judge by")
-    cold = None if one is None else min(one, other) if other is not None else one
-    temperature = case.get("property_temperature", None if cold is None else cold + 0.5 * abs(apart))
-    p = case.properties(temperature)
-    gravity = case.get("gravity", STANDARD_GRAVITY)
-    ra = rayleigh(gap, abs(apart), p.viscosity / p.density, p.diffusivity, max(p.expansion, 1e-12), gravity)
-    aspect = case.need("length") / gap if heated == "from the side" else 1.0
-    nusselt, method, outside = methods.enclosure(ra, p.prandtl, aspect, heated, case.allow)
-    h = nusselt * p.conductivity / gap
-    width, length = case.get("width"), case.get("length")
-    area = None if width is None or length is None else width * length
-    return FreeAnswers(
-        case, gap, temperature, p, ra, nusselt, h, method, outside, abs(apart), None, cold, gravity, area
-    )
+    return other if one is None else one, abs(apart)

@@ -8,7 +8,9 @@ from collections.abc import Callable
 from dataclasses import dataclass, replace
 from typing import Any
 
-from cellfuncs.answers.loop import settle
+from cellfuncs.answers import driving as driving_difference
+from cellfuncs.answers.loop import told
+from cellfuncs.answers.path import far_temperature, refuse_without_end, resistance
 from cellfuncs.cases.case import Case, Properties
 from cellfuncs.errors import CaseRefused
 from cellfuncs.methods import cross, recovery
@@ -93,15 +95,20 @@ class LayerAnswers:
         return factor * self.velocity**2 / (2.0 * self.properties.specific_heat)
 
 
-def solve_layer(case: Case) -> LayerAnswers:
-    """The answers of an external flow; with a prescribed flux it closes the loop on the film temperature."""
+def solve_layer(
+    case: Case, finish: Callable[[LayerAnswers, bool], LayerAnswers] = lambda found, allow: found
+) -> LayerAnswers:
+    """The answers of an external flow; closes the loops on film temperature and, where it follows, the difference.
+
+    ``finish`` may change the answers at each step of the loops, for instance blend them with free convection.
+    """
     length, group_length = _lengths(case)
     transition = case.get("transition", methods.TRANSITION) if case.flow == "plate" else _BODY_TRANSITION
-    flux = case.get("heat_flux")
     stream, difference = stream_and_difference(case)
     film = 0.0 if case.flow == "sphere" else 0.5  # Whitaker's sphere takes the stream's properties
+    form = case.flow if case.flow in ("cylinder", "sphere") else "plane"
 
-    def at(temperature: float | None) -> LayerAnswers:
+    def at(temperature: float | None, driving: float, allow: bool) -> LayerAnswers:
         p = case.properties(temperature)
         u = case.velocity(p.density)
         re = p.density * u * group_length / p.viscosity
@@ -109,50 +116,59 @@ def solve_layer(case: Case) -> LayerAnswers:
         if h is not None:
             nusselt, method, outside = h * group_length / p.conductivity, "stated", ""
         elif case.flow == "plate":
-            nusselt, method, outside = methods.nusselt(re, p.prandtl, case.wall, transition, case.allow)
+            nusselt, method, outside = methods.nusselt(re, p.prandtl, case.wall, transition, allow)
         else:
-            nusselt, method, outside = cross.nusselt(case.flow, re, p.prandtl, case.allow, **_shape(case, p, stream))
+            shape = _shape(case, p, stream, driving)
+            nusselt, method, outside = cross.nusselt(case.flow, re, p.prandtl, allow, **shape)
         h = nusselt * p.conductivity / group_length
-        driving = flux / h if flux is not None else difference
-        return LayerAnswers(
-            case,
-            length,
-            temperature,
-            p,
-            u,
-            re,
-            transition,
-            nusselt,
-            h,
-            method,
-            outside,
-            driving,
-            flux,
-            stream,
+        flux = case.get("heat_flux")
+        found = LayerAnswers(
+            case, length, temperature, p, u, re, transition, nusselt, h, method, outside, driving, flux, stream,
             group_length,
-        )
+        )  # fmt: skip
+        return finish(found, allow)
 
-    return close_on_film(case, at, stream, difference, film)
+    return close_on_film(case, at, stream, difference, film, form, group_length / 2.0)
 
 
 def close_on_film(
-    case: Case, at: Callable[[float | None], Any], stream: float | None, difference: float | None, film: float = 0.5
+    case: Case,
+    at: Callable[[float | None, float, bool], Any],
+    stream: float | None,
+    difference: float | None,
+    film: float,
+    form: str,
+    radius: float,
 ) -> Any:
-    """The answers at the film temperature, which a prescribed flux sets itself; or at the stated temperature.
+    """The answers at the film temperature, or at the stated one; the difference from a flux or a path where it is open.
 
-    ``film`` is the part of the difference that lies between the stream and the temperature of the properties.
+    ``at`` gives the answers at a temperature of the properties and a difference, beyond the range of methods where
+    it may; ``film`` is the part of the difference between the stream and the properties' temperature; ``form`` and
+    ``radius`` are those of the surface.
     """
     stated = case.get("property_temperature")
-    if stated is not None or stream is None:
-        return at(stated)
-    if case.fixed:
-        found = at(None)
-        return replace(found, property_temperature=stream + film * found.difference)
-    if difference is not None or not film:
-        found = at(stream + film * (difference or 0.0))
-    else:
-        found = at(settle(stream, lambda t: stream + film * at(t).difference, "film temperature"))
-    case.refuse_phase_change(stream, found.property_temperature)
+    follows = stated is None and stream is not None
+
+    def solved(driving: float, allow: bool) -> Any:
+        return at(stream + film * driving if follows and not case.fixed else stated, driving, allow)
+
+    if difference is None:
+
+        def coefficient(driving: float) -> float:
+            if not follows or case.fixed:
+                return solved(driving, True).coefficient
+            return told(lambda _: solved(driving, True).coefficient, stream + film * driving, "film temperature")
+
+        far = far_temperature(case)
+        if far is None:
+            difference = driving_difference.for_flux(coefficient, case.get("heat_flux"))
+        else:
+            difference = driving_difference.for_path(coefficient, far - stream, resistance(case, form, radius))
+    found = solved(difference, case.allow)
+    if follows and case.fixed:
+        return replace(found, property_temperature=stream + film * difference)
+    if follows:
+        case.refuse_phase_change(stream, found.property_temperature)
     return found
 
 
@@ -167,24 +183,31 @@ def _lengths(case: Case) -> tuple[float, float]:
     return (case.need("radius"), diameter) if case.flow == "jet" else (diameter, diameter)
 
 
-def _shape(case: Case, p: Properties, stream: float | None) -> dict[str, float]:
+def _shape(case: Case, p: Properties, stream: float | None, driving: float) -> dict[str, float]:
     """What the methods of cross-flow and jets ask for besides Re and Pr."""
     if case.flow == "jet":
         diameter = case.need("diameter")
         return {"height": case.need("distance") / diameter, "radius": case.need("radius") / diameter}
-    if case.flow == "sphere" and case.has("wall_temperature") and stream is not None and not case.fixed:
-        return {"viscosity_ratio": p.viscosity / case.properties(case.get("wall_temperature")).viscosity}
+    if case.flow == "sphere" and stream is not None and not case.fixed and driving:
+        return {"viscosity_ratio": p.viscosity / case.properties(stream + driving).viscosity}
     return {}
 
 
 def stream_and_difference(case: Case) -> tuple[float | None, float | None]:
     """Temperature of the stream or still fluid, and wall minus it, as far as they are stated."""
     stream = case.get("stream_temperature")
+    refuse_without_end(case)
     if case.wall == "flux":
         if case.get("heat_flux") == 0:
             raise CaseRefused(f'"{case.stated["heat_flux"].label}" is zero; nothing is exchanged')
         if stream is None and not (case.fixed or case.has("property_temperature")):
             case.need("stream_temperature")
+        return stream, None
+    far = far_temperature(case)
+    if far is not None:
+        stream = case.need("stream_temperature")
+        if far == stream:
+            raise CaseRefused("both ends of the heat path have the same temperature; nothing is exchanged")
         return stream, None
     wall, difference = case.get("wall_temperature"), case.get("temperature_difference")
     if wall is not None and difference is not None and stream is not None:

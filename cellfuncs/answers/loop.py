@@ -31,8 +31,13 @@ def settle(start: float, follow: Callable[[float], float], what: str) -> float:
 
 
 def _gap(follow: Callable[[float], float], temperature: float, what: str) -> float:
+    return told(follow, temperature, what) - temperature
+
+
+def told(follow: Callable[[float], float], temperature: float, what: str) -> float:
+    """``follow(temperature)``; a refusal says at which temperature it came up."""
     try:
-        return follow(temperature) - temperature
+        return follow(temperature)
     except (OutOfRange, NoModel) as error:
         celsius = temperature - 273.15
         if not -273.15 < celsius < _FAR:

@@ -12,21 +12,25 @@ _FORCED = {"vertical plate": "plate", "horizontal cylinder": "cylinder", "sphere
 
 
 def solve_mixed(case: Case) -> LayerAnswers:
-    """The forced layer with the coefficient of the blend; the wall temperature is prescribed."""
+    """The forced layer with the coefficient of the blend."""
     surface = case.need("surface")
     if surface not in _FORCED:
         raise CaseRefused(f'"surface" of mixed convection: write {", ".join(_FORCED)}')
-    if case.has("heat_flux"):
-        raise CaseRefused("mixed convection is blended at a prescribed wall temperature; state that, not a flux")
     stated = {key: entry for key, entry in case.stated.items() if key not in ("surface", "flow_direction")}
-    forced = solve_layer(case.stating(stated, _FORCED[surface]))
-    p, g = forced.properties, case.get("gravity", STANDARD_GRAVITY)
-    nu = p.viscosity / p.density
-    size = forced.length
-    ra = rayleigh(size, abs(forced.difference), nu, p.diffusivity, max(p.expansion, 1e-12), g)
-    still, *_ = free.nusselt(surface, ra, p.prandtl, case.allow)
-    nusselt = mixed.blend(forced.nusselt, still, case.get("flow_direction", "assisting"))
-    ratio = grashof(size, abs(forced.difference), nu, p.expansion, g) / forced.reynolds**2
-    outside = "; ".join(filter(None, (forced.outside, mixed.outside(ratio, case.allow))))
-    h = nusselt * p.conductivity / size
-    return replace(forced, nusselt=nusselt, coefficient=h, method="Churchill blend", outside=outside)
+    direction = case.get("flow_direction", "assisting")
+    gravity = case.get("gravity", STANDARD_GRAVITY)
+
+    def blended(forced: LayerAnswers, allow: bool) -> LayerAnswers:
+        if forced.method == "stated" or not forced.difference:
+            return forced
+        p, size = forced.properties, forced.length
+        nu = p.viscosity / p.density
+        ra = rayleigh(size, abs(forced.difference), nu, p.diffusivity, max(p.expansion, 1e-12), gravity)
+        still, *_ = free.nusselt(surface, ra, p.prandtl, allow)
+        nusselt = mixed.blend(forced.nusselt, still, direction)
+        ratio = grashof(size, abs(forced.difference), nu, p.expansion, gravity) / forced.reynolds**2
+        outside = "; ".join(filter(None, (forced.outside, mixed.outside(ratio, allow))))
+        h = nusselt * p.conductivity / size
+        return replace(forced, nusselt=nusselt, coefficient=h, method="Churchill blend", outside=outside)
+
+    return solve_layer(case.stating(stated, _FORCED[surface]), blended)

@@ -12,6 +12,7 @@ from cellfuncs.answers.free import FreeAnswers, solve_enclosure, solve_free
 from cellfuncs.answers.gap import GapAnswers, solve_gap
 from cellfuncs.answers.layer import LayerAnswers, solve_layer
 from cellfuncs.answers.mixed import solve_mixed
+from cellfuncs.answers.path import far_temperature
 from cellfuncs.answers.through import solve_through
 from cellfuncs.cases import labels
 from cellfuncs.cases.case import Case
@@ -145,6 +146,14 @@ def _shear_rate(s: Solution) -> float | None:
     return None if stress is None else stress / s.answers.properties.viscosity
 
 
+def _overall(s: Solution) -> float | None:
+    """U from the stream to the far side of a stated path, on the wetted surface."""
+    a, far = s.answers, far_temperature(s.case)
+    if far is None:
+        return None
+    return a.coefficient if isinstance(a, DuctAnswers) else a.mean_flux / (far - a.stream)
+
+
 def _friction_rise(s: Solution) -> float | None:
     a = s.answers
     if not isinstance(a, DuctAnswers):
@@ -206,7 +215,8 @@ _DERIVED: Mapping[str, Callable[[Solution], float | str | None]] = {
     "bulk_rise": _attribute("bulk_rise"),
     "rayleigh": _attribute("rayleigh"),
     "grashof": _attribute("grashof"),
-    "overall_coefficient": _duct(lambda a: a.coefficient if a.case.has("ambient_temperature") else None),
+    "overall_coefficient": _overall,
+    "second_wall_temperature": _attribute("second_wall"),
     "biot": _attribute("biot"),
     "fourier": _attribute("fourier"),
     "time_constant": _attribute("time_constant"),

@@ -7,6 +7,7 @@ import math
 from dataclasses import dataclass
 
 from cellfuncs.answers.duct import DuctAnswers, close_on_bulk, temperatures
+from cellfuncs.answers.path import far_temperature, overall
 from cellfuncs.cases.case import Case, Properties
 from cellfuncs.cases.sections import Duct
 from cellfuncs.errors import CaseRefused, OutOfRange
@@ -54,9 +55,12 @@ def _answers(
     reynolds = p.density * velocity * size / p.viscosity
     friction = 2.0 * drop * size / (length * p.density * velocity**2)
     driving = difference if flux is None else flux / h
+    film = h
+    if far_temperature(case) is not None:
+        h, method = overall(case, shape, h), f"overall, film {h:.4g} by {method}"
     return ThroughAnswers(
         case, shape, length, temperature, p, velocity, reynolds, nusselt, friction, h, method, outside, driving, flux,
-        inlet, h, drop,
+        inlet, film, drop,
     )  # fmt: skip
 
 

@@ -18,7 +18,7 @@ DEFAULT_TOLERANCE = 0.05
 DEFAULT_SMALLEST = 0.1  # K
 
 # property of a substance -> label that overrides it
-_PRESCRIBED = ("wall_temperature", "heat_flux", "temperature_difference", "ambient_temperature")
+_PRESCRIBED = ("wall_temperature", "heat_flux", "temperature_difference", "ambient_temperature", "beyond_temperature")
 _OVERRIDES = {
     "density": "density",
     "viscosity": "viscosity",
@@ -110,6 +110,11 @@ class Case:
         """Whether methods may answer beyond their published range."""
         return self.get("beyond_range") == "allow"
 
+    @property
+    def _has_path(self) -> bool:
+        """Whether a temperature beyond the wall is stated instead of one at it."""
+        return self.has("ambient_temperature") or self.has("beyond_temperature")
+
     @cached_property
     def wall(self) -> str:
         """``temperature`` or ``flux``: what is prescribed at the wall."""
@@ -117,7 +122,7 @@ class Case:
         if self.has("heat_flux") and len(prescribed) > 1:
             names = " and ".join(f'"{self.stated[k].label}"' for k in prescribed)
             raise CaseRefused(f"{names} are both stated; prescribe the flux or the wall temperature, not both")
-        if self.has("ambient_temperature") and len(prescribed) > 1:
+        if self._has_path and len(prescribed) > 1:
             names = " and ".join(f'"{self.stated[k].label}"' for k in prescribed)
             raise CaseRefused(f"{names} are both stated; give the wall or what lies beyond it")
         if not prescribed and self.flow != "duct":
@@ -140,7 +145,7 @@ class Case:
 
     def _wall_is_given(self, answer: str) -> bool:
         """Whether the answer is the wall's temperature where that is prescribed."""
-        if answer != "wall temperature" or self.flow == "body" or self.has("ambient_temperature"):
+        if answer != "wall temperature" or self.flow == "body" or self._has_path:
             return False
         return self.wall == "temperature"
 
