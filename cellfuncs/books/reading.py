@@ -111,8 +111,10 @@ class Sheet:
     def value(self, row: int, column: int) -> tuple[str | None, str | None]:
         """Type mark and text of a cell, (None, None) where it is empty."""
         index = self.at(row, column)
-        if index is None or not self.filled[index]:
-            return None, None
+        return (None, None) if index is None or not self.filled[index] else self.raw(index)
+
+    def raw(self, index: int) -> tuple[str | None, str | None]:
+        """Type mark and text of the cell with this index, which is not empty."""
         quick = self._plain_cell.match(self.data, self.starts[index])
         if quick is not None:
             mark, text = quick.groups()

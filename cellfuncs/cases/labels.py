@@ -58,7 +58,7 @@ def _choices() -> Mapping[str, Mapping[str, str]]:
     table: dict[str, dict[str, str]] = {}
     for row in read_table("choices.csv"):
         for spelling in _split(row["spellings"]):
-            table.setdefault(row["key"], {})[_plain(spelling)] = row["choice"]
+            table.setdefault(row["key"], {})[plain(spelling)] = row["choice"]
     return table
 
 
@@ -68,7 +68,7 @@ def choices(key: str) -> tuple[str, ...]:
     return tuple(dict.fromkeys(_choices()[key].values()))
 
 
-def _plain(text: str) -> str:
+def plain(text: str) -> str:
     """A label without case, accents of spacing, and joints."""
     text = unicodedata.normalize("NFKC", text).replace("µ", "μ").strip().rstrip(":=").strip()
     return _JOINTS.sub(" ", text).strip().casefold()
@@ -88,7 +88,7 @@ def _index() -> tuple[dict[str, list[str]], dict[str, list[str]], dict[str, list
     loose: dict[str, list[str]] = {}
     for key, entry in dictionary().items():
         for name in (entry.label, *entry.synonyms):
-            names.setdefault(_plain(name), []).append(key)
+            names.setdefault(plain(name), []).append(key)
         for symbol in entry.symbols:
             exact.setdefault(_symbol(symbol), []).append(key)
             loose.setdefault(_symbol(symbol).casefold(), []).append(key)
@@ -120,9 +120,9 @@ def candidates(label: str, sheets: bool = False) -> tuple[str, ...]:
     What only other people's sheets state stands behind what case blocks know, unless ``sheets``.
     """
     names, exact, loose = _index()
-    if _plain(label).startswith(_REMARKS):
+    if plain(label).startswith(_REMARKS):
         return ("note",)
-    places = (names.get(_plain(label)), exact.get(_symbol(label)), loose.get(_symbol(label).casefold()))
+    places = (names.get(plain(label)), exact.get(_symbol(label)), loose.get(_symbol(label).casefold()))
     found = [tuple(dict.fromkeys(place)) for place in places if place]
     if sheets:
         return found[0] if found else ()
@@ -139,9 +139,9 @@ def _sheet_index() -> tuple[dict[str, list[str]], dict[str, list[str]], dict[str
     names, exact, loose = ({text: list(keys) for text, keys in table.items()} for table in _index())
     for key, entry in dictionary().items():
         for text in entry.in_sheets:
-            names.setdefault(_plain(text), [])
+            names.setdefault(plain(text), [])
             if len(text) > _LONGEST_SYMBOL:
-                names[_plain(text)].append(key)
+                names[plain(text)].append(key)
             else:
                 exact.setdefault(_symbol(text), []).append(key)
                 loose.setdefault(_symbol(text).casefold(), []).append(key)
@@ -152,9 +152,9 @@ def _sheet_index() -> tuple[dict[str, list[str]], dict[str, list[str]], dict[str
 def in_sheets(label: str) -> tuple[str, ...]:
     """All keys that a label of somebody's sheet may stand for: by its name, as a symbol, as one in any case."""
     names, exact, loose = _sheet_index()
-    if _plain(label).startswith(_REMARKS):
+    if plain(label).startswith(_REMARKS):
         return ("note",)
-    places = (names.get(_plain(label)), exact.get(_symbol(label)), loose.get(_symbol(label).casefold()))
+    places = (names.get(plain(label)), exact.get(_symbol(label)), loose.get(_symbol(label).casefold()))
     return tuple(dict.fromkeys(key for place in places for key in place or ()))
 
 
@@ -184,7 +184,7 @@ def nearest(label: str, roles: tuple[str, ...] = ("stated", "choice", "text")) -
         if entry.role in roles
         for name in (entry.label, *entry.synonyms)
     }
-    match = process.extractOne(_plain(label), list(names), scorer=fuzz.ratio)
+    match = process.extractOne(plain(label), list(names), scorer=fuzz.ratio)
     return names[match[0]]
 
 
@@ -194,7 +194,7 @@ def hint(label: str, roles: tuple[str, ...] = ("stated", "choice", "text")) -> s
 
     near = nearest(label, roles)
     known = [near, *next(e.synonyms for e in dictionary().values() if e.label == near)]
-    if max(fuzz.ratio(_plain(label), _plain(name)) for name in known) >= 60:
+    if max(fuzz.ratio(plain(label), plain(name)) for name in known) >= 60:
         return f'the nearest is "{near}"'
     return f'the nearest is "{near}", but none is near: =CF_LIST("labels") lists them'
 
@@ -202,7 +202,7 @@ def hint(label: str, roles: tuple[str, ...] = ("stated", "choice", "text")) -> s
 def choice(key: str, text: str) -> str:
     """The admissible choice that a text means, or a refusal that lists them."""
     table = _choices()[key]
-    found = table.get(_plain(text))
+    found = table.get(plain(text))
     if found is None:
         listed = ", ".join(choices(key))
         raise UnknownName(f'"{text[:40]}" is no {dictionary()[key].label}; write one of: {listed}')

@@ -1,0 +1,88 @@
+"""Formulas with their references taken out: ``=C2*A2/D2`` copied down a column is one shape.
+
+Each shape is parsed once, by the engine's own parser; what a formula refers to stands beside it.
+"""
+
+from __future__ import annotations
+
+import re
+from collections.abc import Mapping
+from functools import lru_cache
+from typing import Any, NamedTuple
+
+from cellfuncs.books.formulas import MAX_LENGTH
+from cellfuncs.books.grid import Area, column_number
+
+MOST_NESTED = 60  # brackets in brackets; spreadsheet programs allow 64
+
+_PIECES = re.compile(
+    r'"(?:[^"]|"")*"'
+    r"|(?<![\w.\[])(?P<prefix>(?:'(?:[^']|'')*'|\[\d{1,4}\][^\s'!+\-*/^&=<>(),;:{}\"]*|[^\W\d][\w.]*)!)?"
+    r"\$?(?P<left>[A-Za-z]{1,3})\$?(?P<top>[0-9]{1,7})"
+    r"(?::\$?(?P<right>[A-Za-z]{1,3})\$?(?P<bottom>[0-9]{1,7}))?(?![\w(.!\[])"
+    r"|[^\W\d][\w.\\]*"
+)
+
+
+class Target(NamedTuple):
+    """What a reference means: the sheet's name (None: the formula's own), the area."""
+
+    sheet: str | None
+    area: Area
+
+
+class Shape(NamedTuple):
+    """A formula's text with ``_r1_``, ``_r2_`` … in the place of its references, and these."""
+
+    text: str
+    targets: tuple[Target, ...]
+
+
+def shape_of(text: str) -> Shape:
+    """Take the references out of a formula (without its ``=``)."""
+    targets: list[Target] = []
+
+    def take(match: re.Match[str]) -> str:
+        top = match["top"]
+        if top is None:
+            return match[0]
+        prefix = match["prefix"]
+        left, first = column_number(match["left"].upper()), int(top)
+        if match["right"]:
+            right, last = column_number(match["right"].upper()), int(match["bottom"])
+            area = (min(first, last), min(left, right), max(first, last), max(left, right))
+        else:
+            area = (first, left, first, left)
+        sheet = None
+        if prefix:
+            sheet = prefix[:-1]
+            sheet = sheet[1:-1].replace("''", "'") if sheet[0] == "'" else sheet
+        targets.append(Target(sheet, area))
+        return f"_r{len(targets)}_"
+
+    return Shape(_PIECES.sub(take, text), tuple(targets))
+
+
+def depth(text: str) -> int:
+    """How deep brackets are nested."""
+    deepest = level = 0
+    for sign in text:
+        if sign == "(":
+            level += 1
+            deepest = max(deepest, level)
+        elif sign == ")":
+            level -= 1
+    return deepest
+
+
+@lru_cache(maxsize=4096)
+def parsed(shape: str) -> Mapping[str, Any] | None:
+    """The tree of a shape as the engine's parser gives it, or None where it cannot be parsed."""
+    import formualizer
+
+    if len(shape) > 2 * MAX_LENGTH or depth(shape) > MOST_NESTED:
+        return None
+    try:
+        return formualizer.parse("=" + shape).to_dict()
+    except (formualizer.ParserError, formualizer.TokenizerError, ValueError, RecursionError):
+        return None
