@@ -8,7 +8,7 @@ import math
 
 import pytest
 
-from cellfuncs.models import free, gap, plate
+from cellfuncs.models import balance, free, gap, plate
 
 # Pohlhausen 1921; Evans 1968, Laminar Boundary Layer Theory, table of Nu_x/√Re_x: from memory
 NUSSELT = [
@@ -54,8 +54,8 @@ def test_uniform_flux_on_a_plate(prandtl, value):
 
 # Ostrach 1953, NACA TR 1111: f''(0) and −θ'(0), from memory
 OSTRACH = [
-    (0.01, 0.9862, 0.0812), (1.0, 0.6421, 0.5671), (2.0, 0.5713, 0.7165), (10.0, 0.4192, 1.1694), (100.0, 0.2517, 2.191),
-    (1000.0, 0.1450, 3.966),
+    (0.01, 0.9862, 0.0812), (1.0, 0.6421, 0.5671), (2.0, 0.5713, 0.7165), (10.0, 0.4192, 1.1694),
+    (100.0, 0.2517, 2.191), (1000.0, 0.1450, 3.966),
 ]  # fmt: skip
 
 
@@ -108,3 +108,8 @@ def test_peak_of_a_heated_film():
     assert film.peak == pytest.approx(viscosity * speed**2 / (8 * conductivity), rel=1e-12)
     assert film.low_flux * conductivity / height == pytest.approx(43_200.0, rel=1e-9)
     assert math.isclose(film.low_flux, film.high_flux, rel_tol=1e-12)
+
+
+def test_ogata_and_banks():
+    """Ogata and Banks 1961, USGS Professional Paper 411-A, equation 9, at vx/D = 0.1 and v²t/D = 5e-3."""
+    assert balance.advancing_front(0.1, 0.005) == pytest.approx(0.3333604845, rel=1e-9)
