@@ -121,12 +121,6 @@ def _finish(result: Any, kind: str | None, unit: str | None) -> Any:
     return _settle(result)
 
 
-def _is_settled(cell: Any) -> bool:
-    """Whether a cell of a table is fit already: the common case, decided without more."""
-    kind = type(cell)
-    return (kind is str and len(cell) <= faults.LONGEST_TEXT) or (kind is float and cell - cell == 0.0)
-
-
 def _settle(result: Any) -> Any:
     """What may stand in cells: finite floats and short texts."""
     if type(result) is float:
@@ -136,7 +130,17 @@ def _settle(result: Any) -> Any:
     if type(result) is str:
         return faults.clip(result)
     if isinstance(result, (list, tuple)):
-        return [[cell if _is_settled(cell) else _settle(cell) for cell in row] for row in result]
+        longest = faults.LONGEST_TEXT
+        return [
+            [
+                # fit already: the common case, decided without a call
+                cell
+                if (type(cell) is str and len(cell) <= longest) or (type(cell) is float and cell - cell == 0.0)
+                else _settle(cell)
+                for cell in row
+            ]
+            for row in result
+        ]
     if isinstance(result, (bool, int)) or hasattr(result, "__float__"):
         return _settle(float(result))
     raise TypeError(f"no answer for a cell: {type(result).__name__}")

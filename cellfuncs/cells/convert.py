@@ -337,12 +337,25 @@ class TextReader:
         return grid
 
 
+_plain_texts: dict[str, str] = {}
+
+
 def plain_cell(value: Any) -> Any:
     """A cell of a block or list as float, text or None; faults and errors stay recognisable texts."""
     if value is None or type(value) is float:
         return value
-    if type(value) is not str:
-        value = unwrap(value)
+    if type(value) is str:
+        known = _plain_texts.get(value)
+        if known is not None:
+            return known
+        text = value.strip()
+        text = f"#error {text}" if text in ERROR_TEXTS else text or None
+        if text is not None:
+            if len(_plain_texts) >= _REMEMBERED_TEXTS:
+                _plain_texts.clear()
+            _plain_texts[value] = text
+        return text
+    value = unwrap(value)
     if value is None or type(value) is float:
         return value
     if isinstance(value, str):
@@ -384,7 +397,7 @@ def read_block(value: Any) -> tuple[tuple[Any, ...], ...]:
         if cells.count(None) == len(cells):
             continue
         for cell in cells:
-            if type(cell) is str and cell[0] == "!" and faults.is_fault(cell):
+            if type(cell) is str and cell.startswith(faults.MARK):
                 raise Handed(cell)
         if len(rows) >= MOST_BLOCK_ROWS:
             raise NumberRefused(f"more than {MOST_BLOCK_ROWS:,} filled rows; a block is one case")
