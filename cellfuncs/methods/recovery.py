@@ -8,6 +8,7 @@ import math
 from bisect import bisect_right
 
 from cellfuncs.errors import OutOfRange
+from cellfuncs.methods import high_speed
 
 _LOG_RE = (4.0, 5.0, 6.0)
 _PRANDTL = (0.005, 0.025, 0.1, 0.71, 2.0, 6.0, 20.0, 100.0, 500.0)
@@ -47,19 +48,14 @@ def turbulent_tube(reynolds: float, prandtl: float) -> float:
 
 
 def laminar_plate(prandtl: float) -> float:
-    """Recovery factor of a laminar plate: √Pr to Pr 5, 1.922 Pr^1/3 − 1.341 from 7, linear between."""
+    """Recovery factor of a laminar plate, refused outside its range."""
     if prandtl < 0.01:
         raise OutOfRange(f"the recovery factor of a plate is known from Pr 0.01, here {prandtl:.3g}")
-    if prandtl <= 5.0:
-        return math.sqrt(prandtl)
-    if prandtl >= 7.0:
-        return 1.922 * prandtl ** (1.0 / 3.0) - 1.341
-    at_5, at_7 = math.sqrt(5.0), 1.922 * 7.0 ** (1.0 / 3.0) - 1.341
-    return at_5 + (prandtl - 5.0) / 2.0 * (at_7 - at_5)
+    return high_speed.laminar_recovery(prandtl)
 
 
 def turbulent_plate(prandtl: float) -> tuple[float, bool]:
-    """Recovery factor Pr^1/3 of a turbulent plate, and whether it is only rough there (Pr 1 to 10)."""
+    """Recovery factor of a turbulent plate, and whether it is only rough there (Pr 1 to 10)."""
     if not 0.5 <= prandtl <= 10.0:
         raise OutOfRange(f"the recovery factor of a turbulent plate is known for Pr 0.5 to 10, here {prandtl:.3g}")
-    return prandtl ** (1.0 / 3.0), prandtl > 1.0
+    return high_speed.turbulent_recovery(prandtl), prandtl > 1.0
