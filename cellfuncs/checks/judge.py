@@ -1,0 +1,231 @@
+"""Every stated number against what follows from the others; the fault is laid to the cell where it starts."""
+
+from collections.abc import Iterable
+from dataclasses import dataclass
+
+from cellfuncs.cases import labels
+from cellfuncs.checks import neglected
+from cellfuncs.checks.causes import causes_of
+from cellfuncs.checks.causes.guess import Ranked
+from cellfuncs.checks.finding import Finding
+from cellfuncs.checks.references import References
+from cellfuncs.checks.resolve import Resolver
+from cellfuncs.checks.shown import in_unit, number
+from cellfuncs.checks.stated import Graph, SheetCase, Stated
+from cellfuncs.checks.trial import Trial, trials
+from cellfuncs.sources import cite
+
+# a relation this loose cannot excuse a number that a tight one contradicts
+_LOOSE = 0.05
+# relative: the same quantity, once typed and once referred to, in two units
+_COPY = 0.002
+
+
+@dataclass
+class Doubt:
+    """A number that disagrees, with the trial that says so."""
+
+    entry: Stated
+    trial: Trial
+    causes: list[Ranked]
+
+
+def judge(cases: Iterable[SheetCase], graph: Graph) -> tuple[list[Finding], list[tuple[str, str]]]:
+    """Findings, and the cells that agree with the quantity they state.
+
+    ``graph`` holds the cells that each formula uses. A number that a formula computes is judged by what the formula
+    uses; a cell that is wrong only because it rests on another wrong one is listed under that one.
+    """
+    cases = list(cases)
+    references = References(cases, graph)
+    doubts: list[Doubt] = []
+    agreed: list[tuple[str, str]] = []
+    findings: list[Finding] = []
+    for case in cases:
+        resolver = Resolver(case, references)
+        for entry in case.all():
+            verdict = _judged(entry, resolver)
+            if verdict is True:
+                agreed.append((entry.cell, entry.key))
+            elif isinstance(verdict, Doubt):
+                doubts.append(verdict)
+        findings += neglected.findings(case)
+    kept = _origins(doubts, references)
+    findings += [_finding(doubt, references) for doubt in kept]
+    place = references.place
+    return sorted(findings, key=lambda f: place.get(f.cell, len(place))), agreed
+
+
+def _judged(entry: Stated, resolver: Resolver) -> Doubt | bool | None:
+    """True where the number agrees, a doubt where it does not, None where nothing can be said."""
+    if _copies(entry, resolver.references):
+        return True
+    tried = trials(entry, resolver)
+    if not tried:
+        return None
+    best = _pick(tried)
+    if best.passed:
+        return True
+    causes = causes_of(best)
+    # a relation that misses part of what the formula uses may not be meant at all
+    if not causes and not (best.coverage == 1.0 and (best.local or entry.typed)):
+        return None
+    if not entry.typed and best.coverage < 0.5 and not best.local:
+        return None
+    return Doubt(entry, best, causes)
+
+
+def _copies(entry: Stated, references: References) -> bool:
+    """Whether the cell refers to the same quantity elsewhere and has its value."""
+    direct = references.direct(entry.cell)
+    if len(direct) != 1 or direct[0].key.split("_")[-1] != entry.key.split("_")[-1]:
+        return False
+    other = direct[0].si
+    return abs(entry.si - other) <= _COPY * abs(other)
+
+
+def _pick(tried: list[Trial]) -> Trial:
+    """The trial that counts: a pass, unless only a loose one passes where a tight one of the own cells does not."""
+    passes = [t for t in tried if t.passed]
+    coded = [t for t in tried if t.match is not None and t.match.code]
+    failures = [t for t in tried if not t.passed and t.expected is not None]
+
+    def strength(trial: Trial) -> tuple[float, ...]:
+        tight = trial.expected.scatter if trial.expected else 1.0
+        return (trial.local, trial.coverage, trial.role is None, -tight, -_distance(trial))
+
+    strict = [t for t in passes if t.match is not None and not t.match.loose and t.match.scatter <= _LOOSE]
+    if strict:
+        return max(strict, key=strength)
+    if coded:
+        return max(coded, key=strength)
+    firm = [t for t in failures if t.local and t.coverage == 1.0 and t.relation.scatter <= _LOOSE
+            and t.relation.source != "methods"]  # fmt: skip
+    if firm and not any(t.local and t.coverage == 1.0 for t in passes):
+        return max(firm, key=strength)
+    if passes:
+        return max(passes, key=strength)
+    return max(failures or tried, key=strength)
+
+
+def _distance(trial: Trial) -> float:
+    if trial.expected is None or not trial.expected.value:
+        return 1e9
+    return min(abs(trial.entry.si / trial.expected.value - 1.0), 1e6)
+
+
+def _origins(doubts: list[Doubt], references: References) -> list[Doubt]:
+    """Those doubts that another one does not explain."""
+    by_cell = {d.entry.cell: d for d in doubts}
+    kept = []
+    for doubt in doubts:
+        rests = set(doubt.trial.support)
+        if not doubt.trial.local or doubt.entry.typed:
+            for cell in tuple(rests):
+                rests |= references.above(cell)
+        else:
+            rests = set()
+        others = [by_cell[cell] for cell in rests if cell in by_cell and cell != doubt.entry.cell]
+        if not any(_explains(other, doubt) for other in others):
+            kept.append(doubt)
+    return kept
+
+
+def _explains(other: Doubt, doubt: Doubt) -> bool:
+    """Whether ``doubt`` may only follow from ``other``; of two that accuse each other the surer one stays."""
+    if doubt.entry.cell in other.trial.support:
+        return _sureness(other) > _sureness(doubt)
+    return True
+
+
+def _sureness(doubt: Doubt) -> tuple[float, float, float]:
+    confidence = doubt.causes[0].confidence if doubt.causes else 0.0
+    return (doubt.trial.local, doubt.trial.coverage, confidence)
+
+
+def _finding(doubt: Doubt, references: References) -> Finding:
+    entry, trial = doubt.entry, doubt.trial
+    answer = trial.expected
+    expected = answer.value if answer else entry.si
+    code, words, confidence = _cause(doubt, references)
+    quantity = labels.dictionary()[entry.key].label
+    recomputed = in_unit(expected, entry)
+    message = (
+        f"{entry.label}: {number(entry.value)} {entry.unit} is stated, {number(recomputed)} {entry.unit} comes out"
+        f" of {_inputs_in_words(trial)} ({trial.relation.name})".replace("  ", " ")
+    )
+    return Finding(
+        cell=entry.cell,
+        severity=_severity(doubt, code),
+        quantity=quantity,
+        stated=entry.value,
+        recomputed=recomputed,
+        unit=entry.unit,
+        code=code,
+        cause=words,
+        confidence=round(confidence, 3),
+        message=message,
+        source=_source(trial.relation.source),
+        inherited=references.below(entry.cell),
+        case=trial.case.name,
+        reasoning=_reasoning(doubt, expected),
+    )
+
+
+def _source(key: str) -> str:
+    first = key.split(";")[0]
+    try:
+        return cite(first)
+    except ValueError:
+        return key
+
+
+def _cause(doubt: Doubt, references: References) -> tuple[str, str, float]:
+    if doubt.causes:
+        best = doubt.causes[0]
+        words = best.guess.words
+        if len(doubt.causes) > 1:
+            rest = "; ".join(f"{r.guess.words} ({r.guess.code}, {r.confidence:.0%})" for r in doubt.causes[1:3])
+            words += f"; also possible: {rest}"
+        return best.guess.code, words, best.confidence
+    trial = doubt.trial
+    if doubt.entry.typed and trial.relation.source not in ("properties", "methods") and _among_formulas(trial):
+        return "hard-coded", "a pasted number that no longer follows from its inputs", 0.7
+    return "unknown", "no known mistake gives this number", 0.3
+
+
+def _among_formulas(trial: Trial) -> bool:
+    return sum(not entry.typed for entry in trial.case.all()) >= 2
+
+
+def _severity(doubt: Doubt, code: str) -> str:
+    trial = doubt.trial
+    if code == "outside-range":
+        return "warning"
+    if code == "unknown" and (trial.coverage < 1.0 or trial.relation.source == "methods"):
+        return "note" if trial.coverage < 1.0 else "warning"
+    return "error"
+
+
+def _inputs_in_words(trial: Trial) -> str:
+    shown = []
+    for resolved in trial.inputs.values():
+        entry = resolved.entry
+        if entry is not None:
+            shown.append(f"{entry.label} {number(entry.value)} {entry.unit}".strip())
+    return ", ".join(shown[:6]) if shown else "the substance"
+
+
+def _reasoning(doubt: Doubt, expected: float) -> tuple[str, ...]:
+    trial, entry = doubt.trial, doubt.entry
+    lines = [f"{r.entry.label} = {number(r.entry.value)} {r.entry.unit} ({r.entry.cell})".replace("  ", " ")
+             for r in trial.inputs.values() if r.entry is not None]  # fmt: skip
+    answer = trial.expected
+    if answer is not None:
+        lines.append(f"{answer.words}: {number(in_unit(expected, entry))} {entry.unit}".strip())
+        allowed = trial.tolerance(answer) / abs(expected) if expected else 0.0
+        lines.append(f"agreement within {allowed:.1%} was asked")
+    if expected and entry.kind != "temperature":
+        lines.append(f"stated over recomputed: {entry.si / expected:.4g}")
+    lines += [f"{r.guess.code}, {r.confidence:.0%}: {r.guess.words}" for r in doubt.causes]
+    return tuple(lines)

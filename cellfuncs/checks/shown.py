@@ -1,0 +1,25 @@
+"""Numbers back in the unit of the sheet, and as texts."""
+
+from cellfuncs import quantities
+from cellfuncs.checks.stated import Stated
+from cellfuncs.errors import CellfuncsError
+
+
+def in_unit(si: float, entry: Stated) -> float:
+    """An SI value in the unit that the cell states."""
+    try:
+        unit = quantities.read_unit(entry.unit, entry.kind) if entry.unit else None
+    except CellfuncsError:
+        unit = None
+    if unit is None:
+        return si * entry.value / entry.si if entry.si else si
+    return (si - unit.offset) / unit.factor
+
+
+def number(value: float) -> str:
+    """Four to six digits, as an engineer writes them."""
+    if value == 0:
+        return "0"
+    if 1e-3 <= abs(value) < 1e6:
+        return f"{value:,.6g}" if abs(value) >= 1000 else f"{value:.5g}"
+    return f"{value:.4e}"

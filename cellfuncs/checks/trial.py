@@ -1,0 +1,166 @@
+"""One relation tried on one stated number: what comes out, within what, and whether the number agrees."""
+
+from dataclasses import dataclass
+from functools import cached_property
+
+from cellfuncs.checks.references import References
+from cellfuncs.checks.relation import DEFINITION, Admissible, Relation, giving, solve
+from cellfuncs.checks.relations import RELATIONS
+from cellfuncs.checks.resolve import Resolved, Resolver, evaluate
+from cellfuncs.checks.stated import SheetCase, Stated
+
+# K: 273 for 273.15, or a temperature shown to a tenth
+_TEMPERATURE = 0.2
+
+
+@dataclass
+class Trial:
+    """``relation`` on ``entry``, which fills ``role`` (None: it is what the relation gives)."""
+
+    relation: Relation
+    entry: Stated
+    role: str | None
+    inputs: dict[str, Resolved]
+    case: SheetCase
+    references: References
+
+    @cached_property
+    def values(self) -> dict[str, float]:
+        return {name: resolved.value for name, resolved in self.inputs.items()}
+
+    @cached_property
+    def support(self) -> frozenset[str]:
+        """The cells that the recomputed number rests on."""
+        return frozenset().union(*(r.cells for r in self.inputs.values()))
+
+    @cached_property
+    def local(self) -> bool:
+        """Whether the number's own formula rests on all these cells."""
+        return self.support <= self.references.above(self.entry.cell)
+
+    @cached_property
+    def coverage(self) -> float:
+        """The part of the cells that the formula uses which this relation uses too."""
+        direct = self.references.direct(self.entry.cell)
+        if not direct:
+            return 1.0
+        known = self.support.union(*(self.references.above(cell) for cell in self.support))
+        return sum(e.cell in known for e in direct) / len(direct)
+
+    @cached_property
+    def answers(self) -> list[Admissible]:
+        """What the number should be."""
+        if self.role is None:
+            return evaluate(self.relation, self.case, self.values)
+        return self._solved()
+
+    def _solved(self) -> list[Admissible]:
+        target = self.inputs[""].value
+        others = {name: value for name, value in self.values.items() if name}
+
+        def forward(x: float) -> float:
+            found = evaluate(self.relation, self.case, {**others, self.role: x})
+            if not found:
+                raise ValueError(self.relation.name)
+            return found[0].value
+
+        x = solve(forward, target, self.entry.si)
+        return [] if x is None else [Admissible(x, self.relation.name, self.relation.scatter)]
+
+    def tolerance(self, answer: Admissible) -> float:
+        """Within what the number agrees with an answer [SI]: its rounding, those of its inputs, the scatter."""
+        relative = max(DEFINITION, answer.scatter) + sum(r.scatter for r in self.inputs.values())
+        if self.entry.kind == "temperature":
+            allowed = _TEMPERATURE + relative * self._reach(answer.value)
+        else:
+            allowed = relative * abs(answer.value)
+        own = self.entry.rounding if self.entry.typed else min(self.entry.rounding, DEFINITION * abs(answer.value))
+        return allowed + own + self._propagated(answer)
+
+    def _reach(self, value: float) -> float:
+        """The largest difference of temperatures that takes part [K]."""
+        known = [r.entry.si for r in self.inputs.values() if r.entry and r.entry.kind == "temperature"]
+        known += [value, self.entry.si]
+        return max(known) - min(known)
+
+    def _propagated(self, answer: Admissible) -> float:
+        """What the shown roundings of typed inputs do to a typed number that was computed from finer ones."""
+        if not self.entry.typed or self.role is not None:
+            return 0.0
+        square = 0.0
+        for name, resolved in self.inputs.items():
+            if resolved.entry is None or not resolved.entry.rounding:
+                continue
+            moved = evaluate(self.relation, self.case, {**self.values, name: resolved.value + resolved.entry.rounding})
+            near = min((abs(a.value - answer.value) for a in moved), default=0.0)
+            square += near**2
+        return square**0.5
+
+    @cached_property
+    def match(self) -> Admissible | None:
+        """The first answer that the number agrees with; one with a code is a known mistake."""
+        for answer in self.answers:
+            if abs(self.entry.si - answer.value) <= self.tolerance(answer):
+                return answer
+        return None
+
+    @property
+    def passed(self) -> bool:
+        return self.match is not None and not self.match.code
+
+    @cached_property
+    def expected(self) -> Admissible | None:
+        """The answer that the number should have had: the nearest of the right ones."""
+        right = [a for a in self.answers if not a.code and not a.loose] or [a for a in self.answers if not a.code]
+        return min(right, key=lambda a: abs(a.value - self.entry.si), default=None)
+
+
+def trials(entry: Stated, resolver: Resolver) -> list[Trial]:
+    """Every relation that can be tried on a number."""
+    case, references = resolver.case, resolver.references
+    found = []
+    for relation in giving().get(entry.key, ()):
+        if not relation.applies(case):
+            continue
+        inputs = resolver.inputs(relation, entry)
+        if inputs is not None:
+            found.append(Trial(relation, entry, None, inputs, case, references))
+    if not entry.typed:
+        found += _solved_for(entry, resolver)
+    return [trial for trial in found if trial.answers]
+
+
+def _solved_for(entry: Stated, resolver: Resolver) -> list[Trial]:
+    """Relations solved for a number whose formula uses what they give."""
+    direct = resolver.references.direct(entry.cell)
+    keys = {e.key for e in direct}
+    found = []
+    for relation in RELATIONS:
+        if relation.gives not in keys or relation.takes_case or not relation.applies(resolver.case):
+            continue
+        for role in (*relation.needs, *relation.optional):
+            if entry.key not in relation.keys_for(role, resolver.case):
+                continue
+            inputs = _inputs_but(relation, role, entry, resolver)
+            given = next(e for e in direct if e.key == relation.gives)
+            if inputs is not None and given.cell != entry.cell:
+                inputs[""] = Resolved(given.si, frozenset((given.cell,)), 0.0, given)
+                trial = Trial(relation, entry, role, inputs, resolver.case, resolver.references)
+                if trial.local:
+                    found.append(trial)
+    return found
+
+
+def _inputs_but(relation: Relation, role: str, entry: Stated, resolver: Resolver) -> dict[str, Resolved] | None:
+    own = resolver.references.above(entry.cell)
+    found = {}
+    for need in (*relation.needs, *relation.optional):
+        if need == role:
+            continue
+        picked = resolver.pick(relation.keys_for(need, resolver.case), entry)
+        if picked is None or picked.cell not in own:
+            if need in relation.optional:
+                continue
+            return None
+        found[need] = Resolved(picked.si, frozenset((picked.cell,)), 0.0, picked)
+    return found
