@@ -8,6 +8,7 @@ A method is one small function with its declared range, scatter, property temper
 from cellfuncs.methods import duct, free, mixed, radiation  # noqa: F401, I001
 from cellfuncs.methods import plate, cylinder, sphere, bank, bed, jet, film, drag, high_speed  # noqa: F401
 from cellfuncs.methods import cross, packed  # noqa: F401
+from cellfuncs.methods import fin, transient, layers, exchanger  # noqa: F401
 from cellfuncs.methods.base import METHODS, Method, Range
 
 __all__ = ["METHODS", "Method", "Range"]

@@ -29,6 +29,28 @@ def cos(x: Any) -> Any:
     return math.cos(x) if isinstance(x, (float, int)) else _numpy().cos(x)
 
 
+def sin(x: Any) -> Any:
+    return math.sin(x) if isinstance(x, (float, int)) else _numpy().sin(x)
+
+
+def expm1(x: Any) -> Any:
+    return math.expm1(x) if isinstance(x, (float, int)) else _numpy().expm1(x)
+
+
+def log1p(x: Any) -> Any:
+    return math.log1p(x) if isinstance(x, (float, int)) else _numpy().log1p(x)
+
+
+def holds(condition: Any) -> bool:
+    """Whether a condition is true of a number, or of every element of an array."""
+    return condition if isinstance(condition, bool) else bool(condition.all())
+
+
+def plain(x: Any) -> Any:
+    """A float where a library gave a number of its own kind, an array unchanged."""
+    return float(x) if getattr(x, "ndim", 0) == 0 else x
+
+
 def where(condition: Any, yes: Any, no: Any) -> Any:
     """One of two values by a condition, element by element; both are computed."""
     return (yes if condition else no) if isinstance(condition, bool) else _numpy().where(condition, yes, no)

@@ -40,11 +40,47 @@ def to_surroundings(wall_temperature: Any, surroundings_temperature: Any, emissi
     property_temperature="none",
     source="christiansen-1883",
     flows=("enclosure",),
+    where={"shape": ("layer",)},
     warning=_OPAQUE,
 )
-def between_walls(
-    wall_temperature: Any, surroundings_temperature: Any, emissivity: Any, second_emissivity: Any
-) -> Any:
+def between_walls(wall_temperature: Any, surroundings_temperature: Any, emissivity: Any, second_emissivity: Any) -> Any:
     """4σTm³/(1/ε1 + 1/ε2 − 1) [W/(m2 K)] between two grey walls that see only each other; [K], [K], ε1, ε2."""
     exchange = 1.0 / (1.0 / emissivity + 1.0 / second_emissivity - 1.0)
     return exchange * black(wall_temperature, surroundings_temperature)
+
+
+@method(
+    "radiation between concentric cylinders",
+    gives="mean coefficient",
+    ranges=(_EMISSIVITY, Range("ε2", 0.0, 1.0), Range("ratio", 0.0, 1.0)),
+    scatter=0.0,
+    property_temperature="none",
+    source="christiansen-1883",
+    flows=("enclosure",),
+    where={"shape": ("concentric cylinders",)},
+    warning=_OPAQUE,
+)
+def between_cylinders(
+    wall_temperature: Any, surroundings_temperature: Any, emissivity: Any, second_emissivity: Any, ratio: Any
+) -> Any:
+    """4σTm³/(1/ε1 + (D1/D2)(1/ε2 − 1)) [W/(m2 K)] on the inner of two long grey cylinders; ``ratio`` D1/D2."""
+    exchange = 1.0 / (1.0 / emissivity + ratio * (1.0 / second_emissivity - 1.0))
+    return exchange * black(wall_temperature, surroundings_temperature)
+
+
+@method(
+    "radiation between concentric spheres",
+    gives="mean coefficient",
+    ranges=(_EMISSIVITY, Range("ε2", 0.0, 1.0), Range("ratio", 0.0, 1.0)),
+    scatter=0.0,
+    property_temperature="none",
+    source="christiansen-1883",
+    flows=("enclosure",),
+    where={"shape": ("concentric spheres",)},
+    warning=_OPAQUE,
+)
+def between_spheres(
+    wall_temperature: Any, surroundings_temperature: Any, emissivity: Any, second_emissivity: Any, ratio: Any
+) -> Any:
+    """4σTm³/(1/ε1 + (D1/D2)²(1/ε2 − 1)) [W/(m2 K)] on the inner of two grey spheres; ``ratio`` D1/D2."""
+    return between_cylinders(wall_temperature, surroundings_temperature, emissivity, second_emissivity, ratio**2)

@@ -1,0 +1,419 @@
+"""Free convection at plates: vertical, inclined, horizontal. Ra with the whole driving difference.
+
+Lengths: the height of a vertical plate, the length along the slope of an inclined one, area over perimeter of a
+horizontal face unless said otherwise. Of an inclined plate Ra is taken with the component of gravity along it.
+A free face is a warm one looking up or a cold one looking down; a held face is the other way round.
+"""
+
+from typing import Any
+
+from cellfuncs.methods.algebra import log, smaller, sqrt, where
+from cellfuncs.methods.base import Range, method
+
+_HEIGHT = "height of the plate"
+_FACE = "area over perimeter"
+_PLATE = {"surface": ("vertical plate",), "wall": ("temperature",)}
+_FLUX = {"surface": ("vertical plate",), "wall": ("flux",)}
+_FREE_FACE = {"surface": ("horizontal plate, free face",)}
+_HELD_FACE = {"surface": ("horizontal plate, held face",)}
+
+
+def laminarity(prandtl: Any, constant: float) -> Any:
+    """The Prandtl function 1 + (c/Pr)^9/16 of Churchill and co-workers."""
+    return 1.0 + (constant / prandtl) ** (9.0 / 16.0)
+
+
+def laminar_plate_factor(prandtl: Any) -> Any:
+    """0.671/(1 + (0.492/Pr)^9/16)^4/9: mean Nu over Ra^1/4 of a laminar vertical plate with a thin layer."""
+    return 0.671 / laminarity(prandtl, 0.492) ** (4.0 / 9.0)
+
+
+def thick_layer(nusselt: Any, constant: Any) -> Any:
+    """Nu of a laminar layer that is not thin, c/ln(1 + c/Nu_thin) (Raithby and Hollands)."""
+    return constant / log(1.0 + constant / nusselt)
+
+
+def joined(one: Any, other: Any, power: float) -> Any:
+    """(a^n + b^n)^(1/n), taken from the larger of the two so that nothing overflows."""
+    low = smaller(one, other)
+    high = one + other - low
+    return high * (1.0 + (low / high) ** power) ** (1.0 / power)
+
+
+# -- vertical and inclined, at one wall temperature ------------------------------------------------------------------
+
+
+def _whole_range(rayleigh: Any, prandtl: Any, constant: float) -> Any:
+    return (0.825 + 0.387 * rayleigh ** (1 / 6) / laminarity(prandtl, constant) ** (8.0 / 27.0)) ** 2
+
+
+def _laminar(rayleigh: Any, prandtl: Any, constant: float) -> Any:
+    return 0.68 + 0.670 * rayleigh**0.25 / laminarity(prandtl, constant) ** (4.0 / 9.0)
+
+
+@method(
+    "Churchill-Chu plate",
+    gives="mean Nu",
+    ranges=(Range("Ra", 0.1, 1e12), Range("angle from vertical", -60.0, 60.0)),
+    scatter=0.1,
+    property_temperature="film",
+    source="churchill-chu-1975",
+    flows=("free",),
+    where={"surface": ("vertical plate", "inclined plate"), "wall": ("temperature",)},
+    length=_HEIGHT,
+)
+def vertical_plate(rayleigh: Any, prandtl: Any) -> Any:
+    """Mean Nu of a vertical plate, laminar and turbulent; on an inclined one Ra with the component of g along it."""
+    return _whole_range(rayleigh, prandtl, 0.492)
+
+
+@method(
+    "Churchill-Chu laminar plate",
+    gives="mean Nu",
+    ranges=(Range("Ra", 0.1, 1e9), Range("angle from vertical", -60.0, 60.0)),
+    scatter=0.05,
+    property_temperature="film",
+    source="churchill-chu-1975",
+    flows=("free",),
+    where={"surface": ("vertical plate", "inclined plate"), "wall": ("temperature",)},
+    length=_HEIGHT,
+)
+def laminar_vertical_plate(rayleigh: Any, prandtl: Any) -> Any:
+    """Mean Nu of a laminar vertical plate, the closer of the two forms of Churchill and Chu below Ra 1e9."""
+    return _laminar(rayleigh, prandtl, 0.492)
+
+
+@method(
+    "Ostrach plate",
+    gives="local Nu",
+    ranges=(Range("Ra", 1e4, 1e9), Range("Pr", 0.01, 1000.0)),
+    scatter=0.01,
+    property_temperature="film",
+    source="ostrach-1953;le-fevre-1956",
+    flows=("free",),
+    where=_PLATE,
+    length="distance from the leading edge",
+)
+def laminar_similarity(grashof: Any, prandtl: Any) -> Any:
+    """Local Nu of a laminar vertical plate by similarity, Le Fevre's fit (0.5 %) of Ostrach's solutions."""
+    root = sqrt(prandtl)
+    return 0.75 * root / (0.609 + 1.221 * root + 1.238 * prandtl) ** 0.25 * (0.25 * grashof) ** 0.25
+
+
+@method(
+    "Ede plate",
+    gives="mean Nu",
+    ranges=(Range("Ra", 1e4, 1e9),),
+    scatter=0.03,
+    property_temperature="film",
+    source="ede-1967",
+    flows=("free",),
+    where=_PLATE,
+    length=_HEIGHT,
+)
+def laminar_integral(rayleigh: Any, prandtl: Any) -> Any:
+    """Mean Nu of a laminar vertical plate with a thin layer, any Pr."""
+    return (0.4 * prandtl / (1.0 + 2.0 * sqrt(prandtl) + 2.0 * prandtl) * rayleigh) ** 0.25
+
+
+@method(
+    "Raithby-Hollands plate",
+    gives="mean Nu",
+    ranges=(Range("Ra", 0.1, 1e12), Range("angle from vertical", -60.0, 60.0)),
+    scatter=0.1,
+    property_temperature="film",
+    source="raithby-hollands-1998",
+    flows=("free",),
+    where={"surface": ("vertical plate", "inclined plate"), "wall": ("temperature",)},
+    length=_HEIGHT,
+)
+def vertical_plate_joined(rayleigh: Any, prandtl: Any) -> Any:
+    """Mean Nu of a vertical plate from its laminar and turbulent limits, with the thick layer at small Ra."""
+    laminar = thick_layer(laminar_plate_factor(prandtl) * rayleigh**0.25, 2.0)
+    rough = 0.13 * prandtl**0.22 / (1.0 + 0.61 * prandtl**0.81) ** 0.42
+    turbulent = rough * rayleigh ** (4.0 / 3.0) / (rayleigh + 1.4e9 * prandtl)
+    return joined(laminar, turbulent, 6.0)
+
+
+@method(
+    "Eckert-Jackson plate",
+    gives="mean Nu",
+    ranges=(Range("Ra", 1e10, 1e12), Range("Pr", 0.5, 10.0)),
+    scatter=0.2,
+    property_temperature="film",
+    source="eckert-jackson-1950",
+    flows=("free",),
+    where=_PLATE,
+    length=_HEIGHT,
+)
+def turbulent_plate(grashof: Any, prandtl: Any) -> Any:
+    """Mean Nu of a vertical plate that is turbulent from its edge."""
+    lift = (1.0 + 0.494 * prandtl ** (2.0 / 3.0)) ** -0.4
+    return 0.0246 * grashof**0.4 * prandtl ** (7.0 / 15.0) * lift
+
+
+@method(
+    "Bayley plate",
+    gives="mean Nu",
+    ranges=(Range("Ra", 2e9, 1e12), Range("Pr", 0.6, 10.0)),
+    scatter=0.15,
+    property_temperature="film",
+    source="bayley-1955",
+    flows=("free",),
+    where=_PLATE,
+    length=_HEIGHT,
+)
+def turbulent_plate_third(rayleigh: Any) -> Any:
+    """Mean Nu of a turbulent vertical plate, 0.10 Ra^1/3: the coefficient does not depend on the height."""
+    return 0.10 * rayleigh ** (1 / 3)
+
+
+@method(
+    "Fujii-Imura inclined plate",
+    gives="mean Nu",
+    ranges=(Range("Ra", 1e5, 1e11), Range("angle from vertical", -88.0, 88.0)),
+    scatter=0.1,
+    property_temperature="film",
+    source="fujii-imura-1972",
+    flows=("free",),
+    where={"surface": ("inclined plate",), "facing": ("held",)},
+    length="length along the slope",
+)
+def inclined_plate_held(rayleigh: Any) -> Any:
+    """Mean Nu of an inclined plate whose warm face looks down or whose cold face looks up; Ra with g along it."""
+    # the authors take properties at Tw − (Tw − T∞)/4, β at T∞ + (Tw − T∞)/4: the film is between the two
+    return 0.56 * rayleigh**0.25
+
+
+# -- vertical, with a uniform flux -----------------------------------------------------------------------------------
+
+
+@method(
+    "Churchill-Chu flux plate",
+    gives="mean Nu",
+    ranges=(Range("Ra", 0.1, 1e12),),
+    scatter=0.1,
+    property_temperature="film",
+    source="churchill-chu-1975",
+    flows=("free",),
+    where=_FLUX,
+    length=_HEIGHT,
+)
+def vertical_plate_flux(rayleigh: Any, prandtl: Any) -> Any:
+    """Mean Nu of a vertical plate with a uniform flux; Ra and Nu with the difference at half its height."""
+    return _whole_range(rayleigh, prandtl, 0.437)
+
+
+@method(
+    "Churchill-Chu laminar flux plate",
+    gives="mean Nu",
+    ranges=(Range("Ra", 0.1, 1e9),),
+    scatter=0.05,
+    property_temperature="film",
+    source="churchill-chu-1975",
+    flows=("free",),
+    where=_FLUX,
+    length=_HEIGHT,
+)
+def laminar_vertical_plate_flux(rayleigh: Any, prandtl: Any) -> Any:
+    """Mean Nu of a laminar vertical plate with a uniform flux; the difference is the one at half its height."""
+    return _laminar(rayleigh, prandtl, 0.437)
+
+
+@method(
+    "Fujii-Fujii flux plate",
+    gives="local Nu",
+    ranges=(Range("Ra*", 1e5, 1e13),),
+    scatter=0.02,
+    property_temperature="film",
+    source="fujii-fujii-1976",
+    flows=("free",),
+    where=_FLUX,
+    length="distance from the leading edge",
+)
+def laminar_similarity_flux(rayleigh_flux: Any, prandtl: Any) -> Any:
+    """Local Nu of a laminar vertical plate with a uniform flux, a fit of the similarity solutions for any Pr."""
+    return (prandtl / (4.0 + 9.0 * sqrt(prandtl) + 10.0 * prandtl) * rayleigh_flux) ** 0.2
+
+
+@method(
+    "Vliet-Liu laminar plate",
+    gives="local Nu",
+    ranges=(Range("Ra*", 1e5, 1e13), Range("Pr", 3.0, 10.0)),
+    scatter=0.1,
+    property_temperature="film",
+    source="vliet-liu-1969",
+    flows=("free",),
+    where=_FLUX,
+    length="distance from the leading edge",
+)
+def laminar_plate_flux(rayleigh_flux: Any) -> Any:
+    """Local Nu of a laminar vertical plate in water with a uniform flux, measured."""
+    return 0.60 * rayleigh_flux**0.2
+
+
+@method(
+    "Vliet-Liu turbulent plate",
+    gives="local Nu",
+    ranges=(Range("Ra*", 1e13, 1e16), Range("Pr", 3.0, 10.0)),
+    scatter=0.15,
+    property_temperature="film",
+    source="vliet-liu-1969",
+    flows=("free",),
+    where=_FLUX,
+    length="distance from the leading edge",
+)
+def turbulent_plate_flux(rayleigh_flux: Any) -> Any:
+    """Local Nu of a turbulent vertical plate in water with a uniform flux, measured."""
+    return 0.568 * rayleigh_flux**0.22
+
+
+# -- horizontal ------------------------------------------------------------------------------------------------------
+
+
+@method(
+    "McAdams upper face",
+    gives="mean Nu",
+    ranges=(Range("Ra", 1e4, 1e11),),
+    scatter=0.15,
+    property_temperature="film",
+    source="mcadams-1954",
+    flows=("free",),
+    where=_FREE_FACE,
+    length=_FACE,
+)
+def horizontal_free_face(rayleigh: Any) -> Any:
+    """Mean Nu of a warm face looking up or a cold one looking down; it steps up by 6 % at Ra 1e7."""
+    return where(rayleigh <= 1e7, 0.54 * rayleigh**0.25, 0.15 * rayleigh ** (1 / 3))
+
+
+@method(
+    "Lloyd-Moran upper face",
+    gives="mean Nu",
+    ranges=(Range("Ra", 2.2e4, 1.6e9),),
+    scatter=0.1,
+    property_temperature="film",
+    source="lloyd-moran-1974",
+    flows=("free",),
+    where=_FREE_FACE,
+    length=_FACE,
+)
+def horizontal_free_face_measured(rayleigh: Any) -> Any:
+    """Mean Nu of a free face of any outline, by mass transfer; it steps up by 4 % where turbulence sets in, Ra 8e6."""
+    return where(rayleigh <= 8e6, 0.54 * rayleigh**0.25, 0.15 * rayleigh ** (1 / 3))
+
+
+@method(
+    "Goldstein-Sparrow-Jones upper face",
+    gives="mean Nu",
+    ranges=(Range("Ra", 1.0, 1e4),),
+    scatter=0.15,
+    property_temperature="film",
+    source="goldstein-1973",
+    flows=("free",),
+    where=_FREE_FACE,
+    length=_FACE,
+)
+def small_free_face(rayleigh: Any) -> Any:
+    """Mean Nu of a small free face; the two branches meet within 3 % at Ra 200."""
+    return where(rayleigh <= 200.0, 0.96 * rayleigh ** (1 / 6), 0.59 * rayleigh**0.25)
+
+
+@method(
+    "Raithby-Hollands upper face",
+    gives="mean Nu",
+    ranges=(Range("Ra", 1.0, 1e10),),
+    scatter=0.1,
+    property_temperature="film",
+    source="raithby-hollands-1998",
+    flows=("free",),
+    where=_FREE_FACE,
+    length=_FACE,
+)
+def horizontal_free_face_joined(rayleigh: Any, prandtl: Any) -> Any:
+    """Mean Nu of a free face from its laminar and turbulent limits, any Pr."""
+    laminar = thick_layer(0.835 * laminar_plate_factor(prandtl) * rayleigh**0.25, 1.4)
+    turbulent = 0.14 * (1.0 + 0.0107 * prandtl) / (1.0 + 0.01 * prandtl) * rayleigh ** (1 / 3)
+    return joined(laminar, turbulent, 10.0)
+
+
+@method(
+    "Heat Atlas upper face",
+    gives="mean Nu",
+    ranges=(Range("Ra", 1.0, 1e11),),
+    scatter=0.15,
+    property_temperature="film",
+    source="vdi-f2",
+    flows=("free",),
+    where=_FREE_FACE,
+    length=_FACE,
+)
+def horizontal_free_face_atlas(rayleigh: Any, prandtl: Any) -> Any:
+    """Mean Nu of a free face, laminar to Ra·f(Pr) 7e4 and turbulent above; the branches meet there within 1 %."""
+    driven = rayleigh * (1.0 + (0.322 / prandtl) ** (11.0 / 20.0)) ** (-20.0 / 11.0)
+    return where(driven <= 7e4, 0.766 * driven**0.2, 0.15 * driven ** (1 / 3))
+
+
+@method(
+    "McAdams lower face",
+    gives="mean Nu",
+    ranges=(Range("Ra", 1e5, 1e10),),
+    scatter=0.2,
+    property_temperature="film",
+    source="mcadams-1954",
+    flows=("free",),
+    where=_HELD_FACE,
+    length=_FACE,
+)
+def horizontal_held_face(rayleigh: Any) -> Any:
+    """Mean Nu of a warm face looking down or a cold one looking up."""
+    return 0.27 * rayleigh**0.25
+
+
+@method(
+    "Fujii-Imura lower face",
+    gives="mean Nu",
+    ranges=(Range("Ra", 1e6, 1e11),),
+    scatter=0.1,
+    property_temperature="film",
+    source="fujii-imura-1972",
+    flows=("free",),
+    where=_HELD_FACE,
+    length="short side of the face",
+)
+def horizontal_held_strip(rayleigh: Any) -> Any:
+    """Mean Nu of a held face in water on its short side, measured."""
+    return 0.58 * rayleigh**0.2
+
+
+@method(
+    "Raithby-Hollands lower face",
+    gives="mean Nu",
+    ranges=(Range("Ra", 1e3, 1e10),),
+    scatter=0.15,
+    property_temperature="film",
+    source="raithby-hollands-1998",
+    flows=("free",),
+    where=_HELD_FACE,
+    length=_FACE,
+)
+def horizontal_held_face_thick(rayleigh: Any, prandtl: Any) -> Any:
+    """Mean Nu of a held face, any Pr, with the thick layer at small Ra."""
+    thin = 0.527 / (1.0 + (1.9 / prandtl) ** 0.9) ** (2.0 / 9.0) * rayleigh**0.2
+    return thick_layer(thin, 2.5)
+
+
+@method(
+    "Heat Atlas lower face",
+    gives="mean Nu",
+    ranges=(Range("Ra", 1e3, 1e10),),
+    scatter=0.15,
+    property_temperature="film",
+    source="vdi-f2",
+    flows=("free",),
+    where=_HELD_FACE,
+    length=_FACE,
+)
+def horizontal_held_face_atlas(rayleigh: Any, prandtl: Any) -> Any:
+    """Mean Nu of a held face, laminar, any Pr."""
+    return 0.6 * (rayleigh * laminarity(prandtl, 0.492) ** (-16.0 / 9.0)) ** 0.2
