@@ -8,7 +8,7 @@ import math
 
 import pytest
 
-from cellfuncs.models import balance, free, gap, plate
+from cellfuncs.models import balance, body, free, gap, plate
 
 # Pohlhausen 1921; Evans 1968, Laminar Boundary Layer Theory, table of Nu_x/√Re_x: from memory
 NUSSELT = [
@@ -113,3 +113,42 @@ def test_peak_of_a_heated_film():
 def test_ogata_and_banks():
     """Ogata and Banks 1961, USGS Professional Paper 411-A, equation 9, at vx/D = 0.1 and v²t/D = 5e-3."""
     assert balance.advancing_front(0.1, 0.005) == pytest.approx(0.3333604845, rel=1e-9)
+
+
+# exact series of a plane wall (Carslaw and Jaeger), recomputed with another method: Bi, Fo, middle, surface, heat part
+WALL = [(0.1, 5.0, 0.6263767236, 0.5963180708, 0.3836752537), (10.0, 0.2, None, 0.1224822381, 0.4167379674)]
+
+
+@pytest.mark.parametrize(("biot", "fourier", "middle", "surface", "heat"), WALL)
+def test_transient_plane_wall(biot, fourier, middle, surface, heat):
+    found = body.body("plane wall", biot, fourier)
+    assert middle is None or found.middle == pytest.approx(middle, rel=1e-9)
+    assert found.surface == pytest.approx(surface, rel=1e-9)
+    assert 1 - found.mean == pytest.approx(heat, rel=1e-9)
+
+
+@pytest.mark.parametrize(
+    ("biot", "middle", "off_at_surface"),
+    [(0.01, 0.3697175023, None), (0.1, 0.3861332871, 7.507319861e-4), (1.0, None, 5.658787888e-2)],
+)
+def test_lumped_against_exact_at_one_time_constant(biot, middle, off_at_surface):
+    """The same series: at Bi·Fo = 1 the lumped body is at 1/e; its error against the exact surface."""
+    found = body.body("plane wall", biot, 1 / biot)
+    assert found.lumped == pytest.approx(math.exp(-1), rel=1e-15)
+    assert middle is None or found.middle == pytest.approx(middle, rel=1e-9)
+    if off_at_surface is not None:
+        assert abs(found.lumped / found.surface - 1) == pytest.approx(off_at_surface, rel=1e-8)
+
+
+# Heisler 1947, Trans. ASME 69, 227; first roots and coefficients as handbooks print them, from memory
+FIRST_ROOTS = [
+    ("plane wall", 1.0, 0.8603, 1.1191), ("plane wall", 0.1, 0.3111, 1.0161), ("long cylinder", 1.0, 1.2558, 1.2071),
+    ("sphere", 1.0, 1.5708, 1.2732), ("sphere", 0.1, 0.5423, 1.0298), ("plane wall", 10.0, 1.4289, 1.2620),
+]  # fmt: skip
+
+
+@pytest.mark.parametrize(("shape", "biot", "root", "factor"), FIRST_ROOTS)
+def test_late_ratios_follow_the_first_root_and_coefficient(shape, biot, root, factor):
+    late, later = body.body(shape, biot, 2.0).middle, body.body(shape, biot, 3.0).middle
+    assert math.sqrt(math.log(late / later)) == pytest.approx(root, abs=1e-4)
+    assert late * math.exp(2.0 * math.log(late / later)) == pytest.approx(factor, abs=2e-4)
