@@ -41,7 +41,11 @@ class Shown:
             return 0.0
         magnitude = math.floor(math.log10(abs(value)))
         if self.decimals is None:
-            return 0.5 * 10.0 ** -_decimals(value) if typed else 0.0
+            if not typed:
+                return 0.0
+            decimals = _decimals(value)
+            step = 10.0**-decimals
+            return 0.5 * (step if decimals > 0 else min(step, 10.0 ** (magnitude - _LEAST_SHOWN + 1)))
         if self.exponent:
             step = 10.0 ** (magnitude - self.decimals)
         else:

@@ -24,6 +24,7 @@ _ASSIGNED = re.compile(r"^(?P<label>[^=:]{1,60}?)\s*(?:=|:(?!\S*/))\s*(?P<value>
 _ENDING = re.compile(r"(?:,|;|\s-|\s–|\sin|\s/|/|:)\s+(?P<unit>[^\s,;:][^,;:]{0,22})$|\s(?P<bare>[^\s,;:]{1,16})$")
 _WORD = re.compile(r"[a-zα-ωµ°0-9']+")
 
+
 class Labelled(NamedTuple):
     """A label taken apart: what to look up, the likeliest first, and the unit written in it (may be empty)."""
 
@@ -166,7 +167,8 @@ def _by_words() -> dict[frozenset[str], tuple[str, ...]]:
             continue
         for name in (entry.label, *entry.synonyms, *entry.in_sheets):
             words = frozenset(_words(name))
-            if words and len(name) > LONGEST_SYMBOL // 2:
+            # "fluid temperature" is more than any temperature
+            if len(words) > 1 or (len(name.split()) == len(words) == 1 and len(name) > LONGEST_SYMBOL // 2):
                 table.setdefault(words, []).append(key)
     return {words: tuple(dict.fromkeys(keys)) for words, keys in table.items()}
 
