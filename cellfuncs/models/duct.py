@@ -15,7 +15,7 @@ from dataclasses import dataclass, replace
 from functools import cached_property, lru_cache
 from typing import Any
 
-from cellfuncs.errors import OutOfRange, UnknownName
+from cellfuncs.errors import NoModel, OutOfRange, UnknownName
 from cellfuncs.models.trust import trusted
 
 UPSTREAM = ("adiabatic", "wall at inlet temperature", "fixed inlet")
@@ -31,7 +31,8 @@ class DuctProblem:
     ``section`` tube or plates, ``heated`` both or one (the other insulated), ``wall`` temperature or flux;
     ``power_law`` index n of laminar flow; ``peclet`` None leaves conduction along out; ``heated_length`` in x*, the
     wall insulated behind it (inf: no end); ``upstream`` adiabatic, wall at inlet temperature, or fixed inlet (over
-    the section x = 0); ``reynolds`` and ``prandtl`` make the flow turbulent (None: laminar).
+    the section x = 0); ``reynolds`` and ``prandtl`` make the flow turbulent (None: laminar), with both plates heated,
+    and then a Péclet number is their product.
     """
 
     section: str = "tube"
@@ -58,6 +59,13 @@ def solve(problem: DuctProblem) -> "DuctSolution":
     pe, length = problem.peclet, problem.heated_length
     if pe is not None and not 1e-6 <= pe <= 1e9:
         raise OutOfRange(f"Péclet number {pe:.3g} is outside 1e-6 to 1e9")
+    if (problem.reynolds is None) != (problem.prandtl is None):
+        raise OutOfRange("turbulent flow needs both its Reynolds and its Prandtl number")
+    if problem.reynolds is not None:
+        if problem.power_law != 1.0:
+            raise NoModel("there is no turbulent model of a power-law fluid")
+        if pe is not None and not math.isclose(pe, problem.reynolds * problem.prandtl, rel_tol=1e-9):
+            raise OutOfRange(f"a Péclet number of {pe:.4g} is not Re·Pr = {problem.reynolds * problem.prandtl:.4g}")
     if pe is not None and pe > _NOTHING_ALONG:
         problem = replace(problem, peclet=None)
     if not length > 0.0:
@@ -97,6 +105,10 @@ class DuctSolution:
         """Temperature of the heated wall θ_w."""
         return self._stretches.read("wall", x, responses(**acts))
 
+    def lag(self, x: Any, **acts: float) -> Any:
+        """θ_w − θ_b, to full digits where both are nearly alike."""
+        return self._stretches.read("lag", x, responses(**acts))
+
     def energy(self, x: Any, **acts: float) -> Any:
         """What advection and conduction along carry together through x, over ρcpU·ΔT."""
         return self._stretches.read("energy", x, responses(**acts))
@@ -114,6 +126,11 @@ class DuctSolution:
         4·(x1 − x0) (one of two plates heated: 2·(x1 − x0)) of the capacity flow times ΔT."""
         return self._stretches.mean_flux(x0, x1, responses(**acts))
 
+    @property
+    def friction_heat(self) -> float:
+        """Mean friction heat in μU²/D² (power law: K·(U/D)^(n+1)), which is f·Re/2 with Darcy's f."""
+        return float(self._stretches.heats[1])
+
     def with_error(self, what: str, *at: Any, **acts: float) -> tuple[Any, Any]:
         """(answer, its numerical error): the answer named ``what`` and how far two resolutions differ in it."""
         fine = getattr(self, what)(*at, **acts)
@@ -125,6 +142,20 @@ class DuctSolution:
         """Largest difference of two resolutions in the energy, bulk and wall temperatures of all responses, over
         positions from a hundredth of the heated length (or of the developing length) on."""
         return self._stretches.difference(self.coarse._stretches)
+
+
+@lru_cache(maxsize=256)
+def recovery_rise(
+    section: str, reynolds: float | None = None, prandtl: float | None = None, power_law: float = 1.0
+) -> tuple[float, float]:
+    """(how far friction warms a wall that takes no heat above the bulk, in μU²/k; its numerical error).
+
+    Tube or plates; laminar without ``reynolds``, else turbulent (Re 4e3 to 5e6, Pr 1e-3 to 1e3). The recovery factor of
+    a gas is 2·Pr times that. Laminar and Newtonian: 1 and 27/35.
+    """
+    problem = DuctProblem(section, wall="flux", power_law=power_law, reynolds=reynolds, prandtl=prandtl)
+    rise, error = solve(problem).with_error("lag", 1e6, drive=0.0, brinkman=1.0, expansion=1.0)
+    return float(rise), float(error)
 
 
 def responses(

@@ -6,8 +6,9 @@ from typing import TYPE_CHECKING, Any
 import numpy as np
 
 from cellfuncs.errors import NoModel, OutOfRange
+from cellfuncs.models.duct_eddy import friction_scale, turbulent
 from cellfuncs.models.duct_matching import FIXED, SAME_WALL, stretches
-from cellfuncs.models.duct_profile import laminar
+from cellfuncs.models.duct_profile import Profile, laminar
 from cellfuncs.models.duct_section import section
 
 if TYPE_CHECKING:
@@ -19,24 +20,28 @@ _ALIKE = 1e-11  # what remains of a difference after its parts cancel, below whi
 
 def resolved(problem: "DuctProblem", fine: bool) -> "Reader":
     """The stretches of a problem; the coarse resolution serves the error only."""
-    profile = laminar(problem.section, problem.heated, float(problem.power_law))
     along = 0.0 if problem.peclet is None else 1.0 / problem.peclet
-    terms, power = _resolution(problem)
+    profile, terms, power = _flow(problem)
     matrices = section(profile, terms if fine else int(_COARSE * terms), power)
     return Reader(problem, matrices, stretches(matrices, problem.wall, problem.upstream, along, problem.heated_length))
 
 
-def _resolution(problem: "DuctProblem") -> tuple[int, int]:
-    """(polynomials, power of the wall distance): what the wall's steps ask for, and rounding still allows.
+def _flow(problem: "DuctProblem") -> tuple[Profile, int, int]:
+    """The profile, and (polynomials, power of the wall distance): what it and the wall's steps ask for.
 
     A step from an insulated wall to a temperature is felt as √distance and wants the finest layer; the sum of modes
-    that is set against a fixed inlet loses digits in it.
+    that is set against a fixed inlet loses digits in it; a turbulent wall layer wants polynomials for its decades.
     """
+    if problem.reynolds is not None:
+        profile = turbulent(problem.section, problem.heated, problem.reynolds, problem.prandtl)
+        layers = friction_scale(problem.section, problem.reynolds)[0] * max(1.0, problem.prandtl) ** (1.0 / 3.0)
+        return profile, int(min(max(8.0 + 20.0 * math.log10(layers), 56.0), 130.0)), 4
+    profile = laminar(problem.section, problem.heated, float(problem.power_law))
     if problem.peclet is None or problem.wall == "flux":
-        return 48, 3
+        return profile, 48, 3
     if problem.upstream == "adiabatic":
-        return 50, 5
-    return (44, 4) if math.isfinite(problem.heated_length) else (48, 3)
+        return profile, 50, 5
+    return (profile, 44, 4) if math.isfinite(problem.heated_length) else (profile, 48, 3)
 
 
 class Reader:

@@ -222,3 +222,32 @@ def test_an_effect_too_small_for_its_error_is_refused():
     fake.coarse = Off(duct.problem, fine=True)
     with pytest.raises(NoModel, match="hundredth"):
         effect("bulk", (0.1,), (fake, {"brinkman": 1e-5}), (duct, {}))
+
+
+@pytest.mark.parametrize(("reynolds", "prandtl"), [(4e3, 1e-3), (1e5, 0.7), (1e6, 500.0), (5e6, 1e3), (4e3, 1e3)])
+@pytest.mark.parametrize("section_name", ["tube", "plates"])
+def test_turbulent_corners_are_resolved(reynolds, prandtl, section_name):
+    """At every corner of its range the model's own error stays far below its physics."""
+    for wall in ("temperature", "flux"):
+        duct = solve(DuctProblem(section_name, wall=wall, reynolds=reynolds, prandtl=prandtl))
+        x = np.array([1.0, 30.0]) / (reynolds * prandtl)
+        for what in ("bulk", "flux", "nusselt"):
+            found, error = duct.with_error(what, x, brinkman=1e-3)
+            assert (error < 2e-3 * np.abs(found)).all()
+
+
+def test_turbulent_refusals():
+    for wrong in (
+        DuctProblem(reynolds=2e3, prandtl=1.0),
+        DuctProblem(reynolds=1e5, prandtl=1e4),
+        DuctProblem(reynolds=1e5),
+        DuctProblem(reynolds=1e5, prandtl=1.0, peclet=10.0),
+    ):
+        with pytest.raises(OutOfRange):
+            solve(wrong).bulk(0.1)
+    for wrong in (
+        DuctProblem(reynolds=1e5, prandtl=1.0, power_law=0.5),
+        DuctProblem("plates", "one", reynolds=1e5, prandtl=1.0),
+    ):
+        with pytest.raises(NoModel):
+            solve(wrong).bulk(0.1)
