@@ -68,7 +68,7 @@ def _power_law(name: str, shape: str) -> None:
         name if shape == "circle" else f"{name} {shape}",
         gives="mean Nu",
         ranges=(Range("Re", starts[0], float(rows[-1]["reynolds_high"])), Range("Pr", low=0.7)),
-        scatter=0.2 if name == "Sparrow" else 0.25,
+        scatter=0.2 if name == "Sparrow" else 0.25 if shape == "circle" else 0.3,
         property_temperature="film",
         source=rows[0]["source"],
         flows=("cylinder",),
