@@ -15,7 +15,7 @@ THIRD = 1.0 / 3.0
     "Hausen entry",
     gives="mean Nu",
     ranges=(LAMINAR,),
-    scatter=0.06,
+    scatter=0.12,
     property_temperature="mean bulk",
     source="hausen-1943",
     flows=("duct",),
@@ -23,7 +23,10 @@ THIRD = 1.0 / 3.0
     length=LENGTH,
 )
 def hausen_entry(x_star: float) -> float:
-    """Mean Nu over the thermal entry of a tube at uniform wall temperature, 3.66 + 0.0668 Gz/(1 + 0.04 Gz^2/3)."""
+    """Mean Nu over the thermal entry of a tube at uniform wall temperature, 3.66 + 0.0668 Gz/(1 + 0.04 Gz^2/3).
+
+    Within 5 % of Graetz's series from x* = 0.004, 12 % above it at 0.0005.
+    """
     gz = 1.0 / x_star
     return 3.66 + 0.0668 * gz / (1.0 + 0.04 * gz ** (2.0 / 3.0))
 
@@ -85,7 +88,7 @@ def plates_entry(x_star: float) -> float:
     "plates entry, local",
     gives="local Nu",
     ranges=(LAMINAR,),
-    scatter=0.01,
+    scatter=0.015,
     property_temperature="mean bulk",
     source="shah-london-1978",
     flows=("duct",),
@@ -114,7 +117,7 @@ def flux_entry(x_star: float, section: str) -> float:
     decay = 8.68 * (1000.0 * x_star) ** -0.506
     if section == "plates":
         near = 1.490 * x_star**-THIRD
-        early = where(x_star <= 0.0002, near, near - 0.4)
+        early = where(x_star <= 0.0002, near, near + 0.4)  # often printed −0.4; the series wants +0.4
         return where(x_star <= 0.001, early, 8.235 + decay * exp(-164.0 * x_star))
     near = 1.302 * x_star**-THIRD
     early = where(x_star <= 0.00005, near - 1.0, near - 0.5)
@@ -177,7 +180,7 @@ def sieder_tate_laminar(x_star: float, viscosity_ratio: float = 1.0) -> float:
     "Churchill-Ozoe entry",
     gives="local Nu",
     ranges=(LAMINAR,),
-    scatter=0.06,
+    scatter=0.09,
     property_temperature="mean bulk",
     source="churchill-ozoe-1973-tube",
     flows=("duct",),

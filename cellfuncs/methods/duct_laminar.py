@@ -164,7 +164,6 @@ def annulus_two_fluxes(heated: str, ratio: float, flux_ratio: float) -> float:
     scatter=0.0,
     property_temperature="mean bulk",
     source="lundberg-1963;shah-london-1978",
-    flows=("duct",),
     where={"section": ("annulus",), "heated": ("inner", "outer"), "shape": ("straight",)},
     length=LENGTH,
     warning="on the difference between the two walls: heat goes straight across, none stays in the stream",

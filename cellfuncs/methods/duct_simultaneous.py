@@ -51,7 +51,7 @@ def stephan(x_star: float, prandtl: float) -> float:
     "Stephan, plates",
     gives="mean Nu",
     ranges=(LAMINAR, Range("Pr", 0.1, 1000.0)),
-    scatter=0.05,
+    scatter=0.1,
     property_temperature="mean bulk",
     source="stephan-1959",
     flows=("duct",),

@@ -20,8 +20,8 @@ INCH = 0.0254
 RADIANS = math.pi / 180.0
 
 # Idelchik's entrance with a rounded edge in a wall: radius over diameter, K
-_ROUNDING = (0.0, 0.02, 0.04, 0.06, 0.08, 0.12, 0.16, 0.20)
-_ROUNDED = (0.50, 0.37, 0.26, 0.20, 0.15, 0.09, 0.06, 0.03)
+_ROUNDING = (0.0, 0.01, 0.02, 0.03, 0.04, 0.05, 0.06, 0.08, 0.10, 0.12, 0.16, 0.20)
+_ROUNDED = (0.50, 0.43, 0.36, 0.31, 0.26, 0.22, 0.20, 0.15, 0.12, 0.09, 0.06, 0.03)
 
 
 @lru_cache(maxsize=1)
