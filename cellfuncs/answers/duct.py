@@ -8,8 +8,10 @@ import math
 from collections.abc import Callable
 from dataclasses import dataclass, replace
 
+from cellfuncs.answers import driving as driving_difference
+from cellfuncs.answers.internal import STATED, Chosen, Internal, Values
 from cellfuncs.answers.loop import settle
-from cellfuncs.answers.path import far_temperature, overall, refuse_without_end
+from cellfuncs.answers.path import duct_resistance, far_temperature, overall, refuse_without_end
 from cellfuncs.cases.case import Case, Properties
 from cellfuncs.cases.sections import Duct
 from cellfuncs.errors import CaseRefused
@@ -37,6 +39,9 @@ class DuctAnswers:
     flux: float | None  # the prescribed one
     inlet: float | None
     film: float = 0.0  # the inside coefficient, where ``coefficient`` is the overall one
+    friction_method: str = ""
+    wall_difference: float | None = None  # mean of wall minus bulk, where it is known
+    values: Values | None = None  # Nu and f with the factors of changing properties
 
     @property
     def exchange(self) -> float:
@@ -83,11 +88,12 @@ class DuctAnswers:
 
     @property
     def pressure_drop(self) -> float:
-        """Frictional pressure drop [Pa], stated or f·L/D·ρU²/2."""
+        """Frictional pressure drop [Pa], stated or (f·L/D + ΣK)·ρU²/2."""
         stated = self.case.get("pressure_drop")
         if stated is not None:
             return stated
-        return self.friction * self.length / self.shape.diameter * self.properties.density * self.velocity**2 / 2.0
+        losses = self.friction * self.length / self.shape.diameter + self.case.get("loss_coefficient", 0.0)
+        return losses * self.properties.density * self.velocity**2 / 2.0
 
     @property
     def duty(self) -> float:
@@ -107,43 +113,79 @@ class DuctAnswers:
 
 
 def solve_duct(case: Case) -> DuctAnswers:
-    """The answers of a duct case; closes the loop on the mean bulk temperature."""
+    """The answers of a duct case; closes the loops on the mean bulk temperature and on that of the wall."""
     length = case.need("length")
     shape = case.duct
     inlet, difference = temperatures(case)
-    flux = case.get("heat_flux")
+    internal = Internal(case, shape, length)
+    chosen: Chosen | None = None
+    for _ in range(_MOST_CHOICES):
 
-    def at(temperature: float | None) -> DuctAnswers:
-        p = case.properties(temperature)
-        u = case.velocity(p.density)
-        re = p.density * u * shape.diameter / p.viscosity
-        x_star = length / shape.diameter / (re * p.prandtl)
-        nusselt, friction, method, outside = _coefficient(case, re, p, x_star, shape)
-        h = nusselt * p.conductivity / shape.diameter
-        driving = flux / h if flux is not None else difference
-        film = h
-        if far_temperature(case) is not None:
-            h, method = overall(case, shape, h), f"overall, inside {h:.4g} by {method}"
-        return DuctAnswers(
-            case,
-            shape,
-            length,
-            temperature,
-            p,
-            u,
-            re,
-            nusselt,
-            friction,
-            h,
-            method,
-            outside,
-            driving,
-            flux,
-            inlet,
-            film,
-        )
+        def at(bulk: float | None, chosen: Chosen | None = chosen) -> DuctAnswers:
+            return _duct_at(internal, length, bulk, inlet, difference, chosen)
 
-    return close_on_bulk(case, at, inlet, difference)
+        found = close_on_bulk(case, at, inlet, difference)
+        state = internal.state(found.property_temperature, found.wall_difference)
+        last, chosen = chosen, internal.choose(state, case.allow)
+        if last is None or (last.nusselt, last.friction) == (chosen.nusselt, chosen.friction):
+            if found.method == chosen.nusselt and found.friction_method == chosen.friction:
+                break
+    return replace(found, outside=chosen.outside)
+
+
+_MOST_CHOICES = 4  # rounds of choosing methods at temperatures that the methods set
+
+
+def _duct_at(
+    internal: Internal,
+    length: float,
+    bulk: float | None,
+    inlet: float | None,
+    difference: float | None,
+    chosen: Chosen | None,
+) -> DuctAnswers:
+    """The answers at a mean bulk temperature; without methods chosen, with those for the temperature of the stream."""
+    case, shape = internal.case, internal.shape
+    flux, far = case.get("heat_flux"), far_temperature(case)
+    apart = _mean_difference(case, bulk, inlet, difference)
+    case.velocity(internal.at_bulk(internal.state(bulk, apart)).p.density)  # asks for what is missing first
+    if chosen is None:
+        chosen = internal.choose(internal.state(bulk, apart), True)
+    values = None
+
+    def film_coefficient(driving: float | None) -> float:
+        nonlocal values
+        state = internal.state(bulk, driving)
+        values = internal.values(state, chosen)
+        return values.nusselt * internal.at_bulk(state).p.conductivity / shape.diameter
+
+    follows = bulk is not None and not case.fixed and chosen.nusselt != STATED
+    if flux is not None and follows:
+        apart = driving_difference.for_flux(film_coefficient, flux)
+    elif far is not None and follows:
+        apart = driving_difference.for_path(film_coefficient, far - bulk, duct_resistance(case, shape))
+    h = film = film_coefficient(apart)
+    method = chosen.nusselt
+    driving = difference
+    if flux is not None:
+        driving = apart = flux / h
+    if far is not None:
+        h, method = overall(case, shape, h), f"overall, inside {h:.4g} by {method}"
+    p = internal.at_bulk(internal.state(bulk, apart)).p
+    u = case.velocity(p.density)
+    return DuctAnswers(
+        case, shape, length, bulk, p, u, p.density * u * shape.diameter / p.viscosity, values.nusselt, values.friction,
+        h, method, chosen.outside, driving, flux, inlet, film, chosen.friction, apart, values,
+    )  # fmt: skip
+
+
+def _mean_difference(
+    case: Case, bulk: float | None, inlet: float | None, difference: float | None
+) -> float | None:
+    """Wall minus mean bulk temperature where the wall is prescribed, None where it follows or is not known."""
+    if case.has("heat_flux") or far_temperature(case) is not None or not difference or bulk is None:
+        return None
+    return inlet + difference - bulk if inlet is not None else difference
 
 
 def close_on_bulk(
@@ -174,28 +216,6 @@ def _refuse_vacuum(case: Case, found: DuctAnswers) -> None:
             f"friction would take {drop / 1e5:.3g} bar, but the pressure is {pressure / 1e5:.3g} bar absolute; "
             "the duct is too long or the flow too fast for it"
         )
-
-
-def _coefficient(
-    case: Case, reynolds: float, p: Properties, x_star: float, shape: Duct
-) -> tuple[float, float, str, str]:
-    """Nu, Darcy f, the method and what lies outside its range; stated values stand before methods."""
-    h, f = case.get("coefficient"), case.get("friction_factor")
-    stated = None if h is None else h * shape.diameter / p.conductivity
-    if stated is not None and f is not None:
-        return stated, f, "stated", ""
-    allow = case.allow or stated is not None  # then the method is only asked for its friction factor
-    section = "tube" if shape.section == "other" else shape.section
-    nusselt, friction, method, outside = methods.nusselt_and_friction(
-        reynolds, p.prandtl, x_star, section, case.wall, shape.heated, allow, shape.ratio
-    )
-    if case.has("roughness") and reynolds > methods.LAMINAR_UP_TO:
-        friction = max(friction, methods.rough_friction(reynolds, case.get("roughness") / shape.diameter))
-    if f is not None:
-        friction = f
-    if stated is not None:
-        return stated, friction, "stated", ""
-    return nusselt, friction, method, outside
 
 
 def temperatures(case: Case) -> tuple[float | None, float | None]:

@@ -21,11 +21,13 @@ def far_temperature(case: Case) -> float | None:
 
 def overall(case: Case, shape: Duct, coefficient: float) -> float:
     """Overall coefficient U [W/(m2 K)] of a duct, a bank or a film on the surface that the stream wets."""
-    if case.flow == "duct":
-        form = "cylinder" if shape.section in ("tube", "other") else "plane"
-        return 1.0 / (1.0 / coefficient + resistance(case, form, shape.diameter / 2.0))
-    form = "cylinder" if case.flow == "bank" else "plane"
-    return 1.0 / (1.0 / coefficient + resistance(case, form, shape.diameter / 2.0))
+    return 1.0 / (1.0 / coefficient + duct_resistance(case, shape))
+
+
+def duct_resistance(case: Case, shape: Duct) -> float:
+    """Resistance beyond the surface that the stream of a duct, a bank or a film wets [m2 K/W]."""
+    round_one = case.flow == "bank" or (case.flow == "duct" and shape.section in ("tube", "other"))
+    return resistance(case, "cylinder" if round_one else "plane", shape.diameter / 2.0)
 
 
 def resistance(case: Case, form: str, radius: float = math.inf) -> float:

@@ -1,0 +1,218 @@
+"""Which method answers for a case: the candidates of its flow kind, how each lies to its range, and the one recommended.
+
+The rule, the same always: of the methods that give the wanted answer and whose inputs the case tells, those in range;
+of these the one with the smallest published scatter; of equal scatter the one with the narrowest range, since it was
+made for less; of equal range the one that stands first in the library. Where the answer is wanted at the end of a
+duct (prescribed flux), local methods and those of developed flow stand before means over the entry. A row ``method``
+in the case, or a method named in a cell, stands before the rule.
+"""
+
+import math
+from collections.abc import Iterable, Sequence
+from dataclasses import dataclass
+from functools import lru_cache
+
+from cellfuncs.answers.inputs import Inputs, View
+from cellfuncs.errors import NoModel, NumberRefused, OutOfRange, UnknownName
+from cellfuncs.methods import METHODS, Method, Range
+
+NUSSELT = ("mean Nu", "local Nu")
+FRICTION = ("Darcy friction factor",)
+DROP = ("pressure drop", "pressure gradient")
+_OPEN, _HALF_OPEN = 8.0, 4.0  # decades that a range counts for where it has no end, or one
+_ENTRY = ("x_star", "x_plus", "length_over_diameter")
+
+
+@dataclass(frozen=True)
+class Candidate:
+    """A method as it lies to a case."""
+
+    method: Method
+    view: View
+    missed: tuple[tuple[Range, float], ...]
+    rank: int  # 0 fits the wanted answer, 1 is a mean where the value at the end is wanted
+
+    @property
+    def in_range(self) -> bool:
+        return not self.missed
+
+    @property
+    def outside(self) -> str:
+        """What lies outside the range, in words; empty inside."""
+        return "; ".join(f"{r.words()}, here {value:.4g}" for r, value in self.missed)
+
+    @property
+    def distance(self) -> float:
+        """How far outside, in logarithms of the variables."""
+        return sum(_distance(r, value) for r, value in self.missed)
+
+
+def _distance(r: Range, value: float) -> float:
+    limit = r.low if value < r.low else r.high
+    if limit > 0 and value > 0:
+        return abs(math.log(value / limit))
+    return abs(value - limit) / (1.0 + abs(limit))
+
+
+def narrowness(method: Method) -> float:
+    """How much a range restricts, in decades over all its variables; larger is narrower."""
+    return sum(_OPEN - _width(r) for r in method.ranges)
+
+
+def _width(r: Range) -> float:
+    if r.low == -math.inf or r.high == math.inf:
+        return _HALF_OPEN
+    if r.low <= 0:
+        return _HALF_OPEN if r.high > 0 else 1.0
+    return min(_HALF_OPEN, math.log10(r.high / r.low))
+
+
+@lru_cache(maxsize=64)
+def in_order(flow: str, gives: tuple[str, ...]) -> tuple[Method, ...]:
+    """The methods of a flow kind in the order of the rule, range aside."""
+    found = [m for m in METHODS.values() if flow in m.flows and m.gives in gives]
+    place = {name: k for k, name in enumerate(METHODS)}
+    return tuple(sorted(found, key=lambda m: (m.scatter, -narrowness(m), place[m.name])))
+
+
+def rank(method: Method, at_end: bool) -> int | None:
+    """0 where the method gives what is wanted, 1 for a mean over the entry where the end is wanted, None else."""
+    if not at_end:
+        return None if method.gives == "local Nu" else 0
+    entry = method.gives == "mean Nu" and any(name in _ENTRY for name in method.inputs)
+    return 1 if entry else 0
+
+
+def look(state: Inputs, method: Method, at_end: bool = False) -> Candidate | None:
+    """How a method lies to a case, or None where it is not for it or needs what the case does not tell."""
+    order = rank(method, at_end)
+    if order is None or not state.applies(method):
+        return None
+    view = state.view(method)
+    for name in method.needed:
+        if view.get(name) is None:
+            return None
+    return Candidate(method, view, missed(method, view), order)
+
+
+def missed(method: Method, view: View) -> tuple[tuple[Range, float], ...]:
+    """The ranges of a method in which a case does not lie."""
+    found = []
+    for r in method.ranges:
+        value = view.of_symbol(r.variable)
+        if value is not None and not r.low <= value <= r.high:
+            found.append((r, value))
+    return tuple(found)
+
+
+def recommended(state: Inputs, gives: tuple[str, ...], what: str, allow: bool, at_end: bool = False) -> Candidate:
+    """The method that the rule recommends; outside all ranges refused, or with ``allow`` the one least outside."""
+    return first(state, in_order(state.case.flow, gives), what, allow, at_end)
+
+
+def first(
+    state: Inputs, methods: Iterable[Method], what: str, allow: bool, at_end: bool = False
+) -> Candidate:
+    """The first of the methods, which stand in order, that is in range."""
+    second: Candidate | None = None
+    outside: list[Candidate] = []
+    for method in methods:
+        found = look(state, method, at_end)
+        if found is None:
+            continue
+        if not found.in_range:
+            outside.append(found)
+        elif found.rank == 0:
+            return found
+        else:
+            second = second or found
+    if second is not None:
+        return second
+    if not outside:
+        raise NoModel(f"no method at hand gives the {what} of this {state.case.flow}; state it")
+    nearest = min(outside, key=lambda c: c.distance)
+    if not allow:
+        refuse_outside(nearest)
+    return nearest
+
+
+def refuse_outside(found: Candidate) -> None:
+    """Raise with the range of a method and where the case lies."""
+    raise OutOfRange(
+        f"{found.method.name} holds for {found.outside}; change the case, state a coefficient, "
+        "or add the row: beyond range | allow"
+    )
+
+
+def named(state: Inputs, name: str, gives: tuple[str, ...], what: str, allow: bool) -> Candidate:
+    """The method of that name for a case, or a refusal that says why it is none."""
+    method = find(name)
+    if method.gives not in gives:
+        raise NoModel(f"{method.name} gives a {method.gives}, not the {what}")
+    if state.case.flow not in method.flows:
+        fits = " or ".join(method.flows) or "no flow kind of cases"
+        raise NoModel(f"{method.name} is for {fits}, this case is a {state.case.flow}")
+    for key, allowed in method.where.items():
+        known = state.choice(key)
+        if known is not None and known not in allowed:
+            raise NoModel(f"{method.name} is for {key.replace('_', ' ')} {' or '.join(allowed)}, here {known}")
+    view = state.view(method)
+    missing = view.missing(method)
+    if missing:
+        raise NumberRefused(f"{method.name} needs the {' and the '.join(missing)}, which this case does not tell")
+    found = Candidate(method, view, missed(method, view), 0)
+    if not found.in_range and not allow:
+        refuse_outside(found)
+    return found
+
+
+def find(name: str) -> Method:
+    """The method of a name, whatever its case; UnknownName with the nearest one."""
+    known = METHODS.get(name)
+    if known is not None:
+        return known
+    plain = _plain(name)
+    found = _plain_names().get(plain)
+    if found is not None:
+        return METHODS[found]
+    from rapidfuzz import fuzz, process
+
+    near, score, _ = process.extractOne(plain, list(_plain_names()), scorer=fuzz.WRatio)
+    hint = f'the nearest is "{_plain_names()[near]}"' if score >= 60 else '=CF_LIST("methods") lists them'
+    raise UnknownName(f'"{name[:40]}" is no method; {hint}')
+
+
+def _plain(text: str) -> str:
+    return " ".join(text.replace("-", " ").replace("_", " ").replace(",", " ").split()).casefold()
+
+
+@lru_cache(maxsize=1)
+def _plain_names() -> dict[str, str]:
+    return {_plain(name): name for name in METHODS}
+
+
+def value(found: Candidate) -> float:
+    """The method's number for the case; refused where the formula has none there."""
+    return number(found.method, found.view)
+
+
+def number(method: Method, view: View) -> float:
+    """A method's number at a view, its range aside."""
+    try:
+        result = method.function(**view.given(method))
+    except (ZeroDivisionError, OverflowError):
+        result = math.nan
+    if isinstance(result, complex) or not math.isfinite(result):
+        raise OutOfRange(f"{method.name} has no finite value here")
+    return float(result)
+
+
+def disagreement(best: Sequence[tuple[Method, float]]) -> str:
+    """Words where the two best in range differ by more than both their scatters; empty else."""
+    if len(best) < 2:
+        return ""
+    (one, a), (other, b) = best[:2]
+    apart = abs(a - b) / max(abs(a), abs(b), 1e-300)
+    if apart <= one.scatter + other.scatter:
+        return ""
+    return f"differs from {other.name} by {100 * apart:.0f} %, more than their scatter"
