@@ -9,6 +9,7 @@ Source: Papoutsakis, Ramkrishna and Lim 1980, The extended Graetz problem with D
 """
 
 from dataclasses import dataclass
+from functools import lru_cache
 from typing import Any
 
 import numpy as np
@@ -37,6 +38,7 @@ class Modes:
         return np.vstack([self.p, self.g])
 
 
+@lru_cache(maxsize=32)
 def modes_of(section: Section, insulated: bool, along: float) -> tuple[Modes, Modes]:
     """(modes that decay downstream, modes that decay upstream); ``along`` is 1/Pe, 0 without conduction along."""
     n = section.terms

@@ -68,7 +68,7 @@ class Section:
 @lru_cache(maxsize=64)
 def section(profile: Profile, terms: int, power: int) -> Section:
     """The matrices of ``profile`` with ``terms`` polynomials in t, wall distance = t^power."""
-    count = 2 * terms + 40
+    count = 20 * -(-(2 * terms + 40) // 20)  # rounded up, so that two resolutions share their points
     t, weights = gauss(count)
     values, slopes = polynomials(terms, count)
     y = t**power
