@@ -60,7 +60,9 @@ def zukauskas(
     reynolds: float, prandtl: float, arrangement: str, across: float, along: float, rows: float,
     prandtl_ratio: float = 1.0,
 ) -> float:  # fmt: skip
-    """Mean Nu of a tube bank, C Re^m Pr^0.36 (Pr/Prw)^1/4 by steps of Re, times the factor of few rows."""
+    """Mean Nu of a tube bank, C Re^m Pr^0.36 (Pr/Prw)^1/4 by steps of Re, times the factor of few rows.
+
+    The steps jump at Re 1e3, by a third in line and by half staggered."""
     starts, constants, exponents = _STEPS_1972[arrangement]
     constant = steps(reynolds, starts, constants)
     if arrangement == "staggered":
@@ -85,7 +87,9 @@ def zukauskas_1987(
     reynolds: float, prandtl: float, arrangement: str, across: float, along: float, rows: float,
     prandtl_ratio: float = 1.0,
 ) -> float:  # fmt: skip
-    """Mean Nu with his later constants, Pr^0.36 and from Re 2e5 Pr^0.4; constants from memory."""
+    """Mean Nu with his later constants, Pr^0.36 and from Re 2e5 Pr^0.4; constants from memory.
+
+    In line the steps jump by a quarter at Re 1e3."""
     starts, constants, exponents = _STEPS_1987[arrangement]
     constant = steps(reynolds, starts, constants)
     if arrangement == "staggered":

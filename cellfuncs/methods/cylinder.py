@@ -180,7 +180,7 @@ HALF_ROUND = 1.5707963267948966  # streamed length of a cylinder over its diamet
     "Gnielinski cylinder",
     gives="mean Nu",
     ranges=(Range("Re", 6.4, 6.4e6), Range("Pr", 0.6, 1000.0)),
-    scatter=0.2,
+    scatter=0.3,
     property_temperature="film",
     source="gnielinski-1975",
     flows=("cylinder",),
@@ -188,7 +188,9 @@ HALF_ROUND = 1.5707963267948966  # streamed length of a cylinder over its diamet
     length=_LENGTH,
 )
 def gnielinski(reynolds: float, prandtl: float) -> float:
-    """Mean Nu as of a plate as long as half the circumference, 0.3 + √(lam² + turb²), turned to the diameter."""
+    """Mean Nu as of a plate as long as half the circumference, 0.3 + √(lam² + turb²), turned to the diameter.
+
+    For streams of usual turbulence; in a quiet one up to a fifth high."""
     return streamed(reynolds * HALF_ROUND, prandtl) / HALF_ROUND
 
 
