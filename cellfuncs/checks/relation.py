@@ -90,6 +90,7 @@ class Relation:
     wrong: tuple[Wrong, ...] = ()
     renamed: Mapping[str, str] | None = None
     takes_case: bool = False
+    derives: bool = True
 
     def keys_for(self, need: str, case: SheetCase) -> tuple[str, ...]:
         """The labels that may fill a parameter in this case, the likeliest first."""
@@ -119,8 +120,13 @@ def relation(
     when: Callable[[SheetCase], bool] | None = None,
     wrong: tuple[tuple[str, str, Callable[..., float]], ...] = (),
     streams: bool = False,
+    derives: bool = True,
 ) -> Callable[[Callable[..., Any]], Callable[..., Any]]:
-    """Declare a relation; with ``streams`` also for the hot and the cold stream of an exchanger."""
+    """Declare a relation; with ``streams`` also for the hot and the cold stream of an exchanger.
+
+    One that holds only for a shape nobody may have meant does not ``derives``: it is tried on stated numbers, but no
+    number that is not stated follows from it.
+    """
 
     def record(function: Callable[..., Any]) -> Callable[..., Any]:
         parameters = inspect.signature(function).parameters
@@ -128,16 +134,12 @@ def relation(
         optional = tuple(k for k, p in parameters.items() if p.default is not p.empty)
         ways = tuple(Wrong(*way) for way in wrong)
         takes_case = "case" in parameters
-        RELATIONS.append(
-            Relation(name, gives, needs, optional, function, scatter, source, flows, when, ways, None, takes_case)
-        )
+        rest = (needs, optional, function, scatter, source, flows, when, ways)
+        RELATIONS.append(Relation(name, gives, *rest, None, takes_case, derives))
         for prefix in STREAMS if streams else ():
             own = {k: prefix + k for k in (*needs, *optional, gives) if prefix + k in labels.dictionary()}
             words = f"{name}, {prefix.rstrip('_')} stream"
-            RELATIONS.append(
-                Relation(words, own.get(gives, gives), needs, optional, function, scatter, source, flows, when, ways,
-                         own, takes_case)
-            )  # fmt: skip
+            RELATIONS.append(Relation(words, own.get(gives, gives), *rest, own, takes_case, derives))
         return function
 
     return record

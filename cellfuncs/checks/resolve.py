@@ -8,7 +8,8 @@ from cellfuncs.checks.references import References
 from cellfuncs.checks.relation import Admissible, Relation, giving
 from cellfuncs.checks.stated import SheetCase, Stated
 
-_DEEPEST = 3
+# how many relations one behind the other: fewer for a typed number, which is mostly an input
+_DEEPEST, _DEEPEST_TYPED = 3, 1
 
 
 @dataclass(frozen=True)
@@ -66,7 +67,7 @@ class Resolver:
         entry = self.pick(keys, owner)
         if entry is not None:
             return Resolved(entry.si, frozenset((entry.cell,)), 0.0, entry)
-        if depth >= _DEEPEST:
+        if depth >= (_DEEPEST_TYPED if owner.typed else _DEEPEST):
             return None
         wanted = [key for key in keys if key not in path and key != owner.key]
         found = [r for key in wanted for r in self._derive(key, owner, depth, path)]
@@ -77,7 +78,7 @@ class Resolver:
 
     def _derive(self, key: str, owner: Stated, depth: int, path: tuple[str, ...]) -> Iterator[Resolved]:
         for relation in giving().get(key, ()):
-            if not relation.applies(self.case) or relation.source == "methods":
+            if not relation.derives or relation.source == "methods" or not relation.applies(self.case):
                 continue
             inputs = self.inputs(relation, owner, depth + 1, (*path, key))
             if inputs is None:

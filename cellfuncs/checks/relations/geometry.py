@@ -26,13 +26,13 @@ def round_section(diameter):
     return pi / 4.0 * diameter**2
 
 
-@relation("section of all tubes", "flow_area", when=_in_a_circle)
+@relation("section of all tubes", "flow_area", derives=False, when=_in_a_circle)
 def round_sections(diameter, tubes):
     """A = N·π/4·D²."""
     return tubes * pi / 4.0 * diameter**2
 
 
-@relation("section of the tubes of one pass", "flow_area", when=_in_a_circle)
+@relation("section of the tubes of one pass", "flow_area", derives=False, when=_in_a_circle)
 def sections_of_a_pass(diameter, tubes, passes):
     """A = N/passes·π/4·D²."""
     return tubes / passes * pi / 4.0 * diameter**2
@@ -44,19 +44,19 @@ def section_of_radius(inside_radius):
     return pi * inside_radius**2
 
 
-@relation("section of an annulus", "flow_area")
+@relation("section of an annulus", "flow_area", derives=False)
 def annular_section(diameter, core_diameter):
     """A = π/4·(D² − d²)."""
     return pi / 4.0 * (diameter**2 - core_diameter**2)
 
 
-@relation("section of a rectangle", "flow_area")
+@relation("section of a rectangle", "flow_area", derives=False)
 def rectangular_section(width, height):
     """A = width·height."""
     return width * height
 
 
-@relation("section of a slot", "flow_area")
+@relation("section of a slot", "flow_area", derives=False)
 def slot_section(width, gap):
     """A = width·gap."""
     return width * gap
@@ -104,13 +104,13 @@ def round_perimeter(diameter):
     return pi * diameter
 
 
-@relation("perimeter of an annulus", "wetted_perimeter")
+@relation("perimeter of an annulus", "wetted_perimeter", derives=False)
 def annular_perimeter(diameter, core_diameter):
     """P = π·(D + d)."""
     return pi * (diameter + core_diameter)
 
 
-@relation("perimeter of a rectangle", "wetted_perimeter")
+@relation("perimeter of a rectangle", "wetted_perimeter", derives=False)
 def rectangular_perimeter(width, height):
     """P = 2·(width + height)."""
     return 2.0 * (width + height)
@@ -132,13 +132,13 @@ def hydraulic_of_rectangle(width, height):
     return 2.0 * width * height / (width + height)
 
 
-@relation("hydraulic diameter of an annulus", "hydraulic_diameter")
+@relation("hydraulic diameter of an annulus", "hydraulic_diameter", derives=False)
 def hydraulic_of_annulus(diameter, core_diameter):
     """Dh = D − d."""
     return diameter - core_diameter
 
 
-@relation("hydraulic diameter of a slot", "hydraulic_diameter")
+@relation("hydraulic diameter of a slot", "hydraulic_diameter", derives=False)
 def hydraulic_of_slot(gap):
     """Dh = 2·gap."""
     return 2.0 * gap
@@ -150,31 +150,31 @@ def relative_roughness(roughness, bore):
     return roughness / bore
 
 
-@relation("outside surface of tubes", "area")
+@relation("outside surface of tubes", "area", derives=False)
 def outside_surface(outside_diameter, length, tubes=1.0):
     """A = N·π·Do·L."""
     return tubes * pi * outside_diameter * length
 
 
-@relation("inside surface of tubes", "area")
+@relation("inside surface of tubes", "area", derives=False)
 def inside_surface(diameter, length, tubes=1.0):
     """A = N·π·D·L."""
     return tubes * pi * diameter * length
 
 
-@relation("surface over the insulation", "area")
+@relation("surface over the insulation", "area", derives=False)
 def insulated_surface(insulation_diameter, length):
     """A = π·D·L."""
     return pi * insulation_diameter * length
 
 
-@relation("surface of a duct", "area")
+@relation("surface of a duct", "area", derives=False)
 def duct_surface(wetted_perimeter, length):
     """A = P·L."""
     return wetted_perimeter * length
 
 
-@relation("surface of a plate", "area")
+@relation("surface of a plate", "area", derives=False)
 def plate_surface(length, width):
     """A = L·W."""
     return length * width
@@ -186,31 +186,31 @@ def volume_over_surface(volume, any_area):
     return volume / any_area
 
 
-@relation("characteristic length of a sphere", "characteristic_length")
+@relation("characteristic length of a sphere", "characteristic_length", derives=False)
 def third_of_radius(diameter):
     """Lc = D/6."""
     return diameter / 6.0
 
 
-@relation("volume of a sphere", "volume")
+@relation("volume of a sphere", "volume", derives=False)
 def sphere_volume(diameter):
     """V = π/6·D³."""
     return pi / 6.0 * diameter**3
 
 
-@relation("surface of a sphere", "surface_area")
+@relation("surface of a sphere", "surface_area", derives=False)
 def sphere_surface(diameter):
     """A = π·D²."""
     return pi * diameter**2
 
 
-@relation("volume of a cylinder", "volume")
+@relation("volume of a cylinder", "volume", derives=False)
 def cylinder_volume(diameter, length):
     """V = π/4·D²·L."""
     return pi / 4.0 * diameter**2 * length
 
 
-@relation("volume of a slab", "volume")
+@relation("volume of a slab", "volume", derives=False)
 def slab_volume(length, width, wall_thickness):
     """V = L·W·s."""
     return length * width * wall_thickness
@@ -228,7 +228,7 @@ def fin_section(width, fin_thickness):
     return width * fin_thickness
 
 
-@relation("perimeter of a pin", "fin_perimeter")
+@relation("perimeter of a pin", "fin_perimeter", derives=False)
 def pin_perimeter(diameter):
     """P = π·D."""
     return pi * diameter

@@ -57,25 +57,25 @@ def between_walls(wall_temperature, second_wall_temperature):
     return abs(wall_temperature - second_wall_temperature)
 
 
-@relation("difference of wall and inlet", "temperature_difference")
+@relation("difference of wall and inlet", "temperature_difference", derives=False)
 def to_inlet(wall_temperature, inlet_temperature):
     """|Tw − Tin|."""
     return abs(wall_temperature - inlet_temperature)
 
 
-@relation("difference of inlet and surroundings", "temperature_difference")
+@relation("difference of inlet and surroundings", "temperature_difference", derives=False)
 def inlet_to_ambient(inlet_temperature, ambient_temperature):
     """|Tin − Ta|."""
     return abs(inlet_temperature - ambient_temperature)
 
 
-@relation("difference of initial and surrounding temperature", "temperature_difference")
+@relation("difference of initial and surrounding temperature", "temperature_difference", derives=False)
 def initial_to_stream(initial_temperature, stream_temperature):
     """|Ti − T∞|."""
     return abs(initial_temperature - stream_temperature)
 
 
-@relation("rise along the stream", "temperature_difference", streams=True)
+@relation("rise along the stream", "temperature_difference", derives=False, streams=True)
 def ends(inlet_temperature, outlet_temperature):
     """|Tout − Tin|."""
     return abs(outlet_temperature - inlet_temperature)

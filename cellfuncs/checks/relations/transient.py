@@ -109,7 +109,7 @@ def fin_heat_of_efficiency(fin_efficiency, coefficient, any_area, wall_temperatu
     return fin_efficiency * coefficient * any_area * abs(wall_temperature - bath)
 
 
-@relation("surface of a fin", "area")
+@relation("surface of a fin", "area", derives=False)
 def fin_surface(fin_perimeter, length):
     """A = P·L."""
     return fin_perimeter * length
