@@ -27,6 +27,11 @@ class Links:
                 place = name.sheet.casefold() if name.sheet else None
                 self._names[name.name.casefold(), place] = (name.name, shape.targets[0])
 
+    @property
+    def has_names(self) -> bool:
+        """Whether the workbook defines names of cells."""
+        return bool(self._names)
+
     def target(self, target: Target, sheet: str) -> tuple[Page, tuple[int, int, int, int]] | None:
         """The sheet and area of a reference in a formula of ``sheet``; None outside the workbook."""
         name = sheet if target.sheet is None else self._folded.get(target.sheet.casefold())
