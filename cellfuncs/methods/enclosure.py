@@ -8,7 +8,7 @@ import math
 from typing import Any
 
 from cellfuncs.methods.algebra import cos, exp, larger, log, sin, where
-from cellfuncs.methods.base import Range, method
+from cellfuncs.methods.base import Range, follows, method
 
 _GAP = "gap; over conduction alone"
 _BELOW = {"shape": ("layer",), "heated_from": ("from below",)}
@@ -268,6 +268,7 @@ def _enclosed(rayleigh: Any, prandtl: Any, factor: float) -> Any:
     return larger(1.0, factor * (prandtl / (0.861 + prandtl) * rayleigh) ** 0.25)
 
 
+@follows("Ra ring")
 def ring_rayleigh(rayleigh: Any, ratio: Any) -> Any:
     """The Rayleigh number of Raithby and Hollands for a ring, from Ra on the gap and inner over outer diameter.
 
@@ -276,6 +277,7 @@ def ring_rayleigh(rayleigh: Any, ratio: Any) -> Any:
     return rayleigh * log(ratio) ** 4 / ((0.5 * (1.0 - ratio)) ** 3 * (ratio**-0.6 + 1.0) ** 5)
 
 
+@follows("Ra shell")
 def shell_rayleigh(rayleigh: Any, ratio: Any) -> Any:
     """The Rayleigh number of Raithby and Hollands for a shell, from Ra on the gap and inner over outer diameter.
 
@@ -295,15 +297,15 @@ def shell_rayleigh(rayleigh: Any, ratio: Any) -> Any:
     where={"shape": ("concentric cylinders",)},
     length=_GAP,
 )
-def ring(rayleigh_ring: Any, prandtl: Any) -> Any:
-    """Mean k_eff/k between long level concentric cylinders, at least 1; Ra of ``ring_rayleigh``."""
-    return _enclosed(rayleigh_ring, prandtl, 0.386)
+def ring(rayleigh: Any, prandtl: Any, ratio: Any) -> Any:
+    """Mean k_eff/k between long level concentric cylinders, at least 1; ``ratio`` inner over outer diameter."""
+    return _enclosed(ring_rayleigh(rayleigh, ratio), prandtl, 0.386)
 
 
 @method(
     "Raithby-Hollands shell",
     gives="mean Nu",
-    ranges=(Range("Ra ring", 1e2, 1e4), Range("Pr", 0.7, 4000.0)),
+    ranges=(Range("Ra shell", 1e2, 1e4), Range("Pr", 0.7, 4000.0)),
     scatter=0.15,
     property_temperature="mean of the walls",
     source="raithby-hollands-1975",
@@ -311,9 +313,9 @@ def ring(rayleigh_ring: Any, prandtl: Any) -> Any:
     where={"shape": ("concentric spheres",)},
     length=_GAP,
 )
-def shell(rayleigh_ring: Any, prandtl: Any) -> Any:
-    """Mean k_eff/k between concentric spheres, at least 1; Ra of ``shell_rayleigh``."""
-    return _enclosed(rayleigh_ring, prandtl, 0.74)
+def shell(rayleigh: Any, prandtl: Any, ratio: Any) -> Any:
+    """Mean k_eff/k between concentric spheres, at least 1; ``ratio`` inner over outer diameter."""
+    return _enclosed(shell_rayleigh(rayleigh, ratio), prandtl, 0.74)
 
 
 @method(

@@ -8,7 +8,7 @@ A free face is a warm one looking up or a cold one looking down; a held face is 
 from typing import Any
 
 from cellfuncs.methods.algebra import log, smaller, sqrt, where
-from cellfuncs.methods.base import Range, method
+from cellfuncs.methods.base import Range, follows, method
 
 _HEIGHT = "height of the plate"
 _FACE = "area over perimeter"
@@ -16,6 +16,12 @@ _PLATE = {"surface": ("vertical plate",), "wall": ("temperature",)}
 _FLUX = {"surface": ("vertical plate",), "wall": ("flux",)}
 _FREE_FACE = {"surface": ("horizontal plate, free face",)}
 _HELD_FACE = {"surface": ("horizontal plate, held face",)}
+
+
+@follows("Ra")
+def rayleigh_of(grashof: Any, prandtl: Any) -> Any:
+    """Gr·Pr."""
+    return grashof * prandtl
 
 
 def laminarity(prandtl: Any, constant: float) -> Any:
@@ -255,7 +261,7 @@ def laminar_plate_flux(rayleigh_flux: Any) -> Any:
 @method(
     "Vliet-Liu turbulent plate",
     gives="local Nu",
-    ranges=(Range("Ra*", 1e13, 1e16), Range("Pr", 3.0, 10.0)),
+    ranges=(Range("Ra*", 2e13, 1e16), Range("Pr", 3.0, 10.0)),
     scatter=0.15,
     property_temperature="film",
     source="vliet-liu-1969",
@@ -315,7 +321,7 @@ def horizontal_free_face_measured(rayleigh: Any) -> Any:
     length=_FACE,
 )
 def small_free_face(rayleigh: Any) -> Any:
-    """Mean Nu of a small free face; the two branches meet within 3 % at Ra 200."""
+    """Mean Nu of a small free face; it steps down by 4 % at Ra 200."""
     return where(rayleigh <= 200.0, 0.96 * rayleigh ** (1 / 6), 0.59 * rayleigh**0.25)
 
 
@@ -349,7 +355,7 @@ def horizontal_free_face_joined(rayleigh: Any, prandtl: Any) -> Any:
     length=_FACE,
 )
 def horizontal_free_face_atlas(rayleigh: Any, prandtl: Any) -> Any:
-    """Mean Nu of a free face, laminar to Ra·f(Pr) 7e4 and turbulent above; the branches meet there within 1 %."""
+    """Mean Nu of a free face, laminar to Ra·f(Pr) 7e4 and turbulent above; it steps down by 13 % there."""
     driven = rayleigh * (1.0 + (0.322 / prandtl) ** (11.0 / 20.0)) ** (-20.0 / 11.0)
     return where(driven <= 7e4, 0.766 * driven**0.2, 0.15 * driven ** (1 / 3))
 

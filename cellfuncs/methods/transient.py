@@ -177,7 +177,8 @@ def _roots(shape: str, biot: Any, terms: int) -> Roots:
         lambda z: (z * z * special.spherical_jn(1, z) - biot * np.sin(z), z * np.sin(z) - biot * np.cos(z)),
         biot,
     )
-    swing = np.sinc(z / math.pi)
+    # sin ζ/ζ by the roots' own equation, which loses no digits near multiples of π
+    swing = np.where(number % 2 == 1, 1.0, -1.0) / np.sqrt(z**2 + (biot - 1.0) ** 2)
     factor = 2.0 * biot * swing * (z**2 + (biot - 1.0) ** 2) / (z**2 + biot**2 - biot)
     return Roots(z, factor, 3.0 * biot * swing / z**2)
 

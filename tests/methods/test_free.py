@@ -1,54 +1,122 @@
-"""Free convection, cross-flow and jets: methods against published numbers and at the seams of their ranges."""
+"""Free convection of plates, bodies and channels: limits, seams, regimes, and what answers for a surface."""
 
+import numpy as np
 import pytest
+from hypothesis import given
+from hypothesis import strategies as st
 
 from cellfuncs.errors import OutOfRange
-from cellfuncs.methods import cross, free
+from cellfuncs.methods import METHODS, chimney, free, free_body, free_plate
+
+FREE = [name for name, one in METHODS.items() if one.flows == ("free",)]
+BY_RA = [name for name in FREE if METHODS[name].gives == "mean Nu" and "rayleigh" in METHODS[name].inputs]
+STEPS_DOWN = {"Heat Atlas upper face": 0.86, "Goldstein-Sparrow-Jones upper face": 0.95, "Morgan cylinder": 0.99}
+MORE = {"prandtl": 0.9, "length_over_diameter": 2.0}
 
 
-def test_vertical_plate():
-    """Churchill and Chu, IJHMT 18 (1975) 1323: Ra 1e6, Pr 7 gives 19.97666986 (coefficients from memory)."""
-    assert free.vertical_plate(1e6, 7.0) == pytest.approx(19.97666986, rel=1e-9)
-
-
-def test_layer_heated_below():
-    """Hollands et al. 1976: still below the critical Rayleigh number 1708."""
-    assert free.layer_heated_below(1500.0) == 1.0
-    assert free.layer_heated_below(2000.0) > 1.0
-
-
-def test_horizontal_cylinder_handbook_limit():
-    """Churchill and Chu 1975: Nu tends to 0.36 as Ra vanishes."""
-    assert free.horizontal_cylinder(1e-30, 0.7) == pytest.approx(0.36, rel=1e-3)
-
-
-def test_sphere_conduction_limit():
-    """Churchill 1983 and Whitaker 1972: Nu tends to 2 without flow (conduction to a still medium)."""
-    assert free.sphere(1e-12, 0.7) == pytest.approx(2.0, rel=1e-3)
-    assert cross.sphere(1e-12, 0.7) == pytest.approx(2.0, rel=1e-5)
-
-
-def test_channel_limits():
-    """Bar-Cohen and Rohsenow 1984: El/24 for narrow channels, 0.59 El^1/4 for wide ones."""
-    assert free.channel(0.1) == pytest.approx(0.1 / 24.0, rel=1e-2)
-    assert free.channel(1e5) == pytest.approx(0.59 * 1e5**0.25, rel=1e-2)
-
-
-def test_cylinder_in_cross_flow():
-    """Churchill and Bernstein, J. Heat Transfer 99 (1977) 300: Re 2e5, Pr 0.7 gives 346.9636858."""
-    assert cross.cylinder(2e5, 0.7) == pytest.approx(346.9636858, rel=1e-9)
-
-
-def test_jet():
-    """Martin, Adv. Heat Transfer 13 (1977) 1: Re 1e5, Pr 7, D/r 0.15, H/D 8 gives 339.9941275."""
-    assert cross.jet(1e5, 7.0, 8.0, 1.0 / 0.15) == pytest.approx(339.9941275, rel=1e-9)
-
-
-def test_horizontal_faces_meet_at_the_seam():
-    """McAdams 1954: the two branches differ by 2 % at Ra 1e7."""
-    assert free.horizontal_free_face(1e7 * (1 - 1e-9), 0.7) == pytest.approx(
-        free.horizontal_free_face(1e7 * (1 + 1e-9), 0.7), rel=0.12
+def value(name, rayleigh, **more):
+    inputs = METHODS[name].inputs
+    return METHODS[name].evaluate(
+        {"rayleigh": rayleigh, **{k: v for k, v in MORE.items() if k in inputs}, **more}, True
     )
+
+
+def ends(name):
+    low, high = next((r.low, r.high) for r in METHODS[name].ranges if r.variable == "Ra")
+    return max(low, 1e-10), high
+
+
+@pytest.mark.parametrize("name", BY_RA)
+@given(st.floats(0.0, 1.0), st.floats(0.01, 1.0))
+def test_more_drive_gives_more_heat(name, where, step):
+    """Nu never falls as Ra grows, over the whole range; only where pieces step down, and by no more than they do."""
+    low, high = np.log(ends(name))
+    first = low + where * (high - low)
+    more, less = value(name, float(np.exp(first + step))), value(name, float(np.exp(first)))
+    assert more >= STEPS_DOWN.get(name, 1.0) * less > 0
+
+
+@pytest.mark.parametrize(
+    ("name", "seam", "step"),
+    [
+        ("McAdams upper face", 1e7, 1.0642),
+        ("Lloyd-Moran upper face", 8e6, 1.0446),
+        ("Goldstein-Sparrow-Jones upper face", 200.0, 0.9556),
+        ("Morgan cylinder", 1e-2, 0.9984),
+        ("Morgan cylinder", 1e2, 1.0019),
+        ("Morgan cylinder", 1e4, 0.9996),
+        ("Morgan cylinder", 1e7, 0.9924),
+    ],
+)
+def test_steps_where_pieces_meet(name, seam, step):
+    """The size of each step follows from the published powers; the docstrings tell them."""
+    assert value(name, seam * (1 + 1e-12)) / value(name, seam) == pytest.approx(step, abs=2e-4)
+
+
+def test_step_of_the_atlas():
+    """VDI Heat Atlas F2: from the laminar to the turbulent upper face at Ra·f(Pr) 7e4."""
+    at = 7e4 / (1.0 + (0.322 / 0.9) ** (11.0 / 20.0)) ** (-20.0 / 11.0)
+    assert value("Heat Atlas upper face", at * 1.0001) / value("Heat Atlas upper face", at) == pytest.approx(
+        0.866, abs=2e-3
+    )
+
+
+def test_plate_inclined_by_g_along_it_is_a_plate():
+    """Fujii and Imura's inclined plate, Churchill and Chu's and Ede's at Pr 7 agree within their scatter."""
+    ra = 1e8 * np.cos(np.radians(45.0))
+    measured = free_plate.inclined_plate_held(ra)
+    assert measured == pytest.approx(free_plate.laminar_vertical_plate(ra, 7.0), rel=0.12)
+    assert measured == pytest.approx(free_plate.laminar_integral(ra, 7.0), rel=0.1)
+
+
+@given(st.floats(1.0, 1e8), st.floats(0.7, 100.0))
+def test_thick_cylinder_is_a_plate(rayleigh, prandtl):
+    cylinder = free_body.slender_cylinder_corrected(rayleigh, prandtl, 1e-8)
+    assert cylinder == pytest.approx(free_plate.laminar_vertical_plate(rayleigh, prandtl), rel=1e-3)
+
+
+@given(st.floats(1e6, 1e9), st.floats(0.7, 10.0), st.floats(0.1, 10.0))
+def test_slender_cylinders_agree(rayleigh, prandtl, slenderness):
+    one = free_body.slender_cylinder(rayleigh, prandtl, slenderness)
+    assert one == pytest.approx(free_body.slender_cylinder_corrected(rayleigh, prandtl, slenderness), rel=0.11)
+
+
+def test_stoutness_is_checked():
+    with pytest.raises(OutOfRange, match="Gr"):
+        METHODS["Churchill-Chu upright cylinder"].evaluate(
+            {"rayleigh": 1e6, "prandtl": 0.7, "length_over_diameter": 10.0}
+        )
+
+
+def test_limits_of_channels():
+    """Bar-Cohen and Rohsenow 1984: El/24 and El/12 for narrow channels, 0.59 El^1/4 for wide ones."""
+    assert chimney.channel(0.1) == pytest.approx(0.1 / 24.0, rel=1e-3)
+    assert chimney.channel_one_sided(0.1) == pytest.approx(0.1 / 12.0, rel=2e-3)
+    assert chimney.channel(1e5) == pytest.approx(0.59 * 1e5**0.25, rel=1e-3)
+    assert chimney.channel_measured(100.0) == pytest.approx(chimney.channel(100.0), rel=0.03)
+
+
+@pytest.mark.parametrize(("heated", "nusselt"), [("both", chimney.channel), ("one", chimney.channel_one_sided)])
+def test_best_spacing_carries_most(heated, nusselt):
+    """Heat of a volume filled with thin plates goes as Nu/S², with El = Ra·(S/L)⁴ (Bar-Cohen and Rohsenow 1984)."""
+    best = chimney.best_spacing(1e6, heated)
+    spacings = best * np.linspace(0.7, 1.4, 701)
+    heat = nusselt(1e6 * spacings**4) / spacings**2
+    assert spacings[np.argmax(heat)] == pytest.approx(best, rel=2e-3)
+
+
+@pytest.mark.parametrize(
+    ("heated", "nusselt"), [("both", chimney.channel_flux), ("one", chimney.channel_flux_one_sided)]
+)
+def test_best_spacing_with_a_flux_joins_the_limits(heated, nusselt):
+    """There the developed channel and the single plate alone give the same Nu, which the spacing was chosen by."""
+    number = 1e10 * chimney.best_spacing_flux(1e10, heated) ** 5
+    narrow = {"both": 12.0, "one": 6.0}[heated]
+    assert nusselt(number) < (number / narrow) ** 0.5
+    assert nusselt(number) == pytest.approx({"both": 0.62, "one": 0.49}[heated], abs=5e-3)
+
+
+# -- by surface ------------------------------------------------------------------------------------------------------
 
 
 @pytest.mark.parametrize(("surface", "more"), [("inclined plate", {"angle from vertical": 75.0}), ("sphere", {})])
