@@ -7,8 +7,7 @@ from hypothesis import given
 from hypothesis import strategies as st
 
 from cellfuncs.errors import OutOfRange
-from cellfuncs.methods import METHODS, duct, plate, recovery
-from cellfuncs.sources import cite
+from cellfuncs.methods import duct, plate, recovery
 
 
 @pytest.mark.parametrize(
@@ -106,13 +105,6 @@ def test_recovery_table_is_positive_and_bounded(reynolds, prandtl):
 def test_plate_recovery(pr, wanted, within):
     """Schlichting, Boundary-Layer Theory, table of recovery factors: 0.835 at 0.7, 1 at 1, 2.515 at 7 (from memory)."""
     assert recovery.laminar_plate(pr) == pytest.approx(wanted, rel=within)
-
-
-def test_every_method_has_a_source_in_the_bibliography():
-    assert len(METHODS) >= 10
-    for method in METHODS.values():
-        assert cite(method.source)
-        assert 0 <= method.scatter < 0.5
 
 
 @pytest.mark.parametrize(
