@@ -35,18 +35,24 @@ def tabulated(thetas: Any, relative: Any) -> Thinning:
     x, y = np.asarray(thetas, dtype=float), np.asarray(relative, dtype=float)
     if len(x) < 2 or (np.diff(x) <= 0).any() or (y <= 0).any() or not np.isfinite(y).all():
         raise NumberRefused("a viscosity table needs rising temperatures and viscosities above zero")
-    curve = PchipInterpolator(x, np.log(y), extrapolate=True)
+    curve = PchipInterpolator(x, np.log(y))
     slope = curve.derivative()
     margin = 1e-9 * (x[-1] - x[0])
 
     def thinning(theta: Any) -> tuple[Any, Any]:
+        # Newton's steps may look beyond; the film that is answered may not (``within``)
+        inside = np.clip(theta, x[0], x[-1])
+        slopes = slope(inside)
+        return curve(inside) + slopes * (theta - inside), slopes
+
+    def within(theta: Any) -> None:
         if theta.min() < x[0] - margin or theta.max() > x[-1] + margin:
             raise NoModel(
                 f"the film would come to {float(theta.max()):.4g} of the temperature scale, "
                 f"but the viscosity is known from {x[0]:.4g} to {x[-1]:.4g} only"
             )
-        return curve(theta), slope(theta)
 
+    thinning.within = within
     return thinning
 
 
@@ -331,6 +337,9 @@ class Solver:
 
     def film(self, state: State, error: float) -> Film:
         theta, p = state.theta, self.gap.pressure
+        within = getattr(self.gap.thinning, "within", None)
+        if within is not None:
+            within(theta)
         log_m, _ = self.gap.thinning(theta)
         flux = self.d @ theta
         shear = (state.stress - p * self.x) * np.exp(-log_m)

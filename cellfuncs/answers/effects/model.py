@@ -59,9 +59,10 @@ class EffectModel:
     """
 
     name = ""
-    terms: frozenset[str] = frozenset()
+    terms: frozenset[str] = frozenset()  # of the class: those it may have, of a model: those it has
     answers: tuple[str, ...] = ()
     spread = 0.0
+    pairs = True  # friction heat and pressure work are left out together
 
     def value(self, answer: str, left: frozenset[str]) -> tuple[float, float]:
         raise NoModel(f"{self.name}: {answer} is not solved")
@@ -76,7 +77,7 @@ class EffectModel:
 
     def effect(self, answer: str, left: frozenset[str]) -> Effect:
         """The effect of leaving out these terms together; NoModel where its error is too large for it."""
-        if left & PAIR:
+        if self.pairs and left & PAIR:
             left = left | PAIR
         kept, dropped = self.value(answer, frozenset()), self.value(answer, left)
         change, coarse = dropped[0] - kept[0], dropped[1] - kept[1]

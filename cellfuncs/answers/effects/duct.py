@@ -1,0 +1,177 @@
+"""Developed flow in a tube or between plates, solved across the section: friction heat, expansion, conduction along.
+
+Laminar flow, also of a power-law melt, and turbulent flow with an eddy diffusivity; a source in the fluid.
+"""
+
+import math
+from functools import lru_cache
+
+from cellfuncs.answers import Solution
+from cellfuncs.answers.duct import DuctAnswers
+from cellfuncs.answers.effects.model import (
+    ALONG,
+    COEFFICIENT,
+    DUTY,
+    FLUX,
+    OUTLET,
+    PAIR,
+    SOURCE,
+    WALL,
+    EffectModel,
+    expansion_part,
+    source_density,
+)
+from cellfuncs.answers.path import far_temperature
+from cellfuncs.errors import CellfuncsError, NoModel
+from cellfuncs.methods.duct import LAMINAR_UP_TO
+
+_TURBULENT_SPREAD = 0.1  # of an effect, by the eddy diffusivity; own judgement
+_FRICTION_SPREAD = 0.3  # ... by how far the friction of the case is from the solved one's, in its logarithm
+_FRICTION_OFF = {True: 2.5, False: 1.3}  # laminar: changing viscosity; turbulent: a rough wall has another layer
+_DIGITS = 10  # of Re, Pr and Pe: points of a map that differ by rounding are one duct
+
+
+class SolvedDuct(EffectModel):
+    """The spectral solution of the case's duct; the wall goes on behind its end, upstream it is adiabatic."""
+
+    terms = PAIR | {ALONG, SOURCE}
+    answers = (OUTLET, WALL, COEFFICIENT, DUTY, FLUX)
+
+    def __init__(self, solution: Solution):
+        a, case = solution.answers, solution.case
+        if not isinstance(a, DuctAnswers) or case.flow != "duct":
+            raise NoModel(f"a {case.flow} is not solved across its section")
+        if a.shape.section not in ("tube", "plates"):
+            raise NoModel(f"tubes and plates are solved, not a section {a.shape.section}")
+        if far_temperature(case) is not None or a.method == "stated":
+            raise NoModel("the section is solved for a wall temperature or flux, with no coefficient stated")
+        self.solution, self.a = solution, a
+        self.laminar = a.reynolds <= LAMINAR_UP_TO
+        self.name = "laminar duct, solved" if self.laminar else "turbulent duct, solved"
+        p, d = a.properties, a.shape.diameter
+        sheared = case.sheared(a.property_temperature) if self.laminar else None
+        self.index = 1.0 if sheared is None else sheared.exponent
+        self.peclet = _short(a.capacity_flux * d / p.conductivity)
+        self.place = a.length / d / self.peclet
+        self.flux = a.flux is not None
+        # θ = 1 in kelvin, and the flux that goes with it
+        self.unit = a.flux * d / p.conductivity if self.flux else a.difference
+        if not self.unit:
+            raise NoModel("wall and fluid have the same temperature; there is no driving difference")
+        self.unit_flux = self.unit * p.conductivity / d
+        self.source = source_density(solution)
+        self.expansion = expansion_part(solution)
+        self.brinkman, self.spread = self._brinkman()
+
+    def _problem(self, wall: str, peclet: float | None):
+        from cellfuncs.models.duct import DuctProblem
+
+        shape = self.a.shape
+        prandtl = None if self.laminar else _short(self.a.properties.prandtl)
+        return DuctProblem(
+            shape.section, "one" if shape.heated == "one" else "both", wall, self.index, peclet,
+            reynolds=None if self.laminar else self.peclet / prandtl, prandtl=prandtl,
+        )  # fmt: skip
+
+    def _brinkman(self) -> tuple[float, float]:
+        """Br with which the solved flow makes as much heat as the case's friction does, and what that leaves open.
+
+        The bulk of an insulated duct rises by f·Re/2·Br a unit of x*; the case has Δp·D²/(L·U)·U²/(kΔT).
+        """
+        a, p = self.a, self.a.properties
+        heat = abs(a.pressure_drop) * a.velocity * a.shape.diameter**2 / (a.length * p.conductivity * self.unit)
+        brinkman = heat / _friction_heat(self._problem("flux", None))
+        # what the friction would be by the viscosity of the properties alone
+        newtonian = p.viscosity * a.velocity**2 / (p.conductivity * self.unit)
+        off = brinkman / newtonian if self.index == 1.0 else 1.0
+        allowed = _FRICTION_OFF[self.laminar]
+        if not 1.0 / allowed <= off <= allowed:
+            raise NoModel("the friction of the case is far from that of developed flow in a smooth duct")
+        spread = _FRICTION_SPREAD * abs(math.log(off))
+        return brinkman, spread if self.laminar else max(spread, _TURBULENT_SPREAD)
+
+    def value(self, answer: str, left: frozenset[str]) -> tuple[float, float]:
+        from cellfuncs.models import duct
+
+        a = self.a
+        acts = {}
+        if not left & PAIR:
+            acts = {"brinkman": self.brinkman, "expansion": self.expansion}
+        if SOURCE not in left and self.source:
+            acts["source"] = self.source * a.shape.diameter**2 / (a.properties.conductivity * self.unit)
+        solved = duct.solve(
+            self._problem("flux" if self.flux else "temperature", None if ALONG in left else self.peclet)
+        )
+        return tuple(self._answer(answer, on, acts) for on in (solved, solved.coarse))
+
+    def _answer(self, answer: str, solved, acts: dict[str, float]) -> float:
+        x, a = self.place, self.a
+        if answer == OUTLET:
+            return solved.bulk(x, **acts) * self.unit
+        if answer == WALL and self.flux:
+            return solved.wall(x, **acts) * self.unit
+        if answer == FLUX and self.flux:
+            return a.flux
+        if answer == FLUX:
+            return solved.flux(x, **acts) * self.unit_flux
+        if answer == COEFFICIENT and self.flux:
+            return solved.nusselt(x, **acts) * self.unit_flux / self.unit
+        if answer in (DUTY, COEFFICIENT):
+            mean = solved.mean_flux(0.0, x, **acts) * self.unit_flux
+            if answer == DUTY:
+                return mean * a.exchange * a.length * (a.shape.area or 1.0)
+            return mean / ((1.0 - self._mean_bulk(solved, acts)) * self.unit)
+        raise NoModel(f"{self.name}: {answer} is not solved")
+
+    def _mean_bulk(self, solved, acts: dict[str, float]) -> float:
+        """Mean of θ_b over the length; it rises as x^⅔ from the inlet, so that x = L·s³ makes it smooth."""
+        import numpy as np
+
+        s, w = np.polynomial.legendre.leggauss(24)
+        s, w = (s + 1.0) / 2.0, w / 2.0
+        return float(w * 3.0 * s**2 @ solved.bulk(self.place * s**3, **acts))
+
+    def base(self, answer: str, without: float) -> float | None:
+        a = self.a
+        if answer == OUTLET:
+            return abs(a.bulk_rise) if self.flux else abs(self.unit)
+        if answer == WALL:
+            return self.solution.driving
+        return abs(without)
+
+
+@lru_cache(maxsize=256)
+def _friction_heat(problem) -> float:
+    """f·Re/2 of the solved flow, from the rise of the bulk of an insulated duct."""
+    from cellfuncs.models.duct import solve
+
+    return solve(problem).bulk(1.0, drive=0.0, brinkman=1.0)
+
+
+@lru_cache(maxsize=256)
+def _recovered(problem, far: float) -> float:
+    """Wall minus bulk of an insulated duct far downstream, in μU²/k."""
+    from cellfuncs.models.duct import solve
+
+    solved = solve(problem)
+    return solved.wall(far, drive=0.0, brinkman=1.0) - solved.bulk(far, drive=0.0, brinkman=1.0)
+
+
+def recovery_rise(solution: Solution) -> float:
+    """ΔT_rec [K] of a duct: from the table, and beyond it from the solved turbulent flow; NoModel where neither is."""
+    a = solution.answers
+    try:
+        return a.recovery_rise
+    except CellfuncsError:
+        from cellfuncs.models.duct import DuctProblem
+
+        p = a.properties
+        section = a.shape.section if a.shape.section == "plates" else "tube"
+        prandtl = _short(p.prandtl)
+        rise = _recovered(DuctProblem(section, wall="flux", reynolds=_short(a.reynolds), prandtl=prandtl), 10.0)
+        return rise * p.viscosity * a.velocity**2 / p.conductivity
+
+
+def _short(value: float) -> float:
+    """A number without the digits that rounding makes."""
+    return float(f"{value:.{_DIGITS}g}")
