@@ -1,0 +1,113 @@
+"""A workbook that somebody else wrote, checked: read, units followed through its formulas, numbers recomputed."""
+
+from __future__ import annotations
+
+from collections.abc import Iterable, Sequence
+from dataclasses import replace
+from pathlib import Path
+
+from cellfuncs import __version__
+from cellfuncs.books import inspect
+from cellfuncs.cases import labels
+from cellfuncs.checks.finding import SEVERITIES, Finding
+from cellfuncs.checks.judge import judge
+from cellfuncs.checks.references import References
+from cellfuncs.sheets.dimensions import judge as units
+from cellfuncs.sheets.inherited.page import Page, Spot
+from cellfuncs.sheets.inherited.reading import MOST_NOTES, Reading, read_book
+from cellfuncs.sheets.reporting.report import Report, excerpt
+
+# causes that say less than what the units of a formula tell
+_WEAK = frozenset(("unknown", "typing-slip", "hard-coded"))
+_MOST_FINDINGS = 500
+
+
+def check_book(path: str | Path | bytes, name: str = "") -> Report:
+    """Check a workbook (.xlsx, .xlsm); raises BookRefused with one sentence where it cannot be read.
+
+    ``path`` may be the file's bytes; ``name`` is what the report calls it.
+    """
+    reading = read_book(inspect(path))
+    report = checked(reading)
+    report.workbook = name or (Path(path).name if not isinstance(path, bytes) else "")
+    return report
+
+
+def checked(reading: Reading) -> Report:
+    """The report on a workbook that was read."""
+    found, agreed = judge(reading.cases, reading.graph)
+    findings = _together(found, units.findings(reading), {cell for cell, _ in agreed})
+    references = References(reading.cases, reading.graph)
+    findings = [
+        f if f.inherited else replace(f, inherited=tuple(c for c in references.below(f.cell) if c != f.cell))
+        for f in findings
+    ]
+    order = {cell: place for place, cell in enumerate(reading.quantities)}
+    findings.sort(key=lambda f: (SEVERITIES.index(f.severity), order.get(f.cell, len(order))))
+    wrong = {f.cell for f in findings} | {cell for f in findings for cell in f.inherited if f.severity == "error"}
+    words = {cell: labels.dictionary()[q.stated.key].label for cell, q in reading.quantities.items()}
+    notes = reading.notes.notes[:MOST_NOTES]
+    if not reading.quantities:
+        notes = [*notes, ("", "no quantity was recognised in this workbook")]
+    return Report(
+        workbook="",
+        version=__version__,
+        findings=findings[:_MOST_FINDINGS],
+        agreed=[(cell, words[cell]) for cell in dict.fromkeys(c for c, _ in agreed) if cell not in wrong],
+        not_understood=notes,
+        cases=reading.cases,
+        excerpts=_excerpts(reading, findings[:_MOST_FINDINGS]),
+        labels={cell: quantity.stated.label for cell, quantity in reading.quantities.items()},
+        final=_final(reading),
+    )
+
+
+def _together(recomputed: Iterable[Finding], of_units: Iterable[Finding], agreed: set[str]) -> list[Finding]:
+    """One finding a cell: numbers from recomputing, and the cause that says most."""
+    by_cell: dict[str, Finding] = {}
+    for finding in recomputed:
+        other = by_cell.get(finding.cell)
+        if other is None or finding.confidence > other.confidence:
+            by_cell[finding.cell] = finding
+    for finding in of_units:
+        other = by_cell.get(finding.cell)
+        if other is None:
+            # a number that agrees with what follows from its inputs has the right units too
+            if finding.cell not in agreed:
+                by_cell[finding.cell] = finding
+        elif other.code == finding.code:
+            by_cell[finding.cell] = replace(other, confidence=max(other.confidence, finding.confidence))
+        elif other.code in _WEAK or other.severity != "error":
+            by_cell[finding.cell] = replace(
+                finding,
+                recomputed=other.recomputed,
+                reasoning=(*finding.reasoning, *other.reasoning),
+                inherited=other.inherited,
+                case=other.case,
+            )
+    return list(by_cell.values())
+
+
+def _final(reading: Reading) -> tuple[str, ...]:
+    """The results at the end of a workbook: labelled formulas that no other formula uses."""
+    used = {source for sources in reading.graph.values() for source in sources}
+    return tuple(cell for cell, q in reading.quantities.items() if not q.stated.typed and cell not in used)
+
+
+def _excerpts(reading: Reading, findings: Sequence[Finding]) -> dict:
+    pages = {page.name: page for page in reading.pages}
+    found = {}
+    for finding in findings:
+        place = place_of(finding.cell, pages)
+        if place is not None:
+            found[finding.cell] = excerpt(*place)
+    return found
+
+
+def place_of(cell: str, pages: dict[str, Page]) -> tuple[Page, Spot] | None:
+    """The page and place of ``Sheet1!C7``."""
+    from cellfuncs.books.grid import rectangle
+
+    sheet, _, place = cell.rpartition("!")
+    area = rectangle(place)
+    return (pages[sheet], area[:2]) if area and sheet in pages else None
