@@ -1,4 +1,4 @@
-"""Which method answers for a case: the candidates of its flow kind, how each lies to its range, and the one recommended.
+"""Which method answers for a case: the candidates of its flow kind, how each lies to its range, the one recommended.
 
 The rule, the same always: of the methods that give the wanted answer and whose inputs the case tells, those in range;
 of these the one with the smallest published scatter; of equal scatter the one with the narrowest range, since it was
@@ -13,6 +13,7 @@ from dataclasses import dataclass
 from functools import lru_cache
 
 from cellfuncs.answers.inputs import Inputs, View
+from cellfuncs.cases.case import Case
 from cellfuncs.errors import NoModel, NumberRefused, OutOfRange, UnknownName
 from cellfuncs.methods import METHODS, Method, Range
 
@@ -20,6 +21,7 @@ NUSSELT = ("mean Nu", "local Nu")
 FRICTION = ("Darcy friction factor",)
 DROP = ("pressure drop", "pressure gradient")
 _OPEN, _HALF_OPEN = 8.0, 4.0  # decades that a range counts for where it has no end, or one
+_CHOICE = 2.0  # decades that a condition on a choice is worth
 _ENTRY = ("x_star", "x_plus", "length_over_diameter")
 
 
@@ -55,8 +57,8 @@ def _distance(r: Range, value: float) -> float:
 
 
 def narrowness(method: Method) -> float:
-    """How much a range restricts, in decades over all its variables; larger is narrower."""
-    return sum(_OPEN - _width(r) for r in method.ranges)
+    """How much a method restricts: decades over the variables of its range, and its choices; larger is narrower."""
+    return sum(_OPEN - _width(r) for r in method.ranges) + _CHOICE * len(method.where)
 
 
 def _width(r: Range) -> float:
@@ -144,14 +146,16 @@ def refuse_outside(found: Candidate) -> None:
     )
 
 
-def named(state: Inputs, name: str, gives: tuple[str, ...], what: str, allow: bool) -> Candidate:
+def named(
+    state: Inputs, name: str, gives: tuple[str, ...], what: str, allow: bool, flow: str | None = None
+) -> Candidate:
     """The method of that name for a case, or a refusal that says why it is none."""
-    method = find(name)
+    method, flow = find(name), flow or state.case.flow
     if method.gives not in gives:
         raise NoModel(f"{method.name} gives a {method.gives}, not the {what}")
-    if state.case.flow not in method.flows:
+    if flow not in method.flows:
         fits = " or ".join(method.flows) or "no flow kind of cases"
-        raise NoModel(f"{method.name} is for {fits}, this case is a {state.case.flow}")
+        raise NoModel(f"{method.name} is for {fits}, this case is a {flow}")
     for key, allowed in method.where.items():
         known = state.choice(key)
         if known is not None and known not in allowed:
@@ -164,6 +168,12 @@ def named(state: Inputs, name: str, gives: tuple[str, ...], what: str, allow: bo
     if not found.in_range and not allow:
         refuse_outside(found)
     return found
+
+
+def row(case: Case, key: str, gives: tuple[str, ...]) -> str | None:
+    """The method that a row of the case names, where it gives what is asked."""
+    name = case.get(key)
+    return name if name is not None and find(name).gives in gives else None
 
 
 def find(name: str) -> Method:

@@ -5,13 +5,13 @@ by friction and pressure work are judged in ``terms/``, not mixed in here.
 """
 
 import math
-from collections.abc import Callable
-from dataclasses import dataclass, replace
+from dataclasses import dataclass
+from typing import Any
 
-from cellfuncs.answers import driving as driving_difference
-from cellfuncs.answers.internal import STATED, Chosen, Internal, Values
-from cellfuncs.answers.loop import settle
-from cellfuncs.answers.path import duct_resistance, far_temperature, overall, refuse_without_end
+from cellfuncs.answers.inputs import Inputs
+from cellfuncs.answers.internal import Internal
+from cellfuncs.answers.passage import Chosen, Values, solve_passage
+from cellfuncs.answers.path import far_temperature
 from cellfuncs.cases.case import Case, Properties
 from cellfuncs.cases.sections import Duct
 from cellfuncs.errors import CaseRefused
@@ -39,9 +39,9 @@ class DuctAnswers:
     flux: float | None  # the prescribed one
     inlet: float | None
     film: float = 0.0  # the inside coefficient, where ``coefficient`` is the overall one
-    friction_method: str = ""
-    wall_difference: float | None = None  # mean of wall minus bulk, where it is known
-    values: Values | None = None  # Nu and f with the factors of changing properties
+    chosen: Chosen | None = None
+    state: Inputs | None = None  # what methods may ask
+    values: Values | None = None  # coefficient and f with the factors of changing properties
 
     @property
     def exchange(self) -> float:
@@ -115,135 +115,13 @@ class DuctAnswers:
 def solve_duct(case: Case) -> DuctAnswers:
     """The answers of a duct case; closes the loops on the mean bulk temperature and on that of the wall."""
     length = case.need("length")
-    shape = case.duct
-    inlet, difference = temperatures(case)
-    internal = Internal(case, shape, length)
-    chosen: Chosen | None = None
-    for _ in range(_MOST_CHOICES):
-
-        def at(bulk: float | None, chosen: Chosen | None = chosen) -> DuctAnswers:
-            return _duct_at(internal, length, bulk, inlet, difference, chosen)
-
-        found = close_on_bulk(case, at, inlet, difference)
-        state = internal.state(found.property_temperature, found.wall_difference)
-        last, chosen = chosen, internal.choose(state, case.allow)
-        if last is None or (last.nusselt, last.friction) == (chosen.nusselt, chosen.friction):
-            if found.method == chosen.nusselt and found.friction_method == chosen.friction:
-                break
-    return replace(found, outside=chosen.outside)
+    return solve_passage(DuctPassage(case, case.duct, length))
 
 
-_MOST_CHOICES = 4  # rounds of choosing methods at temperatures that the methods set
+class DuctPassage(Internal):
+    """A duct whose answers are ``DuctAnswers``."""
 
-
-def _duct_at(
-    internal: Internal,
-    length: float,
-    bulk: float | None,
-    inlet: float | None,
-    difference: float | None,
-    chosen: Chosen | None,
-) -> DuctAnswers:
-    """The answers at a mean bulk temperature; without methods chosen, with those for the temperature of the stream."""
-    case, shape = internal.case, internal.shape
-    flux, far = case.get("heat_flux"), far_temperature(case)
-    apart = _mean_difference(case, bulk, inlet, difference)
-    case.velocity(internal.at_bulk(internal.state(bulk, apart)).p.density)  # asks for what is missing first
-    if chosen is None:
-        chosen = internal.choose(internal.state(bulk, apart), True)
-    values = None
-
-    def film_coefficient(driving: float | None) -> float:
-        nonlocal values
-        state = internal.state(bulk, driving)
-        values = internal.values(state, chosen)
-        return values.nusselt * internal.at_bulk(state).p.conductivity / shape.diameter
-
-    follows = bulk is not None and not case.fixed and chosen.nusselt != STATED
-    if flux is not None and follows:
-        apart = driving_difference.for_flux(film_coefficient, flux)
-    elif far is not None and follows:
-        apart = driving_difference.for_path(film_coefficient, far - bulk, duct_resistance(case, shape))
-    h = film = film_coefficient(apart)
-    method = chosen.nusselt
-    driving = difference
-    if flux is not None:
-        driving = apart = flux / h
-    if far is not None:
-        h, method = overall(case, shape, h), f"overall, inside {h:.4g} by {method}"
-    p = internal.at_bulk(internal.state(bulk, apart)).p
-    u = case.velocity(p.density)
-    return DuctAnswers(
-        case, shape, length, bulk, p, u, p.density * u * shape.diameter / p.viscosity, values.nusselt, values.friction,
-        h, method, chosen.outside, driving, flux, inlet, film, chosen.friction, apart, values,
-    )  # fmt: skip
-
-
-def _mean_difference(
-    case: Case, bulk: float | None, inlet: float | None, difference: float | None
-) -> float | None:
-    """Wall minus mean bulk temperature where the wall is prescribed, None where it follows or is not known."""
-    if case.has("heat_flux") or far_temperature(case) is not None or not difference or bulk is None:
-        return None
-    return inlet + difference - bulk if inlet is not None else difference
-
-
-def close_on_bulk(
-    case: Case, at: Callable[[float | None], DuctAnswers], inlet: float | None, difference: float | None
-) -> DuctAnswers:
-    """The answers at the mean bulk temperature, which they themselves set; or at the stated temperature."""
-    if case.get("heat_flux") == 0:
-        raise CaseRefused(f'"{case.stated["heat_flux"].label}" is zero; nothing is exchanged')
-    stated = case.get("property_temperature")
-    if stated is not None or inlet is None:
-        return at(stated)
-    if case.fixed:
-        found = at(None)
-        return replace(found, property_temperature=inlet + 0.5 * found.bulk_rise)
-    start = inlet if difference is None else inlet + 0.25 * difference
-    found = at(settle(start, lambda t: inlet + 0.5 * at(t).bulk_rise, "mean bulk temperature"))
-    case.refuse_phase_change(inlet, found.property_temperature, found.outlet)
-    _refuse_vacuum(case, found)
-    return found
-
-
-def _refuse_vacuum(case: Case, found: DuctAnswers) -> None:
-    """Refuse a friction that would use up the pressure there is; a liquid's pressure counts only where it is stated."""
-    drop, pressure = found.pressure_drop, case.pressure
-    known = case.has("pressure") or case.has("gauge_pressure") or case.is_gas(found.property_temperature)
-    if known and drop >= pressure and case.flow != "falling film":
-        raise CaseRefused(
-            f"friction would take {drop / 1e5:.3g} bar, but the pressure is {pressure / 1e5:.3g} bar absolute; "
-            "the duct is too long or the flow too fast for it"
-        )
-
-
-def temperatures(case: Case) -> tuple[float | None, float | None]:
-    """Inlet temperature and driving difference, as far as they are stated."""
-    inlet = case.get("inlet_temperature")
-    refuse_without_end(case)
-    if case.wall == "flux":
-        if inlet is None and not (case.fixed or case.has("property_temperature")):
-            case.need("inlet_temperature")
-        return inlet, None
-    wall, difference = case.get("wall_temperature"), case.get("temperature_difference")
-    far = far_temperature(case)
-    if far is not None:
-        inlet = case.need("inlet_temperature")
-        return inlet, _nonzero(far - inlet)
-    if wall is None and difference is None:
-        return inlet, 0.0  # no exchange: friction alone
-    if wall is not None and difference is not None:
-        if inlet is not None:
-            raise CaseRefused("wall temperature, inlet temperature and their difference are all stated; state two")
-        return wall - difference, _nonzero(difference)
-    if wall is not None:
-        inlet = case.need("inlet_temperature")
-        return inlet, _nonzero(wall - inlet)
-    return inlet, _nonzero(difference)
-
-
-def _nonzero(difference: float) -> float:
-    if difference == 0:
-        raise CaseRefused("wall and fluid have the same temperature; there is no driving difference to judge by")
-    return difference
+    def answers(self, **known: Any) -> DuctAnswers:
+        p, shape = known["properties"], known["shape"]
+        u = self.case.velocity(p.density)
+        return DuctAnswers(velocity=u, reynolds=p.density * u * shape.diameter / p.viscosity, **known)

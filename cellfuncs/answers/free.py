@@ -2,16 +2,22 @@
 
 import math
 from dataclasses import dataclass
+from typing import Any
 
+from cellfuncs.answers import choice
 from cellfuncs.answers import driving as driving_difference
-from cellfuncs.answers.layer import close_on_film, stream_and_difference
+from cellfuncs.answers.inputs import Inputs
 from cellfuncs.answers.loop import told
+from cellfuncs.answers.surface import STATED, choose, close, stream_and_difference
 from cellfuncs.cases.case import Case, Properties
-from cellfuncs.errors import CaseRefused
-from cellfuncs.groups import STANDARD_GRAVITY, rayleigh
-from cellfuncs.methods import free as methods
+from cellfuncs.errors import CaseRefused, OutOfRange
+from cellfuncs.groups import STANDARD_GRAVITY
+from cellfuncs.methods import Method
 
 TURBULENT_FROM = 1e9  # Ra of a surface in a still fluid, common practice
+CONDUCTION = "conduction alone"
+_CRITICAL = 1708.0  # Ra at which a level layer begins to turn over
+_STILL_UPRIGHT = 1e3  # Ra below which an upright layer hardly moves, common practice
 
 
 @dataclass(frozen=True)
@@ -32,6 +38,8 @@ class FreeAnswers:
     stream: float | None
     gravity: float
     area: float | None
+    chosen: str = ""
+    state: Inputs | None = None  # what methods may ask
 
     @property
     def turbulent(self) -> bool:
@@ -91,28 +99,50 @@ def solve_free(case: Case) -> FreeAnswers:
     stream, difference = stream_and_difference(case)
     size = _size(case, surface)
     gravity = case.get("gravity", STANDARD_GRAVITY) * math.cos(case.get("inclination", 0.0))
+    flux, memo = case.get("heat_flux"), {}
+    known, lengths = free_known(case, surface, size.length), free_lengths(case, surface, size.length)
 
-    def at(temperature: float | None, driving: float, allow: bool) -> FreeAnswers:
-        p = case.properties(temperature)
+    def state_of(driving: float | None) -> Inputs:
+        return Inputs(case, known, lengths, stream, driving, memo, flux=flux, gravity=gravity)
+
+    def answers_of(state: Inputs, method: Method | None, outside: str) -> FreeAnswers:
+        view = state.view_at("film") if method is None else state.view(method)
+        p = view.p
         if p.expansion <= 0:
             raise CaseRefused("free convection needs an expansion coefficient above zero; state it (gases: 1/T)")
-        nu = p.viscosity / p.density
-        ra = rayleigh(size.length, abs(driving), nu, p.diffusivity, p.expansion, gravity)
-        h = case.get("coefficient")
-        if h is not None:
-            nusselt, method, outside = h * size.length / p.conductivity, "stated", ""
+        name = STATED if method is None else method.name
+        ra = state.view_at("film" if method is None else method.property_temperature).get("rayleigh")
+        if method is None:
+            h = case.get("coefficient")
         else:
-            more = _more(case, surface, size.length, ra, p.prandtl)
-            nusselt, method, outside = methods.nusselt(surface, ra, p.prandtl, allow, **more)
-            h = nusselt * p.conductivity / size.length
-        flux = case.get("heat_flux")
+            h = choice.number(method, view) * p.conductivity / view.length
         return FreeAnswers(
-            case, size.length, temperature, p, ra, nusselt, h, method, outside, driving, flux, stream, gravity,
-            size.area,
+            case, size.length, view.temperature, p, ra, h * size.length / p.conductivity, h, name, outside,
+            state.difference, flux, stream, gravity, size.area, name, state,
         )  # fmt: skip
 
     form = "cylinder" if surface.endswith("cylinder") else "sphere" if surface == "sphere" else "plane"
-    return close_on_film(case, at, stream, difference, 0.5, form, case.get("diameter", 0.0) / 2.0)
+    return close(case, state_of, answers_of, stream, difference, form, case.get("diameter", 0.0) / 2.0)
+
+
+def free_known(case: Case, surface: str, length: float) -> dict[str, Any]:
+    """What methods of free convection may ask besides properties."""
+    known: dict[str, Any] = {"surface": surface, "wall": case.wall}
+    if surface == "inclined plate":
+        known["angle"] = math.degrees(case.need("inclination"))
+    elif surface == "vertical cylinder":
+        known["length_over_diameter"] = length / case.need("diameter")
+    elif surface == "channel":
+        known |= {"height_of_channel": case.need("length"), "heated": case.get("heated_walls", "both")}
+    return known
+
+
+def free_lengths(case: Case, surface: str, length: float) -> dict[str, float]:
+    """The lengths that these methods name."""
+    lengths = {"": length}
+    if surface.startswith("horizontal plate"):
+        lengths["short side of the face"] = min(case.need("length"), case.need("width"))
+    return lengths
 
 
 @dataclass(frozen=True)
@@ -143,16 +173,6 @@ def _size(case: Case, surface: str) -> _Size:
     return _Size(diameter, None if length is None else math.pi * diameter * length)
 
 
-def _more(case: Case, surface: str, length: float, ra: float, prandtl: float) -> dict[str, float]:
-    if surface == "inclined plate":
-        return {"angle from vertical": math.degrees(case.need("inclination"))}
-    if surface == "vertical cylinder":
-        return {"(D/L)Gr^1/4": case.need("diameter") / length * (ra / prandtl) ** 0.25}
-    if surface == "channel":
-        return {"Ra S/L": ra * length / case.need("length")}
-    return {}
-
-
 def solve_enclosure(case: Case) -> FreeAnswers:
     """A layer of still fluid between two walls; properties at the mean of the walls.
 
@@ -161,33 +181,65 @@ def solve_enclosure(case: Case) -> FreeAnswers:
     gap = case.need("gap")
     heated = case.get("heated_from", "from the side")
     width, length = case.get("width"), case.get("length")
-    aspect = case.need("length") / gap if heated == "from the side" else 1.0
+    known: dict[str, Any] = {"shape": "layer", "heated_from": heated}
+    if heated == "from the side":
+        known["aspect"] = case.need("length") / gap
+    elif heated == "tilted":
+        known |= {"tilt": 90.0 - math.degrees(case.need("inclination")), "aspect": case.need("length") / gap}
     area = None if width is None or length is None else width * length
-    gravity = case.get("gravity", STANDARD_GRAVITY)
-    flux = case.get("heat_flux")
-    known, apart = _walls(case)
-    stated = case.get("property_temperature")
+    gravity, flux, memo = case.get("gravity", STANDARD_GRAVITY), case.get("heat_flux"), {}
+    wall, difference = _walls(case)
 
-    def at(driving: float, allow: bool) -> FreeAnswers:
-        temperature = stated if stated is not None or known is None else known + 0.5 * driving
-        p = case.properties(temperature)
-        nu = p.viscosity / p.density
-        ra = rayleigh(gap, abs(driving), nu, p.diffusivity, max(p.expansion, 1e-12), gravity)
-        nusselt, method, outside = methods.enclosure(ra, p.prandtl, aspect, heated, allow)
-        h = nusselt * p.conductivity / gap
-        cold = None if known is None else min(known, known + driving)
+    def state_of(driving: float | None) -> Inputs:
+        return Inputs(case, known, {"": gap}, wall, driving, memo, flux=flux, gravity=gravity)
+
+    def answers_of(state: Inputs, method: Method | None, outside: str) -> FreeAnswers:
+        view = state.view_at("mean of the walls")
+        p, driving = view.p, state.difference
+        ra = view.get("rayleigh") or 0.0
+        nusselt = 1.0 if method is None else choice.number(method, view)
+        name = CONDUCTION if method is None else method.name
+        cold = None if wall is None else min(wall, wall + driving)
         return FreeAnswers(
-            case, gap, temperature, p, ra, nusselt, h, method, outside, abs(driving), flux, cold, gravity, area
-        )
+            case, gap, view.temperature, p, ra, nusselt, nusselt * p.conductivity / gap, name, outside, abs(driving),
+            flux, cold, gravity, area, name, state,
+        )  # fmt: skip
+
+    return close_enclosure(case, state_of, answers_of, wall, difference)
+
+
+def close_enclosure(
+    case: Case, state_of: Any, answers_of: Any, wall: float | None, difference: float | None
+) -> FreeAnswers:
+    """The answers of an enclosure at the difference of its walls, or at the one that a flux asks for."""
+
+    def solved(driving: float, allow: bool) -> FreeAnswers:
+        state = state_of(driving)
+        found = _enclosure_method(state, allow)
+        return answers_of(state, *((None, "") if found is None else (found.method, found.outside)))
 
     def coefficient(driving: float) -> float:
-        if known is None:
-            return at(driving, True).coefficient
-        return told(lambda _: at(driving, True).coefficient, known + 0.5 * driving, "mean of the walls")
+        if wall is None or case.fixed or case.has("property_temperature"):
+            return solved(driving, True).coefficient
+        return told(lambda _: solved(driving, True).coefficient, wall + 0.5 * driving, "mean of the walls")
 
-    if apart is None:
-        apart = driving_difference.for_flux(coefficient, flux)
-    return at(apart, case.allow)
+    if difference is None:
+        difference = driving_difference.for_flux(coefficient, case.get("heat_flux"))
+    return solved(difference, case.allow)
+
+
+def _enclosure_method(state: Inputs, allow: bool) -> choice.Candidate | None:
+    """The method of a layer; None where nothing stirs: heated from above, or Ra below where layers turn over."""
+    if state.choice("heated_from") == "from above":
+        return None
+    ra = state.view_at("mean of the walls").get("rayleigh") or 0.0
+    still = ra < (_STILL_UPRIGHT if state.choice("heated_from") == "from the side" else _CRITICAL)
+    try:
+        return choose(state, allow and not still)
+    except OutOfRange:
+        if still and choice.row(state.case, "method", choice.NUSSELT) is None:
+            return None
+        raise
 
 
 def _walls(case: Case) -> tuple[float | None, float | None]:

@@ -20,6 +20,7 @@ _AT_WALL = ("wall",)
 _AT_FILM = ("film", "mean of the walls")
 
 Known = Mapping[str, Any]
+Length = float | Callable[[Properties], float]
 
 
 class Inputs:
@@ -27,14 +28,15 @@ class Inputs:
 
     ``known`` holds inputs and choices that do not depend on properties, ``lengths`` the lengths that methods name
     (``""`` is the usual one), ``bulk`` the temperature of the stream, ``difference`` wall minus stream, ``memo``
-    properties by temperature, shared by the states of one solution.
+    properties by temperature, shared by the states of one solution. What is known may be a function of the state, a
+    length one of the properties; ``must`` names inputs that a method has to take.
     """
 
     def __init__(
         self,
         case: Case,
         known: Known,
-        lengths: Mapping[str, float],
+        lengths: Mapping[str, Length],
         bulk: float | None,
         difference: float | None,
         memo: dict[float | None, Properties],
@@ -46,7 +48,7 @@ class Inputs:
         self.case, self.known, self.lengths, self.memo = case, known, lengths, memo
         self.bulk, self.difference, self.flux, self.gravity = bulk, difference, flux, gravity
         self.friction_of = friction
-        self._views: dict[tuple[float | None, float], View] = {}
+        self._views: dict[tuple[float | None, str], View] = {}
 
     # -- temperatures and properties --------------------------------------------------------
 
@@ -104,7 +106,7 @@ class Inputs:
         """What is known of a condition on choices; None where nothing is."""
         found = self.known.get(key)
         if found is not None:
-            return found
+            return found(self) if callable(found) else found
         if key == "phase":
             return self.phase if self.phase in ("liquid", "gas") else None
         if key == "heating" and self.difference:
@@ -113,6 +115,8 @@ class Inputs:
 
     def applies(self, method: Method) -> bool:
         """Whether nothing known of the case contradicts what a method is for."""
+        if any(name not in method.inputs for name in self.known.get("must", ())):
+            return False
         for key, allowed in method.where.items():
             found = self.choice(key)
             if found is not None and found not in allowed:
@@ -126,19 +130,21 @@ class Inputs:
     def view_at(self, rule: str, length: str = "") -> "View":
         """The inputs at the temperature of a rule, on a length by its words."""
         temperature = self.temperature(rule)
-        length = self.lengths.get(length, self.lengths[""])
+        if length not in self.lengths:
+            length = ""
         found = self._views.get((temperature, length))
         if found is None:
-            found = self._views[temperature, length] = View(self, temperature, length)
+            found = self._views[temperature, length] = View(self, temperature, self.lengths[length])
         return found
 
 
 class View:
     """The inputs of a state at one property temperature and on one length."""
 
-    def __init__(self, state: Inputs, temperature: float | None, length: float):
-        self.state, self.temperature, self.length = state, temperature, length
+    def __init__(self, state: Inputs, temperature: float | None, length: "Length"):
+        self.state, self.temperature = state, temperature
         self.p = state.properties(None if state.case.fixed else temperature)
+        self.length = length(self.p) if callable(length) else length
         self._found: dict[str, Any] = {}
 
     @cached_property
@@ -155,6 +161,8 @@ class View:
         except KeyError:
             pass
         found = self.state.known.get(name)
+        if callable(found):
+            found = found(self.state)
         if found is None:
             formula = _FORMULAS.get(name)
             found = formula(self) if formula else self.state.choice(name) if name in _CHOICES else None

@@ -1,11 +1,10 @@
 """Coefficient and friction of a duct from the methods recommended for it, with what changing properties do to both."""
 
-from dataclasses import dataclass
 from functools import lru_cache
-from typing import Any
 
 from cellfuncs.answers import choice
 from cellfuncs.answers.inputs import Inputs, View
+from cellfuncs.answers.passage import STATED, Chosen, Passage, Values
 from cellfuncs.cases.case import Case, Properties
 from cellfuncs.cases.sections import Duct
 from cellfuncs.errors import OutOfRange
@@ -29,37 +28,16 @@ FRICTION_FACTORS = (
 )
 ANNULUS_FACTOR = "Petukhov-Roizen"
 _RATIOS = frozenset(("viscosity_ratio", "prandtl_ratio", "temperature_ratio"))
-STATED = "stated"
 
 
-@dataclass(frozen=True)
-class Chosen:
-    """The methods of a duct: of the coefficient and of friction, and what lies outside their ranges."""
-
-    nusselt: str
-    friction: str
-    outside: str = ""
-
-
-@dataclass(frozen=True)
-class Values:
-    """Nu on the hydraulic diameter, Darcy's f, and the factors of changing properties in them."""
-
-    nusselt: float
-    friction: float
-    nusselt_factor: float = 1.0
-    friction_factor: float = 1.0
-    words: str = ""
-
-
-class Internal:
-    """A duct case as methods see it; states of it are made by ``state``."""
+class Internal(Passage):
+    """A duct case as methods see it."""
 
     def __init__(self, case: Case, shape: Duct, length: float):
-        self.case, self.shape = case, shape
+        super().__init__(case, {}, {"": shape.diameter}, length)
+        self.section = shape
         slender = length / shape.diameter
-        self.at_end = case.wall == "flux"
-        self.known: dict[str, Any] = {
+        self.known |= {
             "section": "tube" if shape.section == "other" else shape.section,
             "wall": case.wall,
             "heated": shape.heated,
@@ -75,58 +53,28 @@ class Internal:
         elif case.has("rib_pitch"):
             case.need("roughness")
             self.known |= {"shape": "ribbed", "rib_pitch": case.get("rib_pitch") / case.get("roughness")}
-        self.lengths = {"": shape.diameter}
-        self.memo: dict[Any, Properties] = {}
 
-    def state(self, bulk: float | None, difference: float | None) -> Inputs:
-        """The case at a mean bulk temperature, with the mean difference of the wall to it."""
-        return Inputs(self.case, self.known, self.lengths, bulk, difference, self.memo, friction=self._plain_friction)
-
-    def at_bulk(self, state: Inputs) -> View:
-        """The inputs at the mean bulk temperature, on the hydraulic diameter."""
-        return state.view_at("mean bulk")
+    def shape(self, p: Properties) -> Duct:
+        return self.section
 
     # -- which methods ----------------------------------------------------------------------
 
-    def choose(self, state: Inputs, allow: bool) -> Chosen:
-        """The methods for a state: those named by the case, else those recommended."""
-        nusselt, outside = self._choose_nusselt(state, allow)
-        # a friction factor beyond its range is refused only where it is not just a companion of a stated coefficient
-        friction, other = self._choose_friction(state, allow or nusselt == STATED)
-        return Chosen(nusselt, friction, "; ".join(filter(None, (outside, other))))
-
-    def _choose_nusselt(self, state: Inputs, allow: bool) -> tuple[str, str]:
-        if self.case.has("coefficient"):
-            return STATED, ""
-        name = self.case.get("method")
-        if name is not None and choice.find(name).gives in choice.NUSSELT:
-            found = choice.named(state, name, choice.NUSSELT, "coefficient", allow)
-            return found.method.name, found.outside
+    def choose_nusselt(self, state: Inputs, allow: bool) -> tuple[str, str]:
         try:
-            found = choice.recommended(state, choice.NUSSELT, "coefficient", False, self.at_end)
+            return super().choose_nusselt(state, False)
         except OutOfRange:
-            if self._between(state):
-                ends = [choice.recommended(end, choice.NUSSELT, "coefficient", allow, self.at_end)
+            if self._between(state) and choice.row(self.case, "method", self.wanted) is None:
+                ends = [choice.recommended(end, self.wanted, "coefficient", allow, self.at_end)
                         for end in self._ends(state)]  # fmt: skip
                 return BLEND, "; ".join(dict.fromkeys(e.outside for e in ends if e.outside))
             if not allow:
                 raise
-            found = choice.recommended(state, choice.NUSSELT, "coefficient", True, self.at_end)
-        return found.method.name, found.outside
+            return super().choose_nusselt(state, True)
 
-    def _choose_friction(self, state: Inputs, allow: bool) -> tuple[str, str]:
-        if self.case.has("friction_factor"):
-            return STATED, ""
-        name = self.case.get("friction_method")
-        if name is None and self.case.has("method") and choice.find(self.case.get("method")).gives in choice.FRICTION:
-            name = self.case.get("method")
-        if name is not None:
-            found = choice.named(state, name, choice.FRICTION, "friction factor", allow)
-            return found.method.name, found.outside
-        if self._between(state):
+    def choose_friction(self, state: Inputs, allow: bool) -> tuple[str, str]:
+        if self._between(state) and not self.case.has("friction_factor") and self.friction_row() is None:
             return BLEND, ""
-        found = choice.recommended(state, choice.FRICTION, "friction factor", allow)
-        return found.method.name, found.outside
+        return super().choose_friction(state, allow)
 
     def _between(self, state: Inputs) -> bool:
         reynolds = self.at_bulk(state).get("reynolds")
@@ -139,16 +87,15 @@ class Internal:
     # -- their numbers ----------------------------------------------------------------------
 
     def values(self, state: Inputs, chosen: Chosen) -> Values:
-        """Nu and f of a state with methods chosen before."""
-        p = self.at_bulk(state).p
+        more, words = 1.0, ""
         if chosen.nusselt == STATED:
-            nusselt, more, words = self.case.get("coefficient") * self.shape.diameter / p.conductivity, 1.0, ""
+            h = self.case.get("coefficient")
         else:
             nusselt, view = self._nusselt(state, chosen.nusselt)
             more, words = self._factor(state, chosen.nusselt, NUSSELT_FACTORS)
-            nusselt *= more * view.p.conductivity / p.conductivity  # on the conductivity of the mean bulk temperature
+            h = more * nusselt * view.p.conductivity / view.length
         friction, other = self._friction(state, chosen.friction)
-        return Values(nusselt, friction, more, other, words)
+        return Values(h, friction, more, other, words)
 
     def _nusselt(self, state: Inputs, name: str) -> tuple[float, View]:
         if name == BLEND:
@@ -203,12 +150,12 @@ class Internal:
         )
         return (1.0 - share) * low + share * high
 
-    def _plain_friction(self, view: View) -> float | None:
+    def plain_friction(self, view: View) -> float | None:
         """Darcy's f of constant properties, as methods of Nu take it."""
         if self.case.has("friction_factor"):
             return self.case.get("friction_factor")
         try:
-            name, _ = self._choose_friction(view.state, True)
+            name, _ = self.choose_friction(view.state, True)
             return self._friction_by(name, view)
         except OutOfRange:
             return None

@@ -5,15 +5,16 @@ The length is that of the plate, the diameter of cylinder and sphere, the radius
 
 import math
 from collections.abc import Callable
-from dataclasses import dataclass, replace
+from dataclasses import dataclass
 from typing import Any
 
-from cellfuncs.answers import driving as driving_difference
-from cellfuncs.answers.loop import told
-from cellfuncs.answers.path import far_temperature, refuse_without_end, resistance
+from cellfuncs.answers import choice
+from cellfuncs.answers.inputs import Inputs
+from cellfuncs.answers.surface import STATED, close, stream_and_difference
 from cellfuncs.cases.case import Case, Properties
 from cellfuncs.errors import CaseRefused
-from cellfuncs.methods import cross, recovery
+from cellfuncs.groups import STANDARD_GRAVITY
+from cellfuncs.methods import Method, recovery
 from cellfuncs.methods import plate as methods
 
 
@@ -39,6 +40,8 @@ class LayerAnswers:
     flux: float | None
     stream: float | None
     group_length: float
+    chosen: str = ""
+    state: Inputs | None = None  # what methods may ask
 
     @property
     def laminar(self) -> bool:
@@ -96,7 +99,7 @@ class LayerAnswers:
 
 
 def solve_layer(
-    case: Case, finish: Callable[[LayerAnswers, bool], LayerAnswers] = lambda found, allow: found
+    case: Case, finish: Callable[[LayerAnswers], LayerAnswers] = lambda found: found
 ) -> LayerAnswers:
     """The answers of an external flow; closes the loops on film temperature and, where it follows, the difference.
 
@@ -105,73 +108,32 @@ def solve_layer(
     length, group_length = _lengths(case)
     transition = case.get("transition", methods.TRANSITION) if case.flow == "plate" else _BODY_TRANSITION
     stream, difference = stream_and_difference(case)
-    film = 0.0 if case.flow == "sphere" else 0.5  # Whitaker's sphere takes the stream's properties
-    form = case.flow if case.flow in ("cylinder", "sphere") else "plane"
+    known, memo = _known(case, length, group_length, transition), {}
+    flux, gravity = case.get("heat_flux"), case.get("gravity", STANDARD_GRAVITY)
 
-    def at(temperature: float | None, driving: float, allow: bool) -> LayerAnswers:
-        p = case.properties(temperature)
+    def state_of(driving: float | None) -> Inputs:
+        return Inputs(case, known, {"": group_length}, stream, driving, memo, flux=flux, gravity=gravity)
+
+    def answers_of(state: Inputs, method: Method | None, outside: str) -> LayerAnswers:
+        view = state.view_at("film") if method is None else state.view(method)
+        p = view.p
         u = case.velocity(p.density)
-        re = p.density * u * group_length / p.viscosity
-        h = case.get("coefficient")
-        if h is not None:
-            nusselt, method, outside = h * group_length / p.conductivity, "stated", ""
-        elif case.flow == "plate":
-            nusselt, method, outside = methods.nusselt(re, p.prandtl, case.wall, transition, allow)
+        if method is None:
+            h = case.get("coefficient")
         else:
-            shape = _shape(case, p, stream, driving)
-            nusselt, method, outside = cross.nusselt(case.flow, re, p.prandtl, allow, **shape)
-        h = nusselt * p.conductivity / group_length
-        flux = case.get("heat_flux")
-        found = LayerAnswers(
-            case, length, temperature, p, u, re, transition, nusselt, h, method, outside, driving, flux, stream,
-            group_length,
-        )  # fmt: skip
-        return finish(found, allow)
+            h = choice.number(method, view) * p.conductivity / view.length
+        return finish(LayerAnswers(
+            case, length, view.temperature, p, u, p.density * u * group_length / p.viscosity, transition,
+            h * group_length / p.conductivity, h, STATED if method is None else method.name, outside, state.difference,
+            flux, stream, group_length, STATED if method is None else method.name, state,
+        ))  # fmt: skip
 
-    return close_on_film(case, at, stream, difference, film, form, group_length / 2.0)
-
-
-def close_on_film(
-    case: Case,
-    at: Callable[[float | None, float, bool], Any],
-    stream: float | None,
-    difference: float | None,
-    film: float,
-    form: str,
-    radius: float,
-) -> Any:
-    """The answers at the film temperature, or at the stated one; the difference from a flux or a path where it is open.
-
-    ``at`` gives the answers at a temperature of the properties and a difference, beyond the range of methods where
-    it may; ``film`` is the part of the difference between the stream and the properties' temperature; ``form`` and
-    ``radius`` are those of the surface.
-    """
-    stated = case.get("property_temperature")
-    follows = stated is None and stream is not None
-
-    def solved(driving: float, allow: bool) -> Any:
-        return at(stream + film * driving if follows and not case.fixed else stated, driving, allow)
-
-    if difference is None:
-
-        def coefficient(driving: float) -> float:
-            if not follows or case.fixed:
-                return solved(driving, True).coefficient
-            return told(lambda _: solved(driving, True).coefficient, stream + film * driving, "film temperature")
-
-        far = far_temperature(case)
-        if far is None:
-            difference = driving_difference.for_flux(coefficient, case.get("heat_flux"))
-        else:
-            difference = driving_difference.for_path(coefficient, far - stream, resistance(case, form, radius))
-    found = solved(difference, case.allow)
-    if follows and case.fixed:
-        return replace(found, property_temperature=stream + film * difference)
-    if follows:
-        case.refuse_phase_change(stream, found.property_temperature)
-    return found
+    case.velocity(1.0)  # asks for what is missing first
+    form = case.flow if case.flow in ("cylinder", "sphere") else "plane"
+    return close(case, state_of, answers_of, stream, difference, form, group_length / 2.0)
 
 
+_TRIPPED = 1e4  # a transition stated below this Re: the layer is taken turbulent from its edge
 _BODY_TRANSITION = 2e5  # Re from which the layer on a cylinder or sphere is turbulent, common practice
 
 
@@ -183,40 +145,22 @@ def _lengths(case: Case) -> tuple[float, float]:
     return (case.need("radius"), diameter) if case.flow == "jet" else (diameter, diameter)
 
 
-def _shape(case: Case, p: Properties, stream: float | None, driving: float) -> dict[str, float]:
-    """What the methods of cross-flow and jets ask for besides Re and Pr."""
-    if case.flow == "jet":
-        diameter = case.need("diameter")
-        return {"height": case.need("distance") / diameter, "radius": case.need("radius") / diameter}
-    if case.flow == "sphere" and stream is not None and not case.fixed and driving:
-        return {"viscosity_ratio": p.viscosity / case.properties(stream + driving).viscosity}
-    return {}
+def _known(case: Case, length: float, group_length: float, transition: float) -> dict[str, Any]:
+    """What methods of external flows may ask besides properties."""
+    known: dict[str, Any] = {"wall": case.wall}
+    if case.flow == "plate":
+        known |= {"regime": lambda state: _regime(state, transition), "transition": transition}
+        if case.has("unheated_length"):
+            known |= {"unheated": case.get("unheated_length") / length, "must": ("unheated",)}
+    elif case.flow == "cylinder":
+        known["shape"] = case.get("body_shape", "circle")
+    elif case.flow == "jet":
+        known |= {"jet": "round", "height": case.need("distance") / group_length, "radius": length / group_length}
+    return known
 
 
-def stream_and_difference(case: Case) -> tuple[float | None, float | None]:
-    """Temperature of the stream or still fluid, and wall minus it, as far as they are stated."""
-    stream = case.get("stream_temperature")
-    refuse_without_end(case)
-    if case.wall == "flux":
-        if case.get("heat_flux") == 0:
-            raise CaseRefused(f'"{case.stated["heat_flux"].label}" is zero; nothing is exchanged')
-        if stream is None and not (case.fixed or case.has("property_temperature")):
-            case.need("stream_temperature")
-        return stream, None
-    far = far_temperature(case)
-    if far is not None:
-        stream = case.need("stream_temperature")
-        if far == stream:
-            raise CaseRefused("both ends of the heat path have the same temperature; nothing is exchanged")
-        return stream, None
-    wall, difference = case.get("wall_temperature"), case.get("temperature_difference")
-    if wall is not None and difference is not None and stream is not None:
-        raise CaseRefused("wall temperature, stream temperature and their difference are all stated; state two")
-    if wall is not None and difference is not None:
-        stream = wall - difference
-    elif wall is not None:
-        stream = case.need("stream_temperature")
-        difference = wall - stream
-    if difference == 0:
-        raise CaseRefused("wall and stream have the same temperature; there is no driving difference to judge by")
-    return stream, difference
+def _regime(state: Inputs, transition: float) -> str:
+    """laminar, mixed (turbulent behind the transition) or turbulent from the edge (a transition stated below 1e4)."""
+    if state.view_at("film").get("reynolds") <= transition:
+        return "laminar"
+    return "turbulent" if transition < _TRIPPED else "mixed"

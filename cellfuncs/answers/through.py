@@ -5,14 +5,17 @@ Everything is as in a duct, with a the exchanging surface per volume of the stre
 
 import math
 from dataclasses import dataclass
+from typing import Any
 
-from cellfuncs.answers.duct import DuctAnswers, close_on_bulk, temperatures
-from cellfuncs.answers.path import far_temperature, overall
+from cellfuncs.answers import choice
+from cellfuncs.answers.duct import DuctAnswers
+from cellfuncs.answers.inputs import Inputs
+from cellfuncs.answers.passage import STATED, Chosen, Passage, Values, solve_passage
 from cellfuncs.cases.case import Case, Properties
 from cellfuncs.cases.sections import Duct
 from cellfuncs.errors import CaseRefused, OutOfRange
 from cellfuncs.groups import STANDARD_GRAVITY
-from cellfuncs.methods import METHODS, packed
+from cellfuncs.methods import METHODS
 
 
 @dataclass(frozen=True)
@@ -31,83 +34,133 @@ class ThroughAnswers(DuctAnswers):
 
 
 def solve_through(case: Case) -> ThroughAnswers:
-    """The answers of a bank, bed or film; closes the loop on the mean bulk temperature."""
-    inlet, difference = temperatures(case)
-    build = {"bank": _bank, "bed": _bed, "falling film": _film}[case.flow]
-
-    def at(temperature: float | None) -> ThroughAnswers:
-        return build(case, temperature, case.properties(temperature), inlet, difference)
-
-    return close_on_bulk(case, at, inlet, difference)
+    """The answers of a bank, bed or film; closes the loops on mean bulk and wall temperature."""
+    return solve_passage({"bank": Bank, "bed": Bed, "falling film": Film}[case.flow](case))
 
 
-def _answers(
-    case: Case, temperature: float | None, p: Properties, inlet: float | None, difference: float | None, *,
-    size: float, per_volume: float, area: float | None, length: float, velocity: float, nusselt: float, method: str,
-    outside: str, drop: float,
-) -> ThroughAnswers:  # fmt: skip
-    h, flux = case.get("coefficient"), case.get("heat_flux")
-    if h is not None:
-        nusselt, method, outside = h * size / p.conductivity, "stated", ""
-    else:
-        h = nusselt * p.conductivity / size
-    shape = Duct(size, area, case.flow, "both", per_volume * size / 4.0)
-    reynolds = p.density * velocity * size / p.viscosity
-    friction = 2.0 * drop * size / (length * p.density * velocity**2)
-    driving = difference if flux is None else flux / h
-    film = h
-    if far_temperature(case) is not None:
-        h, method = overall(case, shape, h), f"overall, film {h:.4g} by {method}"
-    return ThroughAnswers(
-        case, shape, length, temperature, p, velocity, reynolds, nusselt, friction, h, method, outside, driving, flux,
-        inlet, film, drop,
-    )  # fmt: skip
+class _Through(Passage):
+    """What the three have in common: a size, a surface per volume, a pressure drop."""
+
+    friction_wanted = choice.DROP
+    what_friction = "pressure drop"
+
+    def size(self, p: Properties) -> float:
+        return self.lengths[""]
+
+    def per_volume(self, p: Properties) -> float:
+        raise NotImplementedError
+
+    def area(self, p: Properties) -> float | None:
+        return self.case.get("flow_area")
+
+    def velocity(self, p: Properties) -> float:
+        return self.case.need("velocity")
+
+    def drop(self, state: Inputs, chosen: Chosen) -> float:
+        """Frictional pressure drop [Pa]."""
+        method = METHODS[chosen.friction]
+        found = choice.number(method, state.view(method))
+        return found * self.length if method.gives == "pressure gradient" else found
+
+    def shape(self, p: Properties) -> Duct:
+        return Duct(self.size(p), self.area(p), self.case.flow, "both", self.per_volume(p) * self.size(p) / 4.0)
+
+    def values(self, state: Inputs, chosen: Chosen) -> Values:
+        p = self.at_bulk(state).p
+        if chosen.nusselt == STATED:
+            h = self.case.get("coefficient")
+        else:
+            method = METHODS[chosen.nusselt]
+            view = state.view(method)
+            h = choice.number(method, view) * view.p.conductivity / view.length
+        u = self.velocity(p)
+        if chosen.friction == STATED:
+            friction = self.case.get("friction_factor")
+        else:
+            friction = 2.0 * self.drop(state, chosen) * self.size(p) / (self.length * p.density * u**2)
+        return Values(h, friction)
+
+    def answers(self, **known: Any) -> ThroughAnswers:
+        p, shape = known["properties"], known["shape"]
+        u = self.velocity(p)
+        drop = known["friction"] * self.length * p.density * u**2 / (2.0 * shape.diameter)
+        reynolds = p.density * u * shape.diameter / p.viscosity
+        return ThroughAnswers(velocity=u, reynolds=reynolds, drop=drop, **known)
 
 
-def _bank(case: Case, temperature: float | None, p: Properties, *ends: float | None) -> ThroughAnswers:
-    diameter, rows = case.need("diameter"), case.need("rows")
-    across, along = case.need("pitch_across") / diameter, case.need("pitch_along") / diameter
-    arrangement = case.get("arrangement", "staggered")
-    if across <= 1.0 or along <= 0.5:
-        raise CaseRefused("the tubes of the bank touch; the pitches are larger than the diameter")
-    u = case.need("velocity")
-    re = p.density * u * diameter / p.viscosity
-    outside = METHODS["Zukauskas bank"].check(case.allow, Re=re, Pr=p.prandtl)
-    nusselt = packed.bank(re, p.prandtl, arrangement, across, along, rows)
-    drop = packed.bank_drop(re, p.density, u, arrangement, across, along, rows)
-    length = rows * along * diameter
-    surface = math.pi / ((across - 1.0) * along * diameter)  # per volume swept at the velocity of the narrowest section
-    return _answers(
-        case, temperature, p, *ends, size=diameter, per_volume=surface, area=case.get("flow_area"), length=length,
-        velocity=u, nusselt=nusselt, method="Zukauskas bank", outside=outside, drop=drop,
-    )  # fmt: skip
+class Bank(_Through):
+    """A bank of tubes across the stream; the velocity is that of the narrowest section."""
+
+    def __init__(self, case: Case):
+        diameter, rows = case.need("diameter"), case.need("rows")
+        self.across, self.along = case.need("pitch_across") / diameter, case.need("pitch_along") / diameter
+        if self.across <= 1.0 or self.along <= 0.5:
+            raise CaseRefused("the tubes of the bank touch; the pitches are larger than the diameter")
+        known = {
+            "arrangement": case.get("arrangement", "staggered"),
+            "across": self.across,
+            "along": self.along,
+            "pitch_ratio": self.across / self.along,
+            "rows": rows,
+            "wall": case.wall,
+        }
+        super().__init__(case, known, {"": diameter}, rows * self.along * diameter)
+
+    def per_volume(self, p: Properties) -> float:
+        # per volume swept at the velocity of the narrowest section
+        return math.pi / ((self.across - 1.0) * self.along * self.size(p))
 
 
-def _bed(case: Case, temperature: float | None, p: Properties, *ends: float | None) -> ThroughAnswers:
-    diameter, voidage, length = case.need("particle_diameter"), case.need("voidage"), case.need("length")
-    if voidage >= 1.0:
-        raise CaseRefused(f'"{case.stated["voidage"].label}" is the free part of the volume, below 1')
-    u = case.need("velocity")
-    re = p.density * u * diameter / p.viscosity
-    outside = METHODS["Wakao bed"].check(case.allow, Re=re) or METHODS["Ergun"].check(case.allow, voidage=voidage)
-    drop = length * packed.bed_gradient(u, diameter, voidage, p.density, p.viscosity)
-    return _answers(
-        case, temperature, p, *ends, size=diameter, per_volume=6.0 * (1.0 - voidage) / diameter,
-        area=case.get("flow_area"), length=length, velocity=u, nusselt=packed.bed(re, p.prandtl), method="Wakao bed",
-        outside=outside, drop=drop,
-    )  # fmt: skip
+class Bed(_Through):
+    """A bed of particles; the velocity is that in the empty vessel."""
+
+    def __init__(self, case: Case):
+        diameter, voidage = case.need("particle_diameter"), case.need("voidage")
+        if voidage >= 1.0:
+            raise CaseRefused(f'"{case.stated["voidage"].label}" is the free part of the volume, below 1')
+        known = {"voidage": voidage, "diameter": diameter, "wall": case.wall}
+        super().__init__(case, known, {"": diameter}, case.need("length"))
+
+    def per_volume(self, p: Properties) -> float:
+        return 6.0 * (1.0 - self.known["voidage"]) / self.size(p)
 
 
-def _film(case: Case, temperature: float | None, p: Properties, *ends: float | None) -> ThroughAnswers:
-    flow, length = case.need("film_flow"), case.need("length")
-    gravity = case.get("gravity", STANDARD_GRAVITY) * math.cos(case.get("inclination", 0.0))
-    if gravity <= 0:
-        raise CaseRefused("a falling film needs a wall that is inclined less than 90 deg from the vertical")
-    thickness = packed.film_thickness(flow, p.density, p.viscosity, gravity)
-    outside = packed.film_outside(flow, p.viscosity, case.allow)
-    width = case.get("width")
-    return _answers(
-        case, temperature, p, *ends, size=thickness, per_volume=1.0 / thickness,
-        area=None if width is None else width * thickness, length=length, velocity=flow / (p.density * thickness),
-        nusselt=packed.film(case.wall), method="laminar film", outside=outside, drop=p.density * gravity * length,
-    )  # fmt: skip
+class Film(_Through):
+    """A film that falls along a wall; its size is its thickness, its weight carries its friction."""
+
+    def __init__(self, case: Case):
+        self.flow = case.need("film_flow")
+        self.gravity = case.get("gravity", STANDARD_GRAVITY) * math.cos(case.get("inclination", 0.0))
+        if self.gravity <= 0:
+            raise CaseRefused("a falling film needs a wall that is inclined less than 90 deg from the vertical")
+        known = {"film_flow": self.flow, "gravity": self.gravity, "wall": case.wall, "film": "heated"}
+        lengths = {
+            "": self.size,
+            "thickness of the film": self.size,
+            "(ν²/g)^1/3": lambda p: ((p.viscosity / p.density) ** 2 / self.gravity) ** (1.0 / 3.0),
+        }
+        super().__init__(case, known, lengths, case.need("length"))
+
+    def choose_friction(self, state: Inputs, allow: bool) -> tuple[str, str]:
+        """The method of the film's thickness."""
+        found = choice.recommended(state, ("length",), "thickness", True)
+        return found.method.name, found.outside if allow else ""
+
+    def size(self, p: Properties) -> float:
+        laminar = 4.0 * self.flow / p.viscosity <= METHODS["Nusselt film thickness"].ranges[0].high
+        method = METHODS["Nusselt film thickness" if laminar else "Brauer film thickness"]
+        return method.function(self.flow, p.density, p.viscosity, self.gravity)
+
+    def per_volume(self, p: Properties) -> float:
+        return 1.0 / self.size(p)
+
+    def area(self, p: Properties) -> float | None:
+        width = self.case.get("width")
+        return None if width is None else width * self.size(p)
+
+    def velocity(self, p: Properties) -> float:
+        return self.flow / (p.density * self.size(p))
+
+    def drop(self, state: Inputs, chosen: Chosen) -> float:
+        """The weight of the film on its area [Pa]."""
+        return self.at_bulk(state).p.density * self.gravity * self.length

@@ -77,4 +77,7 @@ def test_a_search_gives_back_the_stated_value(cf, kind):
     aim = cf("CASE", block, what)
     stated = next(cf("SI", row[1], row[2]) for row in block if row[0] == label)
     found = cf("VALUE_FOR", block, label, what, aim)
+    if kind == "falling film":  # thin and smooth or thick and wavy: two flows have the same coefficient
+        assert "more than one" in found and f"{stated:g}" in found
+        return
     assert found == pytest.approx(stated, rel=1e-6)
