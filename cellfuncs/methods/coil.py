@@ -86,7 +86,7 @@ def schmidt_laminar(reynolds: float, prandtl: float, curvature: float) -> float:
     "Schmidt coil, turbulent",
     gives="mean Nu",
     ranges=(Range("Re", 5000.0, 1.5e5), Range("Pr", 0.7, 100.0), CURVATURE),
-    scatter=0.15,
+    scatter=0.25,
     property_temperature="mean bulk",
     source="schmidt-1967",
     flows=("duct",),
@@ -94,7 +94,10 @@ def schmidt_laminar(reynolds: float, prandtl: float, curvature: float) -> float:
     length=LENGTH,
 )
 def schmidt_turbulent(reynolds: float, prandtl: float, curvature: float) -> float:
-    """Nu of turbulent flow in a coil: a power of Re that falls with d/Dc up to Re 22000, a factor beyond."""
+    """Nu of turbulent flow in a coil: a power of Re that falls with d/Dc up to Re 22000, a factor beyond.
+
+    It lies up to 30 % below Gnielinski's at Pr 10, as its straight tube's 0.023 Re^0.8 Pr^1/3 does.
+    """
     power = 0.8 - 0.22 * curvature**0.1
     early = 0.023 * (1.0 + 14.8 * (1.0 + curvature) * curvature**THIRD) * reynolds**power
     late = 0.023 * (1.0 + 3.6 * (1.0 - curvature) * curvature**0.8) * reynolds**0.8

@@ -159,4 +159,4 @@ def test_stated_jump_of_schmidt(curvature):
 @given(st.floats(2.2e4, 1.5e5), st.floats(0.7, 10.0), st.floats(0.01, 0.1))
 def test_turbulent_coils_agree_within_their_scatter(reynolds, prandtl, curvature):
     one = coil.gnielinski_coil(reynolds, prandtl, curvature)
-    assert coil.schmidt_turbulent(reynolds, prandtl, curvature) == pytest.approx(one, rel=0.3)
+    assert coil.schmidt_turbulent(reynolds, prandtl, curvature) == pytest.approx(one, rel=0.33)
