@@ -7,7 +7,7 @@ force = c·area·ρU²/2. Re on the diameter or the plate's length, the distance
 import math
 from typing import Any
 
-from cellfuncs.methods.algebra import log, log10, sqrt
+from cellfuncs.methods.algebra import log, log10, smaller, sqrt
 from cellfuncs.methods.base import Range, method
 from cellfuncs.methods.plate import TRANSITION
 
@@ -141,7 +141,8 @@ def prandtl_schlichting(reynolds: float) -> float:
 )  # fmt: skip
 def with_transition(reynolds: float, transition: float = TRANSITION) -> float:
     """Mean friction coefficient, laminar to the transition: 0.455/(log10 Re)^2.58 − A/Re, A = 1700 at 5e5."""
-    given_up = transition * (prandtl_schlichting(transition) - blasius(transition))
+    reached = smaller(transition, reynolds)
+    given_up = reached * (prandtl_schlichting(reached) - blasius(reached))
     return prandtl_schlichting(reynolds) - given_up / reynolds
 
 

@@ -7,7 +7,7 @@ end), mixed (transition on the plate) or turbulent (tripped at the leading edge)
 
 from typing import Any
 
-from cellfuncs.methods.algebra import larger, log10, sqrt, where
+from cellfuncs.methods.algebra import larger, log10, smaller, sqrt, where
 from cellfuncs.methods.base import METHODS, Range, method
 
 TRANSITION = 5e5
@@ -175,7 +175,8 @@ def turbulent(reynolds: float, prandtl: float) -> float:
 )  # fmt: skip
 def mixed(reynolds: float, prandtl: float, transition: float = TRANSITION) -> float:
     """Mean Nu of a layer laminar to the transition and turbulent behind it, (0.037 Re^4/5 − A) Pr^1/3."""
-    a = 0.037 * transition**0.8 - 0.664 * transition**0.5
+    reached = smaller(transition, reynolds)  # a plate that ends before the transition is laminar
+    a = 0.037 * reached**0.8 - 0.664 * sqrt(reached)
     return (0.037 * reynolds**0.8 - a) * prandtl ** (1.0 / 3.0)
 
 
