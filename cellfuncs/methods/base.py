@@ -184,6 +184,18 @@ class Method:
                 raise
         raise NumberRefused(f"{self.name} has no finite value there")
 
+    def _followed(self, symbol: str, function: Callable[..., Any], taken: list[Any]) -> Any:
+        """A variable that follows from inputs; absurd inputs may give none."""
+        try:
+            if all(isinstance(value, (float, int)) for value in taken):
+                return function(*taken)
+            import numpy as np
+
+            with np.errstate(all="ignore"):
+                return function(*taken)
+        except (ZeroDivisionError, OverflowError):
+            raise NumberRefused(f"{self.name} has no finite {symbol} there") from None
+
     def _check_range(self, known: Mapping[str, Any], allow: bool) -> None:
         by_symbol = {inputs()[name].symbol: value for name, value in known.items()}
         worst = {}
@@ -192,7 +204,7 @@ class Method:
             if value is None and r.variable in _FOLLOWS:
                 names, function = _FOLLOWS[r.variable]
                 if all(name in known for name in names):
-                    value = function(*(known[name] for name in names))
+                    value = self._followed(r.variable, function, [known[name] for name in names])
             if value is None:
                 continue
             if not isinstance(value, (float, int)):

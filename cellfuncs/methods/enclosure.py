@@ -257,7 +257,7 @@ def steep_layer(upright: Any, tilt: Any) -> Any:
 )
 def layer_heated_above(upright: Any, tilt: Any) -> Any:
     """Mean Nu of a layer heated from above, tilt 90 to 180, from that of the same layer upright."""
-    return 1.0 + (upright - 1.0) * sin(tilt * (math.pi / 180.0))
+    return 1.0 + (upright - 1.0) * larger(sin(tilt * (math.pi / 180.0)), 0.0)
 
 
 # -- rings and shells ------------------------------------------------------------------------------------------------

@@ -9,7 +9,7 @@ from collections.abc import Callable
 from typing import Any
 
 from cellfuncs.errors import OutOfRange
-from cellfuncs.methods.algebra import expm1, holds, larger, log, log1p, plain, smaller, sqrt, tanh, where
+from cellfuncs.methods.algebra import expm1, holds, larger, log, log1p, smaller, sqrt, tanh, where
 from cellfuncs.methods.base import Range, method
 
 _CAPACITY = (Range("Cmin/Cmax", 0.0, 1.0),)
@@ -17,6 +17,7 @@ _KAYS = "kays-london-1984"
 _BOWMAN = "bowman-1940"
 _MOST_UNITS = 1e3
 _STEP, _STEPS = 1.1, 25  # up to eleven times the surface of counter-flow
+_ROUNDS = 40
 _EQUAL = 1e-9  # how close to 1 a quotient counts as 1
 
 
@@ -82,10 +83,10 @@ def cross_flow(ntu: Any, capacity_ratio: Any) -> Any:
     most = float(getattr(lean, "max", lambda: lean)())
     if most > _MOST_UNITS:
         raise OutOfRange(f"the series of cross-flow is summed for C·NTU up to {_MOST_UNITS:g}, here {most:.3g}")
-    total = 0.0
-    for n in range(1, int(most + 12.0 * most**0.5) + 30):
-        total = total + gammainc(n, ntu) * gammainc(n, lean)
-    return plain(total / lean)
+    terms = range(1, int(most + 12.0 * most**0.5) + 30)
+    if isinstance(lean, (float, int)):
+        return float((gammainc(terms, ntu) * gammainc(terms, lean)).sum() / lean)
+    return sum(gammainc(n, ntu) * gammainc(n, lean) for n in terms) / lean
 
 
 @_exact("cross-flow, both unmixed, short", "rohsenow-1998-exchangers", scatter=0.04)
@@ -170,16 +171,25 @@ def correction(effectiveness: Callable[[Any, Any], Any], part: Any, quotient: An
     wanted, capacity = where(quotient <= 1.0, part, part * quotient), where(quotient <= 1.0, quotient, 1.0 / quotient)
     best = _units_counter(wanted, capacity)
     low = high = best * (1.0 - 1e-12)
+    missing = lacking = effectiveness(high, capacity) - wanted
     for _ in range(_STEPS):  # the first step in which the wanted effectiveness is reached
-        short = effectiveness(high, capacity) < wanted
-        low, high = where(short, high, low), where(short, _STEP * high, high)
-    if not holds(effectiveness(high, capacity) >= wanted):
+        short = missing < 0.0
+        if holds(missing >= 0.0):
+            break
+        low, lacking, high = where(short, high, low), where(short, missing, lacking), where(short, _STEP * high, high)
+        missing = effectiveness(high, capacity) - wanted
+    if not holds(missing >= 0.0):
         raise OutOfRange("no surface reaches this P and R in such an arrangement with F above 0.1; take counter-flow")
-    for _ in range(50):
-        middle = 0.5 * (low + high)
-        short = effectiveness(middle, capacity) < wanted
-        low, high = where(short, middle, low), where(short, high, middle)
-    return best / (0.5 * (low + high))
+    for _ in range(_ROUNDS):  # false position; an end that stays is given half its weight (Illinois)
+        apart = missing - lacking
+        ntu = high - missing * (high - low) / where(apart > 0.0, apart, 1.0)
+        found = effectiveness(ntu, capacity) - wanted
+        short = found < 0.0
+        low, high = where(short, ntu, low), where(short, high, ntu)
+        lacking, missing = where(short, found, 0.5 * lacking), where(short, 0.5 * missing, found)
+        if holds(abs(found) <= 1e-14):
+            break
+    return best / ntu
 
 
 @_exact("correction factor, cross-flow", "mason-1955;bowman-1940", ranges=(), gives="factor")

@@ -7,8 +7,10 @@ by lengthening the fin by half its thickness (a pin: a quarter of its diameter),
 from typing import Any
 
 from cellfuncs.errors import NumberRefused
-from cellfuncs.methods.algebra import exp, holds, plain, sqrt, tanh
-from cellfuncs.methods.base import Range, method
+from cellfuncs.methods.algebra import exp, holds, larger, plain, sqrt, tanh
+from cellfuncs.methods.base import method
+
+_LEAST = 1e-9  # a fin with mL below it is as warm as its root
 
 
 def _tanh_over(x: Any) -> Any:
@@ -43,7 +45,7 @@ def triangular(coefficient: Any, conductivity: Any, thickness: Any, length: Any)
     """Efficiency of a straight fin that tapers to an edge, I1(2mL)/(mL·I0(2mL)); thickness at the root."""
     from scipy.special import ive
 
-    number = fin_number(coefficient, conductivity, thickness, length)
+    number = larger(fin_number(coefficient, conductivity, thickness, length), _LEAST)
     return plain(ive(1, 2.0 * number) / (number * ive(0, 2.0 * number)))
 
 
@@ -59,14 +61,13 @@ def cone(coefficient: Any, conductivity: Any, diameter: Any, length: Any) -> Any
     """Efficiency of a pin that tapers to a point, 2·I2(2mL)/(mL·I1(2mL)), m = √(4h/(kD)); diameter at the root."""
     from scipy.special import ive
 
-    number = length * sqrt(4.0 * coefficient / (conductivity * diameter))
+    number = larger(length * sqrt(4.0 * coefficient / (conductivity * diameter)), _LEAST)
     return plain(2.0 * ive(2, 2.0 * number) / (number * ive(1, 2.0 * number)))
 
 
 @method(
     "annular fin",
     gives="efficiency",
-    ranges=(Range("Do/Di", low=1.0),),
     scatter=0.01,
     property_temperature="solid",
     source="harper-brown-1922;gardner-1945",
@@ -93,4 +94,6 @@ def annular(coefficient: Any, conductivity: Any, thickness: Any, diameter: Any, 
 @method("finned surface", gives="efficiency", scatter=0.0, property_temperature="solid", source="gardner-1945")
 def overall(fin_efficiency: Any, fin_share: Any) -> Any:
     """Efficiency of a whole finned surface, 1 − (A_fins/A)(1 − η): fins and the bare surface between them."""
+    if not (holds(fin_share <= 1.0) and holds(fin_efficiency <= 1.0)):
+        raise NumberRefused("the efficiency of the fins and their share of the surface are at most 1")
     return 1.0 - fin_share * (1.0 - fin_efficiency)

@@ -2,8 +2,9 @@
 
 from typing import Any
 
-from cellfuncs.methods.algebra import log
-from cellfuncs.methods.base import Range, method
+from cellfuncs.errors import NumberRefused
+from cellfuncs.methods.algebra import holds, log
+from cellfuncs.methods.base import method
 
 
 @method("plane layer", gives="resistance", scatter=0.0, property_temperature="solid", source="iso-6946")
@@ -12,10 +13,14 @@ def plane(thickness: Any, conductivity: Any) -> Any:
     return thickness / conductivity
 
 
+def _check(diameter_ratio: Any) -> None:
+    if not holds(diameter_ratio >= 1.0):
+        raise NumberRefused("the outer diameter of a layer is below its inner one; give outer over inner diameter")
+
+
 @method(
     "cylindrical layer",
     gives="resistance",
-    ranges=(Range("Do/Di", low=1.0),),
     scatter=0.0,
     property_temperature="solid",
     source="iso-12241",
@@ -26,19 +31,20 @@ def cylindrical(diameter: Any, diameter_ratio: Any, conductivity: Any) -> Any:
     ``diameter`` is the layer's outer one [m], ``conductivity`` in [W/(m K)]. On another surface of diameter D it is
     smaller or larger as D/Do; layers add up on one surface.
     """
+    _check(diameter_ratio)
     return 0.5 * diameter * log(diameter_ratio) / conductivity
 
 
 @method(
     "spherical layer",
     gives="resistance",
-    ranges=(Range("Do/Di", low=1.0),),
     scatter=0.0,
     property_temperature="solid",
     source="iso-12241",
 )
 def spherical(diameter: Any, diameter_ratio: Any, conductivity: Any) -> Any:
     """Resistance of a layer on a sphere, on the layer's outer surface: Do·(Do/Di − 1)/(2k) [m2 K/W]; D [m]."""
+    _check(diameter_ratio)
     return 0.5 * diameter * (diameter_ratio - 1.0) / conductivity
 
 
