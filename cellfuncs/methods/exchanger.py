@@ -180,13 +180,15 @@ def correction(effectiveness: Callable[[Any, Any], Any], part: Any, quotient: An
         missing = effectiveness(high, capacity) - wanted
     if not holds(missing >= 0.0):
         raise OutOfRange("no surface reaches this P and R in such an arrangement with F above 0.1; take counter-flow")
-    for _ in range(_ROUNDS):  # false position; an end that stays is given half its weight (Illinois)
+    last = missing < missing
+    for _ in range(_ROUNDS):  # false position; an end that stays twice is given half its weight (Illinois)
         apart = missing - lacking
         ntu = high - missing * (high - low) / where(apart > 0.0, apart, 1.0)
         found = effectiveness(ntu, capacity) - wanted
         short = found < 0.0
         low, high = where(short, ntu, low), where(short, high, ntu)
-        lacking, missing = where(short, found, 0.5 * lacking), where(short, 0.5 * missing, found)
+        stays = where(short == last, 0.5, 1.0)
+        lacking, missing, last = where(short, found, stays * lacking), where(short, stays * missing, found), short
         if holds(abs(found) <= 1e-14):
             break
     return best / ntu
