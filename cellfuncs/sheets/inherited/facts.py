@@ -28,6 +28,11 @@ _IN_TEXTS = frozenset(("pure fluid", "solution", "moist air", "thermal oil", "li
 _ORDINARY = frozenset(("d4", "d5", "d6", "md2m", "neon", "r", "lead", "tin", "ice", "salt"))
 _SHARE = re.compile(r"[a-z][a-z ]*[a-z][ ,(]*\d[\d.]* ?%(?: by (?:mass|weight|volume)| ?[wv]/[wv])?", re.IGNORECASE)
 SIDES = ("hot", "cold")
+_PIPE = re.compile(r"\b(?:pipe|pipes|pipeline|tube|tubes|bore|duct)\b", re.IGNORECASE)
+_AROUND = re.compile(
+    r"\b(?:insulat\w*|lagging|outside film|shell|hot|cold|bank|bundle|cross.?flow|fin|fins)\b", re.IGNORECASE
+)
+_PIPE_LABELS = 2
 
 
 @dataclass
@@ -99,6 +104,7 @@ def facts_of(page: Page) -> Facts:
         _rows_that_ask(page, spot, text, facts)
     for spot, text in ((1, 1), page.name), *written:
         _said(text, page.address(spot), facts)
+    _flow_of_labels([text for _, text in written], page, facts)
     if not any(key.endswith("substance") for key in facts.said):
         for spot, text in ((1, 1), page.name), *written:
             name = substance_in(text)
@@ -106,6 +112,14 @@ def facts_of(page: Page) -> Facts:
                 facts.put("substance", name, page.address(spot))
                 break
     return facts
+
+
+def _flow_of_labels(written: list[str], page: Page, facts: Facts) -> None:
+    """Labels that speak of pipes and tubes, and of nothing around them, make a duct."""
+    if "flow" in facts.said or any(map(_AROUND.search, written)):
+        return
+    if sum(map(bool, map(_PIPE.search, written))) >= _PIPE_LABELS:
+        facts.put("flow", "duct", page.address((1, 1)))
 
 
 def _rows_that_ask(page: Page, spot: Spot, text: str, facts: Facts) -> None:

@@ -141,6 +141,14 @@ def by_neighbours(settled: Settled, beside: Iterable[str], flow: str | None) -> 
         ties = min(companions(option.key, known - {option.key}), 4)
         ranked.append((option.score + fits + 0.25 * ties - 0.15 * (option.key in known), option))
     ranked.sort(key=lambda pair: -pair[0])
-    if len(ranked) > 1 and ranked[0][0] - ranked[1][0] < 0.1:
+    level = [option for rank, option in ranked if ranked[0][0] - rank < 0.1]
+    if len(level) > 1 and not _one_for_another([option.key for option in level]):
         return None
     return ranked[0][1]
+
+
+def _one_for_another(keys: Sequence[str]) -> bool:
+    """Whether quantities stand for each other in all relations, so that it does not matter which is meant."""
+    from cellfuncs.checks.relation import STAND_INS
+
+    return any(set(keys) <= set(group) for group in STAND_INS.values())

@@ -59,7 +59,7 @@ def bare_unit(text: str) -> str:
 def quantity_in(text: str) -> quantities.Reading | None:
     """The number and unit of a text such as ``25 mm``; None where it is none, or what follows is no unit."""
     text = text.strip()
-    if len(text) > 40 or not re.match(r"[-+−±~≈]?\s?[\d.½¼¾]", text):
+    if len(text) > 40 or not re.match(r"[-+−±~≈]?\s?[\d.½¼¾]", text) or (text.startswith("1/") and is_unit(text)):
         return None
     try:
         reading = quantities.read_number(text.lstrip("~≈ "))
@@ -168,9 +168,22 @@ def _by_words() -> dict[frozenset[str], tuple[str, ...]]:
         for name in (entry.label, *entry.synonyms, *entry.in_sheets):
             words = frozenset(_words(name))
             # "fluid temperature" is more than any temperature
-            if len(words) > 1 or (len(name.split()) == len(words) == 1 and len(name) > LONGEST_SYMBOL // 2):
+            plain_word = len(name.split()) == len(words) == 1 and len(name) > 2 and name.isalpha() and name.islower()
+            if len(words) > 1 or plain_word:
                 table.setdefault(words, []).append(key)
     return {words: tuple(dict.fromkeys(keys)) for words, keys in table.items()}
+
+
+@lru_cache(maxsize=1)
+def _telling_words() -> frozenset[str]:
+    """Words that make another quantity of what they stand before: hydraulic, outside, relative."""
+    table = _by_words()
+    return frozenset(
+        word
+        for words, keys in table.items()
+        for word in words
+        if len(words) > 1 and (rest := table.get(words - {word})) and not set(rest) & set(keys)
+    )
 
 
 @lru_cache(maxsize=1)
@@ -196,10 +209,12 @@ def known(text: str) -> tuple[Known, ...]:
     words = _words(text)
     by_words = _by_words().get(frozenset(words), ())
     if not by_words and len(words) > 1:
-        # a qualifier in front or behind: "circulating mass flow", "tube length each"
+        # a qualifier in front or behind: "circulating mass flow", "tube length each", "pin diameter"
         shorter = [_by_words().get(frozenset(part), ()) for part in (words[1:], words[:-1]) if len(part) > 1]
         if sum(map(bool, shorter)) == 1:
             return tuple(Known(key, 0.6) for part in shorter for key in part)
+        if len(words) == 2 and words[0] not in _telling_words():
+            return tuple(Known(key, 0.45) for key in _by_words().get(frozenset(words[1:]), ()))
     if by_words:
         return tuple(Known(key, 0.9) for key in by_words)
     if len(text) < 6:
