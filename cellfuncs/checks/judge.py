@@ -17,6 +17,8 @@ from cellfuncs.sources import cite
 
 # a relation this loose cannot excuse a number that a tight one contradicts
 _LOOSE = 0.05
+# how many trials are asked for a cause
+_TRIED = 4
 # relative: the same quantity, once typed and once referred to, in two units
 _COPY = 0.002
 
@@ -67,12 +69,26 @@ def _judged(entry: Stated, resolver: Resolver) -> Doubt | bool | None:
     if best.passed:
         return True
     causes = causes_of(best)
+    if not causes or causes[0].guess.code == "unknown":
+        best, causes = _better_explained(best, causes, tried)
     # a relation that misses part of what the formula uses may not be meant at all
     if not causes and not (best.coverage == 1.0 and (best.local or entry.typed)):
         return None
     if not entry.typed and best.coverage < 0.5 and not best.local:
         return None
     return Doubt(entry, best, causes)
+
+
+def _better_explained(best: Trial, causes: list[Ranked], tried: list[Trial]) -> tuple[Trial, list[Ranked]]:
+    """Another of the strongest trials, where only that one finds a cause."""
+    others = sorted((t for t in tried if t is not best and t.expected is not None), key=_strength, reverse=True)
+    for trial in others[:_TRIED]:
+        if trial.coverage < best.coverage:
+            continue
+        found = causes_of(trial)
+        if found and found[0].guess.code != "unknown":
+            return trial, found
+    return best, causes
 
 
 def _copies(entry: Stated, references: References) -> bool:
@@ -90,22 +106,24 @@ def _pick(tried: list[Trial]) -> Trial:
     coded = [t for t in tried if t.match is not None and t.match.code]
     failures = [t for t in tried if not t.passed and t.expected is not None]
 
-    def strength(trial: Trial) -> tuple[float, ...]:
-        tight = trial.expected.scatter if trial.expected else 1.0
-        return (trial.local, trial.coverage, trial.role is None, -tight, -_distance(trial))
-
     strict = [t for t in passes if t.match is not None and not t.match.loose and t.match.scatter <= _LOOSE]
     if strict:
-        return max(strict, key=strength)
+        return max(strict, key=_strength)
     if coded:
-        return max(coded, key=strength)
+        return max(coded, key=_strength)
     firm = [t for t in failures if t.local and t.coverage == 1.0 and t.relation.scatter <= _LOOSE
             and t.relation.source != "methods"]  # fmt: skip
     if firm and not any(t.local and t.coverage == 1.0 for t in passes):
-        return max(firm, key=strength)
+        return max(firm, key=_strength)
     if passes:
-        return max(passes, key=strength)
-    return max(failures or tried, key=strength)
+        return max(passes, key=_strength)
+    return max(failures or tried, key=_strength)
+
+
+def _strength(trial: Trial) -> tuple[float, ...]:
+    """How much a trial says about a number: it should use what the formula uses, and little else."""
+    tight = trial.expected.scatter if trial.expected else 1.0
+    return (trial.coverage, trial.local, -trial.derived, trial.role is None, -tight, -_distance(trial))
 
 
 def _distance(trial: Trial) -> float:
@@ -120,27 +138,34 @@ def _origins(doubts: list[Doubt], references: References) -> list[Doubt]:
     kept = []
     for doubt in doubts:
         rests = set(doubt.trial.support)
-        if not doubt.trial.local or doubt.entry.typed:
+        if not doubt.trial.local or doubt.entry.typed or doubt.trial.relation.source == "methods":
             for cell in tuple(rests):
                 rests |= references.above(cell)
         else:
             rests = set()
         others = [by_cell[cell] for cell in rests if cell in by_cell and cell != doubt.entry.cell]
-        if not any(_explains(other, doubt) for other in others):
+        if not any(_explains(other, doubt, references) for other in others):
             kept.append(doubt)
     return kept
 
 
-def _explains(other: Doubt, doubt: Doubt) -> bool:
+def _explains(other: Doubt, doubt: Doubt, references: References) -> bool:
     """Whether ``doubt`` may only follow from ``other``; of two that accuse each other the surer one stays."""
-    if doubt.entry.cell in other.trial.support:
-        return _sureness(other) > _sureness(doubt)
+    rests = set(other.trial.support).union(*(references.above(cell) for cell in other.trial.support))
+    if doubt.entry.cell in rests:
+        return _sureness(other, references) > _sureness(doubt, references)
     return True
 
 
-def _sureness(doubt: Doubt) -> tuple[float, float, float]:
-    confidence = doubt.causes[0].confidence if doubt.causes else 0.0
-    return (doubt.trial.local, doubt.trial.coverage, confidence)
+def _sureness(doubt: Doubt, references: References) -> tuple[float, ...]:
+    """How sure it is that the fault starts here: computed here, or pasted among formulas rather than an input."""
+    return (
+        not doubt.entry.typed and doubt.trial.local,
+        -doubt.trial.derived,
+        references.pasted(doubt.entry.cell),
+        doubt.trial.coverage,
+        references.place[doubt.entry.cell],
+    )
 
 
 def _finding(doubt: Doubt, references: References) -> Finding:

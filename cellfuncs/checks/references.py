@@ -58,6 +58,18 @@ class References:
         return known
 
     @cached_property
+    def _order(self) -> list[str]:
+        return list(self.by_cell)
+
+    def pasted(self, cell: str) -> float:
+        """How much a typed number stands among formulas: 0 among inputs to 1 among results."""
+        at = self.place.get(cell)
+        if at is None or not self.by_cell[cell].typed:
+            return 0.0
+        near = [self.by_cell[c] for c in self._order[max(at - 2, 0) : at + 3] if c != cell]
+        return sum(not entry.typed for entry in near) / len(near) if near else 0.0
+
+    @cached_property
     def _users(self) -> Mapping[str, list[str]]:
         users: dict[str, list[str]] = {}
         for cell, refs in self.graph.items():

@@ -140,6 +140,9 @@ def relation(
             own = {k: prefix + k for k in (*needs, *optional, gives) if prefix + k in labels.dictionary()}
             words = f"{name}, {prefix.rstrip('_')} stream"
             RELATIONS.append(Relation(words, own.get(gives, gives), *rest, own, takes_case, derives))
+            if gives in own:
+                # the duty of either stream is the duty
+                RELATIONS.append(Relation(words, gives, *rest, {**own, gives: gives}, takes_case, derives))
         return function
 
     return record

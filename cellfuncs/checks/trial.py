@@ -11,6 +11,12 @@ from cellfuncs.checks.stated import SheetCase, Stated
 
 # K: 273 for 273.15, or a temperature shown to a tenth
 _TEMPERATURE = 0.2
+# the part of the numbers around that must be formulas for a typed one to count as pasted
+_PASTED = 0.5
+# what is given or taken: the sign is a convention of the sheet
+_EITHER_SIGN = frozenset(
+    {"power", "energy", "heat_flux", "heat_per_length", "temperature_difference", "pressure_difference"}
+)
 
 
 @dataclass
@@ -44,6 +50,8 @@ class Trial:
         direct = self.references.direct(self.entry.cell)
         if not direct:
             return 1.0
+        if not self.support:
+            return 0.0
         known = self.support.union(*(self.references.above(cell) for cell in self.support))
         return sum(e.cell in known for e in direct) / len(direct)
 
@@ -100,9 +108,17 @@ class Trial:
     def match(self) -> Admissible | None:
         """The first answer that the number agrees with; one with a code is a known mistake."""
         for answer in self.answers:
-            if abs(self.entry.si - answer.value) <= self.tolerance(answer):
+            stated = self.entry.si
+            if self.entry.kind in _EITHER_SIGN and stated * answer.value < 0:
+                stated = -stated
+            if abs(stated - answer.value) <= self.tolerance(answer):
                 return answer
         return None
+
+    @cached_property
+    def derived(self) -> int:
+        """How many inputs are not stated but follow from others."""
+        return sum(r.entry is None for r in self.inputs.values())
 
     @property
     def passed(self) -> bool:
@@ -127,6 +143,8 @@ def trials(entry: Stated, resolver: Resolver) -> list[Trial]:
             found.append(Trial(relation, entry, None, inputs, case, references))
     if not entry.typed:
         found += _solved_for(entry, resolver)
+    elif not found and references.pasted(entry.cell) >= _PASTED:
+        found += _solved_for_pasted(entry, resolver)
     return [trial for trial in found if trial.answers]
 
 
@@ -148,6 +166,28 @@ def _solved_for(entry: Stated, resolver: Resolver) -> list[Trial]:
                 trial = Trial(relation, entry, role, inputs, resolver.case, resolver.references)
                 if trial.local:
                     found.append(trial)
+    return found
+
+
+def _solved_for_pasted(entry: Stated, resolver: Resolver) -> list[Trial]:
+    """Relations solved for a number that was pasted among formulas, from all that does not rest on it."""
+    case = resolver.case
+    found = []
+    for relation in RELATIONS:
+        if relation.takes_case or not relation.derives or not case.stated.get(relation.gives):
+            continue
+        role = next((r for r in relation.needs if entry.key in relation.keys_for(r, case)), None)
+        if role is None or not relation.applies(case):
+            continue
+        picks = {need: resolver.pick(relation.keys_for(need, case), entry) for need in relation.needs if need != role}
+        given = resolver.pick((relation.gives,), entry)
+        if given is None or any(picked is None for picked in picks.values()):
+            continue
+        optional = {need: resolver.pick(relation.keys_for(need, case), entry) for need in relation.optional}
+        picks |= {need: picked for need, picked in optional.items() if picked is not None}
+        inputs = {need: Resolved(p.si, frozenset((p.cell,)), 0.0, p) for need, p in picks.items() if p is not None}
+        inputs[""] = Resolved(given.si, frozenset((given.cell,)), 0.0, given)
+        found.append(Trial(relation, entry, role, inputs, case, resolver.references))
     return found
 
 

@@ -68,6 +68,8 @@ def _of_inputs(trial: Trial, expected: float) -> Iterator[Guess]:
             return _changed(trial, name, value)
 
         yield from substitutes.of_input(name, resolved, trial.case, answer)
+        used = trial.references.direct(trial.entry.cell)
+        yield from substitutes.in_place_of(name, resolved, used, trial.support, answer)
         yield from substitutes.left_out(name, resolved, answer, expected, trial.entry.si)
         if resolved.entry is not None:
             entry = resolved.entry

@@ -85,6 +85,20 @@ def _other_cells(entry: Stated, case: SheetCase, answer: Answer) -> Iterator[Gue
         yield Guess(code, words, answer(other.si), prior)
 
 
+def in_place_of(
+    name: str, resolved: Resolved, used: tuple[Stated, ...], support: frozenset[str], answer: Answer
+) -> Iterator[Guess]:
+    """Something of another kind that the formula uses stands where this input, which it does not use, should."""
+    entry = resolved.entry
+    if entry is None or entry.cell in {e.cell for e in used}:
+        return
+    for other in used:
+        if other.cell not in support and other.kind != entry.kind:
+            words = f'"{other.label}" ({other.cell}) stands for "{entry.label}"'
+            for value in {other.si, other.value}:
+                yield Guess("dimension-mismatch", words, answer(value), 0.8)
+
+
 def _temperature_scale(entry: Stated, label: str, answer: Answer) -> Iterator[Guess]:
     """A difference in °F taken for K, or the other way round."""
     if entry.kind == "temperature_difference":

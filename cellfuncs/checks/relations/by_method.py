@@ -76,6 +76,7 @@ def _regime_missed(method: Method, given: Mapping[str, Any]) -> bool:
 
 def _evaluate(method: Method, given: Mapping[str, Any]) -> tuple[float, str] | None:
     """The method's answer and what lies outside its range; None where it cannot answer."""
+    given = {name: value for name, value in given.items() if name in inputs()}
     try:
         return float(method.evaluate(given)), ""
     except OutOfRange as error:
@@ -150,7 +151,8 @@ def _envelope(right: list[Admissible], gives: tuple[str, ...]) -> list[Admissibl
         return []
     low, high = min(a.value for a in right), max(a.value for a in right)
     middle = (low + high) / 2.0
-    width = (high - low) / (2.0 * middle) + LOOSE.get(gives[0], 0.1)
+    # one law alone, as in laminar flow, leaves no room
+    width = (high - low) / (2.0 * middle) + (LOOSE.get(gives[0], 0.1) if high > low * 1.001 else 0.02)
     return [Admissible(middle, "methods that hold here", width, loose=True)]
 
 
@@ -195,6 +197,7 @@ def forced_nusselt(case, reynolds, prandtl, length=None, bore=None, relative_rou
         given |= {"diameter_over_length": 0.0, "x_star": 10.0, "x_plus": 10.0}
     if relative_roughness is not None:
         given["relative_roughness"] = relative_roughness
+        given["roughness_reynolds"] = reynolds * relative_roughness * (smooth_factor(reynolds) / 8.0) ** 0.5
     given["friction"] = friction_factor or smooth_factor(reynolds)
     return answers(case, given, ("mean Nu", "local Nu"))
 
@@ -222,13 +225,15 @@ def friction_factor(case, reynolds, relative_roughness=None):
     given = _choices(case) | {"reynolds": reynolds}
     if relative_roughness is not None:
         given["relative_roughness"] = relative_roughness
+        given["roughness_reynolds"] = reynolds * relative_roughness * (smooth_factor(reynolds) / 8.0) ** 0.5
     found = answers(case, given, ("Darcy friction factor",))
     quarter = [
         Admissible(a.value / 4.0, f"Fanning's factor by {a.words} where Darcy's is meant", SAME, "fanning-for-darcy")
         for a in found
         if not a.code and not a.loose
     ]
-    if relative_roughness is None:
+    if relative_roughness is None and reynolds > LAMINAR:
+        # an unknown roughness only adds to a smooth wall's
         found += [Admissible(a.value * 1.15, a.words, 0.3, loose=True) for a in found if a.loose]
     tight = [a for a in found if not a.code and not a.loose]
     return [*tight, *quarter, *(a for a in found if a.code), *(a for a in found if a.loose)]

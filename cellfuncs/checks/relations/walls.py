@@ -5,13 +5,17 @@ from math import log, log10, pi
 from cellfuncs.checks.relation import relation
 
 
+def _bare(case) -> bool:
+    return not {"insulation_thickness", "insulation_diameter", "insulation_radius"} & set(case.stated)
+
+
 @relation("resistance of the inside film", "inside_resistance")
 def inside_film(inside_coefficient, diameter, length):
     """R = 1/(hπDL)."""
     return 1.0 / (inside_coefficient * pi * diameter * length)
 
 
-@relation("resistance of the outside film", "outside_resistance")
+@relation("resistance of the outside film", "outside_resistance", when=_bare)
 def outside_film(outside_coefficient, outside_diameter, length):
     """R = 1/(hπDoL)."""
     return 1.0 / (outside_coefficient * pi * outside_diameter * length)

@@ -21,7 +21,7 @@ def heated_tube(rng: random.Random, system: str) -> Calculation:
     t_wall = high + rng.uniform(8, 25) if heating else low - rng.uniform(4, 9)
     c.typed("Tw", "wall_temperature", "Wall temperature;Tube wall temperature", ("degC", "degF"), t_wall, "Tw", 3)
     c.typed("D", "diameter", "Inside diameter;Tube ID", _BORE, rng.choice((0.0158, 0.0199, 0.0266)), "D")
-    velocity = between(rng, 1.0, 2.5)
+    velocity = between(rng, 0.8, 1.9)
     mean = (t_in + t_out) / 2.0
     right = properties.water(mean)
     flow = velocity * right["density"] * 3.14159 / 4 * c.line("D").value ** 2 * (1e-6 if system == "si" else 0.0254**2)
