@@ -51,6 +51,15 @@ def test_plug_flow_without_conduction():
     assert abs(j1(roots[0])) > 0  # the series' own weights 2/(j·J1) integrate to 4/j²
 
 
+@pytest.mark.parametrize("peclet", [0.3, 3.0, 30.0])
+def test_one_dimension(peclet):
+    """Plug flow with a flux from x = 0 on: the bulk obeys dθ/dx* − θ''/Pe² = 4 there, and is exact before and after."""
+    before, after = stretches(section(PLUG, 24, 3), "flux", "adiabatic", 1.0 / peclet, math.inf)
+    x = np.array([0.1, 1.0, 3.0]) / peclet**2
+    np.testing.assert_allclose(before.read("bulk", -x)[:, 0], 4 / peclet**2 * np.exp(-x * peclet**2), rtol=1e-9)
+    np.testing.assert_allclose(after.read("bulk", x)[:, 0], 4 * x + 4 / peclet**2, rtol=1e-11)
+
+
 def problems():
     return st.builds(
         DuctProblem,

@@ -1,4 +1,4 @@
-"""The solved duct beside plain finite differences (``install/finite_differences.py``), which come to it by their order."""
+"""The solved duct beside finite differences (``install/finite_differences.py``), which come to it by their order."""
 
 import importlib.util
 from pathlib import Path
