@@ -7,7 +7,7 @@ shells: over that of conduction through them). Tilt: 0 is a level layer heated f
 import math
 from typing import Any
 
-from cellfuncs.methods.algebra import cos, exp, larger, log, sin, where
+from cellfuncs.methods.algebra import cos, exp, larger, log, sin, smaller, where
 from cellfuncs.methods.base import Range, follows, method
 
 _GAP = "gap; over conduction alone"
@@ -258,6 +258,41 @@ def steep_layer(upright: Any, tilt: Any) -> Any:
 def layer_heated_above(upright: Any, tilt: Any) -> Any:
     """Mean Nu of a layer heated from above, tilt 90 to 180, from that of the same layer upright."""
     return 1.0 + (upright - 1.0) * larger(sin(tilt * (math.pi / 180.0)), 0.0)
+
+
+@method(
+    "ElSherbiny tilted",
+    gives="mean Nu",
+    ranges=(Range("Ra", 1e2, 2e7), Range("tilt", 60.0, 90.0), Range("H/L", 5.0, 110.0), Range("Pr", 0.6, 1.0)),
+    scatter=0.09,
+    property_temperature="mean of the walls",
+    source="elsherbiny-1982;iso-15099",
+    flows=("enclosure",),
+    where=_TILTED,
+    length=_GAP,
+)
+def steep_air(rayleigh: Any, aspect: Any, tilt: Any) -> Any:
+    """Mean Nu of a steep layer of air heated from below: straight between that at 60 degrees and that upright."""
+    still = 0.5 / (1.0 + smaller(rayleigh / 3160.0, 1e10) ** 20.6) ** 0.1
+    cells = (1.0 + (0.0936 * rayleigh**0.314 / (1.0 + still)) ** 7) ** (1.0 / 7.0)
+    at_60 = larger(cells, (0.104 + 0.175 / aspect) * rayleigh**0.283)
+    return at_60 + (upright_air(rayleigh, aspect) - at_60) * (tilt - 60.0) / 30.0
+
+
+@method(
+    "ISO 15099 layer heated above",
+    gives="mean Nu",
+    ranges=(Range("Ra", 1e2, 2e7), Range("tilt", 90.0, 180.0), Range("H/L", 5.0, 110.0), Range("Pr", 0.6, 1.0)),
+    scatter=0.15,
+    property_temperature="mean of the walls",
+    source="iso-15099;arnold-1976;elsherbiny-1982",
+    flows=("enclosure",),
+    where=_TILTED,
+    length=_GAP,
+)
+def air_heated_above(rayleigh: Any, aspect: Any, tilt: Any) -> Any:
+    """Mean Nu of a layer of air heated from above, from ElSherbiny's upright one."""
+    return layer_heated_above(upright_air(rayleigh, aspect), tilt)
 
 
 # -- rings and shells ------------------------------------------------------------------------------------------------

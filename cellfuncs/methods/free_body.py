@@ -58,7 +58,7 @@ _MORGAN = ((1e-2, 0.675, 0.058), (1e2, 1.02, 0.148), (1e4, 0.850, 0.188), (1e7, 
 @method(
     "Morgan cylinder",
     gives="mean Nu",
-    ranges=(Range("Ra", 1e-10, 1e12),),
+    ranges=(Range("Ra", 1e-10, 1e12), Range("Pr", 0.7, 3000.0)),
     scatter=0.05,
     property_temperature="film",
     source="morgan-1975",

@@ -26,6 +26,12 @@ def test_tilted_layer_conducts_at_least(rayleigh, tilt):
     assert enclosure.tilted_layer(rayleigh, tilt) >= 1.0 - 1e-12
 
 
+def test_steep_air_ends_upright():
+    assert enclosure.steep_air(5e4, 20.0, 90.0) == pytest.approx(enclosure.upright_air(5e4, 20.0), rel=1e-12)
+    assert enclosure.steep_air(5e4, 20.0, 60.0) == pytest.approx(enclosure.tilted_layer(5e4, 60.0), rel=0.05)
+    assert enclosure.air_heated_above(5e4, 20.0, 150.0) < enclosure.upright_air(5e4, 20.0)
+
+
 def test_steps_where_the_steep_layer_takes_over():
     """At 60 degrees Hollands' tilted layer and the upright one times sin^1/4 differ by a fifth (H/L 20, Ra 5e4)."""
     upright = enclosure.upright_air(5e4, 20.0)

@@ -11,7 +11,7 @@ from cellfuncs.methods import METHODS, chimney, free, free_body, free_plate
 FREE = [name for name, one in METHODS.items() if one.flows == ("free",)]
 BY_RA = [name for name in FREE if METHODS[name].gives == "mean Nu" and "rayleigh" in METHODS[name].inputs]
 STEPS_DOWN = {"Heat Atlas upper face": 0.86, "Goldstein-Sparrow-Jones upper face": 0.95, "Morgan cylinder": 0.99}
-MORE = {"prandtl": 0.9, "length_over_diameter": 2.0}
+MORE = {"prandtl": 0.9, "length_over_diameter": 2.0, "facing": "held"}
 
 
 def value(name, rayleigh, **more):
@@ -64,7 +64,7 @@ def test_step_of_the_atlas():
 def test_plate_inclined_by_g_along_it_is_a_plate():
     """Fujii and Imura's inclined plate, Churchill and Chu's and Ede's at Pr 7 agree within their scatter."""
     ra = 1e8 * np.cos(np.radians(45.0))
-    measured = free_plate.inclined_plate_held(ra)
+    measured = free_plate.inclined_plate_held(ra, "held")
     assert measured == pytest.approx(free_plate.laminar_vertical_plate(ra, 7.0), rel=0.12)
     assert measured == pytest.approx(free_plate.laminar_integral(ra, 7.0), rel=0.1)
 
@@ -79,6 +79,11 @@ def test_thick_cylinder_is_a_plate(rayleigh, prandtl):
 def test_slender_cylinders_agree(rayleigh, prandtl, slenderness):
     one = free_body.slender_cylinder(rayleigh, prandtl, slenderness)
     assert one == pytest.approx(free_body.slender_cylinder_corrected(rayleigh, prandtl, slenderness), rel=0.11)
+
+
+def test_the_other_face_of_an_inclined_plate_is_refused():
+    with pytest.raises(OutOfRange, match="held face"):
+        METHODS["Fujii-Imura inclined plate"].evaluate({"rayleigh": 1e6, "facing": "free"})
 
 
 def test_stoutness_is_checked():
