@@ -160,9 +160,10 @@ class Method:
         if missing:
             raise NumberRefused(f"{self.name} needs {' and '.join(missing)}")
         known = {name: value for name, value in given.items() if value is not None}
-        for name, value in known.items():
-            _check_sign(inputs()[name], value)
-        self._check_range(known, allow)
+        extremes = {name: _extremes(v) for name, v in known.items() if inputs()[name].sign != "choice"}
+        for name, (low, high) in extremes.items():
+            _check_sign(inputs()[name], low, high)
+        self._check_range(known, extremes, allow)
         return self._finite({name: known[name] for name in self.inputs if name in known})
 
     def _finite(self, taken: Mapping[str, Any]) -> Any:
@@ -196,21 +197,17 @@ class Method:
         except (ZeroDivisionError, OverflowError):
             raise NumberRefused(f"{self.name} has no finite {symbol} there") from None
 
-    def _check_range(self, known: Mapping[str, Any], allow: bool) -> None:
-        by_symbol = {inputs()[name].symbol: value for name, value in known.items()}
+    def _check_range(self, known: Mapping[str, Any], extremes: Mapping[str, tuple[float, float]], allow: bool) -> None:
+        by_symbol = {inputs()[name].symbol: ends for name, ends in extremes.items()}
         worst = {}
         for r in self.ranges:
-            value = by_symbol.get(r.variable)
-            if value is None and r.variable in _FOLLOWS:
+            ends = by_symbol.get(r.variable)
+            if ends is None and r.variable in _FOLLOWS:
                 names, function = _FOLLOWS[r.variable]
                 if all(name in known for name in names):
-                    value = self._followed(r.variable, function, [known[name] for name in names])
-            if value is None:
-                continue
-            if not isinstance(value, (float, int)):
-                low, high = float(value.min()), float(value.max())
-                value = low if low < r.low else high
-            worst[r.variable] = value
+                    ends = _extremes(self._followed(r.variable, function, [known[name] for name in names]))
+            if ends is not None:
+                worst[r.variable] = ends[0] if ends[0] < r.low else ends[1]
         self.check(allow, **worst)
 
 
@@ -229,20 +226,21 @@ def _peclet(reynolds: Any, prandtl: Any) -> Any:
     return reynolds * prandtl
 
 
-def _check_sign(known: Input, value: Any) -> None:
-    if known.sign == "choice":
-        return
+def _extremes(value: Any) -> tuple[float, float]:
+    """The smallest and the largest of a number or an array; both NaN where one of its numbers is."""
     if isinstance(value, (float, int)):
-        smallest = value if value - value == 0 else math.nan
-    else:
-        import numpy as np
+        return value, value
+    if not value.size:
+        raise NumberRefused("a column without numbers is given")
+    return float(value.min()), float(value.max())
 
-        smallest = float(np.min(value)) if np.isfinite(value).all() else math.nan
-    if smallest != smallest:
+
+def _check_sign(known: Input, low: float, high: float) -> None:
+    if low - low != 0 or high - high != 0:
         raise NumberRefused(f"{known.words} is not a finite number")
-    if (known.sign == "positive" and smallest <= 0) or (known.sign == "zero" and smallest < 0):
+    if (known.sign == "positive" and low <= 0) or (known.sign == "zero" and low < 0):
         least = "above" if known.sign == "positive" else "at least"
-        raise NumberRefused(f"{known.words} is {smallest:.4g}; it must be {least} zero")
+        raise NumberRefused(f"{known.words} is {low:.4g}; it must be {least} zero")
 
 
 def method(
