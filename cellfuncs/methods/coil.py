@@ -4,12 +4,18 @@ Secondary flow keeps a coil laminar to higher Re than a straight tube; the trans
 """
 
 from cellfuncs.methods.algebra import sqrt, where
-from cellfuncs.methods.base import Range, method
+from cellfuncs.methods.base import Range, follows, method
 
 LENGTH = "tube diameter"
 COIL = {"section": ("tube",), "shape": ("coil",)}
 CURVATURE = Range("d/Dc", 0.0012, 0.2)
 THIRD = 1.0 / 3.0
+
+
+@follows("De")
+def dean_number(reynolds: float, curvature: float) -> float:
+    """De = Re·√(d/Dc)."""
+    return reynolds * sqrt(curvature)
 
 
 @method(

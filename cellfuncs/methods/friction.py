@@ -7,7 +7,7 @@ above 70 (Nikuradse 1933): these are the ranges of the formulas for smooth and f
 import math
 
 from cellfuncs.methods.algebra import log, log10, sqrt
-from cellfuncs.methods.base import Range, method
+from cellfuncs.methods.base import Range, follows, method
 
 SMOOTH_UP_TO, ROUGH_FROM = 5.0, 70.0
 ROUGHNESS = Range("roughness", 0.0, 0.05)
@@ -214,6 +214,11 @@ def mckeon(reynolds: float) -> float:
 def fully_rough(relative_roughness: float) -> float:
     """f of a fully rough wall, 1/√f = 1.74 − 2 log10(2 ε/D), whatever the Reynolds number."""
     return (1.74 - 2.0 * log10(2.0 * relative_roughness)) ** -2.0
+
+
+@follows("Reε")
+def _height_of_roughness(reynolds: float, relative_roughness: float) -> float:
+    return roughness_reynolds(reynolds, haaland(reynolds, relative_roughness), relative_roughness)
 
 
 def roughness_reynolds(reynolds: float, friction: float, relative_roughness: float) -> float:

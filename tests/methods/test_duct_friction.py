@@ -79,6 +79,9 @@ def test_limits_of_roughness():
     assert height == pytest.approx(49.5, rel=1e-3)
     with pytest.raises(CellfuncsError, match=r"Reε 0 to 5, here 49\.5"):
         METHODS["smooth wall friction"].evaluate({"reynolds": 1e6, "roughness_reynolds": height})
+    METHODS["smooth wall friction"].evaluate({"reynolds": 1e6, "relative_roughness": 1e-6})
+    with pytest.raises(CellfuncsError, match=r"Reε 0 to 5"):
+        METHODS["smooth wall friction"].evaluate({"reynolds": 1e6, "relative_roughness": 1e-3})
     with pytest.raises(CellfuncsError, match=r"Reε from 70"):
         METHODS["Nikuradse fully rough"].evaluate({"relative_roughness": 1e-3, "roughness_reynolds": height})
 

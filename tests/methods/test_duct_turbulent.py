@@ -149,6 +149,14 @@ def test_coils_take_more_heat_than_straight_tubes(reynolds, prandtl, curvature):
     assert coil.schmidt_transition(curvature) > 2300.0
 
 
+def test_the_dean_number_follows():
+    """De 2000 is where laminar coils were measured to: Re 20000 in a coil of 1:50 has 2828."""
+    with pytest.raises(CellfuncsError, match=r"De up to 2000, here 2828"):
+        METHODS["Manlapaz-Churchill coil"].evaluate(
+            {"reynolds": 2e4, "prandtl": 5.0, "curvature": 0.02, "wall": "flux"}
+        )
+
+
 @pytest.mark.parametrize("curvature", [0.01, 0.05, 0.1])
 def test_stated_jump_of_schmidt(curvature):
     """Schmidt 1967 gives two laws that meet near Re 22000; between them lie a few per cent."""
