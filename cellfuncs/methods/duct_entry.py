@@ -8,7 +8,13 @@ from cellfuncs.methods.algebra import exp, where
 from cellfuncs.methods.base import Range, method
 from cellfuncs.methods.duct_laminar import LAMINAR, LENGTH
 
-TUBE_T = {"section": ("tube",), "wall": ("temperature",), "heated": ("both",), "shape": ("straight",)}
+TUBE_T = {
+    "section": ("tube",),
+    "wall": ("temperature",),
+    "heated": ("both",),
+    "profile": ("developed",),
+    "shape": ("straight",),
+}
 TUBE_Q = {**TUBE_T, "wall": ("flux",)}
 PLATES_T = {**TUBE_T, "section": ("plates",)}
 BOTH_Q = {**TUBE_Q, "section": ("tube", "plates")}

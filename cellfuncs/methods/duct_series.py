@@ -16,7 +16,12 @@ from cellfuncs.sources import read_table
 # part of the perimeter that is heated
 HEATED_PART = {"both": 1.0, "one": 0.5}
 ENTRY = Range("x*", low=1e-4)
-SECTIONS = {"section": ("tube", "plates"), "heated": ("both", "one"), "shape": ("straight",)}
+SECTIONS = {
+    "section": ("tube", "plates"),
+    "heated": ("both", "one"),
+    "profile": ("developed",),
+    "shape": ("straight",),
+}
 
 
 @lru_cache(maxsize=1)

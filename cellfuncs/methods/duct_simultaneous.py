@@ -7,6 +7,8 @@ from cellfuncs.methods.base import Range, method
 from cellfuncs.methods.duct_entry import PLATES_T, THIRD, TUBE_Q, TUBE_T
 from cellfuncs.methods.duct_laminar import LAMINAR, LENGTH
 
+UNIFORM = {"profile": ("uniform",)}
+
 
 @method(
     "Churchill-Ozoe simultaneous",
@@ -16,7 +18,7 @@ from cellfuncs.methods.duct_laminar import LAMINAR, LENGTH
     property_temperature="mean bulk",
     source="churchill-ozoe-1973-tube",
     flows=("duct",),
-    where={**TUBE_T, "wall": ("temperature", "flux")},
+    where={**TUBE_T, "wall": ("temperature", "flux"), **UNIFORM},
     length=LENGTH,
 )
 def churchill_ozoe_simultaneous(x_star: float, prandtl: float, wall: str) -> float:
@@ -38,7 +40,7 @@ def churchill_ozoe_simultaneous(x_star: float, prandtl: float, wall: str) -> flo
     property_temperature="mean bulk",
     source="stephan-1959",
     flows=("duct",),
-    where=TUBE_T,
+    where={**TUBE_T, **UNIFORM},
     length=LENGTH,
 )
 def stephan(x_star: float, prandtl: float) -> float:
@@ -55,7 +57,7 @@ def stephan(x_star: float, prandtl: float) -> float:
     property_temperature="mean bulk",
     source="stephan-1959",
     flows=("duct",),
-    where=PLATES_T,
+    where={**PLATES_T, **UNIFORM},
     length=LENGTH,
 )
 def stephan_plates(x_star: float, prandtl: float) -> float:
@@ -71,7 +73,7 @@ def stephan_plates(x_star: float, prandtl: float) -> float:
     property_temperature="mean bulk",
     source="gnielinski-2010",
     flows=("duct",),
-    where=TUBE_T,
+    where={**TUBE_T, **UNIFORM},
     length=LENGTH,
 )
 def gnielinski_simultaneous(x_star: float, prandtl: float) -> float:
@@ -88,7 +90,7 @@ def gnielinski_simultaneous(x_star: float, prandtl: float) -> float:
     property_temperature="mean bulk",
     source="gnielinski-2010",
     flows=("duct",),
-    where=TUBE_Q,
+    where={**TUBE_Q, **UNIFORM},
     length=LENGTH,
 )
 def gnielinski_simultaneous_flux(x_star: float, prandtl: float) -> float:
@@ -118,7 +120,7 @@ _MUZYCHKA = {
     "property_temperature": "mean bulk",
     "source": "muzychka-yovanovich-2004",
     "flows": ("duct",),
-    "where": {"section": ("rectangle",), "heated": ("both",), "shape": ("straight",)},
+    "where": {"section": ("rectangle",), "heated": ("both",), **UNIFORM, "shape": ("straight",)},
     "length": LENGTH,
 }
 

@@ -31,7 +31,7 @@ def _increment_and_constant(section: str, ratio: float) -> tuple[float, float]:
     property_temperature="mean bulk",
     source="shah-london-1978",
     flows=("duct",),
-    where={"section": ("tube", "plates", "rectangle", "annulus", "ellipse"), **STRAIGHT},
+    where={"section": ("tube", "plates", "rectangle", "annulus", "ellipse"), "profile": ("developed",), **STRAIGHT},
     length=LENGTH,
 )
 def laminar_friction(reynolds: float, section: str, ratio: float = 1.0) -> float:
@@ -47,7 +47,7 @@ def laminar_friction(reynolds: float, section: str, ratio: float = 1.0) -> float
     property_temperature="mean bulk",
     source="shah-london-1978;developed-sections",
     flows=("duct",),
-    where={"section": ("triangle",), **STRAIGHT},
+    where={"section": ("triangle",), "profile": ("developed",), **STRAIGHT},
     length=LENGTH,
 )
 def triangle_friction(reynolds: float, apex_angle: float) -> float:
@@ -63,7 +63,7 @@ def triangle_friction(reynolds: float, apex_angle: float) -> float:
     property_temperature="mean bulk",
     source="shah-1978",
     flows=("duct",),
-    where={"section": ("tube", "plates", "rectangle", "annulus"), **STRAIGHT},
+    where={"section": ("tube", "plates", "rectangle", "annulus"), "profile": ("uniform",), **STRAIGHT},
     length=LENGTH,
 )
 def shah_entry_friction(reynolds: float, x_plus: float, section: str, ratio: float = 1.0) -> float:
@@ -82,7 +82,7 @@ def shah_entry_friction(reynolds: float, x_plus: float, section: str, ratio: flo
     property_temperature="mean bulk",
     source="shah-1978;shah-london-1978",
     flows=("duct",),
-    where={"section": ("tube", "plates", "rectangle", "annulus"), **STRAIGHT},
+    where={"section": ("tube", "plates", "rectangle", "annulus"), "profile": ("uniform",), **STRAIGHT},
     length=LENGTH,
 )
 def laminar_entrance_loss(section: str, ratio: float = 1.0) -> float:

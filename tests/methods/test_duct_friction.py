@@ -88,7 +88,7 @@ def test_limits_of_roughness():
 
 @pytest.mark.parametrize("name", ["Colebrook-White", "Haaland", "Serghides", "Churchill, all regimes", "Blasius"])
 def test_no_stream_has_no_friction_factor(name):
-    with pytest.raises(CellfuncsError, match="no finite value"):
+    with pytest.raises(CellfuncsError, match="no finite"):
         METHODS[name].evaluate({"reynolds": 0.0, "relative_roughness": 1e-3}, allow=True)
 
 
