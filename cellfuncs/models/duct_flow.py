@@ -23,7 +23,8 @@ def resolved(problem: "DuctProblem", fine: bool) -> "Reader":
     along = 0.0 if problem.peclet is None else 1.0 / problem.peclet
     profile, terms, power = _flow(problem)
     matrices = section(profile, terms if fine else int(_COARSE * terms), power)
-    return Reader(problem, matrices, stretches(matrices, problem.wall, problem.upstream, along, problem.heated_length))
+    parts = stretches(matrices, problem.wall, problem.upstream, along, problem.heated_length)
+    return Reader(problem, matrices, tuple(part.rows_only() for part in parts))
 
 
 def _flow(problem: "DuctProblem") -> tuple[Profile, int, int]:

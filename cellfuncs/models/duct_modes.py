@@ -38,7 +38,7 @@ class Modes:
         return np.vstack([self.p, self.g])
 
 
-@lru_cache(maxsize=32)
+@lru_cache(maxsize=16)
 def modes_of(section: Section, insulated: bool, along: float) -> tuple[Modes, Modes]:
     """(modes that decay downstream, modes that decay upstream); ``along`` is 1/Pe, 0 without conduction along."""
     n = section.terms

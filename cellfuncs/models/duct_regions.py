@@ -67,6 +67,11 @@ class Stretch:
     up_amplitudes: Any
     insulated: bool = False
 
+    def rows_only(self) -> "Stretch":
+        """Without the modes' shapes, which only ``profile`` reads: what is remembered stays small."""
+        down, up = (replace(modes, p=None, g=None) for modes in (self.down, self.up))
+        return replace(self, rest=replace(self.rest, p=None, g=None), down=down, up=up)
+
     @property
     def reference(self) -> float:
         return self.start if math.isfinite(self.start) else self.end

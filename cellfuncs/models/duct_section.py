@@ -10,7 +10,7 @@ Sources: Shen, Tang and Wang 2011, Spectral Methods (Springer); Golub and Van Lo
 """
 
 from dataclasses import dataclass
-from functools import lru_cache
+from functools import cached_property, lru_cache
 from typing import Any
 
 import numpy as np
@@ -44,28 +44,44 @@ def polynomials(terms: int, count: int) -> tuple[Any, Any]:
 class Section:
     """Matrices of one profile on one resolution.
 
-    ``carry`` the advection ∫uφφ, ``carried`` ∫uφ and ``fold`` the turn from g to p coordinates; ``whole`` the unit
-    temperature in g coordinates of the space that includes the wall's value, ``embed`` its part without; ``loads`` the
-    heats of the four responses as seen by p, ``heats`` their means over the section; ``steepness`` the wall flux of
-    each p by its own gradient.
+    ``carry`` the advection ∫uφφ, ``carried`` ∫uφ; ``loads`` the heats of the four responses as seen by p, ``heats``
+    their means over the section; ``steepness`` the wall flux of each p by its own gradient. With conduction along:
+    ``fold`` turns g into p coordinates, ``whole`` is the unit temperature in g coordinates of the space that includes
+    the wall's value, ``embed`` its part without.
     """
 
     carry: Any
     carried: Any
-    fold: Any
-    embed: Any
-    whole: Any
     loads: Any
     heats: Any
     perimeter: float
     steepness: Any
+    weighed: Any  # 1 and the functions, times the root of weight and conductivity
+    back: Any  # from the functions to p coordinates
 
     @property
     def terms(self) -> int:
         return len(self.carried)
 
+    @cached_property
+    def _factors(self) -> tuple[Any, Any]:
+        return np.linalg.qr(self.weighed, mode="r"), np.linalg.qr(self.weighed[:, 1:], mode="r")
 
-@lru_cache(maxsize=64)
+    @cached_property
+    def fold(self) -> Any:
+        return (self._factors[1] @ self.back).T
+
+    @cached_property
+    def embed(self) -> Any:
+        both, alone = self._factors
+        return both[:, 1:] @ np.linalg.inv(alone)
+
+    @property
+    def whole(self) -> Any:
+        return self._factors[0][:, 0]
+
+
+@lru_cache(maxsize=16)
 def section(profile: Profile, terms: int, power: int) -> Section:
     """The matrices of ``profile`` with ``terms`` polynomials in t, wall distance = t^power."""
     count = 20 * -(-(2 * terms + 40) // 20)  # rounded up, so that two resolutions share their points
@@ -79,23 +95,20 @@ def section(profile: Profile, terms: int, power: int) -> Section:
     u, friction, conductivity = profile.velocity(c), profile.friction(c), profile.conductivity(c)
     u = u / (weights @ u)  # exact but for rounding: the mean velocity is the unit
     root = np.sqrt(weights * conductivity)
-    upright = np.linalg.qr(np.sqrt(weights * conductivity * profile.spread(c))[:, None] * gradients, mode="r")
-    both = np.linalg.qr(root[:, None] * np.column_stack([np.ones(count), functions]), mode="r")
-    alone = np.linalg.qr(root[:, None] * functions, mode="r")
+    upright = np.linalg.qr((root * np.sqrt(profile.spread(c)))[:, None] * gradients, mode="r")
     back = np.linalg.inv(upright)
     basis = functions @ back
     moved = np.sqrt(weights * u)[:, None] * basis
     made = weights @ friction
     heats = np.column_stack([np.zeros(count), friction, np.ones(count), -made * u])
-    wall = legendre.legvander(np.array([-1.0]), terms - 1)[0] @ back
+    wall = (-1.0) ** np.arange(terms) @ back
     return Section(
         carry=moved.T @ moved,
         carried=basis.T @ (weights * u),
-        fold=(alone @ back).T,
-        embed=both[:, 1:] @ np.linalg.inv(alone),
-        whole=both[:, 0],
         loads=basis.T @ (weights[:, None] * heats),
         heats=weights @ heats,
         perimeter=profile.perimeter,
         steepness=-wall * float((profile.spread(ONE) * profile.conductivity(ONE))[0]) / profile.perimeter,
+        weighed=root[:, None] * np.column_stack([np.ones(count), functions]),
+        back=back,
     )

@@ -93,8 +93,8 @@ def test_the_balance_closes(problem, brinkman, source, expansion):
 def test_flux_is_the_slope_at_the_wall(shape, heated, wall):
     """The flux from the balance and the gradient of the temperature itself are two ways to one number."""
     duct = solve(DuctProblem(shape, heated, wall))
-    part = duct._stretches.parts[0]
-    slope = section(laminar(shape, heated, 1.0), 48, 3).steepness @ part.profile(0.05)[1]
+    matrices = section(laminar(shape, heated, 1.0), 48, 3)
+    slope = matrices.steepness @ stretches(matrices, wall, "adiabatic", 0.0, math.inf)[0].profile(0.05)[1]
     assert duct.flux(0.05) == pytest.approx(slope[0], rel=1e-6)
     assert duct.flux(0.05, drive=0.0, source=1.0) == pytest.approx(slope[2], rel=1e-6, abs=1e-7)
 
