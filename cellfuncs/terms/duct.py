@@ -8,6 +8,7 @@ import math
 
 from cellfuncs.answers import Solution
 from cellfuncs.answers.duct import DuctAnswers
+from cellfuncs.answers.effects import wall as walls
 from cellfuncs.methods import radiation as radiative
 from cellfuncs.methods.duct import LAMINAR_UP_TO
 from cellfuncs.terms.recovery import rise_or_bound
@@ -132,33 +133,22 @@ def _storage(solution: Solution, a: DuctAnswers) -> Size:
     )
 
 
-def _metal_over_flow(a: DuctAnswers, thickness: float) -> float:
-    """Cross-section of the wall over that of the stream."""
-    d = a.shape.diameter
-    if a.shape.section == "plates":
-        return 2.0 * thickness / (d / 2.0)
-    return 4.0 * thickness * (d + thickness) / d**2
-
-
 def _wall_capacity(solution: Solution, a: DuctAnswers, time: float) -> tuple[float, str]:
     """Capacity of the wall over that of the fluid, where the change is slower than the wall's own time ρcs/h."""
     case = solution.case
-    if not all(map(case.has, ("wall_thickness", "wall_density", "wall_specific_heat"))):
+    if not walls.stores(case):
         return 0.0, "wall not counted"
-    s, volume = case.get("wall_thickness"), case.get("wall_density") * case.get("wall_specific_heat")
-    if time <= volume * s / a.coefficient:
-        return 0.0, f"the wall is too slow to follow ({num(volume * s / a.coefficient)} s)"
-    p = a.properties
-    ratio = volume * _metal_over_flow(a, s) / (p.density * p.specific_heat)
+    if time <= walls.own_time(case, a):
+        return 0.0, f"the wall is too slow to follow ({num(walls.own_time(case, a))} s)"
+    ratio = walls.capacity_ratio(case, a)
     return ratio, f"the wall stores {num(ratio)} times as much as the fluid"
 
 
 def _wall_conduction(solution: Solution, a: DuctAnswers) -> Size:
     case = solution.case
-    if not (case.has("wall_thickness") and case.has("wall_conductivity")):
+    m = walls.conduction_number(case, a)
+    if m is None:
         return absent("wall conduction", "no wall is stated; add wall thickness and wall conductivity to judge it")
-    metal = _metal_over_flow(a, case.get("wall_thickness"))
-    m = case.get("wall_conductivity") * metal / (a.length * a.capacity_flux)
     thresholds = _LOCAL if case.answer in _LOCAL_ANSWERS else _MEANS
     return Size(
         "wall conduction",
@@ -197,7 +187,7 @@ def _friction_pair(solution: Solution, a: DuctAnswers) -> tuple[Size, Size]:
     if remark:
         says += f" ({remark})"
     elif beta_t > 0:
-        says += "; judged as a pair with pressure work" if beta_t < 0.999 or beta_t > 1.001 else ""
+        says += "; a pair with pressure work" if beta_t < 0.999 or beta_t > 1.001 else ""
     says += _compressible(solution, a)
     sheared = solution.case.sheared(a.property_temperature)
     if sheared is not None:
@@ -226,7 +216,7 @@ def _compressible(solution: Solution, a: DuctAnswers) -> str:
     fall = abs(a.pressure_drop) / solution.case.pressure
     gas = mach is not None and a.properties.expansion * (a.property_temperature or 0.0) > 0.5
     if gas and (mach > 0.3 or fall > 0.1):
-        return f"; Ma {num(mach)}, Δp/p {percent(fall)}: density falls along the duct, use the stagnation balance"
+        return f"; Ma {num(mach)}, Δp/p {percent(fall)}: use the stagnation balance"
     return ""
 
 

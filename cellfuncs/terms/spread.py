@@ -8,7 +8,8 @@ where it does not reproduce their verdicts, or where a place is refused, 500 sam
 words say so.
 """
 
-from collections.abc import Callable, Sequence
+import math
+from collections.abc import Callable, Mapping, Sequence
 from dataclasses import dataclass, fields
 from typing import Any
 
@@ -17,6 +18,7 @@ from cellfuncs.cases.block import SIGNED
 from cellfuncs.cases.case import Case
 from cellfuncs.cases.vary import with_value
 from cellfuncs.errors import CellfuncsError, OutOfRange
+from cellfuncs.terms.priced import Effects, Priced
 from cellfuncs.terms.size import Size
 from cellfuncs.terms.verdicts import Judged, judge
 
@@ -70,25 +72,64 @@ def uncertain(case: Case) -> list[tuple[str, float, float]]:
     )
 
 
-def survival(solution: Solution, judged: Sequence[Judged], sizes_of: SizesOf) -> dict[str, Survival]:
-    """Term -> how its verdict survives the ± of the case; empty without ±, and without terms that could change."""
+def survival(
+    solution: Solution,
+    judged: Sequence[Judged],
+    sizes_of: SizesOf,
+    effects: Effects | None = None,
+    uncertainty: Mapping[str, float] | None = None,
+) -> dict[str, Survival]:
+    """Term -> how its verdict survives the ± of the case; empty without ±, and without terms that could change.
+
+    The effect of a term in a sample is the one of the case, changed as the share of the term changes.
+    """
     rows = uncertain(solution.case)
     if not rows:
         return {}
     import numpy as np
 
     draws = np.random.default_rng(SEED).standard_normal((SAMPLES, len(rows)))
-    sampling = _Sampling(solution.case, rows, judged, sizes_of)
+    sampling = _Sampling(solution.case, rows, judged, sizes_of, effects, uncertainty)
     counted = sampling.by_surrogate(draws)
     if counted is None:
         counted = sampling.by_solving(draws[:SOLVED])
     return counted
 
 
+def _shares(sizes: Sequence[Any]) -> list[float]:
+    """Share of each term, as the verdicts have it."""
+    largest = max(s.size if s.nets_to is None else s.nets_to for s in sizes)
+    return [s.asked if s.asked is not None else s.size / largest if largest > 0 else 0.0 for s in sizes]
+
+
+def uncertainty_of(solution: Solution, sizes: Sequence[Size], sizes_of: SizesOf) -> dict[str, float]:
+    """Term -> relative standard uncertainty of its share and so its effect, by the ± of the case, to first order."""
+    rows = uncertain(solution.case)
+    base = _shares(sizes) if rows else []
+    total = [0.0] * len(base)
+    for key, value, spread in rows:
+        try:
+            moved = _shares(sizes_of(solve(with_value(solution.case, key, value + spread))))
+        except (ArithmeticError, ValueError):
+            continue
+        for t, (a, b) in enumerate(zip(base, moved, strict=True)):
+            total[t] += (b / a - 1.0) ** 2 if a else 0.0
+    return {s.term: math.sqrt(v) for s, v in zip(sizes, total, strict=False) if v > 0}
+
+
 class _Sampling:
     """One case with its uncertain rows."""
 
-    def __init__(self, case: Case, rows: list[tuple[str, float, float]], judged: Sequence[Judged], sizes_of: SizesOf):
+    def __init__(
+        self,
+        case: Case,
+        rows: list[tuple[str, float, float]],
+        judged: Sequence[Judged],
+        sizes_of: SizesOf,
+        effects: Effects | None = None,
+        uncertainty: Mapping[str, float] | None = None,
+    ):
+        self.effects, self.uncertainty = effects or {}, uncertainty or {}
         self.case = case
         self.rows = rows
         self.judged = judged
@@ -109,7 +150,14 @@ class _Sampling:
             raise error if isinstance(error, CellfuncsError) else OutOfRange(str(error)) from None
 
     def verdicts(self, sizes: Sequence[Any]) -> list[str]:
-        return [j.verdict for j in judge(sizes, self.case.tolerance, self.case.smallest)]
+        effects = {}
+        if self.effects:
+            shares = _shares(sizes)
+            for j, share in zip(self.judged, shares, strict=True):
+                effect = self.effects.get(j.size.term)
+                if isinstance(effect, Priced):
+                    effects[j.size.term] = effect.scaled(share / j.share) if j.share else effect
+        return [j.verdict for j in judge(sizes, self.case.tolerance, self.case.smallest, effects, self.uncertainty)]
 
     def by_solving(self, draws: Any) -> dict[str, Survival]:
         """Every sample solved."""

@@ -4,9 +4,9 @@ from collections.abc import Callable, Mapping
 
 from cellfuncs.answers import Solution
 from cellfuncs.errors import UnknownName
-from cellfuncs.terms import body, duct, free, gap, layer, momentum
-from cellfuncs.terms.size import Size, percent
-from cellfuncs.terms.spread import Survival, survival
+from cellfuncs.terms import body, duct, free, gap, layer, momentum, priced
+from cellfuncs.terms.size import Size, num, percent
+from cellfuncs.terms.spread import Survival, survival, uncertainty_of
 from cellfuncs.terms.verdicts import KEEP, LEAVE_OUT, Judged, judge, left_out
 
 COLUMNS = ("term", "one-scale", "share", "effect", "verdict", "reason")
@@ -25,7 +25,7 @@ TERMS = (
 MOMENTUM_TERMS = momentum.TERMS
 EQUATIONS = ("energy", "momentum")
 ALL_LEFT_OUT = "all left out"
-NO_MODEL = "no model"
+NO_MODEL = priced.NO_MODEL
 NO_SHARE = "no share"
 _SIZES: Mapping[str, Callable[[Solution], list[Size]]] = {
     "duct": duct.sizes,
@@ -47,12 +47,22 @@ Row = tuple[str, float, float | str, float | str, str, str]
 
 
 def judged(solution: Solution, equation: str = "energy") -> list[Judged]:
-    """Every term of an equation with its share and verdict."""
+    """Every term of an equation with its share, its effect where a model gives one, and its verdict."""
+    return _judged(solution, equation)[0]
+
+
+def _judged(solution: Solution, equation: str) -> tuple[list[Judged], priced.Effects, Mapping[str, float]]:
     if equation not in EQUATIONS:
         named = " or ".join(EQUATIONS)
         raise UnknownName(f'"{equation[:40]}" is not an equation that is judged; write {named}', argument="equation")
     case = solution.case
-    return judge(_sizes_of(case.flow, equation)(solution), case.tolerance, case.smallest)
+    sizes_of = _sizes_of(case.flow, equation)
+    sizes = sizes_of(solution)
+    if equation != "energy":
+        return judge(sizes, case.tolerance, case.smallest), {}, {}
+    effects = priced.priced(solution, sizes)
+    uncertain = uncertainty_of(solution, sizes, sizes_of)
+    return judge(sizes, case.tolerance, case.smallest, effects, uncertain), effects, uncertain
 
 
 def _sizes_of(flow: str, equation: str) -> Callable[[Solution], list[Size]]:
@@ -66,28 +76,44 @@ def equation_of(term: str) -> str:
 
 def term_rows(solution: Solution, equation: str = "energy") -> list[Row]:
     """Rows of the term table (without the head): term, one-scale, share, effect, verdict, reason."""
-    terms = judged(solution, equation)
-    survives = survival(solution, terms, _sizes_of(solution.case.flow, equation))
-    rows = [_row(j, survives.get(j.size.term)) for j in terms]
-    return [*rows, _together(terms, solution.case.tolerance)]
+    terms, effects, uncertain = _judged(solution, equation)
+    survives = survival(solution, terms, _sizes_of(solution.case.flow, equation), effects, uncertain)
+    rows = [_row(j, survives.get(j.size.term), effects.get(j.size.term, NO_MODEL)) for j in terms]
+    return [*rows, _together(solution, terms)]
 
 
-def _row(j: Judged, survives: Survival | None) -> Row:
-    reason = "; ".join(filter(None, (j.why, survives.words() if survives else "", j.size.says)))
+def _row(j: Judged, survives: Survival | None, effect: priced.Priced | str) -> Row:
+    missing = ""
+    if isinstance(effect, str) and not j.size.leading and j.verdict != KEEP:
+        missing = effect if effect != NO_MODEL else ""
+    parts = (j.why, survives.words() if survives else "", j.size.says, missing)
     share = NO_SHARE if j.size.no_share else j.share
-    return j.size.term, j.size.one_scale, share, NO_MODEL, j.verdict, reason
+    shown = priced.NOT_LEFT_OUT if j.size.leading else NO_MODEL
+    if isinstance(effect, priced.Priced):
+        shown = effect.ratio if effect.ratio is not None else j.share
+    return j.size.term, j.size.one_scale, share, shown, j.verdict, "; ".join(filter(None, parts))
 
 
-def _together(judged: list[Judged], tolerance: float) -> Row:
+def _together(solution: Solution, judged: list[Judged]) -> Row:
+    tolerance = solution.case.tolerance
     out = left_out(judged)
     share = sum(j.share for j in out)
     one_scale = sum(j.size.one_scale for j in judged if j.verdict == LEAVE_OUT)
     if not any(j.verdict == LEAVE_OUT for j in judged):
-        return ALL_LEFT_OUT, 0.0, 0.0, NO_MODEL, KEEP, "every term is kept"
+        return ALL_LEFT_OUT, 0.0, 0.0, 0.0, KEEP, "every term is kept"
     names = ", ".join(f"{j.size.term} with pressure work" if j.size.pair else j.size.term for j in out)
     if not names:
-        return ALL_LEFT_OUT, one_scale, 0.0, NO_MODEL, LEAVE_OUT, "only terms that the case as stated does not have"
-    reason = f"{names}: {percent(share)} together, tolerance {percent(tolerance)}"
+        return ALL_LEFT_OUT, one_scale, 0.0, 0.0, LEAVE_OUT, "only terms that the case as stated does not have"
+    ratio, kelvins, rest, models = priced.together(solution, [j.size.term for j in out])
+    by_share = [j for j in out if j.size.term in rest]
+    effect: float | str = NO_MODEL
+    reason = f"{names}: shares {percent(share)} together, tolerance {percent(tolerance)}"
+    if ratio is not None:
+        effect = ratio + sum(j.share for j in by_share)
+        moved = f", {num(kelvins)} K" if kelvins is not None else ""
+        reason = f"{names}: effect {percent(effect)}{moved} together ({models}), tolerance {percent(tolerance)}"
+        if by_share:
+            reason += f"; {', '.join(j.size.term for j in by_share)} by share"
     if any(j.by_kelvins for j in out):
         reason += "; some are left out because the kelvins do not matter"
-    return ALL_LEFT_OUT, one_scale, share, NO_MODEL, LEAVE_OUT, reason
+    return ALL_LEFT_OUT, one_scale, share, effect, LEAVE_OUT, reason

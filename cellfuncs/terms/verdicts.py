@@ -1,34 +1,95 @@
-"""From sizes to verdicts, by shares: leave out below a third of the tolerance, keep above three times.
+"""From effects and sizes to verdicts.
 
-The effects of everything left out are taken together; where they exceed the tolerance, the largest
-comes back as borderline.
+Where a model gives the effect of a term, the effect decides: leave out below 0.8 of the tolerance, keep above 1.25,
+borderline between, or where ± or the model's own doubt straddle the tolerance. Where none does, the share decides:
+leave out below a third of the tolerance, keep above three times. All that is left out is taken together; where it
+exceeds the tolerance, the largest comes back as borderline.
 """
 
-from collections.abc import Sequence
+from collections.abc import Mapping, Sequence
 from dataclasses import dataclass
 
+from cellfuncs.terms.priced import Effects, Priced
 from cellfuncs.terms.size import Size, num, percent
 
 KEEP, BORDERLINE, LEAVE_OUT = "keep", "borderline", "leave out"
+CLOSE_BELOW, CLOSE_ABOVE = 0.8, 1.25  # of the tolerance
+APART = 3.0  # between share and effect, from which the reason says so
+_SURE = 2.0  # standard uncertainties to either side
 
 
 @dataclass
 class Judged:
-    """A size with its share, its verdict and why."""
+    """A size with its share, its verdict and why; ``effect`` where a model gives one."""
 
     size: Size
     share: float
     verdict: str
     why: str
     by_kelvins: bool = False
+    effect: Priced | None = None
+
+    @property
+    def weight(self) -> float:
+        """What the term may do to the answer: its effect, or its share where no model gives one."""
+        return self.share if self.effect is None or self.effect.ratio is None else self.effect.ratio
+
+    @property
+    def kelvins(self) -> float:
+        if self.effect is not None and self.effect.kelvins is not None:
+            return self.effect.kelvins
+        return self.size.kelvins or 0.0
 
 
-def judge(sizes: Sequence[Size], tolerance: float, smallest: float) -> list[Judged]:
-    """Shares and verdicts of all terms of a case."""
+def judge(
+    sizes: Sequence[Size],
+    tolerance: float,
+    smallest: float,
+    effects: Effects | None = None,
+    uncertainty: Mapping[str, float] | None = None,
+) -> list[Judged]:
+    """Shares, effects and verdicts of all terms of a case; ``uncertainty`` is the relative ± of each effect."""
     largest = max(s.size if s.nets_to is None else s.nets_to for s in sizes)
-    judged = [_one(s, largest, tolerance, smallest) for s in sizes]
+    judged = []
+    for s in sizes:
+        effect = (effects or {}).get(s.term)
+        j = _one(s, largest, tolerance, smallest)
+        if isinstance(effect, Priced) and not s.leading:
+            j = _by_effect(j, effect, tolerance, smallest, (uncertainty or {}).get(s.term, 0.0))
+        judged.append(j)
     _take_back(judged, tolerance, smallest)
     return judged
+
+
+def _by_effect(j: Judged, effect: Priced, tolerance: float, smallest: float, uncertainty: float) -> Judged:
+    """The verdict of a term whose effect is known."""
+    s, share, ratio, kelvins = j.size, j.share, effect.ratio, effect.kelvins
+    if not effect.words:  # the case does not have it
+        return Judged(s, share, LEAVE_OUT, "", effect=effect)
+    why = effect.words + _apart(share, ratio, s)
+    if kelvins is not None and kelvins < smallest and (ratio is None or ratio >= CLOSE_BELOW * tolerance):
+        return Judged(s, share, LEAVE_OUT, f"{why}; less than {num(smallest)} K that matters", True, effect)
+    if ratio is None:
+        return Judged(s, share, KEEP, f"{why}; {num(smallest)} K matter", effect=effect)
+    low, high = CLOSE_BELOW, CLOSE_ABOVE
+    wide = max(effect.doubt, _SURE * uncertainty)
+    if uncertainty:  # then the ± decide what is close, not the fixed band
+        low, high = 1.0 / (1.0 + wide), 1.0 + wide
+    else:
+        low, high = min(low, 1.0 / (1.0 + wide)), max(high, 1.0 + wide)
+    place = ratio / tolerance
+    if low <= place <= high:
+        return Judged(s, share, BORDERLINE, f"{why}; close to the tolerance {percent(tolerance)}", effect=effect)
+    return Judged(s, share, LEAVE_OUT if place < low else KEEP, why, effect=effect)
+
+
+def _apart(share: float, ratio: float | None, s: Size) -> str:
+    """Says so where share and effect differ by more than a factor of three."""
+    if not share or not ratio or s.no_share:
+        return f"; share {percent(share)}" if share and not s.no_share else ""
+    factor = max(share / ratio, ratio / share)
+    said = f"; share {percent(share)}"
+    return f"{said}, {num(factor)} times {'more' if share > ratio else 'less'}" if factor > APART else said
 
 
 def _one(s: Size, largest: float, tolerance: float, smallest: float) -> Judged:
@@ -66,7 +127,7 @@ def left_out(judged: Sequence[Judged]) -> list[Judged]:
     found: list[Judged] = []
     pair_counted = False
     for j in judged:
-        if j.verdict == LEAVE_OUT and j.share > 0:
+        if j.verdict == LEAVE_OUT and (j.share > 0 or j.weight > 0):
             if j.size.pair and pair_counted:
                 continue
             pair_counted = pair_counted or j.size.pair
@@ -80,15 +141,17 @@ def _take_back(judged: list[Judged], tolerance: float, smallest: float) -> None:
         out = left_out(judged)
         by_share = [j for j in out if not j.by_kelvins]
         by_kelvins = [j for j in out if j.by_kelvins]
-        if sum(j.share for j in by_share) > tolerance:
-            back = max(by_share, key=lambda j: j.share)
-            together = f"{percent(sum(j.share for j in by_share))} together, above {percent(tolerance)}"
-        elif sum(j.size.kelvins or 0.0 for j in by_kelvins) > smallest:
-            back = max(by_kelvins, key=lambda j: j.size.kelvins or 0.0)
-            together = f"{num(sum(j.size.kelvins or 0.0 for j in by_kelvins))} K together"
+        if sum(j.weight for j in by_share) > tolerance:
+            back = max(by_share, key=lambda j: j.weight)
+            together = f"{percent(sum(j.weight for j in by_share))} together, above {percent(tolerance)}"
+        elif sum(j.kelvins for j in by_kelvins) > smallest:
+            back = max(by_kelvins, key=lambda j: j.kelvins)
+            together = f"{num(sum(j.kelvins for j in by_kelvins))} K together"
         else:
             return
         for j in judged:
             if j is back or (back.size.pair and j.size.pair and j.verdict == LEAVE_OUT):
                 j.verdict, j.by_kelvins = BORDERLINE, False
                 j.why = f"small alone, but all left out come to {together}"
+                if j.effect is not None and j.effect.words:
+                    j.why += f"; {j.effect.words}"

@@ -45,8 +45,8 @@ class Fitting:
     def why_not(self, terms: frozenset[str]) -> str:
         """Why no model has these terms; the last choice speaks, which asks for least."""
         for model in reversed(self.models):
-            if terms & type(model).terms:
-                return f"{model.name}: not for this case"
+            for term in terms & model.lacks.keys():
+                return model.lacks[term]
         for known, reason in reversed(self.reasons):
             if terms & known:
                 return reason

@@ -65,12 +65,17 @@ class BalancedDuct(EffectModel):
         self.spread = _LAMINAR_SPREAD * (a.coefficient / a.film if path else 1.0) if laminar else _TURBULENT_SPREAD
         self.terms = frozenset({SOURCE})
         self.recovery = self._recovery()
+        self.lacks = {}
         if self.recovery is not None:
             self.terms |= PAIR
+        else:
+            self.lacks = dict.fromkeys(PAIR, "no recovery factor is known for this flow, and it counts")
         if not laminar:
             self.terms |= {ALONG}
         self.number = walls.conduction_number(case, a)
-        if self.number is not None and (path or a.flux is not None):
+        if not path and a.flux is None:
+            self.lacks[WALL_CONDUCTION] = "the temperature of the wall is prescribed all along"
+        elif self.number is not None:
             self.terms |= {WALL_CONDUCTION}
 
     def _recovery(self) -> float | None:
@@ -225,7 +230,7 @@ class RampedDuct(EffectModel):
 class ExpandingDuct(EffectModel):
     """A gas whose pressure falls by a part that counts: friction, expansion and kinetic energy together."""
 
-    name = "balance of a gas with falling density"
+    name = "gas of falling density"
     terms = PAIR
     answers = (OUTLET, WALL, DUTY, FLUX)
     spread = _TURBULENT_SPREAD

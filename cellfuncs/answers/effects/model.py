@@ -1,5 +1,6 @@
 """What an effect is, and what a model must give so that one can be told."""
 
+from collections.abc import Mapping
 from dataclasses import dataclass
 from typing import Any
 
@@ -62,6 +63,7 @@ class EffectModel:
     terms: frozenset[str] = frozenset()  # of the class: those it may have, of a model: those it has
     answers: tuple[str, ...] = ()
     spread = 0.0
+    lacks: Mapping[str, str] = {}  # why this model, which fits, has not some term of its class
     pairs = True  # friction heat and pressure work are left out together
 
     def value(self, answer: str, left: frozenset[str]) -> tuple[float, float]:

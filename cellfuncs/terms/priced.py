@@ -1,0 +1,83 @@
+"""The effect of each term, ready for a verdict: what leaving it out does to the answer, or why that is not known."""
+
+from collections.abc import Mapping, Sequence
+from dataclasses import dataclass, replace
+
+from cellfuncs.answers import Solution, effects
+from cellfuncs.errors import CellfuncsError
+from cellfuncs.terms.size import Size, num, percent
+
+NO_MODEL = "no model"
+NOT_LEFT_OUT = "never left out"
+_UNITS = {
+    "temperature_difference": "K",
+    "heat_transfer_coefficient": "W/(m2 K)",
+    "power": "W",
+    "heat_flux": "W/m2",
+    "pressure_difference": "Pa",
+}
+
+
+@dataclass(frozen=True)
+class Priced:
+    """An effect as a verdict needs it: over its base, in kelvins for a temperature, how sure it is, in words."""
+
+    ratio: float | None
+    kelvins: float | None
+    doubt: float  # relative: how far the effect may be off, by the model's physics and its error
+    words: str
+
+    def scaled(self, factor: float) -> "Priced":
+        """The same effect in a case that differs a little."""
+        return replace(
+            self,
+            ratio=None if self.ratio is None else self.ratio * factor,
+            kelvins=None if self.kelvins is None else self.kelvins * factor,
+        )
+
+
+Effects = Mapping[str, Priced | str]
+
+
+def priced(solution: Solution, sizes: Sequence[Size]) -> dict[str, Priced | str]:
+    """Term -> its effect, or the words that stand where there is none."""
+    fitting = effects.models_of(solution)
+    found: dict[str, Priced | str] = {}
+    for s in sizes:
+        found[s.term] = NOT_LEFT_OUT if s.leading else _one(solution, s, fitting)
+    return found
+
+
+def _one(solution: Solution, s: Size, fitting: effects.Fitting) -> Priced | str:
+    if is_absent(s):
+        return Priced(0.0, 0.0 if solution.case.answer in effects.TEMPERATURES else None, 0.0, "")
+    try:
+        return in_words(effects.effect(solution, s.term, fitting=fitting))
+    except CellfuncsError as error:
+        text = str(error)
+        return text if text.startswith(NO_MODEL) else f"{NO_MODEL}: {text}"
+
+
+def is_absent(s: Size) -> bool:
+    """Whether the case as stated does not have the term."""
+    return s.size == 0.0 and not s.asked and s.settled is None and not s.no_share and not s.leading
+
+
+def in_words(e: effects.Effect) -> Priced:
+    """An effect with what its reason says."""
+    unit = _UNITS[effects.KINDS[e.answer]]
+    size = f"{e.change:+.3g} {unit}" if e.change else f"0 {unit}"
+    over = f", {percent(e.ratio)} of {num(e.base)} {unit}" if e.ratio is not None else ""
+    doubt = e.spread + (abs(e.error / e.change) if e.change else 0.0)
+    return Priced(e.ratio, e.kelvins, min(doubt, 1.0), f"without it {e.answer.removesuffix(' temperature')} {size}{over} ({e.model})")
+
+
+def together(solution: Solution, terms: Sequence[str]) -> tuple[float | None, float | None, list[str], str]:
+    """All these left out at once: ratio and kelvins by models, the terms that none has, and the models' names."""
+    found, rest = effects.together(solution, terms)
+    if not found:
+        return None, None, rest, ""
+    ratios = [abs(e.ratio) for e in found if e.ratio is not None]
+    kelvins = [e.kelvins for e in found if e.kelvins is not None]
+    names = ", ".join(dict.fromkeys(e.model for e in found))
+    return sum(ratios) if ratios else None, sum(kelvins) if kelvins else None, rest, names
