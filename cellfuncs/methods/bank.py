@@ -1,5 +1,8 @@
 """Tube banks across a stream: heat transfer and pressure drop. Re with the tubes' diameter and the velocity of the
-narrowest section; pitches over the diameter, across and along the stream."""
+narrowest section; pitches over the diameter, across and along the stream.
+
+Scatters are those that authors or handbooks give, mostly from memory.
+"""
 
 import math
 from typing import Any
@@ -49,7 +52,7 @@ def row_factor(arrangement: str, rows: float) -> float:
     "Zukauskas bank",
     gives="mean Nu",
     ranges=(Range("Re", 10.0, 2e6), Range("Pr", 0.7, 500.0), Range("ST/SL", low=0.7)),
-    scatter=0.15,
+    scatter=0.2,
     property_temperature="mean bulk",
     source="zukauskas-1972",
     flows=("bank",),
@@ -62,7 +65,7 @@ def zukauskas(
 ) -> float:  # fmt: skip
     """Mean Nu of a tube bank, C Re^m Pr^0.36 (Pr/Prw)^1/4 by steps of Re, times the factor of few rows.
 
-    The steps jump at Re 1e3, by a third in line and by half staggered."""
+    Below Re 1e3 it takes the numbers of a single cylinder and jumps there by a third."""
     starts, constants, exponents = _STEPS_1972[arrangement]
     constant = steps(reynolds, starts, constants)
     if arrangement == "staggered":

@@ -1,5 +1,8 @@
 """Beds of particles: Nu of the particles and the pressure gradient. Re, Nu with the particle's diameter and the
-superficial velocity; ``voidage`` is the free part of the volume."""
+superficial velocity; ``voidage`` is the free part of the volume.
+
+Scatters are those that authors or handbooks give, mostly from memory.
+"""
 
 from typing import Any
 

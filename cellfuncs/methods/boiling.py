@@ -2,6 +2,8 @@
 
 The driving difference is wall minus saturation. Liquid and vapour at saturation; in film boiling the vapour at the mean
 of wall and saturation.
+
+Scatters are those that authors or handbooks give, mostly from memory.
 """
 
 import math

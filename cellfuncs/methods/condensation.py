@@ -4,6 +4,8 @@ The driving difference is saturation minus wall. Properties of the condensate at
 and heat of vaporisation at saturation. Where the specific heat of the condensate is given, the heat of vaporisation
 carries Rohsenow's addition 0.68 cp ΔT (in tubes 3/8). P = kΔTH/(μ hfg ℓ) is the height in terms of the film, with
 ℓ = (μ²/(ρl(ρl − ρv)g))^1/3; the film has waves from P 15.8 (film Re 30) and is turbulent from 2530 (1800).
+
+Scatters are those that authors or handbooks give, mostly from memory.
 """
 
 from typing import Any

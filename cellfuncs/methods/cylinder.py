@@ -2,6 +2,8 @@
 
 Of a bar the diameter is its width across the stream. ``shape`` is one of the sections of
 ``data/cross_flow_sections.csv``; the other methods are for the round cylinder alone.
+
+Scatters are those that authors or handbooks give, mostly from memory.
 """
 
 from typing import Any
@@ -131,7 +133,7 @@ def whitaker_flow(reynolds: Any, prandtl: Any) -> Any:
     property_temperature="film",
     source="fand-1965",
     flows=("cylinder",),
-    where=_ROUND,
+    where=_ROUND | {"phase": ("liquid",)},
     length=_LENGTH,
 )
 def fand(reynolds: float, prandtl: float) -> float:

@@ -2,6 +2,8 @@
 
 Of a sphere on its cross-section, of a cylinder on diameter × length, of a plate on the wetted face (one side);
 force = c·area·ρU²/2. Re on the diameter or the plate's length, the distance from the edge for local friction.
+
+Scatters are those that authors or handbooks give, mostly from memory.
 """
 
 import math

@@ -2,6 +2,8 @@
 
 Nu of the developed laminar film is on its thickness; elsewhere on (ν²/g)^1/3, which does not ask for the thickness.
 The heat goes from the wall into the film (heated), or through it to its surface (evaporating).
+
+Scatters are those that authors or handbooks give, mostly from memory.
 """
 
 from typing import Any

@@ -2,6 +2,8 @@
 
 ΔT_rec = rU²/(2cp). h is on the difference wall minus recovery temperature; with the reference temperature (or, where
 cp changes much, the reference enthalpy) the formulas of slow flow hold.
+
+Scatters are those that authors or handbooks give, mostly from memory.
 """
 
 from typing import Any

@@ -1,6 +1,9 @@
 """Jets of gas on a wall, mean Nu of the wall that they cover. Re and Nu on the nozzle's diameter; of a slot on its
 hydraulic diameter, twice its width. ``height`` is the distance of the nozzle, ``radius`` half of what one jet covers,
-both over that diameter; ``open_area`` is the nozzles' part of the area."""
+both over that diameter; ``open_area`` is the nozzles' part of the area.
+
+Scatters are those that authors or handbooks give, mostly from memory.
+"""
 
 from cellfuncs.methods.algebra import sqrt
 from cellfuncs.methods.base import Range, follows, method

@@ -3,12 +3,14 @@
 Re and Nu are on the plate's length for a mean, on the distance from the leading edge for a local value. Properties are
 taken at film temperature where nothing else is said. A ``regime`` of a case is laminar (transition behind the plate's
 end), mixed (transition on the plate) or turbulent (tripped at the leading edge).
+
+Scatters are those that authors or handbooks give, mostly from memory.
 """
 
 from typing import Any
 
 from cellfuncs.methods.algebra import larger, log10, smaller, sqrt, where
-from cellfuncs.methods.base import METHODS, Range, method
+from cellfuncs.methods.base import Range, method
 
 TRANSITION = 5e5
 _LAMINAR_RE = Range("Re", 100.0, 3e6)  # to the latest transition seen in a quiet stream
@@ -239,23 +241,3 @@ def _log_law(reynolds: Any, prandtl: Any) -> Any:
     """Local turbulent Nu with cf = 0.455/ln²(0.06 Re)."""
     half = 0.2275 / (2.302585092994046 * larger(log10(0.06 * reynolds), 0.5)) ** 2
     return reynolds * prandtl * half / (1.0 + 12.7 * (prandtl ** (2.0 / 3.0) - 1.0) * sqrt(half))
-
-
-# -- what a case takes ---------------------------------------------------------------------------------
-
-
-def nusselt(
-    reynolds: float, prandtl: float, wall: str, transition: float = TRANSITION, allow: bool = False
-) -> tuple[float, str, str]:
-    """Mean Nu over the plate, the method's name, and what lies outside its range."""
-    if reynolds > transition:
-        outside = METHODS["plate mixed"].check(allow, Re=reynolds, Pr=prandtl)
-        return mixed(reynolds, prandtl, transition), "plate mixed", outside
-    if prandtl < 0.6:
-        name = "Churchill-Ozoe plate"
-        outside = METHODS[name].check(allow, Re=reynolds, Pe=reynolds * prandtl)
-        return churchill_ozoe(reynolds, prandtl, wall), name, outside
-    name = "plate laminar, flux" if wall == "flux" else "plate laminar"
-    outside = METHODS[name].check(allow, Re=reynolds, Pr=prandtl)
-    value = laminar_flux(reynolds, prandtl) if wall == "flux" else laminar(reynolds, prandtl)
-    return value, name, outside

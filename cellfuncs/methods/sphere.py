@@ -1,4 +1,7 @@
-"""Heat transfer of a sphere or drop in a stream; Re and Nu on the diameter, the limit without flow is 2."""
+"""Heat transfer of a sphere or drop in a stream; Re and Nu on the diameter, the limit without flow is 2.
+
+Scatters are those that authors or handbooks give, mostly from memory.
+"""
 
 from cellfuncs.methods import plate
 from cellfuncs.methods.algebra import larger, sqrt
