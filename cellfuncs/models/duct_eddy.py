@@ -9,6 +9,8 @@ It grows like y⁺³ at the wall, as heat transfer at high Pr asks for (Nu ~ Pr^
 τ/τ_w = ξ, so du⁺/dy⁺ = ξ/(1 + ν_t/ν); friction heat (1 + ν_t/ν)(du/dy)², all of it, since what feeds the eddies ends
 as heat in the same place on the mean. Eddy conductivity Pr·(ν_t/ν)/Pr_t with Pr_t = 0.85 + b/Pe_t, Pe_t = Pr·ν_t/ν
 (Kays 1994: b = 0.7, for liquid metals 2), the same along as across. Plates carry the law of the tube in their half gap.
+Sources: Reichardt 1951, Z. angew. Math. Mech. 31, 208-219; Kawai and Larsson 2012, Phys. Fluids 24, 015105; Kays 1994,
+J. Heat Transfer 116, 284-295; Notter and Sleicher 1971, Chem. Eng. Sci. 26, 161-171.
 """
 
 from functools import lru_cache

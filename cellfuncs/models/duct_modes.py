@@ -5,7 +5,8 @@ With w = √ε·λ·v it is the symmetric first-order pair B z = μ A z, z = (v,
 A is positive definite, so all μ = 1/λ are real, negative ones belong to what decays upstream, and the modes are
 orthogonal in A; coefficients follow from inner products. An insulated wall has λ = 0 as well (a uniform temperature):
 it is taken out exactly, since every other mode carries no energy along.
-Source: Papoutsakis, Ramkrishna and Lim 1980, The extended Graetz problem with Dirichlet wall boundary conditions.
+Source: Papoutsakis, Ramkrishna and Lim 1980, The extended Graetz problem with Dirichlet wall boundary conditions,
+Appl. Sci. Res. 36, 13-34, and ... with prescribed wall flux, AIChE J. 26, 779-787.
 """
 
 from dataclasses import dataclass
