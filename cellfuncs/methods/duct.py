@@ -1,8 +1,8 @@
 """Heat transfer and friction of a duct at any Re in one call, and the names that cases and terms use.
 
 Methods stand in ``duct_laminar``, ``duct_series``, ``duct_entry``, ``duct_simultaneous``, ``duct_turbulent``,
-``duct_rough``, ``liquid_metal``, ``corrections``, ``friction``, ``friction_laminar``, ``slip``, ``coil``,
-``coil_friction`` and ``minor_losses``. f is Darcy's; Nu is on the hydraulic diameter and the bulk temperature.
+``duct_transition``, ``duct_rough``, ``liquid_metal``, ``corrections``, ``friction``, ``friction_laminar``, ``slip``,
+``coil``, ``coil_friction`` and ``minor_losses``. f is Darcy's; Nu is on the hydraulic diameter and the bulk temperature.
 """
 
 from cellfuncs.methods import (  # noqa: F401
@@ -12,6 +12,7 @@ from cellfuncs.methods import (  # noqa: F401
     duct_rough,
     duct_series,
     duct_simultaneous,
+    duct_transition,
     minor_losses,
     slip,
 )

@@ -1,4 +1,4 @@
-"""Heat transfer in turbulent and transitional duct flow, smooth walls or any wall by its friction factor.
+"""Heat transfer in turbulent duct flow, smooth walls or any wall by its friction factor.
 
 Nu on the hydraulic diameter, properties at the mean bulk temperature unless said. Property-ratio corrections stand in
 ``corrections.py``. f is Darcy's; where a method takes it, it may be that of a slightly rough wall.
@@ -6,7 +6,7 @@ Nu on the hydraulic diameter, properties at the mean bulk temperature unless sai
 
 from cellfuncs.methods.algebra import exp, sqrt
 from cellfuncs.methods.base import Range, method
-from cellfuncs.methods.duct_laminar import LAMINAR_UP_TO, LENGTH, friction_times_re
+from cellfuncs.methods.duct_laminar import LENGTH, friction_times_re
 from cellfuncs.methods.friction import konakov
 
 TURBULENT_FROM = 4000.0
@@ -31,29 +31,6 @@ def gnielinski(reynolds: float, prandtl: float, friction: float, diameter_over_l
     eighth = friction / 8.0
     developed = eighth * (reynolds - 1000.0) * prandtl / (1.0 + 12.7 * sqrt(eighth) * (prandtl**TWO_THIRDS - 1.0))
     return developed * (1.0 + diameter_over_length**TWO_THIRDS)
-
-
-@method(
-    "transition blend",
-    gives="mean Nu",
-    ranges=(Range("Re", LAMINAR_UP_TO, TURBULENT_FROM), Range("Pr", 0.6, 1000.0), Range("L/D", low=1.0)),
-    scatter=0.2,
-    property_temperature="mean bulk",
-    source="gnielinski-2013",
-    flows=("duct",),
-    where={"section": ("tube",), **STRAIGHT},
-    length=LENGTH,
-)
-def transition_blend(reynolds: float, prandtl: float, length_over_diameter: float, wall: str) -> float:
-    """Mean Nu of a tube between Re 2300 and 4000, straight in Re between laminar and turbulent (Gnielinski 2013)."""
-    graetz = (LAMINAR_UP_TO * prandtl / length_over_diameter) ** THIRD
-    if wall == "flux":
-        laminar = (4.364**3 + 0.6**3 + (1.953 * graetz - 0.6) ** 3) ** THIRD
-    else:
-        laminar = (3.66**3 + 0.7**3 + (1.615 * graetz - 0.7) ** 3) ** THIRD
-    turbulent = gnielinski(TURBULENT_FROM, prandtl, konakov(TURBULENT_FROM), 1.0 / length_over_diameter)
-    share = (reynolds - LAMINAR_UP_TO) / (TURBULENT_FROM - LAMINAR_UP_TO)
-    return (1.0 - share) * laminar + share * turbulent
 
 
 @method(

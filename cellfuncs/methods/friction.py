@@ -216,6 +216,22 @@ def fully_rough(relative_roughness: float) -> float:
     return (1.74 - 2.0 * log10(2.0 * relative_roughness)) ** -2.0
 
 
+@method(
+    "Dean plates",
+    gives="Darcy friction factor",
+    ranges=(Range("Re", 1.2e4, 1.2e6), SMOOTH),
+    scatter=0.05,
+    property_temperature="mean bulk",
+    source="dean-1978",
+    flows=("duct",),
+    where={"section": ("plates",), **STRAIGHT},
+    length=LENGTH,
+)
+def dean_plates(reynolds: float) -> float:
+    """f of turbulent flow between smooth plates, 0.347 Re^−1/4 on the hydraulic diameter."""
+    return 4.0 * 0.0868 * reynolds**-0.25
+
+
 @follows("Reε")
 def _height_of_roughness(reynolds: float, relative_roughness: float) -> float:
     return roughness_reynolds(reynolds, haaland(reynolds, relative_roughness), relative_roughness)

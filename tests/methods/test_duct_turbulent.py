@@ -9,6 +9,7 @@ from hypothesis import strategies as st
 
 from cellfuncs.errors import CellfuncsError
 from cellfuncs.methods import METHODS, coil, corrections, duct_entry, duct_rough, liquid_metal
+from cellfuncs.methods import duct_transition as transition
 from cellfuncs.methods import duct_turbulent as turbulent
 from cellfuncs.methods.friction import colebrook_white, fully_rough, konakov, roughness_reynolds, smooth_friction
 
@@ -19,12 +20,12 @@ PRANDTL = st.floats(math.log(0.6), math.log(1000.0)).map(math.exp)
 @given(PRANDTL, st.floats(1.0, 1e4))
 def test_transition_meets_both_regimes(prandtl, length):
     """Gnielinski 2013: straight between the laminar value at 2300 and the turbulent one at 4000, without a jump."""
-    low = turbulent.transition_blend(2300.0, prandtl, length, "temperature")
+    low = transition.transition_blend(2300.0, prandtl, length, "temperature")
     assert low == pytest.approx(duct_entry.gnielinski_laminar(length / (2300.0 * prandtl)), rel=1e-9)
-    high = turbulent.transition_blend(4000.0, prandtl, length, "temperature")
+    high = transition.transition_blend(4000.0, prandtl, length, "temperature")
     assert high == pytest.approx(turbulent.gnielinski(4000.0, prandtl, konakov(4000.0), 1.0 / length), rel=1e-9)
     assert high > low
-    flux = turbulent.transition_blend(4000.0, prandtl, length, "flux")
+    flux = transition.transition_blend(4000.0, prandtl, length, "flux")
     assert flux == pytest.approx(high, rel=1e-9)
 
 
