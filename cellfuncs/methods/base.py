@@ -195,7 +195,7 @@ class Method:
             with np.errstate(all="ignore"):
                 return function(*taken)
         except (ZeroDivisionError, OverflowError):
-            raise NumberRefused(f"{self.name} has no finite {symbol} there") from None
+            raise NumberRefused(f"{self.name} has no finite value of {symbol} there") from None
 
     def _check_range(self, known: Mapping[str, Any], extremes: Mapping[str, tuple[float, float]], allow: bool) -> None:
         by_symbol = {inputs()[name].symbol: ends for name, ends in extremes.items()}

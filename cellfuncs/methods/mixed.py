@@ -3,7 +3,7 @@
 import math
 from typing import Any
 
-from cellfuncs.methods.base import METHODS, Range, method
+from cellfuncs.methods.base import Range, method
 
 _RATIO = (Range("Gr/Re2", 0.0, 100.0),)
 
@@ -59,11 +59,6 @@ def blend_across_plate(forced: Any, free: Any) -> Any:
 def blend_across_body(forced: Any, free: Any) -> Any:
     """Nu of a level cylinder or a sphere in a level stream, with the exponent 4."""
     return _blended(forced, free, "transverse", 4.0)
-
-
-def outside(ratio: float, allow: bool) -> str:
-    """What lies outside the range of the blend."""
-    return METHODS["Churchill blend"].check(allow, **{"Gr/Re2": ratio})
 
 
 # -- level tubes, laminar --------------------------------------------------------------------------------------------

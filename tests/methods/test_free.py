@@ -6,7 +6,7 @@ from hypothesis import given
 from hypothesis import strategies as st
 
 from cellfuncs.errors import OutOfRange
-from cellfuncs.methods import METHODS, chimney, free, free_body, free_plate
+from cellfuncs.methods import METHODS, chimney, free_body, free_plate
 
 FREE = [name for name, one in METHODS.items() if one.flows == ("free",)]
 BY_RA = [name for name in FREE if METHODS[name].gives == "mean Nu" and "rayleigh" in METHODS[name].inputs]
@@ -119,21 +119,3 @@ def test_best_spacing_with_a_flux_joins_the_limits(heated, nusselt):
     narrow = {"both": 12.0, "one": 6.0}[heated]
     assert nusselt(number) < (number / narrow) ** 0.5
     assert nusselt(number) == pytest.approx({"both": 0.62, "one": 0.49}[heated], abs=5e-3)
-
-
-# -- by surface ------------------------------------------------------------------------------------------------------
-
-
-@pytest.mark.parametrize(("surface", "more"), [("inclined plate", {"angle from vertical": 75.0}), ("sphere", {})])
-def test_ranges_refuse(surface, more):
-    with pytest.raises(OutOfRange):
-        free.nusselt(surface, 1e13, 0.7, False, **more)
-
-
-@pytest.mark.parametrize(
-    ("rayleigh", "aspect", "heated", "still"),
-    [(500.0, 5.0, "from the side", True), (1e5, 5.0, "from the side", False), (1e7, 1.0, "from above", True)],
-)
-def test_enclosures_are_still_or_turn_over(rayleigh, aspect, heated, still):
-    nusselt, *_ = free.enclosure(rayleigh, 0.7, aspect, heated, False)
-    assert (nusselt == 1.0) is still
