@@ -1,6 +1,7 @@
-"""The command line: `cellfuncs recalc`, `cellfuncs functions`, `cellfuncs starter`.
+"""The command line: `cellfuncs recalc`, `cellfuncs check`, `cellfuncs functions`, `cellfuncs starter`.
 
-Exit codes: 0 fine, 2 the input could not be used (one line on stderr says why), 130 interrupted.
+Exit codes: 0 fine, 1 a check found an error, 2 the input could not be used (one line on stderr says why),
+130 interrupted.
 Whatever is heavy is imported inside the command that needs it, so that `--help` answers at once.
 """
 
@@ -12,7 +13,7 @@ from collections.abc import Sequence
 from cellfuncs import __version__
 from cellfuncs.errors import CellfuncsError
 
-FINE, UNUSABLE, INTERRUPTED = 0, 2, 130
+FINE, FOUND, UNUSABLE, INTERRUPTED = 0, 1, 2, 130
 
 
 def main(arguments: Sequence[str] | None = None) -> int:
@@ -60,7 +61,7 @@ def _parser() -> argparse.ArgumentParser:
     parser = argparse.ArgumentParser(
         prog="cellfuncs",
         description="Cell functions for convection and fluid friction, from the command line.",
-        epilog="Exit codes: 0 fine, 2 the input could not be used.",
+        epilog="Exit codes: 0 fine, 1 a check found an error, 2 the input could not be used.",
     )
     parser.add_argument("--version", action="version", version=f"cellfuncs {__version__}")
     commands = parser.add_subparsers(title="commands", metavar="COMMAND", required=True)
@@ -91,6 +92,18 @@ def _parser() -> argparse.ArgumentParser:
         help="write the names of our functions as this program reads them at once",
     )
     recalc.set_defaults(run=_recalc)
+
+    check = commands.add_parser(
+        "check",
+        help="check workbooks that somebody else wrote: units, properties, correlations, neglected effects",
+        description="Reads BOOK (.xlsx, .xlsm) as it stands, follows the units through its formulas, recomputes what "
+        "it states from what else it states, and names the likely cause where they differ. BOOK is never changed.",
+    )
+    check.add_argument("books", metavar="BOOK", nargs="+", help="a workbook, or a folder with workbooks")
+    check.add_argument("--json", metavar="F", help="write the report as JSON (with several workbooks F is a folder)")
+    check.add_argument("--html", metavar="F", help="write it as one page to read and print (likewise)")
+    check.add_argument("--annotate", metavar="F", help="write a copy with notes on its cells (likewise)")
+    check.set_defaults(run=_check)
 
     functions = commands.add_parser(
         "functions",
@@ -135,6 +148,35 @@ def _recalc(options: argparse.Namespace) -> int:
         print(faults)
     print(f"wrote {result.out}")
     return FINE
+
+
+def _check(options: argparse.Namespace) -> int:
+    from pathlib import Path
+
+    from cellfuncs.sheets.reporting import files, terminal
+
+    books = list(dict.fromkeys(files.workbooks(options.books)))
+    if not books:
+        return _refuse("there is no .xlsx or .xlsm workbook there")
+    names = files.names_of(books)
+    places = (Path(wanted) if wanted else None for wanted in (options.json, options.html, options.annotate))
+    outputs = files.Outputs(*places)
+    outputs.refuse_input(books)
+    show, code = _Progress(), FINE
+    for book in books:
+        show(f"checking {book}")
+        try:
+            report = files.check_file(book, outputs, names.get(book))
+        except CellfuncsError as error:
+            show.clear()
+            _refuse(f"{book}: {error}" if names else str(error))
+            code = code or UNUSABLE
+            continue
+        show.clear()
+        terminal.show([report], sys.stdout)
+        if report.has_errors:
+            code = FOUND
+    return code
 
 
 def _starter(options: argparse.Namespace) -> int:

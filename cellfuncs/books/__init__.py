@@ -15,6 +15,7 @@ splice.py      new values set into the sheet's own text
 rewrite.py     formulas changed wherever a part writes one
 parts.py       parts, relations and content types added and taken out
 notes.py       notes put on cells
+added.py       a sheet of texts added
 share.py       a copy with values in the place of some formulas, which are kept in notes
 xmltext.py     values as cell texts and back
 grid.py        rows, columns, areas

@@ -6,28 +6,24 @@ Each such formula is kept in a note on its cell; what finds no place in notes is
 from __future__ import annotations
 
 import re
-from collections.abc import Iterable, Sequence
+from collections.abc import Sequence
 from dataclasses import dataclass
 from functools import partial
-from xml.sax.saxutils import quoteattr
 
+from cellfuncs.books.added import add_sheet
 from cellfuncs.books.engine import Evaluation
 from cellfuncs.books.externals import absolute
 from cellfuncs.books.formulas import IsOurs, normalised, reference
 from cellfuncs.books.grid import Area, area_text
 from cellfuncs.books.notes import Note, add_notes
-from cellfuncs.books.parts import HEAD, Draft, parsed, put_in
+from cellfuncs.books.parts import Draft
 from cellfuncs.books.reading import Formula
 from cellfuncs.books.rewrite import parts_with_formulas, rewritten
-from cellfuncs.books.scans import MAIN, RELATIONS
-from cellfuncs.books.splice import apply_edits, set_values
-from cellfuncs.books.xmltext import escaped
-from cellfuncs.errors import BookRefused
+from cellfuncs.books.splice import set_values
 
 # A thousand notes open in 3 s in an office program, five thousand in 11 s, twenty thousand in 90 s.
 MAX_NOTES = 1000
 
-_SHEET_TYPE = "application/vnd.openxmlformats-officedocument.spreadsheetml.worksheet+xml"
 _SPILL = re.compile(r"(?:_xlfn\.)?ANCHORARRAY\(([^()\"]+)\)", re.IGNORECASE)
 
 Spot = tuple[int, int]
@@ -160,41 +156,6 @@ def _without_chain(draft: Draft) -> None:
 
 
 def _listed(draft: Draft, left: Sequence[Left], name: str) -> str:
-    part = draft.book.part
-    data = draft.read(part)
-    root = parsed(data, part)
-    sheets = root.first("sheets")
-    if sheets is None:
-        raise BookRefused("The workbook's list of sheets is written in a way that cannot be followed.")
-    taken = {sheet.name.casefold() for sheet in draft.book.sheets}
-    number, wanted = 1, name
-    while wanted.casefold() in taken:
-        number += 1
-        wanted = f"{name} {number}"
-    place = draft.free_name("xl/worksheets/sheet{}.xml")
-    draft.add(place, _list_sheet(left), _SHEET_TYPE)
-    key = draft.relate(part, f"{RELATIONS}/worksheet", place)
-    ids = [int(text) for s in sheets.children if (text := s.attributes.get("sheetId", "")).isdigit()]
-    p = sheets.prefix
-    new = (
-        f'<{p}sheet xmlns:r="{RELATIONS}" name={quoteattr(wanted)} sheetId="{max(ids, default=0) + 1}"'
-        f" r:id={quoteattr(key)}/>"
-    )
-    draft.write(part, apply_edits(data, [put_in(data, sheets, new.encode())]))
-    return f"{len(left)} formulas found no room in notes ({MAX_NOTES} a sheet); they are listed on the sheet {wanted}."
-
-
-def _list_sheet(left: Iterable[Left]) -> bytes:
     rows = [("sheet", "cell", "formula"), *((row.sheet, row.place, row.text) for row in left)]
-    cells = (
-        f'<row r="{number}">'
-        + "".join(
-            f'<c r="{letter}{number}" t="inlineStr"><is><t xml:space="preserve">{escaped(text)}</t></is></c>'
-            for letter, text in zip("ABC", row, strict=True)
-        )
-        + "</row>"
-        for number, row in enumerate(rows, 1)
-    )
-    columns = '<cols><col min="1" max="1" width="24" customWidth="1"/><col min="3" max="3" width="90" customWidth="1"/>'
-    text = f'<worksheet xmlns="{MAIN}">{columns}</cols><sheetData>{"".join(cells)}</sheetData></worksheet>'
-    return HEAD + text.encode()
+    wanted = add_sheet(draft, name, rows, (24, 10, 90))
+    return f"{len(left)} formulas found no room in notes ({MAX_NOTES} a sheet); they are listed on the sheet {wanted}."

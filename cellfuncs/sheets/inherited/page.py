@@ -16,6 +16,7 @@ from cellfuncs.sheets.inherited.formats import GENERAL, Shown, formats_of
 Spot = tuple[int, int]  # row, column
 
 MOST_CELLS = 400_000  # filled cells of all sheets that are looked at
+LONGEST = 4_000  # signs of a text
 MOST_MERGED = 2_000  # cells under one merge that count as the merged cell
 
 _STYLE = re.compile(rb'\ss="(\d{1,6})"')
@@ -68,7 +69,7 @@ def read_pages(book: Book) -> list[Page]:
         pages.append(page)
     strings = shared_strings(book, {number for _, _, number in waiting})
     for page, spot, number in waiting:
-        text = strings.get(number, "")
+        text = printable(strings.get(number, ""))
         if text.strip():
             page.values[spot] = text
     return pages
@@ -99,6 +100,8 @@ def _fill(page: Page, sheet: Sheet, styles: list[Shown], waiting: list, most: in
             continue
         else:
             value = decoded(mark, raw)
+        if isinstance(value, str):
+            value = printable(value)
         if value is None or (isinstance(value, str) and not value.strip()):
             continue
         page.values[spot] = value
@@ -121,6 +124,12 @@ def _covers(merges: list[Area]) -> Mapping[Spot, Spot]:
                 if (row, column) != (top, left):
                     found[row, column] = (top, left)
     return found
+
+
+def printable(text: str) -> str:
+    """A text without signs that steer a terminal or turn the direction of writing; at most ``LONGEST`` signs."""
+    text = text[:LONGEST]
+    return text if text.isprintable() else "".join(c if c.isprintable() else " " for c in text)
 
 
 def is_number(value: Value) -> bool:
