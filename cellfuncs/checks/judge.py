@@ -19,6 +19,8 @@ from cellfuncs.sources import cite
 _LOOSE = 0.05
 # how many trials are asked for a cause
 _TRIED = 4
+# what another trial must cover of the formula, and how sure its cause must be where it covers less than the first
+_COVERED, _SURE = 0.5, 0.6
 # relative: the same quantity, once typed and once referred to, in two units
 _COPY = 0.002
 
@@ -72,7 +74,7 @@ def _judged(entry: Stated, resolver: Resolver) -> Doubt | bool | None:
     if not causes or causes[0].guess.code == "unknown":
         best, causes = _better_explained(best, causes, tried)
     # a relation that misses part of what the formula uses may not be meant at all
-    if not causes and not (best.coverage == 1.0 and (best.local or entry.typed)):
+    if not causes and not (best.coverage == 1.0 and (best.local or entry.typed or not best.derived)):
         return None
     if not entry.typed and best.coverage < 0.5 and not best.local:
         return None
@@ -83,10 +85,11 @@ def _better_explained(best: Trial, causes: list[Ranked], tried: list[Trial]) -> 
     """Another of the strongest trials, where only that one finds a cause."""
     others = sorted((t for t in tried if t is not best and t.expected is not None), key=_strength, reverse=True)
     for trial in others[:_TRIED]:
-        if trial.coverage < best.coverage:
+        if trial.coverage < min(best.coverage, _COVERED):
             continue
         found = causes_of(trial)
-        if found and found[0].guess.code != "unknown":
+        sure = _SURE if trial.coverage < best.coverage else 0.0
+        if found and found[0].guess.code != "unknown" and found[0].confidence > sure:
             return trial, found
     return best, causes
 
@@ -161,6 +164,7 @@ def _sureness(doubt: Doubt, references: References) -> tuple[float, ...]:
     """How sure it is that the fault starts here: computed here, or pasted among formulas rather than an input."""
     return (
         not doubt.entry.typed and doubt.trial.local,
+        doubt.trial.role is None or not doubt.entry.typed,
         -doubt.trial.derived,
         references.pasted(doubt.entry.cell),
         doubt.trial.coverage,
@@ -213,14 +217,7 @@ def _cause(doubt: Doubt, references: References) -> tuple[str, str, float]:
             rest = "; ".join(f"{r.guess.words} ({r.guess.code}, {r.confidence:.0%})" for r in doubt.causes[1:3])
             words += f"; also possible: {rest}"
         return best.guess.code, words, best.confidence
-    trial = doubt.trial
-    if doubt.entry.typed and trial.relation.source not in ("properties", "methods") and _among_formulas(trial):
-        return "hard-coded", "a pasted number that no longer follows from its inputs", 0.7
     return "unknown", "no known mistake gives this number", 0.3
-
-
-def _among_formulas(trial: Trial) -> bool:
-    return sum(not entry.typed for entry in trial.case.all()) >= 2
 
 
 def _severity(doubt: Doubt, code: str) -> str:

@@ -12,7 +12,9 @@ from cellfuncs.checks.stated import SheetCase, Stated
 # K: 273 for 273.15, or a temperature shown to a tenth
 _TEMPERATURE = 0.2
 # the part of the numbers around that must be formulas for a typed one to count as pasted
-_PASTED = 0.5
+PASTED = 0.5
+# relative: how near a pasted number must come to a method
+_PASTED_NEAR = 0.03
 # what is given or taken: the sign is a convention of the sheet
 _EITHER_SIGN = frozenset(
     {"power", "energy", "heat_flux", "heat_per_length", "temperature_difference", "pressure_difference"}
@@ -107,13 +109,21 @@ class Trial:
     @cached_property
     def match(self) -> Admissible | None:
         """The first answer that the number agrees with; one with a code is a known mistake."""
+        pasted = self.references.pasted(self.entry.cell) >= PASTED
         for answer in self.answers:
+            if answer.loose and pasted and not self._near_a_method(answer):
+                continue
             stated = self.entry.si
             if self.entry.kind in _EITHER_SIGN and stated * answer.value < 0:
                 stated = -stated
             if abs(stated - answer.value) <= self.tolerance(answer):
                 return answer
         return None
+
+    def _near_a_method(self, loose: Admissible) -> bool:
+        """Whether a number pasted among formulas is near one method; their spread excuses only typed inputs."""
+        right = [a for a in self.answers if not a.code and not a.loose] or [loose]
+        return any(abs(self.entry.si - a.value) <= _PASTED_NEAR * abs(a.value) for a in right)
 
     @cached_property
     def derived(self) -> int:
@@ -143,7 +153,7 @@ def trials(entry: Stated, resolver: Resolver) -> list[Trial]:
             found.append(Trial(relation, entry, None, inputs, case, references))
     if not entry.typed:
         found += _solved_for(entry, resolver)
-    elif not found and references.pasted(entry.cell) >= _PASTED:
+    elif not found and references.pasted(entry.cell) >= PASTED:
         found += _solved_for_pasted(entry, resolver)
     return [trial for trial in found if trial.answers]
 
@@ -164,8 +174,7 @@ def _solved_for(entry: Stated, resolver: Resolver) -> list[Trial]:
             if inputs is not None and given.cell != entry.cell:
                 inputs[""] = Resolved(given.si, frozenset((given.cell,)), 0.0, given)
                 trial = Trial(relation, entry, role, inputs, resolver.case, resolver.references)
-                if trial.local:
-                    found.append(trial)
+                found.append(trial)
     return found
 
 
@@ -174,7 +183,7 @@ def _solved_for_pasted(entry: Stated, resolver: Resolver) -> list[Trial]:
     case = resolver.case
     found = []
     for relation in RELATIONS:
-        if relation.takes_case or not relation.derives or not case.stated.get(relation.gives):
+        if relation.takes_case or not case.stated.get(relation.gives):
             continue
         role = next((r for r in relation.needs if entry.key in relation.keys_for(r, case)), None)
         if role is None or not relation.applies(case):
@@ -198,9 +207,11 @@ def _inputs_but(relation: Relation, role: str, entry: Stated, resolver: Resolver
         if need == role:
             continue
         picked = resolver.pick(relation.keys_for(need, resolver.case), entry)
-        if picked is None or picked.cell not in own:
-            if need in relation.optional:
-                continue
+        if need in relation.optional and (picked is None or picked.cell not in own):
+            continue
+        if picked is None:
             return None
         found[need] = Resolved(picked.si, frozenset((picked.cell,)), 0.0, picked)
-    return found
+    # one of the inputs may have been forgotten
+    missing = sum(resolved.entry is None or resolved.entry.cell not in own for resolved in found.values())
+    return found if missing <= 1 and len(found) > missing else None

@@ -59,7 +59,7 @@ def _other_temperatures(case: SheetCase) -> Iterator[tuple[float, str, float]]:
         for b, label_b in stated[k + 1 :]:
             yield (a + b) / 2.0, f"mean of {label_a} and {label_b}", 0.8
     for celsius in _USUAL:
-        yield celsius + _ZERO, "a usual temperature of tables", 0.8
+        yield celsius + _ZERO, "a usual temperature of tables", 1.0
 
 
 def _pressures(name: str, what: str, at: float, pressure: float) -> Iterator[Guess]:

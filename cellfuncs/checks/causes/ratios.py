@@ -54,6 +54,13 @@ _USUAL: Mapping[float, str] = {
 _DECIMALS = (10.0, 100.0)
 
 
+# what a typed number is off by without being computed at all
+_PLAIN = frozenset({1000.0, 1e6, 60.0, 3600.0, 3.6, 1e5, 12.0, 144.0})
+_GRAVITY = 9.80665
+# ratios this near to one have many explanations
+_NEAR = 1.9
+
+
 def usual(ratio: float, typed: bool = False) -> Iterator[tuple[str, float]]:
     """The words of every usual factor that a ratio is, or is the inverse of, with the factor itself."""
     for factor, words in _USUAL.items():
@@ -87,7 +94,8 @@ def of_unit(kind: str, unit: str, si: float, expected: float, typed: bool) -> It
     for text, factor in _factors(kind):
         ratio = own / factor
         if abs(ratio - 1.0) > 1e-6 and not (typed and any(_is(ratio, d) for d in _DECIMALS)):
-            yield Guess("unit-factor", f"the number is in {text}, not in {unit or 'SI'}", expected * ratio, 1.0)
+            prior = 0.35 if 1.0 / _NEAR < ratio < _NEAR else 1.0
+            yield Guess("unit-factor", f"the number is in {text}, not in {unit or 'SI'}", expected * ratio, prior)
 
 
 def _own(kind: str, unit: str) -> float:
@@ -106,7 +114,10 @@ def of_number(si: float, expected: float, typed: bool) -> Iterator[Guess]:
     if not expected or si / expected <= 0:
         return
     for words, factor in usual(si / expected, typed):
-        yield Guess("unit-factor", f"it is {words}", expected * factor, 0.9)
+        plain = any(_is(factor, f) for f in _PLAIN)
+        prior = (0.9 if plain else 0.25) if typed else (0.35 if 1.0 / _NEAR < factor < _NEAR else 0.9)
+        code = "dimension-mismatch" if _is(factor, _GRAVITY) else "unit-factor"
+        yield Guess(code, f"it is {words}", expected * factor, prior)
 
 
 def of_input(

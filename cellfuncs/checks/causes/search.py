@@ -2,6 +2,7 @@
 
 from collections.abc import Iterator
 from dataclasses import replace
+from itertools import pairwise
 
 from cellfuncs.checks.causes import digits, of_property, ratios, substitutes
 from cellfuncs.checks.causes.guess import Guess, Ranked, ranked
@@ -24,7 +25,7 @@ def causes_of(trial: Trial) -> list[Ranked]:
     scatter = max(expected.scatter if expected.scatter < 0.1 else 0.02, near)
     tolerance = scatter * abs(entry.si) + (entry.rounding if entry.typed else 0.0)
     if entry.kind == "temperature":
-        tolerance = 0.2 + 0.005 * abs(entry.si - expected.value)
+        tolerance = (0.2 if entry.typed else 0.02) + 0.004 * abs(entry.si - expected.value)
     return ranked(_all(trial, expected.value), entry.si, tolerance)
 
 
@@ -34,10 +35,15 @@ def _all(trial: Trial, expected: float) -> Iterator[Guess]:
         yield Guess(trial.match.code, trial.match.words, entry.si, 3.0)
     yield from _declared(trial)
     yield from substitutes.of_result(entry, expected)
-    yield from ratios.of_unit(entry.kind, entry.unit, entry.si, expected, entry.typed)
-    yield from ratios.of_number(entry.si, expected, entry.typed)
-    yield from substitutes.of_area(entry, expected)
-    if entry.typed:
+    yield from _less_likely(ratios.of_unit(entry.kind, entry.unit, entry.si, expected, entry.typed), trial)
+    yield from _less_likely(ratios.of_number(entry.si, expected, entry.typed), trial)
+    yield from substitutes.of_area(entry, expected, any("diameter" in name or name == "bore" for name in trial.inputs))
+    if not entry.typed:
+        yield from substitutes.upside_down(entry, expected)
+    else:
+        pasted = trial.references.pasted(entry.cell)
+        if pasted and trial.relation.source != "properties":
+            yield Guess("hard-coded", "a pasted number that no longer follows from its inputs", entry.si, 0.35 * pasted)
         answer = trial.expected
         yield from digits.guesses(entry.value, entry.si, expected, trial.tolerance(answer) if answer else 0.0)
     if trial.relation.source == "properties":
@@ -47,6 +53,14 @@ def _all(trial: Trial, expected: float) -> Iterator[Guess]:
         yield from _of_inputs(trial, expected)
     if trial.relation.source == "methods":
         yield from _of_exponents(trial, expected)
+
+
+def _less_likely(guesses: Iterator[Guess], trial: Trial) -> Iterator[Guess]:
+    """A factor explains less where the formula does not even use all that it should."""
+    used = trial.references.above(trial.entry.cell)
+    doubtful = bool(used) and not trial.support <= used
+    for guess in guesses:
+        yield replace(guess, prior=guess.prior * 0.4) if doubtful else guess
 
 
 def _declared(trial: Trial) -> Iterator[Guess]:
@@ -62,18 +76,28 @@ def _declared(trial: Trial) -> Iterator[Guess]:
 
 
 def _of_inputs(trial: Trial, expected: float) -> Iterator[Guess]:
+    used_cells = None if trial.entry.typed else trial.references.above(trial.entry.cell)
+    never = frozenset((trial.entry.cell, *trial.references.below(trial.entry.cell)))
+    yield from substitutes.without_density(trial.inputs, lambda name, value: _changed(trial, name, value))
+    stated = [r.entry for r in trial.inputs.values() if r.entry is not None]
+    temperatures_in = [entry for entry in stated if entry.kind == "temperature"]
+    for a, b in pairwise(temperatures_in):
+        yield from substitutes.of_difference(a, b, expected)
     for name, resolved in trial.inputs.items():
 
         def answer(value: float, name: str = name) -> float:
             return _changed(trial, name, value)
 
-        yield from substitutes.of_input(name, resolved, trial.case, answer)
+        yield from substitutes.of_input(name, resolved, trial.case, answer, never)
         used = trial.references.direct(trial.entry.cell)
         yield from substitutes.in_place_of(name, resolved, used, trial.support, answer)
-        yield from substitutes.left_out(name, resolved, answer, expected, trial.entry.si)
+        yield from substitutes.left_out(resolved.entry, used_cells, expected)
         if resolved.entry is not None:
             entry = resolved.entry
-            yield from ratios.of_input(f'"{entry.label}"', entry.kind, entry.unit, resolved.value, answer)
+            words = f'"{entry.label}"'
+            found = ratios.of_input(words, entry.kind, entry.unit, resolved.value, answer)
+            # a pasted number came from a formula that is no longer there
+            yield from (replace(g, prior=g.prior * 0.25) for g in found) if trial.entry.typed else found
     yield from _together(trial)
 
 

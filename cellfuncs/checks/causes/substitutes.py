@@ -16,8 +16,10 @@ _SIDES = (*_ROUND, "inside_radius", "outside_radius", "insulation_radius", "leng
 Answer = Callable[[float], float]
 
 
-def of_input(name: str, resolved: Resolved, case: SheetCase, answer: Answer) -> Iterator[Guess]:
-    """What the relation gives when this input is taken for something near."""
+def of_input(
+    name: str, resolved: Resolved, case: SheetCase, answer: Answer, not_these: frozenset[str]
+) -> Iterator[Guess]:
+    """What the relation gives when this input is taken for something near, but none of the cells ``not_these``."""
     entry, value = resolved.entry, resolved.value
     key = entry.key if entry else name
     kind = entry.kind if entry else _kind(name)
@@ -40,7 +42,7 @@ def of_input(name: str, resolved: Resolved, case: SheetCase, answer: Answer) -> 
         yield Guess("fanning-for-darcy", f"{label} is taken as Darcy's", answer(value / 4.0), 1.1)
     yield from _viscosities(key, label, entry, case, answer, value)
     if entry is not None:
-        yield from _other_cells(entry, case, answer)
+        yield from _other_cells(entry, case, answer, not_these)
         yield from _temperature_scale(entry, label, answer)
 
 
@@ -72,10 +74,12 @@ def _viscosities(
         yield Guess("kinematic-for-dynamic", words, answer(other), 1.3)
 
 
-def _other_cells(entry: Stated, case: SheetCase, answer: Answer) -> Iterator[Guess]:
+def _other_cells(entry: Stated, case: SheetCase, answer: Answer, not_these: frozenset[str]) -> Iterator[Guess]:
     """Another stated number of the same kind stands for this one."""
     for other in case.all():
-        if other.cell == entry.cell or other.kind != entry.kind or other.kind in ("dimensionless", "fraction"):
+        if other.cell == entry.cell or other.cell in not_these:
+            continue
+        if other.kind != entry.kind or other.kind in ("dimensionless", "fraction"):
             continue
         sides = other.key in _SIDES and entry.key in _SIDES and other.kind == "length"
         round_ones = other.key in _ROUND and entry.key in _ROUND
@@ -116,16 +120,49 @@ _POWERS = (
 )
 
 
-def left_out(name: str, resolved: Resolved, answer: Answer, expected: float, si: float) -> Iterator[Guess]:
-    """The input is missing, or stands once too often, in the units of the sheet or in SI."""
-    entry = resolved.entry
-    if entry is None or not expected or not si or entry.kind in ("temperature", "dimensionless", "fraction"):
+def left_out(entry: Stated | None, used: frozenset[str] | None, expected: float) -> Iterator[Guess]:
+    """The input is missing, or stands once too often, in the units of the sheet or in SI.
+
+    ``used`` are the cells that the formula uses; an input that is not among them can only be missing.
+    """
+    if entry is None or not expected or entry.kind in ("temperature", "dimensionless", "fraction"):
         return
+    weight = 1.0 if used is None else 0.7 if entry.cell in used else 2.5
     for number in {abs(entry.value), abs(entry.si)}:
         if not number or 0.97 < number < 1.03:
             continue
         for power, words, prior in _POWERS:
-            yield Guess("dimension-mismatch", f'"{entry.label}" {words}', expected * number**power, prior)
+            yield Guess("dimension-mismatch", f'"{entry.label}" {words}', expected * number**power, prior * weight)
+
+
+def of_difference(a: Stated, b: Stated, expected: float) -> Iterator[Guess]:
+    """The difference of two temperatures is missing, or on the wrong side of the solidus."""
+    number = abs(a.si - b.si)
+    if not number:
+        return
+    for power, words, prior in _POWERS[:4]:
+        yield Guess("dimension-mismatch", f'"{a.label}" less "{b.label}" {words}', expected * number**power, prior)
+
+
+def upside_down(entry: Stated, expected: float) -> Iterator[Guess]:
+    """The inverse, the square, or the root of the right number, in SI or in the unit of the sheet."""
+    if entry.kind == "temperature" or not expected or not entry.si or entry.si * entry.value <= 0:
+        return
+    factor = entry.si / entry.value
+    for scale in {1.0, factor}:
+        number = expected / scale
+        if number > 0 and not 0.95 < number < 1.05:
+            yield Guess("dimension-mismatch", "the inverse stands here", scale / number, 0.6)
+            yield Guess("dimension-mismatch", "the root is missing", scale * number**2, 0.5)
+            yield Guess("dimension-mismatch", "a root stands here", scale * number**0.5, 0.4)
+
+
+def without_density(inputs: dict[str, Resolved], answer: Callable[[str, float], float]) -> Iterator[Guess]:
+    """The kinematic viscosity for the dynamic one: the density beside it is missing."""
+    if "kinematic_viscosity" in inputs and "density" in inputs:
+        words = "the kinematic viscosity stands where the dynamic one is meant"
+        yield Guess("kinematic-for-dynamic", words, answer("density", 1.0), 1.6)
+        yield Guess("kinematic-for-dynamic", words, answer("density", 1000.0), 1.3)
 
 
 def of_result(entry: Stated, expected: float) -> Iterator[Guess]:
@@ -171,14 +208,14 @@ AREA_FACTORS = (
 _AREA_KINDS = ("area", "length", "volume")
 
 
-def of_area(entry: Stated, expected: float) -> Iterator[Guess]:
+def of_area(entry: Stated, expected: float, round_inputs: bool) -> Iterator[Guess]:
     """A factor of the area of a circle or a shell is missing or doubled."""
     for factor, words in AREA_FACTORS:
         if entry.kind == "area":
             yield Guess("area-factor", words, expected * factor, 0.9)
         elif entry.kind in _AREA_KINDS and "diameter" not in entry.key and "radius" not in entry.key:
             yield Guess("area-factor", words, expected * factor, 0.7)
-        elif entry.key in ("velocity", "mass_flow", "volume_flow", "mass_flux", "duty"):
+        elif round_inputs and entry.kind not in ("temperature", "length"):
             yield Guess("area-factor", f"{words}, or is once too often, in the area", expected * factor, 0.4)
     if entry.key == "hydraulic_diameter":
         yield Guess("area-factor", "the hydraulic radius A/P stands for 4A/P", expected / 4.0, 1.2)

@@ -65,13 +65,22 @@ def _missed(method: Method, given: Mapping[str, Any]) -> list[str]:
     ]
 
 
-def _regime_missed(method: Method, given: Mapping[str, Any]) -> bool:
-    """Whether the case lies in the other regime than the method is for."""
-    reynolds = given.get("reynolds")
-    for r in method.ranges:
-        if r.variable == "Re" and reynolds is not None:
-            return (reynolds > TURBULENT and r.high <= 3000.0) or (reynolds < LAMINAR and r.low >= LAMINAR)
-    return False
+def _reynolds_range(method: Method) -> tuple[float, float] | None:
+    return next(((r.low, r.high) for r in method.ranges if r.variable == "Re"), None)
+
+
+def _regime_missed(method: Method, given: Mapping[str, Any], others: Iterable[Method]) -> bool:
+    """Whether the case lies in the other regime than the method is for.
+
+    That is so where Re is beyond an end of its range and another method holds there up to that end.
+    """
+    reynolds, own = given.get("reynolds"), _reynolds_range(method)
+    if reynolds is None or own is None or own[0] <= reynolds <= own[1]:
+        return False
+    ranges = [found for m in others if (found := _reynolds_range(m)) and found[0] <= reynolds <= found[1]]
+    if reynolds < own[0]:
+        return any(high <= 1.05 * own[0] for _, high in ranges)
+    return own[1] < 1e5 and any(low >= 0.7 * own[1] for low, _ in ranges)
 
 
 def _evaluate(method: Method, given: Mapping[str, Any]) -> tuple[float, str] | None:
@@ -108,15 +117,16 @@ def answers(case: SheetCase, given: Mapping[str, Any], gives: tuple[str, ...]) -
         if not outside:
             right.append(Admissible(value, method.name, SAME))
         else:
-            code = "wrong-regime" if _regime_missed(method, given) else "outside-range"
+            regime = _regime_missed(method, given, _applying(case, given, gives))
+            code = "wrong-regime" if regime else "outside-range"
             wrong.append(Admissible(value, outside, SAME, code))
     wrong += _other_exponents(case, given, named or _giving(gives))
     if named and not right:
         right_ones = [m for m in _giving(gives) if m not in named and _applies(m, case, given)]
         right += _inside(right_ones, given, loose=True)
-        wrong += _outside_of_regime(right_ones, given)
-    elif named:
-        wrong += _outside_of_regime([m for m in _giving(gives) if m not in named and _applies(m, case, given)], given)
+    if named:
+        others = _applying(case, given, gives)
+        wrong += _outside_of_regime([m for m in others if m not in named], given, others)
     return [*right, *wrong, *_envelope(right, gives)]
 
 
@@ -125,8 +135,14 @@ def _inside(methods: Iterable[Method], given: Mapping[str, Any], loose: bool) ->
     return [Admissible(f[0], m.name, SAME, loose=loose) for m, f in found if f and not f[1] and f[0] > 0]
 
 
-def _outside_of_regime(methods: Iterable[Method], given: Mapping[str, Any]) -> list[Admissible]:
-    found = [(m, _evaluate(m, given)) for m in methods if _regime_missed(m, given)]
+def _applying(case: SheetCase, given: Mapping[str, Any], gives: tuple[str, ...]) -> list[Method]:
+    return [m for m in _giving(gives) if _applies(m, case, given)]
+
+
+def _outside_of_regime(
+    methods: Iterable[Method], given: Mapping[str, Any], others: Iterable[Method]
+) -> list[Admissible]:
+    found = [(m, _evaluate(m, given)) for m in methods if _regime_missed(m, given, others)]
     return [Admissible(f[0], f[1] or m.name, SAME, "wrong-regime") for m, f in found if f and f[0] > 0]
 
 
@@ -236,6 +252,10 @@ def friction_factor(case, reynolds, relative_roughness=None):
         # an unknown roughness only adds to a smooth wall's
         found += [Admissible(a.value * 1.15, a.words, 0.3, loose=True) for a in found if a.loose]
     tight = [a for a in found if not a.code and not a.loose]
+    if reynolds > TURBULENT:
+        # the round tube's laminar law stands for every section in sheets
+        quarter.append(Admissible(64.0 / reynolds, "64/Re of laminar flow", SAME, "wrong-regime"))
+        quarter.append(Admissible(16.0 / reynolds, "16/Re of laminar flow", SAME, "wrong-regime"))
     return [*tight, *quarter, *(a for a in found if a.code), *(a for a in found if a.loose)]
 
 

@@ -111,7 +111,7 @@ def pump(rng: random.Random, system: str) -> Calculation:
     c.slip("area-factor", "A", "{D}^2")
     c.slip("dimension-mismatch", "dpm", "{K}*{rho}*{w}/2")
     c.slip("unit-factor", "Ps", "{Ph}/{eta:raw}")
-    c.slip("unit-factor", "H", "{dpt}/{rho}")
+    c.slip("dimension-mismatch", "H", "{dpt}/{rho}")
     return c
 
 
