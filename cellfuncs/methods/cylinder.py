@@ -83,6 +83,22 @@ for _row in {(row["method"], row["shape"]): row for row in read_table("cross_flo
     _power_law(*_row)
 
 
+@method(
+    "Sparrow upright plate",
+    gives="mean Nu",
+    ranges=(Range("Re", 1e4, 5e4), Range("Pr", low=0.7)),
+    scatter=0.2,
+    property_temperature="film",
+    source="sparrow-2004",
+    flows=("cylinder",),
+    where={"shape": ("upright plate",)},
+    length="width across the stream",
+)
+def upright_plate(reynolds: float, prandtl: float) -> float:
+    """Mean Nu of both faces of a thin plate across a gas: 0.667 Re^1/2 Pr^1/3 before, 0.191 Re^0.667 Pr^1/3 behind."""
+    return 0.5 * (0.667 * sqrt(reynolds) + 0.191 * reynolds**0.667) * prandtl ** (1.0 / 3.0)
+
+
 _ZUKAUSKAS_RE = (1.0, 40.0, 1e3, 2e5)
 
 
