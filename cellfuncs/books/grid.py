@@ -34,6 +34,7 @@ def rectangle(text: str) -> tuple[int, int, int, int] | None:
     return rows[0], columns[0], rows[1], columns[1]
 
 
+@lru_cache(maxsize=20_000)
 def column_letters(number: int) -> str:
     """1 = A … 16384 = XFD."""
     letters = ""

@@ -24,6 +24,7 @@ _DIFFERENT_ZERO = 1.0  # K
 def findings(reading: Reading) -> Iterator[Finding]:
     """What is wrong with the units in the formulas of a workbook, in reading order."""
     cells = Cells(reading)
+    seen: dict[tuple, Problem | None] = {}  # copies of a formula are compared once
     for cell in reading.links.shapes:
         measure, problems = cells.derived(cell)
         quantity = reading.quantities.get(cell)
@@ -32,7 +33,10 @@ def findings(reading: Reading) -> Iterator[Finding]:
         if problems:
             yield _finding(cell, entry, problems[0], 0.9)
         elif entry is not None and stated is not None and measure.known:
-            problem = compared(measure, stated, entry)
+            key = (measure, stated, entry.kind, entry.unit)
+            if key not in seen:
+                seen[key] = compared(measure, stated, entry)
+            problem = seen[key]
             if problem is not None:
                 yield _finding(cell, entry, problem, 0.8)
 

@@ -88,6 +88,7 @@ def _substance_words() -> Mapping[str, str]:
     return table
 
 
+@lru_cache(maxsize=4096)
 def side_of(text: str) -> str:
     """``hot`` or ``cold`` where a text names one stream of an exchanger."""
     hot, cold = _HOT.search(text), _COLD.search(text)

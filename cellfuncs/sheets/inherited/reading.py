@@ -15,7 +15,7 @@ from cellfuncs.sheets.inherited import gather, rows, settle, tables
 from cellfuncs.sheets.inherited.facts import Facts, facts_of
 from cellfuncs.sheets.inherited.gather import Quantity
 from cellfuncs.sheets.inherited.links import Links
-from cellfuncs.sheets.inherited.page import Page, is_error, read_pages
+from cellfuncs.sheets.inherited.page import Page, address, is_error, read_pages
 
 MOST_NOTES = 200
 
@@ -124,8 +124,6 @@ def _settle(found: list[Quantity], facts: Mapping[str, Facts], links: Links, not
 
 
 def _cell(quantity: Quantity) -> str:
-    from cellfuncs.sheets.inherited.page import address
-
     return address(quantity.page, quantity.found.spot)
 
 

@@ -2,9 +2,11 @@
 
 from __future__ import annotations
 
+import math
 from collections.abc import Iterable, Mapping, Sequence
 from dataclasses import dataclass
 from functools import lru_cache
+from itertools import repeat
 
 from cellfuncs import quantities
 from cellfuncs.cases import labels
@@ -18,6 +20,7 @@ _NUMBERS = ("stated", "derived", "sheet")  # roles of labels that stand for numb
 _CLEAR = 0.2  # how far the best label must be ahead to need no neighbours
 _NOTHING = Unit(1.0, 0.0, "dimensionless", "-")
 _SHARES = frozenset(("fraction", "relative_humidity"))
+_LARGEST_SHARE = 1.5
 
 
 @dataclass(frozen=True, slots=True)
@@ -50,35 +53,42 @@ class Settled:
 
 def options_for(found: Found, in_si: bool, atmosphere: float) -> Settled:
     """All quantities that fit the label, the unit and the value of a number."""
+    settled = _fitting(found.names, found.units, in_si, atmosphere)
+    if all(map(_possible, repeat(found.value), settled.options)):
+        return settled
+    return Settled(tuple(option for option in settled.options if _possible(found.value, option)), settled.why)
+
+
+@lru_cache(maxsize=8192)
+def _fitting(names: tuple[str, ...], units: tuple[str, ...], in_si: bool, atmosphere: float) -> Settled:
+    """All quantities that fit a label and its unit, the likeliest first."""
     best: dict[str, Option] = {}
     misfits: list[str] = []
     unitless: list[str] = []
     remark = False
-    for place, name in enumerate(found.names):
+    for place, name in enumerate(names):
         for candidate in texts.known(name):
             entry = labels.dictionary()[candidate.key]
             if entry.role not in _NUMBERS:
                 remark |= entry.role == "note" and candidate.score > 0.95 and place == 0
                 continue
-            read = _unit_of(found.units, entry.kind, in_si, atmosphere)
+            read = _unit_of(units, entry.kind, in_si, atmosphere)
             if read is None:
-                (misfits if found.units else unitless).append(entry.label)
-                continue
-            text, unit = read
-            if not _possible(found.value * unit.factor + unit.offset, entry):
+                (misfits if units else unitless).append(entry.label)
                 continue
             score = candidate.score - 0.1 * place
             if candidate.key not in best or best[candidate.key].score < score:
-                best[candidate.key] = Option(candidate.key, score, text, unit)
-    if best and not remark:
-        return Settled(tuple(sorted(best.values(), key=lambda option: -option.score)))
+                best[candidate.key] = Option(candidate.key, score, *read)
     if remark:
         return Settled((), "remark")
+    if best:
+        ranked = sorted(best.values(), key=lambda option: -option.score)
+        return Settled(tuple(ranked), f"no value of {labels.dictionary()[ranked[0].key].label}")
     if misfits:
-        return Settled((), f"{found.units[0]} is no unit of {' or '.join(dict.fromkeys(misfits))}")
+        return Settled((), f"{units[0]} is no unit of {' or '.join(dict.fromkeys(misfits))}")
     if unitless:
         return Settled((), f"{' or '.join(dict.fromkeys(unitless))} without a unit")
-    return Settled((), "label not known" if found.names else "no label")
+    return Settled((), "label not known" if names else "no label")
 
 
 def _unit_of(units: Sequence[str], kind: str, in_si: bool, atmosphere: float) -> tuple[str, Unit] | None:
@@ -96,13 +106,16 @@ def _unit_of(units: Sequence[str], kind: str, in_si: bool, atmosphere: float) ->
     return None
 
 
-def _possible(si: float, entry: labels.Label) -> bool:
+def _possible(value: float, option: Option) -> bool:
     """Whether a value can be that quantity at all."""
-    try:
-        quantities.check_physical(si, entry.kind)
-    except CellfuncsError:
-        return False
-    return not (entry.kind in _SHARES and entry.role == "stated" and abs(si) > 1.5)
+    si = value * option.unit.factor + option.unit.offset
+    entry = labels.dictionary()[option.key]
+    if not 0.0 < si < math.inf:
+        try:
+            quantities.check_physical(si, entry.kind)
+        except CellfuncsError:
+            return False
+    return not (abs(si) > _LARGEST_SHARE and entry.kind in _SHARES and entry.role == "stated")
 
 
 # -- neighbours --------------------------------------------------------------------------------------------
