@@ -164,38 +164,8 @@ class Method:
         for name, (low, high) in extremes.items():
             _check_sign(inputs()[name], low, high)
         self._check_range(known, extremes, allow)
-        return self._finite({name: known[name] for name in self.inputs if name in known})
-
-    def _finite(self, taken: Mapping[str, Any]) -> Any:
-        """The function's value; beyond its range a formula may have none."""
-        try:
-            if all(isinstance(value, (float, int, str)) for value in taken.values()):
-                found = self.function(**taken)
-                if not isinstance(found, complex) and found - found == 0:
-                    return found
-            else:
-                import numpy as np
-
-                with np.errstate(all="ignore"):
-                    found = self.function(**taken)
-                if np.isfinite(found).all():
-                    return found
-        except (ZeroDivisionError, OverflowError, ValueError) as fault:
-            if isinstance(fault, CellfuncsError):
-                raise
-        raise NumberRefused(f"{self.name} has no finite value there")
-
-    def _followed(self, symbol: str, function: Callable[..., Any], taken: list[Any]) -> Any:
-        """A variable that follows from inputs; absurd inputs may give none."""
-        try:
-            if all(isinstance(value, (float, int)) for value in taken):
-                return function(*taken)
-            import numpy as np
-
-            with np.errstate(all="ignore"):
-                return function(*taken)
-        except (ZeroDivisionError, OverflowError):
-            raise NumberRefused(f"{self.name} has no finite value of {symbol} there") from None
+        taken = {name: known[name] for name in self.inputs if name in known}
+        return _finite(self.function, taken, f"{self.name} has no finite value there")
 
     def _check_range(self, known: Mapping[str, Any], extremes: Mapping[str, tuple[float, float]], allow: bool) -> None:
         by_symbol = {inputs()[name].symbol: ends for name, ends in extremes.items()}
@@ -205,7 +175,8 @@ class Method:
             if ends is None and r.variable in _FOLLOWS:
                 names, function = _FOLLOWS[r.variable]
                 if all(name in known for name in names):
-                    ends = _extremes(self._followed(r.variable, function, [known[name] for name in names]))
+                    refusal = f"{self.name} has no finite value of {r.variable} there"
+                    ends = _extremes(_finite(function, {name: known[name] for name in names}, refusal))
             if ends is not None:
                 worst[r.variable] = ends[0] if ends[0] < r.low else ends[1]
         self.check(allow, **worst)
@@ -224,6 +195,26 @@ def follows(symbol: str) -> Callable[[Callable[..., Any]], Callable[..., Any]]:
 @follows("Pe")
 def _peclet(reynolds: Any, prandtl: Any) -> Any:
     return reynolds * prandtl
+
+
+def _finite(function: Callable[..., Any], taken: Mapping[str, Any], refusal: str) -> Any:
+    """The function's value; beyond its range a formula may have none."""
+    try:
+        if all(isinstance(value, (float, int, str)) for value in taken.values()):
+            found = function(**taken)
+            if not isinstance(found, complex) and found - found == 0:
+                return found
+        else:
+            import numpy as np
+
+            with np.errstate(all="ignore"):
+                found = function(**taken)
+            if np.isfinite(found).all():
+                return found
+    except (ZeroDivisionError, OverflowError, ValueError) as fault:
+        if isinstance(fault, CellfuncsError):
+            raise
+    raise NumberRefused(refusal)
 
 
 def _extremes(value: Any) -> tuple[float, float]:

@@ -2,7 +2,7 @@
 
 Methods stand in ``duct_laminar``, ``duct_series``, ``duct_entry``, ``duct_simultaneous``, ``duct_turbulent``,
 ``duct_transition``, ``duct_rough``, ``liquid_metal``, ``corrections``, ``friction``, ``friction_laminar``, ``slip``,
-``coil``, ``coil_friction`` and ``minor_losses``. f is Darcy's; Nu is on the hydraulic diameter and the bulk temperature.
+``coil``, ``coil_friction`` and ``minor_losses``. f is Darcy's; Nu is on the hydraulic diameter and bulk temperature.
 """
 
 from cellfuncs.methods import (  # noqa: F401

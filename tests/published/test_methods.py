@@ -10,6 +10,8 @@ from pathlib import Path
 
 import numpy as np
 import pytest
+from hypothesis import given, settings
+from hypothesis import strategies as st
 
 from cellfuncs.errors import CellfuncsError
 from cellfuncs.methods import METHODS
@@ -119,3 +121,20 @@ def test_outside_its_range_a_method_refuses(row):
                 found.evaluate({**row["inputs"], name: beyond})
             assert found.outside(**{r.variable: beyond})
             assert not found.outside(**{r.variable: limit})
+
+
+@pytest.mark.parametrize("row", FIRST)
+@settings(max_examples=20)
+@given(st.data())
+def test_whatever_the_numbers_there_is_a_finite_answer_or_a_refusal(row, data):
+    """Sizes over twenty-four powers of ten, with `beyond range: allow`: nothing but our own refusals comes out."""
+    found = METHODS[row["method"]]
+    wild = {
+        name: 10.0 ** data.draw(st.floats(-12.0, 12.0), label=name) if is_number(name) else value
+        for name, value in row["inputs"].items()
+    }
+    try:
+        got = found.evaluate(wild, allow=True)
+    except CellfuncsError:
+        return
+    assert isinstance(got, (float, int)) and math.isfinite(got)
