@@ -18,7 +18,7 @@ import numpy as np
 from cellfuncs.errors import NoModel
 from cellfuncs.models.trust import finite
 
-_FINE, _COARSE = 1e-11, 1e-9
+_FINE, _COARSE = 1e-10, 1e-8
 _NEAR_CHOKING = 1e-4
 _LOWEST = 1e-3  # of the inlet pressure
 _STIFF = 30.0  # transfer units from which the wall holds the temperature tightly

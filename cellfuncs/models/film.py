@@ -7,53 +7,15 @@ from typing import Any
 
 import numpy as np
 
-from cellfuncs.errors import NoModel, NumberRefused
+from cellfuncs.errors import NoModel
 from cellfuncs.models.chebyshev import interpolate, nodes
+from cellfuncs.models.thinning import Thinning, constant
 from cellfuncs.models.trust import finite
-
-Thinning = Callable[[Any], tuple[Any, Any]]  # θ -> ln m and its slope d(ln m)/dθ
 
 _ROUNDS = 60
 _STEPS_PER_DECADE = 4
-_HOTTEST = 500.0  # |ln m| of a film: beyond, viscosities differ by more than a number can hold
-
-
-def constant(theta: Any) -> tuple[Any, Any]:
-    """A viscosity that does not change."""
-    return np.zeros_like(theta), np.zeros_like(theta)
-
-
-def exponential(slope: float = 1.0) -> Thinning:
-    """ln m = −slope·θ; with Δ = 1/b the slope is one."""
-    return lambda theta: (-slope * theta, np.full_like(theta, -slope))
-
-
-def tabulated(thetas: Any, relative: Any) -> Thinning:
-    """ln m through table points, monotone between them (Fritsch and Carlson 1980); refuses beyond the table."""
-    from scipy.interpolate import PchipInterpolator
-
-    x, y = np.asarray(thetas, dtype=float), np.asarray(relative, dtype=float)
-    if len(x) < 2 or (np.diff(x) <= 0).any() or (y <= 0).any() or not np.isfinite(y).all():
-        raise NumberRefused("a viscosity table needs rising temperatures and viscosities above zero")
-    curve = PchipInterpolator(x, np.log(y))
-    slope = curve.derivative()
-    margin = 1e-9 * (x[-1] - x[0])
-
-    def thinning(theta: Any) -> tuple[Any, Any]:
-        # Newton's steps may look beyond; the film that is answered may not (``within``)
-        inside = np.clip(theta, x[0], x[-1])
-        slopes = slope(inside)
-        return curve(inside) + slopes * (theta - inside), slopes
-
-    def within(theta: Any) -> None:
-        if theta.min() < x[0] - margin or theta.max() > x[-1] + margin:
-            raise NoModel(
-                f"the film would come to {float(theta.max()):.4g} of the temperature scale, "
-                f"but the viscosity is known from {x[0]:.4g} to {x[-1]:.4g} only"
-            )
-
-    thinning.within = within
-    return thinning
+_HOTTEST = 300.0  # |ln m| of a film: beyond, viscosities differ by more than a number can hold
+_MILD = 20.0  # Na/8 up to which a film is found from a guess
 
 
 @dataclass(frozen=True)
@@ -161,6 +123,8 @@ class Solver:
         theta = start.copy()
         for _ in range(_ROUNDS):
             made, slope, stress, total = self.spread(theta)
+            if not (0.0 < total < math.inf):
+                raise Unresolved
             share = made / total
             residual = self.second @ theta + heat * share + self.source
             # θ enters through where the heat is made and through its sum; τ's own change is left to the iteration
@@ -227,6 +191,11 @@ class Solver:
         if not self._thins:
             still = self.solve(0.0, self.still)
             return self.solve(heating * self.spread(self.still)[3], still.theta)
+        if heating == 0.0:
+            return self.solve(0.0, self.still)
+        direct = self._directly(heating)
+        if direct is not None:
+            return direct
         earlier, before = None, None
         for state in self._branch(math.inf):
             if state.heating >= heating:
@@ -242,6 +211,24 @@ class Solver:
                 )
             earlier, before = before, state
         raise Unresolved
+
+    def _directly(self, heating: float) -> State | None:
+        """Without a pressure gradient a film that thins has one solution at each Br: found from a guess of its heat."""
+        if self.gap.pressure:
+            return None
+        _, slopes = self.gap.thinning(self.still)
+        if not (slopes <= 0.0).all():
+            return None
+        guess = heating * self.spread(self.still)[3]
+        weakening = -float(self.w @ slopes) * guess / 8.0
+        if weakening > _MILD:
+            return None
+        guess /= 1.0 + weakening
+        try:
+            low = self.solve(guess, self._linear(self.source + guess))
+            return self._root(lambda s: s.heating, heating, low, self._step(low, guess * 1.1))
+        except Unresolved:
+            return None
 
     def at_stress(self, squared_stress: float) -> list[State]:
         if squared_stress == 0:

@@ -16,23 +16,12 @@ import math
 from itertools import pairwise
 
 from cellfuncs.errors import NoModel
-from cellfuncs.models.film import (
-    Beyond,
-    Film,
-    Gap,
-    Solver,
-    State,
-    Thinning,
-    Unresolved,
-    constant,
-    difference,
-    exponential,
-    tabulated,
-)
+from cellfuncs.models.film import Beyond, Film, Gap, Solver, State, Unresolved, difference
+from cellfuncs.models.thinning import Thinning, constant, exponential, smooth, tabulated
 
 __all__ = [
     "Film", "Gap", "Thinning", "at_speed", "at_stress", "constant", "critical_nahme", "exponential", "nahme_peak",
-    "nahme_stress", "tabulated", "turning_point",
+    "nahme_stress", "smooth", "tabulated", "turning_point",
 ]  # fmt: skip
 
 _COUNTS = (20, 30, 45, 68, 100)

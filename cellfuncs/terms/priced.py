@@ -69,7 +69,8 @@ def in_words(e: effects.Effect) -> Priced:
     size = f"{e.change:+.3g} {unit}" if e.change else f"0 {unit}"
     over = f", {percent(e.ratio)} of {num(e.base)} {unit}" if e.ratio is not None else ""
     doubt = e.spread + (abs(e.error / e.change) if e.change else 0.0)
-    return Priced(e.ratio, e.kelvins, min(doubt, 1.0), f"without it {e.answer.removesuffix(' temperature')} {size}{over} ({e.model})")
+    words = f"without it {e.answer.removesuffix(' temperature')} {size}{over} ({e.model})"
+    return Priced(e.ratio, e.kelvins, min(doubt, 1.0), words)
 
 
 def together(solution: Solution, terms: Sequence[str]) -> tuple[float | None, float | None, list[str], str]:

@@ -112,6 +112,13 @@ def test_a_table_of_an_exponential_is_the_exponential():
         gap.at_speed(gap.Gap(gap.tabulated(places, np.exp(-places))), 1e4)
 
 
+def test_a_smooth_range_of_an_exponential_is_the_exponential():
+    from cellfuncs.models.chebyshev import nodes
+
+    film = gap.at_speed(gap.Gap(gap.smooth(0.0, 3.0, np.exp(-3.0 * nodes(14)[0]))), 10.0)
+    assert film.peak == pytest.approx(math.log1p(10 / 8), rel=1e-11)
+
+
 @pytest.mark.parametrize(
     ("make", "why"),
     [
@@ -120,7 +127,7 @@ def test_a_table_of_an_exponential_is_the_exponential():
         (lambda: gap.Gap(low=None, high=None), "no way out"),
         (lambda: gap.Gap(source=math.nan), "finite"),
         (lambda: gap.at_stress(gap.Gap(pressure=1.0), 1.0), "without a pressure gradient"),
-        (lambda: gap.at_speed(gap.Gap(gap.exponential(200.0), 0.0, 1.0), 5.0), "too sharply layered"),
+        (lambda: gap.at_speed(gap.Gap(gap.exponential(-200.0), 0.0, 1.0), 5.0), "too sharply layered"),
     ],
 )
 def test_what_has_no_answer_is_refused_in_words(make, why):

@@ -5,7 +5,8 @@ from cellfuncs.answers.effects.model import FLUX, PEAK, SOURCE, EffectModel
 from cellfuncs.answers.gap import GapAnswers
 from cellfuncs.errors import CellfuncsError, NoModel
 
-_POINTS = 9  # of the table of viscosities over the film's temperatures
+_POINTS = 9  # viscosities over the film's temperatures
+_MARGIN = 1.0  # K above what a constant viscosity would give
 _WEAK = 1e-3  # relative change of the viscosity that is none
 
 
@@ -32,20 +33,16 @@ class HeatedFilm(EffectModel):
         mean = a.properties.viscosity
         if case.fixed or a.cold is None or case.sheared(a.property_temperature) is not None:
             return gap.constant, mean
-        hottest = a.walls_apart + a.full_rise / 8.0 + a.peak_rise
-        rises, relative = [], []
-        for k in range(_POINTS):
-            rise = hottest * (k / (_POINTS - 1)) ** 1.5
-            try:
-                relative.append(case.properties(a.cold + rise).viscosity / mean)
-            except CellfuncsError:
-                break  # the film reads as far as its substance is known
-            rises.append(rise / self.unit)
-        if len(rises) < 2:
-            return gap.constant, mean
+        from cellfuncs.models.chebyshev import nodes
+
+        hottest = a.walls_apart + (a.full_rise / 8.0 if not a.walls_apart else a.peak_rise) + _MARGIN
+        try:
+            relative = [case.properties(a.cold + hottest * x).viscosity / mean for x in nodes(_POINTS)[0].tolist()]
+        except CellfuncsError as error:
+            raise NoModel(f"the film may come to {a.cold + hottest - 273.15:.0f} degC: {error}") from None
         if max(relative) / min(relative) - 1.0 < _WEAK:
             return gap.constant, mean
-        return gap.tabulated(rises, relative), mean
+        return gap.smooth(0.0, hottest / self.unit, relative), mean
 
     def value(self, answer: str, left: frozenset[str]) -> tuple[float, float]:
         from cellfuncs.models import gap
