@@ -158,7 +158,7 @@ def upright_tall(rayleigh: Any, prandtl: Any, aspect: Any) -> Any:
     "MacGregor-Emery turbulent",
     gives="mean Nu",
     ranges=(Range("Ra", 1e6, 1e9), Range("Pr", 1.0, 20.0), Range("H/L", 1.0, 40.0)),
-    scatter=0.15,
+    scatter=0.3,
     property_temperature="mean of the walls",
     source="macgregor-emery-1969",
     flows=("enclosure",),
@@ -166,7 +166,7 @@ def upright_tall(rayleigh: Any, prandtl: Any, aspect: Any) -> Any:
     length=_GAP,
 )
 def upright_turbulent(rayleigh: Any) -> Any:
-    """Mean Nu of an upright layer, turbulent, H/L 1 to 40."""
+    """Mean Nu of an upright layer of a liquid, turbulent, H/L 1 to 40; low where the layer is not tall."""
     return 0.046 * rayleigh ** (1 / 3)
 
 

@@ -162,36 +162,43 @@ def correction_shells(part: Any, quotient: Any, passes: Any = 1.0) -> Any:
     return _units_counter(one, quotient) / needed
 
 
-def correction(effectiveness: Callable[[Any, Any], Any], part: Any, quotient: Any) -> Any:
-    """F of an arrangement from its effectiveness: units that counter-flow needs over the units that it needs.
+def units_for(effectiveness: Callable[[Any, Any], Any], wanted: Any, capacity_ratio: Any) -> Any:
+    """NTU with which an arrangement reaches an effectiveness; ``effectiveness`` is that of NTU and C.
 
-    ``effectiveness`` is that of NTU and C, for the stream of the smaller capacity: P and R where R is up to 1, else
-    P·R and 1/R. Some arrangements lose effectiveness with much surface; the smaller surface counts.
+    Some arrangements lose effectiveness with much surface: the smaller NTU is meant. Raises OutOfRange where none
+    reaches it with eleven times the surface of counter-flow.
     """
-    wanted, capacity = where(quotient <= 1.0, part, part * quotient), where(quotient <= 1.0, quotient, 1.0 / quotient)
-    best = _units_counter(wanted, capacity)
-    low = high = best * (1.0 - 1e-12)
-    missing = lacking = effectiveness(high, capacity) - wanted
+    low = high = _units_counter(wanted, capacity_ratio) * (1.0 - 1e-12)
+    missing = lacking = effectiveness(high, capacity_ratio) - wanted
     for _ in range(_STEPS):  # the first step in which the wanted effectiveness is reached
         short = missing < 0.0
         if holds(missing >= 0.0):
             break
         low, lacking, high = where(short, high, low), where(short, missing, lacking), where(short, _STEP * high, high)
-        missing = effectiveness(high, capacity) - wanted
+        missing = effectiveness(high, capacity_ratio) - wanted
     if not holds(missing >= 0.0):
         raise OutOfRange("no surface reaches this P and R in such an arrangement with F above 0.1; take counter-flow")
-    last = missing < missing
+    last, ntu = missing < missing, high
     for _ in range(_ROUNDS):  # false position; an end that stays twice is given half its weight (Illinois)
         apart = missing - lacking
         ntu = high - missing * (high - low) / where(apart > 0.0, apart, 1.0)
-        found = effectiveness(ntu, capacity) - wanted
+        found = effectiveness(ntu, capacity_ratio) - wanted
         short = found < 0.0
         low, high = where(short, ntu, low), where(short, high, ntu)
         stays = where(short == last, 0.5, 1.0)
         lacking, missing, last = where(short, found, stays * lacking), where(short, stays * missing, found), short
         if holds(abs(found) <= 1e-14):
             break
-    return best / ntu
+    return ntu
+
+
+def correction(effectiveness: Callable[[Any, Any], Any], part: Any, quotient: Any) -> Any:
+    """F of an arrangement from its effectiveness: units that counter-flow needs over the units that it needs.
+
+    ``effectiveness`` is for the stream of the smaller capacity: P and R where R is up to 1, else P·R and 1/R.
+    """
+    wanted, capacity = where(quotient <= 1.0, part, part * quotient), where(quotient <= 1.0, quotient, 1.0 / quotient)
+    return _units_counter(wanted, capacity) / units_for(effectiveness, wanted, capacity)
 
 
 @_exact("correction factor, cross-flow", "mason-1955;bowman-1940", ranges=(), gives="factor")

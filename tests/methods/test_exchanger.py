@@ -99,6 +99,12 @@ def test_correction_of_cross_flow_has_no_side(correction, part, quotient):
     assert column[0] == pytest.approx(one, rel=1e-12) and column[1] > one
 
 
+@pytest.mark.parametrize("effectiveness", ALL)
+@given(st.floats(0.05, 2.0), CAPACITY)
+def test_units_for_an_effectiveness(effectiveness, ntu, capacity):
+    assert x.units_for(effectiveness, effectiveness(ntu, capacity), capacity) == pytest.approx(ntu, rel=1e-6)
+
+
 def test_correction_with_one_stream_mixed():
     """R below 1 is the formula with the larger stream mixed, R above 1 that with the smaller one."""
     part = x.cross_flow_larger_mixed(1.5, 0.5)
