@@ -14,6 +14,7 @@ from typing import Any
 from cellfuncs.errors import UnknownName
 from cellfuncs.methods.algebra import exp, log10, sqrt, where
 from cellfuncs.methods.base import Range, follows, method
+from cellfuncs.methods.condensation import lift
 from cellfuncs.sources import read_table
 
 _WARNING = (
@@ -39,7 +40,7 @@ _FILM = {"boiling": ("film",)}
 
 def capillary_length(density_liquid: Any, density_vapour: Any, surface_tension: Any, gravity: Any) -> Any:
     """√(σ/(g(ρl − ρv))) [m]."""
-    return sqrt(surface_tension / (gravity * (density_liquid - density_vapour)))
+    return sqrt(surface_tension / (gravity * lift(density_liquid, density_vapour)))
 
 
 @follows("R'")
@@ -146,7 +147,7 @@ def onset(
 
 def _jets(density_liquid: Any, density_vapour: Any, heat: Any, tension: Any, gravity: Any) -> Any:
     """hfg ρv^1/2 (σg(ρl − ρv))^1/4 [W/m2]."""
-    return heat * sqrt(density_vapour) * (tension * gravity * (density_liquid - density_vapour)) ** 0.25
+    return heat * sqrt(density_vapour) * (tension * gravity * lift(density_liquid, density_vapour)) ** 0.25
 
 
 @_method("Zuber", "heat flux", (), 0.2, "zuber-1958", **_CRISIS)
@@ -209,7 +210,7 @@ def _blanket(
     superheat: Any, gravity: Any, size: Any,
 ) -> Any:  # fmt: skip
     """(k³ρv(ρl − ρv)g hfg/(μ ΔT size))^1/4 of the vapour [W/(m2 K)]."""
-    weight = density_vapour * (density_liquid - density_vapour) * gravity
+    weight = density_vapour * lift(density_liquid, density_vapour) * gravity
     return (conductivity_vapour**3 * weight * latent / (viscosity_vapour * superheat * size)) ** 0.25
 
 
@@ -267,5 +268,5 @@ def minimum(
     density_liquid: float, density_vapour: float, heat_of_vaporisation: float, surface_tension: float, gravity: float
 ) -> float:
     """Lowest heat flux [W/m2] of film boiling on a horizontal wall, 0.09 ρv hfg (σg(ρl − ρv)/(ρl + ρv)²)^1/4."""
-    lift = surface_tension * gravity * (density_liquid - density_vapour) / (density_liquid + density_vapour) ** 2
-    return 0.09 * density_vapour * heat_of_vaporisation * lift**0.25
+    wave = surface_tension * gravity * lift(density_liquid, density_vapour) / (density_liquid + density_vapour) ** 2
+    return 0.09 * density_vapour * heat_of_vaporisation * wave**0.25

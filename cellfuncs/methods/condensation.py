@@ -10,6 +10,7 @@ Scatters are those that authors or handbooks give, mostly from memory.
 
 from typing import Any
 
+from cellfuncs.errors import NumberRefused
 from cellfuncs.methods.base import Range, follows, method
 
 _FLOWS = ("condensation",)
@@ -34,9 +35,17 @@ def _latent(heat_of_vaporisation: Any, specific_heat: Any, subcooling: Any, part
     return heat_of_vaporisation + part * specific_heat * subcooling
 
 
+def lift(density_liquid: Any, density_vapour: Any) -> Any:
+    """ρl − ρv [kg/m3]; refused where the vapour is not the lighter one."""
+    difference = density_liquid - density_vapour
+    if not (difference > 0 if isinstance(difference, (float, int)) else (difference > 0).all()):
+        raise NumberRefused("the density of the vapour is not below that of the liquid")
+    return difference
+
+
 def film_length(density_liquid: Any, density_vapour: Any, viscosity_liquid: Any, gravity: Any) -> Any:
     """ℓ = (μ²/(ρl(ρl − ρv)g))^1/3 [m]."""
-    return (viscosity_liquid**2 / (density_liquid * (density_liquid - density_vapour) * gravity)) ** (1.0 / 3.0)
+    return (viscosity_liquid**2 / (density_liquid * lift(density_liquid, density_vapour) * gravity)) ** (1.0 / 3.0)
 
 
 @follows("P")
@@ -55,7 +64,7 @@ def _still(
     subcooling: Any, gravity: Any, size: Any,
 ) -> Any:  # fmt: skip
     """(ρl(ρl − ρv)g k³hfg/(μ ΔT size))^1/4 [W/(m2 K)]: Nusselt's film on any body but for a number."""
-    weight = density_liquid * (density_liquid - density_vapour) * gravity
+    weight = density_liquid * lift(density_liquid, density_vapour) * gravity
     return (weight * conductivity_liquid**3 * latent / (viscosity_liquid * subcooling * size)) ** 0.25
 
 

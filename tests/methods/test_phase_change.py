@@ -6,7 +6,7 @@ import pytest
 from hypothesis import given
 from hypothesis import strategies as st
 
-from cellfuncs.errors import OutOfRange, UnknownName
+from cellfuncs.errors import NumberRefused, OutOfRange, UnknownName
 from cellfuncs.methods import METHODS, boiling, condensation
 from cellfuncs.sources import cite, read_table
 
@@ -84,6 +84,13 @@ def test_a_smooth_film_is_refused_on_a_tall_wall():
     with pytest.raises(OutOfRange, match="P up to"):
         METHODS["Nusselt condensation, wall"].evaluate({**STEAM, "height_of_wall": 1.0})
     assert METHODS["Nusselt condensation, wall"].evaluate({**STEAM, "height_of_wall": 0.01}) > 0
+
+
+def test_a_vapour_heavier_than_its_liquid_is_refused():
+    with pytest.raises(NumberRefused, match="density of the vapour"):
+        METHODS["Nusselt condensation, tube"].evaluate(
+            {**STEAM, "density_vapour": 1000.0, "diameter": 0.02}, allow=True
+        )
 
 
 def test_subcooling_of_the_condensate_adds_to_its_heat():
