@@ -27,6 +27,9 @@ def test_transition_meets_both_regimes(prandtl, length):
     assert high > low
     flux = transition.transition_blend(4000.0, prandtl, length, "flux")
     assert flux == pytest.approx(high, rel=1e-9)
+    for section in ("plates", "rectangle"):
+        there = transition.transition_other(4000.0, prandtl, length, section, "flux", "both", 0.5)
+        assert there == pytest.approx(high, rel=1e-9)
 
 
 @given(REYNOLDS, PRANDTL)
