@@ -56,7 +56,7 @@ def parallel_flow(ntu: Any, capacity_ratio: Any) -> Any:
 
 @_exact("one shell pass", _BOWMAN)
 def one_shell(ntu: Any, capacity_ratio: Any) -> Any:
-    """Effectiveness of one shell pass, mixed, with two (or four, six …) tube passes."""
+    """Effectiveness of one shell pass, mixed, with two tube passes; close for four, six and more."""
     spread = sqrt(1.0 + capacity_ratio**2)
     return 2.0 / (1.0 + capacity_ratio + spread / tanh(0.5 * ntu * spread))
 

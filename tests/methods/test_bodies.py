@@ -52,6 +52,49 @@ def test_a_ring_inside_its_tube_is_refused():
         fin.annular(10.0, 200.0, 1e-3, 0.02, 0.5)
 
 
+def conducted(area, surface, coefficient, conductivity, length, cells=4000):
+    """Efficiency of a fin of any shape by balances over thin slices, the root at 0; areas of the place along it."""
+    from scipy.linalg import solve_banded
+
+    step = length / cells
+    edges, middles = np.linspace(0.0, length, cells + 1), (np.arange(cells) + 0.5) * step
+    along = conductivity * area(edges) / step
+    along[0] *= 2.0  # from the root to the middle of the first slice
+    along[-1] = 0.0  # nothing leaves through the tip
+    lost = coefficient * surface(middles) * step
+    rows = np.zeros((3, cells))
+    rows[0, 1:], rows[1], rows[2, :-1] = -along[1:-1], along[:-1] + along[1:] + lost, -along[1:-1]
+    source = np.zeros(cells)
+    source[0] = along[0]
+    warmth = solve_banded((1, 1), rows, source)
+    return np.sum(lost * warmth) / np.sum(lost)
+
+
+@pytest.mark.parametrize("coefficient", [20.0, 200.0, 2000.0])
+def test_fins_beside_balances_over_slices(coefficient):
+    """Thin fins: the surface of both sides, cross-sections by their shapes."""
+    k, t, length = 50.0, 1e-3, 0.03
+    x = {
+        "triangular": (lambda z: t * (1 - z / length), lambda z: 2.0 + 0 * z),
+        "parabolic": (lambda z: t * (1 - z / length) ** 2, lambda z: 2.0 + 0 * z),
+        "cone": (lambda z: math.pi / 4 * (t * (1 - z / length)) ** 2, lambda z: math.pi * t * (1 - z / length)),
+    }
+    for name, shape in x.items():
+        wanted = conducted(*shape, coefficient, k, length)
+        assert getattr(fin, name)(coefficient, k, t, length) == pytest.approx(wanted, rel=2e-4)
+
+
+@pytest.mark.parametrize(("coefficient", "ratio"), [(20.0, 1.5), (200.0, 2.0), (500.0, 4.0)])
+def test_a_ring_beside_balances_over_slices(coefficient, ratio):
+    k, t, inner = 50.0, 1e-3, 0.02
+    length = inner * (ratio - 1.0)
+    wanted = conducted(
+        lambda z: 2 * math.pi * (inner + z) * t, lambda z: 4 * math.pi * (inner + z), coefficient, k, length
+    )
+    outer = 2.0 * inner * ratio - t  # the method lengthens the fin by half its thickness for its edge
+    assert fin.annular(coefficient, k, t, 2.0 * inner, outer / (2.0 * inner)) == pytest.approx(wanted, rel=2e-4)
+
+
 # -- layers ----------------------------------------------------------------------------------------------------------
 
 

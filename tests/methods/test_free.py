@@ -7,6 +7,7 @@ from hypothesis import strategies as st
 
 from cellfuncs.errors import OutOfRange
 from cellfuncs.methods import METHODS, chimney, free_body, free_plate
+from cellfuncs.models.free import free_plate as free_plate_layer
 
 FREE = [name for name, one in METHODS.items() if one.flows == ("free",)]
 BY_RA = [name for name in FREE if METHODS[name].gives == "mean Nu" and "rayleigh" in METHODS[name].inputs]
@@ -79,6 +80,28 @@ def test_thick_cylinder_is_a_plate(rayleigh, prandtl):
 def test_slender_cylinders_agree(rayleigh, prandtl, slenderness):
     one = free_body.slender_cylinder(rayleigh, prandtl, slenderness)
     assert one == pytest.approx(free_body.slender_cylinder_corrected(rayleigh, prandtl, slenderness), rel=0.11)
+
+
+@pytest.mark.parametrize("prandtl", [0.01, 0.1, 0.72, 1.0, 7.0, 100.0, 1000.0])
+def test_fits_of_similarity_beside_the_solved_layer(prandtl):
+    """Le Fevre's fit is told to keep within 0.5 %, Ede's and Fujii and Fujii's within a few per cent, at any Pr."""
+    solved = free_plate_layer(prandtl)
+    assert free_plate.laminar_similarity(1e8, prandtl) == pytest.approx(solved.nusselt * 100.0, rel=6e-3)
+    assert free_plate.laminar_integral(1e8 * prandtl, prandtl) == pytest.approx(solved.mean_nusselt * 100.0, rel=0.03)
+    flux = free_plate_layer(prandtl, uniform_flux=True)
+    assert free_plate.laminar_similarity_flux(1e10 * prandtl, prandtl) == pytest.approx(
+        flux.nusselt_flux * 100.0, rel=0.015
+    )
+
+
+@pytest.mark.parametrize("prandtl", [0.01, 0.72, 7.0, 100.0])
+def test_laminar_churchill_chu_beside_the_solved_layer(prandtl):
+    """Its thin-layer part, 0.670 Ra^1/4 over the Prandtl function, was made from such solutions (Churchill and Chu)."""
+    thin = free_plate.laminar_vertical_plate(1e8 * prandtl, prandtl) - 0.68
+    assert thin == pytest.approx(free_plate_layer(prandtl).mean_nusselt * 100.0, rel=0.02)
+    flux = free_plate_layer(prandtl, uniform_flux=True)
+    half_height = 2.0 * (flux.slope / 2.0**0.5) * (1e8 / 8.0) ** 0.25  # Nu on the height, difference at half of it
+    assert free_plate.laminar_vertical_plate_flux(1e8 * prandtl, prandtl) - 0.68 == pytest.approx(half_height, rel=0.02)
 
 
 def test_the_other_face_of_an_inclined_plate_is_refused():
