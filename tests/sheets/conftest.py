@@ -7,7 +7,7 @@ import xlsxwriter
 
 
 def book_of(cells=None, *, sheets=None, names=(), formats=None, merges=()):
-    """The bytes of a workbook. ``cells`` are those of Sheet1 by address: a value, or a formula with its stored value."""
+    """The bytes of a workbook; ``cells`` are those of Sheet1 by address, a value or a formula with its stored value."""
     out = io.BytesIO()
     book = xlsxwriter.Workbook(out, {"in_memory": True})
     for title, content in (sheets or {"Sheet1": cells}).items():

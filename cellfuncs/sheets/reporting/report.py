@@ -73,8 +73,8 @@ class Report:
         """The outcome in a line."""
         counts = [(self.count(s), s) for s in SEVERITIES]
         said = ", ".join(f"{n} {s}{'s' if n != 1 else ''}" for n, s in counts if n) or "nothing found"
-        numbers = sum(len(entries) for case in self.cases for entries in case.stated.values())
-        return f"{said}; {len(self.agreed)} numbers agree, {numbers} were read, {len(self.not_understood)} remarks"
+        read, agree, remarks = len(self.labels), len(self.agreed), len(self.not_understood)
+        return f"{said}; of {read} labelled numbers {agree} agree with others; {remarks} remarks"
 
 
 def excerpt(page: Page, spot: Spot) -> Excerpt:
