@@ -37,6 +37,10 @@ GIVES = (
     "length",
     "transition Reynolds number",
 )
+# far beyond its range a formula may give less than nothing of these
+_NEVER_NEGATIVE = frozenset(
+    ("mean Nu", "local Nu", "mean coefficient", "Darcy friction factor", "pressure gradient", "drag coefficient")
+)
 # the temperatures at which authors meant properties to be taken
 PROPERTY_TEMPERATURES = (
     "mean bulk",
@@ -165,7 +169,10 @@ class Method:
             _check_sign(inputs()[name], low, high)
         self._check_range(known, extremes, allow)
         taken = {name: known[name] for name in self.inputs if name in known}
-        return _finite(self.function, taken, f"{self.name} has no finite value there")
+        found = _finite(self.function, taken, f"{self.name} has no finite value there")
+        if self.gives in _NEVER_NEGATIVE and _extremes(found)[0] < 0:
+            raise NumberRefused(f"{self.name} has no value there, its formula gives {_extremes(found)[0]:.4g}")
+        return found
 
     def _check_range(self, known: Mapping[str, Any], extremes: Mapping[str, tuple[float, float]], allow: bool) -> None:
         by_symbol = {inputs()[name].symbol: ends for name, ends in extremes.items()}

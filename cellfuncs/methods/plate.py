@@ -203,9 +203,10 @@ def petukhov(reynolds: float, prandtl: float) -> float:
 
 @_method(
     "Gnielinski plate", "mean Nu", (Range("Re", 10.0, 1e7), Range("Pr", 0.6, 2000.0)), 0.2, "gnielinski-1975",
+    where={"regime": ("mixed", "turbulent")},
 )  # fmt: skip
 def gnielinski(reynolds: float, prandtl: float, prandtl_ratio: float = 1.0) -> float:
-    """Mean Nu of a plate in a stream of usual turbulence, √(laminar² + turbulent²); liquids times (Pr/Prw)^1/4."""
+    """Mean Nu of a plate in a turbulent stream, √(laminar² + turbulent²); liquids times (Pr/Prw)^1/4."""
     return sqrt(laminar(reynolds, prandtl) ** 2 + petukhov(reynolds, prandtl) ** 2) * prandtl_ratio**0.25
 
 

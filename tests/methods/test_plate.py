@@ -7,7 +7,7 @@ import pytest
 from hypothesis import given
 from hypothesis import strategies as st
 
-from cellfuncs.errors import OutOfRange
+from cellfuncs.errors import NumberRefused, OutOfRange
 from cellfuncs.methods import METHODS, plate
 
 
@@ -68,6 +68,13 @@ def test_churchill_ozoe_limits(reynolds, prandtl):
     local = plate.churchill_ozoe_local(reynolds, prandtl)
     assert local <= 0.3387 * math.sqrt(reynolds) * prandtl ** (1 / 3)
     assert local <= math.sqrt(reynolds * prandtl / math.pi) * 1.001
+
+
+def test_beyond_its_range_a_formula_that_gives_less_than_nothing_has_no_value():
+    with pytest.raises(NumberRefused, match="Whitaker plate has no value there"):
+        METHODS["Whitaker plate"].evaluate({"reynolds": 1e4, "prandtl": 0.7}, allow=True)
+    with pytest.raises(NumberRefused, match="no value"):
+        METHODS["Whitaker plate"].evaluate({"reynolds": np.array([1e6, 1e4]), "prandtl": 0.7}, allow=True)
 
 
 def test_a_laminar_method_refuses_turbulent_flow_and_gases_refuse_mercury():
