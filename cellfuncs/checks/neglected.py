@@ -38,6 +38,7 @@ def case_of(sheet: SheetCase) -> Case | None:
     for group in _ONE_OF:
         for key in [k for k in group if k in rows][1:]:
             del rows[key]
+    _supplied(sheet, rows)
     if "diameter" in rows and "flow_area" in rows:
         del rows["flow_area"]
     for key, text in sheet.facts.items():
@@ -51,6 +52,17 @@ def case_of(sheet: SheetCase) -> Case | None:
                 continue
             rows[key] = Row(key, label.label, 0, value, None, "")
     return Case(sheet.flow, rows)
+
+
+def _supplied(sheet: SheetCase, rows: dict[str, Row]) -> None:
+    """What sheets leave unsaid: radiation goes to the stream's temperature, a film is as long as its area is wide."""
+    if "emissivity" in rows and "surroundings_temperature" not in rows and "stream_temperature" in rows:
+        stream = rows["stream_temperature"].value
+        rows["surroundings_temperature"] = Row("surroundings_temperature", "surroundings", 0, stream, None, "K")
+    if sheet.flow == "gap" and "length" not in rows:
+        area = next((e.si for key in ("area", "surface_area") for e in sheet.stated.get(key, ())), None)
+        if area:
+            rows["length"] = Row("length", "length", 0, area**0.5, None, "m")
 
 
 def findings(sheet: SheetCase) -> Iterator[Finding]:

@@ -1,11 +1,27 @@
 """Who refers to whom: the labelled cells above and below a cell, through formulas without labels."""
 
+import re
 from collections.abc import Iterable, Mapping
-from functools import cached_property
+from functools import cached_property, lru_cache
 
 from cellfuncs.checks.stated import Graph, SheetCase, Stated
 
 _DEEPEST = 10_000
+# cells between two numbers that still count as neighbours
+_FARTHEST = 4
+_ADDRESS = re.compile(r"^(.*)!([A-Z]{1,3})([0-9]+)$")
+
+
+@lru_cache(maxsize=20_000)
+def _spot(cell: str) -> tuple[str, int, int] | None:
+    """Sheet, row and column of ``Sheet1!C7``."""
+    found = _ADDRESS.match(cell)
+    if not found:
+        return None
+    column = 0
+    for letter in found.group(2):
+        column = column * 26 + ord(letter) - 64
+    return found.group(1), int(found.group(3)), column
 
 
 class References:
@@ -58,16 +74,33 @@ class References:
         return known
 
     @cached_property
-    def _order(self) -> list[str]:
-        return list(self.by_cell)
+    def _spots(self) -> dict[tuple[str, int, int], Stated]:
+        return {spot: entry for cell, entry in self.by_cell.items() if (spot := _spot(cell))}
 
     def pasted(self, cell: str) -> float:
-        """How much a typed number stands among formulas: 0 among inputs to 1 among results."""
-        at = self.place.get(cell)
-        if at is None or not self.by_cell[cell].typed:
+        """How much a typed number stands among formulas: 0 among inputs to 1 among results.
+
+        What stands in the same place of other cases says most, then the numbers above and below, then those beside.
+        """
+        own, spot = self.by_cell.get(cell), _spot(cell)
+        if own is None or spot is None or not own.typed:
             return 0.0
-        near = [self.by_cell[c] for c in self._order[max(at - 2, 0) : at + 3] if c != cell]
-        return sum(not entry.typed for entry in near) / len(near) if near else 0.0
+        upright, level = (self._near(spot, along) for along in ((1, 0), (0, 1)))
+        same = [entry for entry in (*upright, *level) if entry.key == own.key]
+        if any(not entry.typed for entry in same):
+            return 1.0
+        around = [e for e in upright if e.key != own.key] or [e for e in level if e.key != own.key]
+        return sum(not entry.typed for entry in around) / len(around) if around else 0.0
+
+    def _near(self, spot: tuple[str, int, int], along: tuple[int, int]) -> list[Stated]:
+        """The two next labelled numbers on both sides, at most a few cells away."""
+        sheet, row, column = spot
+        found = []
+        for sign in (1, -1):
+            steps = range(1, _FARTHEST + 1)
+            spots = [(sheet, row + sign * k * along[0], column + sign * k * along[1]) for k in steps]
+            found += [self._spots[s] for s in spots if s in self._spots][:2]
+        return found
 
     @cached_property
     def _users(self) -> Mapping[str, list[str]]:

@@ -208,12 +208,13 @@ def direct_case(c: Calculation, done: Worked) -> tuple[Any, dict[str, tuple[str,
 
     case = SheetCase("direct", flow=c.flow, facts=dict(c.facts))
     graph = {}
+    at = {line.name: f"Calc!B{k + 1}" for k, line in enumerate(c.lines)}
     for line in c.lines:
         factor, offset = UNITS[line.unit]
         value = done.values[line.name]
         written = done.written.get(line.name)
-        cell = f"Calc!{line.name}"
-        refs = tuple(f"Calc!{name}" for name in names_in(written)) if written else ()
+        cell = at[line.name]
+        refs = tuple(at[name] for name in names_in(written)) if written else ()
         rounding = 0.5 * 10.0 ** _last_digit(value, line.digits) * factor if value else 0.0
         if refs:
             graph[cell] = refs
