@@ -7,7 +7,7 @@ by lengthening the fin by half its thickness (a pin: a quarter of its diameter),
 from typing import Any
 
 from cellfuncs.errors import NumberRefused
-from cellfuncs.methods.algebra import exp, holds, larger, plain, sqrt, tanh
+from cellfuncs.methods.algebra import exp, holds, larger, plain, smaller, sqrt, tanh
 from cellfuncs.methods.base import method
 
 _LEAST = 1e-9  # a fin with mL below it is as warm as its root
@@ -81,14 +81,16 @@ def annular(coefficient: Any, conductivity: Any, thickness: Any, diameter: Any, 
 
     m = sqrt(2.0 * coefficient / (conductivity * thickness))
     inner, outer = 0.5 * diameter, 0.5 * (diameter * diameter_ratio + thickness)
-    a, b = m * inner, m * outer
+    a = larger(m * inner, _LEAST)
+    b = a * (outer / inner)
     if not holds(b > a):
         raise NumberRefused("the fin must reach beyond the tube: outer over inner diameter above 1")
     # scaled functions: I carries e^x, K e^-x; what is left of them is e^(2a − 2b), never more than 1
     small = exp(2.0 * (a - b))
     above = kve(1, a) * ive(1, b) - ive(1, a) * kve(1, b) * small
     below = ive(0, a) * kve(1, b) * small + kve(0, a) * ive(1, b)
-    return plain(2.0 * inner / (m * (outer * outer - inner * inner)) * above / below)
+    # a fin hardly beyond the tube loses digits in b − a, and is as warm as the tube
+    return smaller(plain(2.0 * a / ((b - a) * (b + a)) * above / below), 1.0)
 
 
 @method("finned surface", gives="efficiency", scatter=0.0, property_temperature="solid", source="gardner-1945")
