@@ -167,7 +167,7 @@ def carman(velocity: float, diameter: float, voidage: float, density: float, vis
     ranges=(Range("voidage", 0.36, 0.5), Range("Re/(1−ε)", 0.01, 2e4)),
     scatter=0.2,
     property_temperature="mean bulk",
-    source="brauer-1971",
+    source="brauer-1957",
     flows=("bed",),
 )
 def brauer(velocity: float, diameter: float, voidage: float, density: float, viscosity: float) -> float:

@@ -20,7 +20,7 @@ _FLOWS = ("plate",)
     ranges=(Range("Pr", low=0.01),),
     scatter=0.08,
     property_temperature="reference",
-    source="pohlhausen-1921;meksyn-1961",
+    source="pohlhausen-1921;narasimha-vasantha-1966",
     flows=_FLOWS,
     where={"regime": ("laminar",)},
 )

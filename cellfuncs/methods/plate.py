@@ -102,7 +102,7 @@ def _delay(reynolds: float, unheated: float, turbulent: bool) -> tuple[float, fl
 
 @_method(
     "plate laminar, unheated start, local", "local Nu",
-    (_LAMINAR_RE, Range("Pr", low=0.6), Range("ξ/x", 0.0, 0.99)), 0.03, "eckert-1942",
+    (_LAMINAR_RE, Range("Pr", low=0.6), Range("ξ/x", 0.0, 0.99)), 0.03, "lighthill-1950",
     where=_TEMPERATURE | {"regime": ("laminar",)},
 )  # fmt: skip
 def laminar_start_local(reynolds: float, prandtl: float, unheated: float) -> float:
@@ -113,7 +113,7 @@ def laminar_start_local(reynolds: float, prandtl: float, unheated: float) -> flo
 
 @_method(
     "plate laminar, unheated start", "mean Nu",
-    (_LAMINAR_RE, Range("Pr", low=0.6), Range("ξ/x", 0.0, 0.99)), 0.03, "eckert-1942;ameel-1997",
+    (_LAMINAR_RE, Range("Pr", low=0.6), Range("ξ/x", 0.0, 0.99)), 0.03, "lighthill-1950;ameel-1997",
     where=_TEMPERATURE | {"regime": ("laminar",)},
 )  # fmt: skip
 def laminar_start(reynolds: float, prandtl: float, unheated: float) -> float:
