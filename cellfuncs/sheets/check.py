@@ -19,6 +19,7 @@ from cellfuncs.sheets.reporting.report import Report, excerpt
 
 # causes that say less than what the units of a formula tell
 _WEAK = frozenset(("unknown", "typing-slip", "hard-coded"))
+_SURE = 0.75
 _MOST_FINDINGS = 500
 
 
@@ -77,7 +78,10 @@ def _together(recomputed: Iterable[Finding], of_units: Iterable[Finding], agreed
                 by_cell[finding.cell] = finding
         elif other.code == finding.code:
             by_cell[finding.cell] = replace(other, confidence=max(other.confidence, finding.confidence))
-        elif other.code in _WEAK or other.severity != "error":
+        elif other.code == "unknown" and other.severity == "error" and finding.code == "unit-factor":
+            # the number itself is off by no factor of units, whatever stands in its formula
+            continue
+        elif other.code in _WEAK or other.severity != "error" or _says_more(finding, other):
             by_cell[finding.cell] = replace(
                 finding,
                 recomputed=other.recomputed,
@@ -86,6 +90,13 @@ def _together(recomputed: Iterable[Finding], of_units: Iterable[Finding], agreed
                 case=other.case,
             )
     return list(by_cell.values())
+
+
+def _says_more(of_units: Finding, recomputed: Finding) -> bool:
+    """Units that do not fit explain a number better than a factor that happens to give it."""
+    return (
+        of_units.code == "dimension-mismatch" and recomputed.code == "unit-factor" and recomputed.confidence < _SURE
+    )
 
 
 def _final(reading: Reading) -> tuple[str, ...]:

@@ -14,21 +14,26 @@ _MOST_REMARKS = 12
 _WEIGHT = {"error": "bold", "warning": "", "note": "dim"}
 
 
+_WIDTH = 118  # where the output is no terminal
+
+
 def show(reports: Sequence[Report], out: TextIO, width: int | None = None) -> None:
     """Write the reports as tables; texts of the workbook are shown as they are, never as markup."""
     from rich.console import Console
     from rich.table import Table
     from rich.text import Text
 
+    width = width or (None if out.isatty() else _WIDTH)
     console = Console(file=out, width=width, highlight=False, markup=False, soft_wrap=False)
     for report in reports:
         console.print(Text(f"{printable(report.workbook)}: {report.headline()}", style="bold"))
         if report.findings:
             table = Table(box=None, pad_edge=False, padding=(0, 2, 1, 0))
-            for head, least in (("cell", 12), ("stated", 9), ("comes out", 9), ("cause", 24), ("rests on it", 14)):
-                table.add_column(head, min_width=least, overflow="fold", header_style="underline")
+            for head, share in (("cell", 3), ("stated", 2), ("comes out", 2), ("cause", 5), ("rests on it", 4)):
+                table.add_column(head, ratio=share, overflow="fold", header_style="underline")
             for finding in report.findings:
-                cells = (_where(finding), _stated(finding), _recomputed(finding), _cause(finding))
+                numbers = (_shown(value, finding.unit) for value in (finding.stated, finding.recomputed))
+                cells = (_where(finding), *numbers, _cause(finding))
                 texts = [*cells, report.consequence(finding)]
                 table.add_row(*(Text(printable(text), style=_WEIGHT[finding.severity]) for text in texts))
             console.print(table)
@@ -39,12 +44,9 @@ def _where(finding: Finding) -> str:
     return f"{finding.cell} {finding.severity}: {finding.quantity}"
 
 
-def _stated(finding: Finding) -> str:
-    return "" if finding.stated is None else f"{number(finding.stated)} {finding.unit}".strip()
-
-
-def _recomputed(finding: Finding) -> str:
-    return "" if finding.recomputed is None else f"{number(finding.recomputed)} {finding.unit}".strip()
+def _shown(value: float | None, unit: str) -> str:
+    """A number with its unit; a dash stands for none."""
+    return "" if value is None else f"{number(value)} {unit.strip('-– ')}".strip()
 
 
 def _cause(finding: Finding) -> str:
