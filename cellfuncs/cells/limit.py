@@ -6,6 +6,7 @@ from functools import lru_cache
 from typing import Any
 
 from cellfuncs import quantities
+from cellfuncs.answers.effects.model import KINDS
 from cellfuncs.cases import labels, read_case
 from cellfuncs.cases.vary import row_key
 from cellfuncs.cells import convert, solved
@@ -50,9 +51,9 @@ def term_limit(block, term, vary, level=None):
     name = term_name(term)
     key = _row(case, vary)
     kind = labels.dictionary()[key].kind
-    share, effect = _level(level)
+    share, effect, unit = _level(level, case.answer)
     if effect is not None:
-        return Answer(_kelvin_limit(block, key, name, effect), kind)
+        return Answer(_effect_limit(block, key, name, effect, unit), kind)
     return Answer(_share_limit(block, key, name, case.tolerance if share is None else share), kind)
 
 
@@ -67,8 +68,12 @@ def _share_limit(block: Any, vary: str, term: str, level: float) -> float:
 
 
 @lru_cache(maxsize=_MOST_SEARCHES)
-def _kelvin_limit(block: Any, vary: str, term: str, level: float) -> float:
-    return limits.kelvin_limit(read_case(block), vary, term, level)
+def _effect_limit(block: Any, vary: str, term: str, level: float, unit: str) -> float:
+    case = read_case(block)
+    kind = KINDS[case.answer]
+    return limits.effect_limit(
+        case, vary, term, level, lambda change: f"{quantities.from_si(change, unit, kind):.3g} {unit}"
+    )
 
 
 @contextmanager
@@ -109,24 +114,25 @@ def _target(value: Any, kind: str) -> tuple[float, str]:
         return si, quantities.read_number(value).unit_text if isinstance(value, str) else ""
 
 
-def _level(value: Any) -> tuple[float | None, float | None]:
-    """The level as a share, or as an effect in kelvin; neither where none is given."""
+def _level(value: Any, answer: str) -> tuple[float | None, float | None, str]:
+    """The level as a share, or as an effect on the answer in SI with its unit; neither where none is given."""
     with _blaming("level"):
         value = _cell(value)
         if value is None or value == 0.0:
-            return None, None
+            return None, None, ""
         reading = quantities.read_number(value) if isinstance(value, str) else quantities.Reading(value, None, "")
         unit = reading.unit_text
-        kind = "fraction" if not unit or quantities.unit_fits(unit, "fraction") else "temperature_difference"
+        kind = "fraction" if not unit or quantities.unit_fits(unit, "fraction") else KINDS[answer]
         if unit and not quantities.unit_fits(unit, kind):
+            usual = quantities.example(kind)
             raise NoModel(
-                f"an effect in {unit} comes from solved models, which do not give it here; write a share such as 0.05, "
-                "or kelvins such as 1 K"
+                f"an effect in {unit} is none on the {answer}, which the case asks for; write a share such as 0.05, "
+                f"an effect such as {usual}, or another answer in the block"
             )
         level = quantities.to_si(reading.value, unit, kind) if unit else reading.value
         if not level > 0:
             raise OutOfRange(f"{value} is not above zero; write for instance 0.05 or 1 K")
-        return (level, None) if kind == "fraction" else (None, level)
+        return (level, None, "") if kind == "fraction" else (None, level, unit)
 
 
 def _cell(value: Any) -> Any:

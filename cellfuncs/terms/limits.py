@@ -10,11 +10,13 @@ from cellfuncs.cases import labels
 from cellfuncs.cases.case import Case
 from cellfuncs.cases.vary import places, start_of, with_value
 from cellfuncs.errors import CaseRefused, NoModel, OutOfRange
-from cellfuncs.terms.size import Size, num, percent
-from cellfuncs.terms.table import equation_of, judged
+from cellfuncs.terms.priced import change
+from cellfuncs.terms.size import percent
+from cellfuncs.terms.table import MOMENTUM_TERMS, TERMS, equation_of, judged, sizes
 from cellfuncs.terms.verdicts import Judged
 
 _MOST_SHOWN = 4
+MOMENTUM_ONLY = frozenset(MOMENTUM_TERMS) - frozenset(TERMS)
 
 
 @dataclass(frozen=True)
@@ -53,13 +55,25 @@ def share_limit(case: Case, vary: str, term: str, level: float) -> float:
     return _the_one(case, vary, share, Aim("share", level, percent, "level"))
 
 
-def kelvin_limit(case: Case, vary: str, term: str, level: float) -> float:
-    """The value [SI] of the row ``vary`` at which leaving ``term`` out moves the answer by ``level`` [K]."""
+def effect_limit(case: Case, vary: str, term: str, level: float, words: Callable[[float], str]) -> float:
+    """The value [SI] of the row ``vary`` at which leaving ``term`` out changes the answer by ``level`` [SI].
 
-    def kelvins(x: float) -> float:
-        return _exact_kelvins(_judged(solve(with_value(case, vary, x)), term).size)
+    ``words`` shows a change in refusals.
+    """
 
-    return _the_one(case, vary, kelvins, Aim("effect", level, lambda y: f"{num(y)} K", "level"))
+    def changed(x: float) -> float:
+        solution = solve(with_value(case, vary, x))
+        size = next((s for s in sizes(solution, equation_of(term)) if s.term == term), None)
+        if size is None or size.term in MOMENTUM_ONLY:
+            raise NoModel(f"no model gives an effect of {term} by itself; give a share, such as 0.05", argument="level")
+        try:
+            return abs(change(solution, size).change)
+        except NoModel as error:
+            if error.argument != "term" or not size.leading:
+                error.argument = "level"
+            raise
+
+    return _the_one(case, vary, changed, Aim("effect", level, words, "level"))
 
 
 def _judged(solution: Solution, term: str) -> Judged:
@@ -75,15 +89,6 @@ def _share(j: Judged) -> float:
     if j.size.leading:
         raise NoModel(f"{j.size.term} is never left out here, whatever its share", argument="term")
     return j.share
-
-
-def _exact_kelvins(size: Size) -> float:
-    if size.kelvins is None or not size.exact:
-        raise NoModel(
-            f"no effect of {size.term} on the answer is known without a solved model; give a share, such as 0.05",
-            argument="level",
-        )
-    return size.kelvins
 
 
 def _the_one(case: Case, vary: str, function: Callable[[float], float], aim: Aim) -> float:

@@ -4,11 +4,13 @@ from collections.abc import Mapping, Sequence
 from dataclasses import dataclass, replace
 
 from cellfuncs.answers import Solution, effects
-from cellfuncs.errors import CellfuncsError
+from cellfuncs.errors import CellfuncsError, NoModel
 from cellfuncs.terms.size import Size, num, percent
 
 NO_MODEL = "no model"
 NOT_LEFT_OUT = "never left out"
+_FEW_DIGITS = 3
+_TINY = 1e-5  # a share
 _UNITS = {
     "temperature_difference": "K",
     "heat_transfer_coefficient": "W/(m2 K)",
@@ -39,12 +41,22 @@ class Priced:
 Effects = Mapping[str, Priced | str]
 
 
-def priced(solution: Solution, sizes: Sequence[Size]) -> dict[str, Priced | str]:
-    """Term -> its effect, or the words that stand where there is none."""
-    fitting = effects.models_of(solution)
+def priced(solution: Solution, sizes: Sequence[Size], quickly_for: str = "") -> dict[str, Priced | str]:
+    """Term -> its effect, or the words that stand where there is none.
+
+    ``quickly_for`` one term, as a map wants it: groups are rounded so that neighbours share a solution, and tiny
+    terms beside the one are not solved.
+    """
+    fitting = effects.models_of(solution, _FEW_DIGITS) if quickly_for else effects.models_of(solution)
+    largest = max(s.size if s.nets_to is None else s.nets_to for s in sizes)
     found: dict[str, Priced | str] = {}
     for s in sizes:
-        found[s.term] = NOT_LEFT_OUT if s.leading else _one(solution, s, fitting)
+        if s.leading:
+            found[s.term] = NOT_LEFT_OUT
+        elif quickly_for and s.term != quickly_for and max(s.asked or 0.0, s.size / (largest or 1.0)) < _TINY:
+            found[s.term] = f"{NO_MODEL}: too small to be solved for"
+        else:
+            found[s.term] = _one(solution, s, fitting)
     return found
 
 
@@ -82,3 +94,17 @@ def together(solution: Solution, terms: Sequence[str]) -> tuple[float | None, fl
     kelvins = [e.kelvins for e in found if e.kelvins is not None]
     names = ", ".join(dict.fromkeys(e.model for e in found))
     return sum(ratios) if ratios else None, sum(kelvins) if kelvins else None, rest, names
+
+
+def change(solution: Solution, s: Size, answer: str | None = None) -> effects.Effect:
+    """The effect of one term on an answer, with what has none refused in words (NoModel)."""
+    answer = answer or solution.case.answer
+    if s.leading:
+        raise NoModel(f"{s.term} is never left out here: the coefficient rests on it", argument="term")
+    if is_absent(s):
+        return effects.Effect(answer, 0.0, None, 0.0, 0.0, f"the case has no {s.term}")
+    try:
+        return effects.effect(solution, s.term, answer)
+    except NoModel as error:
+        error.argument = error.argument or "term"
+        raise

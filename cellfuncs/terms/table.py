@@ -46,12 +46,14 @@ _SIZES: Mapping[str, Callable[[Solution], list[Size]]] = {
 Row = tuple[str, float, float | str, float | str, str, str]
 
 
-def judged(solution: Solution, equation: str = "energy") -> list[Judged]:
+def judged(solution: Solution, equation: str = "energy", quickly_for: str = "") -> list[Judged]:
     """Every term of an equation with its share, its effect where a model gives one, and its verdict."""
-    return _judged(solution, equation)[0]
+    return _judged(solution, equation, quickly_for)[0]
 
 
-def _judged(solution: Solution, equation: str) -> tuple[list[Judged], priced.Effects, Mapping[str, float]]:
+def _judged(
+    solution: Solution, equation: str, quickly_for: str = ""
+) -> tuple[list[Judged], priced.Effects, Mapping[str, float]]:
     if equation not in EQUATIONS:
         named = " or ".join(EQUATIONS)
         raise UnknownName(f'"{equation[:40]}" is not an equation that is judged; write {named}', argument="equation")
@@ -60,9 +62,14 @@ def _judged(solution: Solution, equation: str) -> tuple[list[Judged], priced.Eff
     sizes = sizes_of(solution)
     if equation != "energy":
         return judge(sizes, case.tolerance, case.smallest), {}, {}
-    effects = priced.priced(solution, sizes)
-    uncertain = uncertainty_of(solution, sizes, sizes_of)
+    effects = priced.priced(solution, sizes, quickly_for)
+    uncertain = {} if quickly_for else uncertainty_of(solution, sizes, sizes_of)
     return judge(sizes, case.tolerance, case.smallest, effects, uncertain), effects, uncertain
+
+
+def sizes(solution: Solution, equation: str = "energy") -> list[Size]:
+    """The terms of an equation as they are, without verdicts."""
+    return _sizes_of(solution.case.flow, equation)(solution)
 
 
 def _sizes_of(flow: str, equation: str) -> Callable[[Solution], list[Size]]:

@@ -115,6 +115,26 @@ def test_the_limit_of_an_effect_in_kelvin(cf, stated_gap):
     assert cf("TERM_LIMIT", stated_gap(), "viscous heating", "velocity", "1.8 degF") == pytest.approx(wanted, rel=1e-9)
 
 
+@pytest.mark.parametrize(
+    ("term", "vary", "level", "kind"),
+    [
+        ("storage", "time scale", "1 K", "outlet temperature"),
+        ("viscous heating", "velocity", "0.02 K", "outlet temperature"),
+        ("viscous heating", "velocity", "2 W", "duty"),
+    ],
+)
+def test_at_the_limit_of_an_effect_leaving_out_changes_the_answer_by_it(cf, term, vary, level, kind):
+    block = [*DUCT, ["time scale", 60.0, "s"], ["answer", kind, ""]]
+    if kind == "duty":
+        block = [row for row in block if row[0] != "time scale"]
+    block = [row for k, row in enumerate(block) if row[0] not in {r[0] for r in block[k + 1 :]}]
+    found = cf("TERM_LIMIT", block, term, vary, level)
+    assert isinstance(found, float), found
+    unit = {"time scale": "s", "velocity": "m/s"}[vary]
+    changed = cf("WITHOUT", cf("VARY", block, vary, found, unit), term, None, level.split()[1])
+    assert abs(changed) == pytest.approx(float(level.split()[0]), rel=1e-4)
+
+
 def test_a_term_of_momentum_has_its_limit(cf, stated_gap):
     """ρUh²/(μL) = 5 %."""
     wanted = 0.05 * 0.03 * 0.1 / (870.0 * (50e-6) ** 2)
@@ -137,7 +157,8 @@ def test_a_wall_is_searched_on_its_own_side(cf, stated_plate):
         (("advection", "velocity"), "! term: advection is never left out"),
         (("advektion", "velocity"), "! term: "),
         (("viscous heating", "velocity", "5 kPa"), "! level: an effect in kPa"),
-        (("storage", "time scale", "1 K"), "! level: no effect of storage"),
+        (("inertia", "velocity", "1 K"), "! level: no model gives an effect of inertia"),
+        (("advection", "velocity", "1 K"), "! term: advection is never left out"),
         (("viscous heating", "velocity", -0.1), "! level: "),
         (("viscous heating", "velocity", "-1 K"), "! level: "),
         (("viscous heating", "velocity", "fast"), "! level: "),

@@ -9,7 +9,7 @@ from dataclasses import dataclass
 
 from cellfuncs.answers import Solution
 from cellfuncs.answers.effects.balance import BalancedDuct, ExpandingDuct, RampedDuct
-from cellfuncs.answers.effects.duct import SolvedDuct
+from cellfuncs.answers.effects.duct import DIGITS, SolvedDuct
 from cellfuncs.answers.effects.film import HeatedFilm
 from cellfuncs.answers.effects.model import KINDS, PAIR, TEMPERATURES, Effect, EffectModel
 from cellfuncs.answers.effects.outside import RadiatingWall, RecoveringLayer, StillPlate
@@ -53,12 +53,12 @@ class Fitting:
         return ""
 
 
-def models_of(solution: Solution) -> Fitting:
-    """The models of a case."""
+def models_of(solution: Solution, digits: int = DIGITS) -> Fitting:
+    """The models of a case; ducts are solved at groups of so many digits, few where neighbours shall share them."""
     found, reasons = [], []
     for build in _MODELS.get(solution.case.flow, ()):
         try:
-            model = build(solution)
+            model = build(solution, digits) if build is SolvedDuct else build(solution)
         except CellfuncsError as error:
             reasons.append((build.terms, str(error)))
         else:

@@ -4,6 +4,7 @@ Laminar flow, also of a power-law melt, and turbulent flow with an eddy diffusiv
 """
 
 import math
+from dataclasses import replace
 from functools import lru_cache
 
 from cellfuncs.answers import Solution
@@ -17,6 +18,7 @@ from cellfuncs.answers.effects.model import (
     PAIR,
     SOURCE,
     WALL,
+    Effect,
     EffectModel,
     expansion_part,
     source_density,
@@ -28,16 +30,22 @@ from cellfuncs.methods.duct import LAMINAR_UP_TO
 _TURBULENT_SPREAD = 0.1  # of an effect, by the eddy diffusivity; own judgement
 _FRICTION_SPREAD = 0.3  # ... by how far the friction of the case is from the solved one's, in its logarithm
 _FRICTION_OFF = {True: 2.5, False: 1.3}  # laminar: changing viscosity; turbulent: a rough wall has another layer
-_DIGITS = 10  # of Re, Pr and Pe: points of a map that differ by rounding are one duct
+_CLOSE = 0.4  # of the tolerance
+DIGITS = 10  # of Re, Pr and Pe: cases that differ by rounding are one duct
 
 
 class SolvedDuct(EffectModel):
-    """The spectral solution of the case's duct; the wall goes on behind its end, upstream it is adiabatic."""
+    """The spectral solution of the case's duct; upstream its wall is adiabatic.
+
+    With conduction along at a wall temperature, outlet and duty are those of a heated length that ends (the stream
+    leaves with what it has been given in all); what is asked at the end itself is that of a wall that goes on.
+    """
 
     terms = PAIR | {ALONG, SOURCE}
     answers = (OUTLET, WALL, COEFFICIENT, DUTY, FLUX)
 
-    def __init__(self, solution: Solution):
+    def __init__(self, solution: Solution, digits: int = DIGITS):
+        self.digits, self.ends = digits, True
         a, case = solution.answers, solution.case
         if not isinstance(a, DuctAnswers) or case.flow != "duct":
             raise NoModel(f"a {case.flow} is not solved across its section")
@@ -51,7 +59,7 @@ class SolvedDuct(EffectModel):
         p, d = a.properties, a.shape.diameter
         sheared = case.sheared(a.property_temperature) if self.laminar else None
         self.index = 1.0 if sheared is None else sheared.exponent
-        self.peclet = _short(a.capacity_flux * d / p.conductivity)
+        self.peclet = a.capacity_flux * d / p.conductivity
         self.place = a.length / d / self.peclet
         self.flux = a.flux is not None
         # θ = 1 in kelvin, and the flux that goes with it
@@ -67,11 +75,14 @@ class SolvedDuct(EffectModel):
         from cellfuncs.models.duct import DuctProblem
 
         shape = self.a.shape
-        prandtl = None if self.laminar else _short(self.a.properties.prandtl)
-        return DuctProblem(
-            shape.section, "one" if shape.heated == "one" else "both", wall, self.index, peclet,
-            reynolds=None if self.laminar else self.peclet / prandtl, prandtl=prandtl,
-        )  # fmt: skip
+        heated = "one" if shape.heated == "one" else "both"
+        if self.laminar:
+            index = _short(self.index, self.digits)
+            return DuctProblem(shape.section, heated, wall, index, peclet and _short(peclet, self.digits))
+        prandtl = _short(self.a.properties.prandtl, self.digits)
+        reynolds = _short(self.a.reynolds, self.digits)
+        peclet = peclet and reynolds * prandtl
+        return DuctProblem(shape.section, heated, wall, 1.0, peclet, reynolds=reynolds, prandtl=prandtl)
 
     def _brinkman(self) -> tuple[float, float]:
         """Br with which the solved flow makes as much heat as the case's friction does, and what that leaves open.
@@ -90,6 +101,18 @@ class SolvedDuct(EffectModel):
         spread = _FRICTION_SPREAD * abs(math.log(off))
         return brinkman, spread if self.laminar else max(spread, _TURBULENT_SPREAD)
 
+    def effect(self, answer: str, left: frozenset[str]) -> Effect:
+        self.ends = self.digits >= DIGITS
+        found = super().effect(answer, left)
+        if (
+            not self.ends
+            and found.ratio is not None
+            and _CLOSE < found.ratio / self.solution.case.tolerance < 1.0 / _CLOSE
+        ):
+            self.ends = True  # where the verdict may turn, at the cost of a solution of its own
+            found = super().effect(answer, left)
+        return found
+
     def value(self, answer: str, left: frozenset[str]) -> tuple[float, float]:
         from cellfuncs.models import duct
 
@@ -99,13 +122,19 @@ class SolvedDuct(EffectModel):
             acts = {"brinkman": self.brinkman, "expansion": self.expansion}
         if SOURCE not in left and self.source:
             acts["source"] = self.source * a.shape.diameter**2 / (a.properties.conductivity * self.unit)
-        solved = duct.solve(
-            self._problem("flux" if self.flux else "temperature", None if ALONG in left else self.peclet)
-        )
-        return tuple(self._answer(answer, on, acts) for on in (solved, solved.coarse))
+        problem = self._problem("flux" if self.flux else "temperature", None if ALONG in left else self.peclet)
+        if self.ends and problem.peclet is not None and not self.flux and answer in (OUTLET, DUTY):
+            problem = replace(problem, heated_length=_short(self.place, self.digits))
+            solved = duct.solve(problem)
+            both = (solved, solved.coarse)
+            if answer == OUTLET:
+                return tuple(on.energy(problem.heated_length, **acts) * self.unit for on in both)
+            return tuple(self._answer(DUTY, on, acts, problem.heated_length) for on in both)
+        solved = duct.solve(problem)
+        return tuple(self._answer(answer, on, acts, self.place) for on in (solved, solved.coarse))
 
-    def _answer(self, answer: str, solved, acts: dict[str, float]) -> float:
-        x, a = self.place, self.a
+    def _answer(self, answer: str, solved, acts: dict[str, float], x: float) -> float:
+        a = self.a
         if answer == OUTLET:
             return solved.bulk(x, **acts) * self.unit
         if answer == WALL and self.flux:
@@ -172,6 +201,6 @@ def recovery_rise(solution: Solution) -> float:
         return rise * p.viscosity * a.velocity**2 / p.conductivity
 
 
-def _short(value: float) -> float:
-    """A number without the digits that rounding makes."""
-    return float(f"{value:.{_DIGITS}g}")
+def _short(value: float, digits: int = DIGITS) -> float:
+    """A number to so many digits."""
+    return float(f"{value:.{digits}g}")
