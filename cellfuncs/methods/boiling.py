@@ -14,7 +14,7 @@ from typing import Any
 from cellfuncs.errors import UnknownName
 from cellfuncs.methods.algebra import exp, log10, sqrt, where
 from cellfuncs.methods.base import Range, follows, method
-from cellfuncs.methods.condensation import lift
+from cellfuncs.methods.condensation import lift, liquid_prandtl
 from cellfuncs.sources import read_table
 
 _WARNING = (
@@ -71,12 +71,13 @@ def surface(liquid: str, material: str) -> tuple[float, float]:
 
 @_method("Rohsenow", "heat flux", (), 0.5, "rohsenow-1952;vachon-1968", **_NUCLEATE)
 def rohsenow(
-    surface_factor: float, prandtl_exponent: float, prandtl: float, wall_superheat: float, density_liquid: float,
-    density_vapour: float, viscosity_liquid: float, specific_heat_liquid: float, heat_of_vaporisation: float,
-    surface_tension: float, gravity: float,
+    surface_factor: float, prandtl_exponent: float, wall_superheat: float, density_liquid: float,
+    density_vapour: float, viscosity_liquid: float, conductivity_liquid: float, specific_heat_liquid: float,
+    heat_of_vaporisation: float, surface_tension: float, gravity: float,
 ) -> float:  # fmt: skip
     """Heat flux [W/m2] of nucleate boiling, μ hfg (g(ρl−ρv)/σ)^1/2 (cp ΔT/(Csf hfg Pr^n))³; scatters twofold."""
     scale = capillary_length(density_liquid, density_vapour, surface_tension, gravity)
+    prandtl = liquid_prandtl(specific_heat_liquid, viscosity_liquid, conductivity_liquid)
     jakob = specific_heat_liquid * wall_superheat / (surface_factor * heat_of_vaporisation * prandtl**prandtl_exponent)
     return viscosity_liquid * heat_of_vaporisation / scale * jakob**3
 

@@ -59,6 +59,12 @@ def condensation_number(
     return heat / (viscosity_liquid * heat_of_vaporisation * scale)
 
 
+@follows("Pr")
+def liquid_prandtl(specific_heat_liquid: Any, viscosity_liquid: Any, conductivity_liquid: Any) -> Any:
+    """Prandtl number of the liquid."""
+    return specific_heat_liquid * viscosity_liquid / conductivity_liquid
+
+
 def _still(
     density_liquid: Any, density_vapour: Any, viscosity_liquid: Any, conductivity_liquid: Any, latent: Any,
     subcooling: Any, gravity: Any, size: Any,
@@ -135,9 +141,9 @@ def kutateladze(
     "labuntsov-1957",
 )  # fmt: skip
 def labuntsov(
-    prandtl: float, density_liquid: float, density_vapour: float, viscosity_liquid: float, conductivity_liquid: float,
-    heat_of_vaporisation: float, wall_subcooling: float, gravity: float, height_of_wall: float,
-    specific_heat_liquid: float = 0.0,
+    density_liquid: float, density_vapour: float, viscosity_liquid: float, conductivity_liquid: float,
+    specific_heat_liquid: float, heat_of_vaporisation: float, wall_subcooling: float, gravity: float,
+    height_of_wall: float,
 ) -> float:  # fmt: skip
     """Mean h [W/(m2 K)] of a film turbulent at its foot, from Nu = Re/(8750 + 58 Pr^−1/2(Re^3/4 − 253)), Re = 4P·Nu.
 
@@ -148,6 +154,7 @@ def labuntsov(
         density_liquid, density_vapour, viscosity_liquid, conductivity_liquid, latent, wall_subcooling, gravity,
         height_of_wall,
     )  # fmt: skip
+    prandtl = liquid_prandtl(specific_heat_liquid, viscosity_liquid, conductivity_liquid)
     reynolds = ((4.0 * number - 8750.0) * prandtl**0.5 / 58.0 + 253.0) ** (4.0 / 3.0)
     scale = film_length(density_liquid, density_vapour, viscosity_liquid, gravity)
     return _through_film(number, reynolds, conductivity_liquid, scale)
