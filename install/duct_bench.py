@@ -7,7 +7,7 @@ from typing import Any
 
 import finite_differences
 
-ROUNDS = 9
+ROUNDS = 40
 PECLET, LENGTH = 10.0, 2.0  # length in D
 PLACES = (0.1, 1.0, 1.9)  # x/D where the bulk temperature must be right to 1e-4
 TOLERANCE = 1e-4

@@ -41,7 +41,7 @@ def _flow(problem: "DuctProblem") -> tuple[Profile, int, int]:
     if problem.peclet is None or problem.wall == "flux":
         return profile, 48, 3
     if problem.upstream == "adiabatic":
-        return profile, 50, 5
+        return profile, 49, 5
     return (profile, 44, 4) if math.isfinite(problem.heated_length) else (profile, 48, 3)
 
 

@@ -16,6 +16,7 @@ from cellfuncs.models.duct_modes import Modes, modes_of
 from cellfuncs.models.duct_regions import WIDTH, Stretch, steady
 from cellfuncs.models.duct_section import Section
 
+_GONE = 0.0  # modes from beyond an infinite stretch
 ADIABATIC, SAME_WALL, FIXED = "adiabatic", "wall at inlet temperature", "fixed inlet"
 
 
@@ -65,14 +66,11 @@ class _Part:
         self.at_level = at
         return at + self.levelled
 
-    def amplitudes(self, count: int, end: bool) -> tuple[Any, Any]:
-        """Rows that give the amplitudes of (downstream, upstream) modes at the start or the end from the unknowns."""
-        down, up = np.zeros((len(self.down.mu), count)), np.zeros((len(self.up.mu), count))
-        if math.isfinite(self.start):
-            down[:, self.at_down] = np.diag(self.fade_down if end else np.ones(len(self.down.mu)))
-        if math.isfinite(self.end):
-            up[:, self.at_up] = np.diag(np.ones(len(self.up.mu)) if end else self.fade_up)
-        return down, up
+    def at(self, end: bool) -> tuple[tuple[slice, Any], tuple[slice, Any]]:
+        """Where the amplitudes of (downstream, upstream) modes stand among the unknowns, and what is left of them."""
+        down = np.where(end, self.fade_down, 1.0) if math.isfinite(self.start) else _GONE
+        up = np.where(end, 1.0, self.fade_up) if math.isfinite(self.end) else _GONE
+        return (self.at_down, down), (self.at_up, up)
 
     def level(self, count: int) -> Any:
         row = np.zeros(count)
@@ -95,40 +93,57 @@ def _between(
     left: _Part, right: _Part, section: Section, along: float, count: int, rows: list[Any], constants: list[Any]
 ) -> None:
     """The conditions where two stretches meet."""
-    left_down, left_up = left.amplitudes(count, end=True)
-    right_down, right_up = right.amplitudes(count, end=False)
+    left_places, right_places = left.at(end=True), right.at(end=False)
     step = right.rest.wall - left.rest.wall - left.drift(end=True)
     if left.insulated == right.insulated:
         jump = right.rest.state() - left.rest.state()
-        for modes, before, after in ((left.down, left_down, right_down), (left.up, left_up, right_up)):
-            rows.append(before - after)
+        both = (left.down, 1.0), (left.up, -1.0)
+        for (modes, sign), before, after in zip(both, left_places, right_places, strict=True):
+            row = np.zeros((len(modes.mu), count))
+            _put(row, before, 1.0)
+            _put(row, after, -1.0)
             handed = modes.state().T @ jump
             if not left.insulated:  # a step of the wall itself: θ = 1 is no sum of modes, its advection and flux are
-                sign = 1.0 if modes is left.down else -1.0
                 handed += sign * np.outer(modes.energy / modes.mu, step)
+            rows.append(row)
             constants.append(handed)
         if left.insulated:
             rows.append((left.level(count) - right.level(count))[None, :])
             constants.append((right.rest.energy - left.rest.energy - left.drift(end=True))[None, :])
         return
     held, free = (right, left) if left.insulated else (left, right)
-    held_rows = (right_down, right_up) if left.insulated else (left_down, left_up)
-    free_down, free_up = (left_down, left_up) if left.insulated else (right_down, right_up)
-    for modes, own in zip((held.down, held.up), held_rows, strict=True):
+    held_places, free_places = (right_places, left_places) if left.insulated else (left_places, right_places)
+    for modes, place in zip((held.down, held.up), held_places, strict=True):
         turn = modes.state().T
-        rows.append(turn @ free.down.state() @ free_down + turn @ free.up.state() @ free_up - own)
+        row = np.zeros((len(modes.mu), count))
+        for beyond, there in zip((free.down, free.up), free_places, strict=True):
+            if there[1] is not _GONE:
+                row[:, there[0]] = turn @ beyond.state() * there[1]
+        _put(row, place, -1.0)
+        rows.append(row)
         constants.append(turn @ (held.rest.state() - free.rest.state()))
-    rows.append((free.down.wall @ free_down + free.up.wall @ free_up + free.level(count))[None, :])
+    row = free.level(count)
+    for beyond, there in zip((free.down, free.up), free_places, strict=True):
+        if there[1] is not _GONE:
+            row[there[0]] = beyond.wall * there[1]
+    rows.append(row[None, :])
     constants.append((step if left.insulated else -step)[None, :])
+
+
+def _put(row: Any, place: tuple[slice, Any], sign: float) -> None:
+    """The amplitudes themselves, one a row, where there are any."""
+    if place[1] is not _GONE:
+        row[np.arange(len(row)), np.arange(place[0].start, place[0].stop)] += sign * place[1]
 
 
 def _at_inlet(
     part: _Part, section: Section, along: float, count: int, rows: list[Any], constants: list[Any]
 ) -> None:
     """θ = 0 over the whole section x = 0, in coordinates of the mean square."""
-    own_down, own_up = part.amplitudes(count, end=False)
-    row = _traces(section, part.down, along, 1.0) @ own_down + _traces(section, part.up, along, -1.0) @ own_up
-    row += np.outer(section.whole, part.level(count))
+    row = np.outer(section.whole, part.level(count))
+    for modes, sign, place in zip((part.down, part.up), (1.0, -1.0), part.at(end=False), strict=True):
+        if place[1] is not _GONE:
+            row[:, place[0]] += _traces(section, modes, along, sign) * place[1]
     rest = section.embed @ (section.fold.T @ part.rest.p) + np.outer(section.whole, part.rest.wall)
     if not part.insulated:
         row, rest = section.embed.T @ row, section.embed.T @ rest
