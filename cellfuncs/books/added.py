@@ -46,7 +46,10 @@ def _sheet(rows: Iterable[Sequence[str]], widths: Sequence[float]) -> bytes:
     columns = "".join(
         f'<col min="{n}" max="{n}" width="{width:g}" customWidth="1"/>' for n, width in enumerate(widths, 1)
     )
-    text = f'<worksheet xmlns="{MAIN}"><cols>{columns}</cols><sheetData>{written}</sheetData></worksheet>'
+    text = (
+        f'<worksheet xmlns="{MAIN}"><sheetPr><pageSetUpPr fitToPage="1"/></sheetPr><cols>{columns}</cols>'
+        f'<sheetData>{written}</sheetData><pageSetup orientation="landscape" fitToHeight="0"/></worksheet>'
+    )
     return HEAD + text.encode()
 
 

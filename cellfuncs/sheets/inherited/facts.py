@@ -49,6 +49,7 @@ class Facts:
             if value not in listed:
                 listed.append(value)
                 self.cells.setdefault(key, cell)
+                self.cells[f"{key} {value}"] = cell
                 self.cells[f"{key}:{value}"] = cell
         elif key not in self.said:
             self.said[key] = value

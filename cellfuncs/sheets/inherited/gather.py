@@ -160,7 +160,7 @@ def _case(name: str, quantities: Sequence[Quantity], facts: Facts) -> SheetCase:
             case.flow = value
         elif key != "si":
             case.facts[key] = tuple(value) if key == "method" else value
-            case.fact_cells[key] = facts.cells[key]
+    case.fact_cells.update(facts.cells)
     case.fact_cells |= {key: cell for key, cell in facts.cells.items() if key.startswith("neglects:")}
     return case
 

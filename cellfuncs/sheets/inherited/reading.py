@@ -161,8 +161,9 @@ def _cases(known: list[Quantity], facts: Mapping[str, Facts], links: Links, note
         sheets = dict.fromkeys(q.page for q in group.quantities)
         for sheet in sheets:
             for key, value in facts[sheet].said.items():
+                cells = facts[sheet].cells
                 for one in value if isinstance(value, list) else [value]:
-                    said.put(key, one, facts[sheet].cells[key])
+                    said.put(key, one, cells.get(f"{key} {one}", cells[key]))
         section = next((q.found.section for q in group.quantities if q.found.section), "")
         name = section if len(groups) > 1 and section else next(iter(sheets))
         found += gather.cases_of(group, said, name, notes)

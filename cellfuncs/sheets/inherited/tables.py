@@ -13,6 +13,7 @@ from cellfuncs.sheets.inherited.found import Found
 from cellfuncs.sheets.inherited.page import Page, Spot, is_number
 
 _LEAST_COLUMNS = 2
+_WIDEST_GAP = 2  # columns from one head to the next
 _LOOK_DOWN = 3  # rows between a head and its first number
 _KNOWN_SHARE = 0.5
 
@@ -48,7 +49,7 @@ def _runs(page: Page, row: int, columns: list[int], taken: set[Spot]) -> list[li
     for column in columns:
         if (row, column) in taken or _label(page, (row, column)) is None:
             continue
-        if groups and column - groups[-1][-1] == 1:
+        if groups and column - groups[-1][-1] <= _WIDEST_GAP:
             groups[-1].append(column)
         else:
             groups.append([column])

@@ -22,6 +22,7 @@ _BRACKET = re.compile(r"\s*[\[({]([^\[\](){}]{1,30})[\])}]")
 _SYMBOL = re.compile(r"[^\W\d](?:[\w'′″*∞,.̇̄+/\-]|[({][\w, ]{1,6}[)}]){0,8}\Z")
 _ASSIGNED = re.compile(r"^(?P<label>[^=:]{1,60}?)\s*(?:=|:(?!\S*/))\s*(?P<value>[-+.]?\d.{0,38}|½.{0,20})$", re.DOTALL)
 _ENDING = re.compile(r"(?:,|;|\s-|\s–|\sin|\s/|/|:)\s+(?P<unit>[^\s,;:][^,;:]{0,22})$|\s(?P<bare>[^\s,;:]{1,16})$")
+_NUMBERED = re.compile(r"^(?:[-–•*>·]\s+|\(?\d{1,2}(?:\.\d{1,2}){0,3}[.)]?\s+(?=[^\W\d]{2}))")
 _WORD = re.compile(r"[a-zα-ωµ°0-9']+")
 
 
@@ -85,7 +86,7 @@ def assignment_in(text: str) -> tuple[str, quantities.Reading] | None:
 @lru_cache(maxsize=8192)
 def label_in(text: str) -> Labelled:
     """A label taken apart."""
-    text = " ".join(text.split()).rstrip(":= ").strip()
+    text = _NUMBERED.sub("", " ".join(text.split())).rstrip(":= ").strip()
     if not text or len(text) > LONGEST_LABEL:
         return Labelled((), "")
     names, unit, rest = [text], "", text

@@ -22,6 +22,7 @@ def _template() -> Any:
 
     environment = Environment(autoescape=True, undefined=StrictUndefined, trim_blocks=True, lstrip_blocks=True)
     environment.filters["number"] = lambda value: "" if value is None else number(value)
+    environment.filters["unit"] = lambda text: text.strip("-– ")
     return environment.from_string(TEMPLATE.read_text(encoding="utf-8"))
 
 
