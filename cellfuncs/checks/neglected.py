@@ -77,9 +77,10 @@ def findings(sheet: SheetCase) -> Iterator[Finding]:
             judged |= {row[0]: row for row in reversed(table.term_rows(solve(case), equation))}
         except CellfuncsError:
             continue
-    cell = sheet.fact_cells.get("neglects", "")
+    first = sheet.fact_cells.get("neglects", "")
     for term in terms:
         row = judged.get(term)
+        cell = sheet.fact_cells.get(f"neglects:{term}", first)
         if row is None or row[4] != KEEP:
             continue
         share = f"{row[2]:.3g}" if isinstance(row[2], float) else str(row[2])

@@ -48,6 +48,8 @@ STAND_INS: Mapping[str, tuple[str, ...]] = {
     "any_diffusivity": ("solid_diffusivity", "diffusivity"),
 }
 STREAMS = ("hot_", "cold_")
+# two labels of one quantity
+_SAME: Mapping[str, tuple[str, ...]] = {"area": ("area", "surface_area"), "surface_area": ("surface_area", "area")}
 
 
 @dataclass(frozen=True)
@@ -135,7 +137,8 @@ def relation(
         ways = tuple(Wrong(*way) for way in wrong)
         takes_case = "case" in parameters
         rest = (needs, optional, function, scatter, source, flows, when, ways)
-        RELATIONS.append(Relation(name, gives, *rest, None, takes_case, derives))
+        for key in _SAME.get(gives, (gives,)):
+            RELATIONS.append(Relation(name, key, *rest, None, takes_case, derives))
         for prefix in STREAMS if streams else ():
             own = {k: prefix + k for k in (*needs, *optional, gives) if prefix + k in labels.dictionary()}
             words = f"{name}, {prefix.rstrip('_')} stream"

@@ -45,7 +45,8 @@ class SheetCase:
     ``substance`` (also ``hot_substance``, ``cold_substance``), ``arrangement`` (countercurrent, cocurrent, crossflow,
     shell and tube), ``method`` (the name of a method), ``regime`` (laminar, turbulent), ``heating`` (heating,
     cooling), ``neglects`` (a list of terms by their names in term tables), and choices of case blocks by their keys
-    (``section``, ``surface``, ``heated_walls`` …). ``fact_cells`` says where a fact stands.
+    (``section``, ``surface``, ``heated_walls`` …). ``fact_cells`` says where a fact stands; of several neglected terms
+    each has its own, ``neglects:viscous heating``.
     """
 
     name: str

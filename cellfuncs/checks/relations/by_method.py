@@ -19,6 +19,8 @@ SAME = 0.006
 # what typed values of good handbooks, read from charts, may differ from the methods
 LOOSE = {"mean Nu": 0.15, "Darcy friction factor": 0.04, "drag coefficient": 0.15}
 LAMINAR, TURBULENT = 2300.0, 4000.0
+# methods for ducts that end below this are for laminar flow
+_LAMINAR_END = 3000.0
 _DEFAULTS: Mapping[str, Any] = {
     "section": "tube",
     "wall": "temperature",
@@ -72,15 +74,19 @@ def _reynolds_range(method: Method) -> tuple[float, float] | None:
 def _regime_missed(method: Method, given: Mapping[str, Any], others: Iterable[Method]) -> bool:
     """Whether the case lies in the other regime than the method is for.
 
-    That is so where Re is beyond an end of its range and another method holds there up to that end.
+    That is so where Re is beyond an end of its range and a method of the other regime holds there.
     """
     reynolds, own = given.get("reynolds"), _reynolds_range(method)
     if reynolds is None or own is None or own[0] <= reynolds <= own[1]:
         return False
-    ranges = [found for m in others if (found := _reynolds_range(m)) and found[0] <= reynolds <= found[1]]
+    there = [m for m in others if (found := _reynolds_range(m)) and found[0] <= reynolds <= found[1]]
+    regimes = set(method.where.get("regime", ()))
+    if regimes and any(regimes.isdisjoint(m.where.get("regime", regimes)) for m in there):
+        return True
+    ranges = [_reynolds_range(m) or (0.0, 0.0) for m in there]
     if reynolds < own[0]:
-        return any(high <= 1.05 * own[0] for _, high in ranges)
-    return own[1] < 1e5 and any(low >= 0.7 * own[1] for low, _ in ranges)
+        return any(high <= _LAMINAR_END for _, high in ranges)
+    return own[1] <= _LAMINAR_END and any(low >= 0.7 * own[1] for low, _ in ranges)
 
 
 def _evaluate(method: Method, given: Mapping[str, Any]) -> tuple[float, str] | None:

@@ -19,6 +19,10 @@ def _in_a_circle(case) -> bool:
     return case.facts.get("section", "tube") in ("tube", "other") and not case.stated.get("core_diameter")
 
 
+def _sphere(case) -> bool:
+    return case.flow == "sphere" or "sphere" in (case.facts.get("shape"), case.facts.get("surface"))
+
+
 @relation("section of a round tube", "flow_area", wrong=(_AS_RADIUS, _AS_DIAMETER, _SQUARE, _HALF, _NO_PI),
           when=_in_a_circle)  # fmt: skip
 def round_section(diameter):
@@ -186,19 +190,19 @@ def volume_over_surface(volume, any_area):
     return volume / any_area
 
 
-@relation("characteristic length of a sphere", "characteristic_length", derives=False)
+@relation("characteristic length of a sphere", "characteristic_length", derives=False, when=_sphere)
 def third_of_radius(diameter):
     """Lc = D/6."""
     return diameter / 6.0
 
 
-@relation("volume of a sphere", "volume", derives=False)
+@relation("volume of a sphere", "volume", derives=False, when=_sphere)
 def sphere_volume(diameter):
     """V = π/6·D³."""
     return pi / 6.0 * diameter**3
 
 
-@relation("surface of a sphere", "surface_area", derives=False)
+@relation("surface of a sphere", "surface_area", derives=False, when=_sphere)
 def sphere_surface(diameter):
     """A = π·D²."""
     return pi * diameter**2

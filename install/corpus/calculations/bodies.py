@@ -66,9 +66,9 @@ def oil_film(rng: random.Random, system: str) -> Calculation:
     c = Calculation("Thrust bearing, oil film between plates", system, "gap")
     c.texts.append(("Flow kind", "oil film"))
     c.facts = {}
-    c.typed("w", "velocity", "Sliding velocity;Sliding speed", ("m/s", "ft/s"), between(rng, 10, 25), "U", 3)
+    c.typed("w", "velocity", "Sliding velocity;Sliding speed", ("m/s", "ft/s"), between(rng, 24, 40), "U", 3)
     c.typed("g", "gap", "Film thickness;Gap;Oil film thickness", _MM, rng.uniform(5e-5, 1.2e-4), "h", 3)
-    c.typed("mu", "viscosity", "Dynamic viscosity;Viscosity", ("mPa.s", "cP"), between(rng, 0.02, 0.06), "μ", 3)
+    c.typed("mu", "viscosity", "Dynamic viscosity;Viscosity", ("mPa.s", "cP"), between(rng, 0.035, 0.08), "μ", 3)
     c.typed("rho", "density", "Density;Oil density", ("kg/m3", "lb/ft3"), 870.0, "ρ", 3)
     c.typed("k", "conductivity", "Thermal conductivity;Conductivity", ("W/mK", "Btu/h-ft-F"), 0.14, "k", 3)
     c.typed("cp", "specific_heat", "Specific heat;Heat capacity", ("kJ/kgK", "Btu/lb-F"), 1950.0, "cp", 3)
