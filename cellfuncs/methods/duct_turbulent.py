@@ -1,17 +1,19 @@
 """Heat transfer in turbulent duct flow, smooth walls or any wall by its friction factor.
 
 Nu on the hydraulic diameter, properties at the mean bulk temperature unless said. Property-ratio corrections stand in
-``corrections.py``. f is Darcy's; where a method takes it, it may be that of a slightly rough wall.
+``corrections.py``. f is Darcy's. All but Gnielinski's are for smooth walls; his is used in practice with the friction
+of a rough wall too, which claims too much where the wall is fully rough (``duct_rough.py``).
 """
 
 from cellfuncs.methods.algebra import exp, sqrt
 from cellfuncs.methods.base import Range, method
 from cellfuncs.methods.duct_laminar import LENGTH, friction_times_re
-from cellfuncs.methods.friction import konakov
+from cellfuncs.methods.friction import SMOOTH, konakov
 
 TURBULENT_FROM = 4000.0
 STRAIGHT = {"shape": ("straight",)}
 TURBULENT = Range("Re", 1e4, 5e6)
+LONG = Range("L/D", low=100.0)  # the entry adds less than 5 % to the mean
 THIRD, TWO_THIRDS = 1.0 / 3.0, 2.0 / 3.0
 
 
@@ -36,7 +38,7 @@ def gnielinski(reynolds: float, prandtl: float, friction: float, diameter_over_l
 @method(
     "Petukhov-Kirillov",
     gives="mean Nu",
-    ranges=(TURBULENT, Range("Pr", 0.5, 2000.0), Range("L/D", low=40.0)),
+    ranges=(TURBULENT, Range("Pr", 0.5, 2000.0), LONG, SMOOTH),
     scatter=0.1,
     property_temperature="mean bulk",
     source="petukhov-kirillov-1958;petukhov-1970",
@@ -53,7 +55,7 @@ def petukhov_kirillov(reynolds: float, prandtl: float, friction: float) -> float
 @method(
     "Petukhov-Popov",
     gives="mean Nu",
-    ranges=(Range("Re", 4000.0, 5e6), Range("Pr", 0.5, 1e6), Range("L/D", low=40.0)),
+    ranges=(TURBULENT, Range("Pr", 0.5, 200.0), LONG, SMOOTH),
     scatter=0.06,
     property_temperature="mean bulk",
     source="petukhov-popov-1963;bhatti-shah-1987",
@@ -75,7 +77,7 @@ def _power_law(lead: float, reynolds: float, prandtl: float, power: float) -> fl
 @method(
     "Dittus-Boelter, heating",
     gives="mean Nu",
-    ranges=(Range("Re", 1e4, 1.2e5), Range("Pr", 0.7, 120.0), Range("L/D", low=60.0)),
+    ranges=(Range("Re", 1e4, 1.2e5), Range("Pr", 0.7, 120.0), Range("L/D", low=60.0), SMOOTH),
     scatter=0.25,
     property_temperature="mean bulk",
     source="dittus-boelter-1930;mcadams-1954",
@@ -91,7 +93,7 @@ def dittus_boelter_heating(reynolds: float, prandtl: float) -> float:
 @method(
     "Dittus-Boelter, cooling",
     gives="mean Nu",
-    ranges=(Range("Re", 1e4, 1.2e5), Range("Pr", 0.7, 120.0), Range("L/D", low=60.0)),
+    ranges=(Range("Re", 1e4, 1.2e5), Range("Pr", 0.7, 120.0), Range("L/D", low=60.0), SMOOTH),
     scatter=0.25,
     property_temperature="mean bulk",
     source="dittus-boelter-1930;mcadams-1954",
@@ -107,7 +109,7 @@ def dittus_boelter_cooling(reynolds: float, prandtl: float) -> float:
 @method(
     "Colburn",
     gives="mean Nu",
-    ranges=(Range("Re", 1e4, 1e6), Range("Pr", 0.7, 160.0), Range("L/D", low=60.0)),
+    ranges=(Range("Re", 1e4, 1e6), Range("Pr", 0.7, 160.0), Range("L/D", low=60.0), SMOOTH),
     scatter=0.25,
     property_temperature="film",
     source="colburn-1933",
@@ -128,6 +130,7 @@ def colburn(reynolds: float, prandtl: float) -> float:
         Range("Pr", 0.7, 16700.0),
         Range("viscosity ratio", 0.0044, 9.75),
         Range("L/D", low=60.0),
+        SMOOTH,
     ),
     scatter=0.25,
     property_temperature="mean bulk",
@@ -144,7 +147,7 @@ def sieder_tate_turbulent(reynolds: float, prandtl: float, viscosity_ratio: floa
 @method(
     "gas in a tube",
     gives="mean Nu",
-    ranges=(Range("Re", 1e4, 1e6), Range("Pr", 0.5, 1.0), Range("L/D", low=60.0)),
+    ranges=(Range("Re", 1e4, 1e6), Range("Pr", 0.5, 1.0), LONG, SMOOTH),
     scatter=0.1,
     property_temperature="mean bulk",
     source="ebadian-dong-1998",
@@ -160,7 +163,7 @@ def gas_in_tube(reynolds: float, prandtl: float, wall: str) -> float:
 @method(
     "Sleicher-Rouse",
     gives="mean Nu",
-    ranges=(Range("Re", 1e4, 1e6), Range("Pr", 0.1, 1e5), Range("L/D", low=60.0)),
+    ranges=(Range("Re", 1e4, 1e6), Range("Pr", 0.1, 1e5), LONG, SMOOTH),
     scatter=0.1,
     property_temperature="mean bulk",
     source="sleicher-rouse-1975;notter-sleicher-1972",
