@@ -4,6 +4,7 @@ import math
 
 import numpy as np
 import pytest
+from scipy.integrate import solve_ivp
 from scipy.special import hyp1f1
 
 from cellfuncs.models.duct import DuctProblem, solve
@@ -206,6 +207,23 @@ def test_decay_with_conduction_along(peclet):
         step = 1e-6 * decay
         slope = (at_wall(decay + step) - at_wall(decay - step)) / (2 * step)
         assert abs(at_wall(decay) / slope) < 2e-9 * decay
+
+
+@pytest.mark.parametrize("heated", ["both", "one"])
+@pytest.mark.parametrize("peclet", [0.5, 5.0, 100.0])
+def test_decay_between_plates(heated, peclet):
+    """The same equation between plates, integrated by a general-purpose solver: θ = 0 at the heated wall."""
+    steep = 16.0 if heated == "both" else 4.0
+    part = solve(DuctProblem("plates", heated, peclet=peclet))._stretches.parts[-1]
+    for decay in 1.0 / part.down.mu[::-1][:3]:
+
+        def slope(c, state, decay=decay):
+            off = c if heated == "both" else 2.0 * c - 1.0
+            push = decay * 1.5 * (1.0 - off * off) + decay**2 / peclet**2
+            return state[1], -push * state[0] / steep
+
+        end = solve_ivp(slope, (0.0, 1.0), (1.0, 0.0), rtol=1e-11, atol=1e-13).y[:, -1]
+        assert abs(end[0]) < 1e-9 * abs(end[1])
 
 
 @pytest.mark.parametrize(

@@ -4,6 +4,7 @@ import math
 
 import numpy as np
 import pytest
+from scipy.integrate import cumulative_simpson, simpson
 
 from cellfuncs.models.duct import DuctProblem, recovery_rise, solve
 from cellfuncs.models.duct_eddy import eddy, friction_scale, turbulent
@@ -124,3 +125,17 @@ def test_conduction_along_matters_for_metals_alone():
         shift = duct.bulk(FAR) - 4 * FAR
         assert shift > 4 / peclet**2
         assert (shift < 1e-5) == (prandtl > 0.1)
+
+
+@pytest.mark.parametrize(("reynolds", "prandtl"), [(1e4, 0.01), (1e5, 0.7), (1e5, 10.0), (1e6, 100.0)])
+def test_integral_of_lyon(reynolds, prandtl):
+    """Lyon 1951: 1/Nu = 2∫(∫u·R·dR)²/(R(1 + k_t/k))·dR on the same profile, by Simpson's rule on crowded points."""
+    profile = turbulent("tube", "both", reynolds, prandtl)
+    t = np.linspace(0.02, 1.0, 20_001)[:-1]
+    c = 1.0 - t**5
+    share = np.concatenate([[0.0], cumulative_simpson(profile.velocity(c), x=1.0 - c)])  # of the flow, from the wall
+    inner = 1.0 - (share + profile.velocity(c[:1]) * (1.0 - c[0]) / 2)
+    integrand = inner**2 / (c * profile.conductivity(c))  # 2(∫uRdR)²/R dR = (inner²/4)·dc/c
+    resistance = simpson(integrand, x=1.0 - c) / 4.0
+    near_wall, near_middle = (1.0 - c[0]) / 4.0, c[-1] * integrand[-1] / 8.0
+    assert developed(reynolds, prandtl) == pytest.approx(1.0 / (resistance + near_wall + near_middle), rel=1e-6)
