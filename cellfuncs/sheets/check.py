@@ -12,6 +12,7 @@ from cellfuncs.cases import labels
 from cellfuncs.checks.finding import SEVERITIES, Finding
 from cellfuncs.checks.judge import judge
 from cellfuncs.checks.references import References
+from cellfuncs.sheets.consequences import Consequences
 from cellfuncs.sheets.dimensions import judge as units
 from cellfuncs.sheets.inherited.page import Page, Spot
 from cellfuncs.sheets.inherited.reading import MOST_NOTES, Reading, read_book
@@ -21,6 +22,7 @@ from cellfuncs.sheets.reporting.report import Report, excerpt
 _WEAK = frozenset(("unknown", "typing-slip", "hard-coded"))
 _SURE = 0.75
 _MOST_FINDINGS = 500
+_MOST_FOLLOWED = 20  # findings whose consequences are calculated
 
 
 def check_book(path: str | Path | bytes, name: str = "") -> Report:
@@ -50,6 +52,9 @@ def checked(reading: Reading) -> Report:
     notes = reading.notes.notes[:MOST_NOTES]
     if not reading.quantities:
         notes = [*notes, ("", "no quantity was recognised in this workbook")]
+    final = _final(reading)
+    consequences = Consequences(reading, final)
+    changes = {f.cell: found for f in findings[:_MOST_FOLLOWED] if (found := consequences.of(f))}
     return Report(
         workbook="",
         version=__version__,
@@ -59,7 +64,9 @@ def checked(reading: Reading) -> Report:
         cases=reading.cases,
         excerpts=_excerpts(reading, findings[:_MOST_FINDINGS]),
         labels={cell: quantity.stated.label for cell, quantity in reading.quantities.items()},
-        final=_final(reading),
+        final=final,
+        changes=changes,
+        units={cell: quantity.stated.unit for cell, quantity in reading.quantities.items()},
     )
 
 

@@ -49,6 +49,20 @@ def test_a_fault_is_laid_to_the_cell_where_it_starts(make_book):
     assert finding.inherited == ("Sheet1!B6", "Sheet1!B8")
 
 
+def test_results_are_told_as_they_would_be(make_book):
+    """The consequence is the stored formulas calculated with the right number: Blasius' f goes with Re^-1/4."""
+    report = check_book(make_book(WRONG))
+    (before, after) = report.changes["Sheet1!B5"]["Sheet1!B8"]
+    assert after / before == pytest.approx(1000**0.25, rel=1e-3)
+    assert "Pressure drop (Sheet1!B8)" in report.consequence(report.findings[0])
+
+
+def test_nothing_is_told_of_results_that_the_engine_does_not_give(make_book):
+    cells = WRONG | {"B8": ("=B6*NO.SUCH.FUNCTION(B7)", 3.0)}
+    report = check_book(make_book(cells))
+    assert not report.changes and "Pressure drop" in report.consequence(report.findings[0])
+
+
 def test_numbers_that_agree_overrule_doubts_about_units(make_book):
     """A formula in a form that the units cannot be followed through, but with the right number."""
     cells = pipe(A12="Flow area", B12=("=7.85398E-7*B2^2", 4.90874e-4), C12="m²")

@@ -6,12 +6,14 @@ import re
 from collections.abc import Iterator, Mapping, Sequence
 from functools import cached_property
 
+from cellfuncs.books.externals import absolute
+from cellfuncs.books.grid import rectangle
 from cellfuncs.books.scans import DefinedName
 from cellfuncs.sheets.inherited.page import Page, Spot, address
 from cellfuncs.sheets.inherited.shapes import Shape, Target, shape_of
 
 MOST_WRITTEN_OUT = 64  # cells of a range that stand in the graph one by one
-_NAME = re.compile(r"[^\W\d][\w.\\]*(?![\w.\\(!\[])")
+_NAME = re.compile(r"(?<![\w.\\$!'])[^\W\d][\w.\\]*(?![\w.\\(!\['])")
 
 
 class Links:
@@ -92,6 +94,26 @@ class Links:
         if place is None:
             return None, ()
         return "=" + self.pages[place[0]].formulas[place[1]].text, self.graph[cell]
+
+    @staticmethod
+    def place(cell: str) -> Spot | None:
+        """Row and column of ``Sheet1!C7``."""
+        area = rectangle(cell.rpartition("!")[2])
+        return None if area is None else area[:2]
+
+    def without_names(self, text: str, sheet: str) -> str:
+        """A formula with the areas of the workbook's names in their place."""
+        if not self._names:
+            return text
+
+        def area(match: re.Match[str]) -> str:
+            named = self.name(match[0], sheet)
+            if named is None:
+                return match[0]
+            place = self.target(named, sheet)
+            return match[0] if place is None else absolute(place[0].name, place[1])
+
+        return _NAME.sub(area, text)
 
     def is_echo(self, cell: str) -> bool:
         """Whether a formula only repeats another cell."""

@@ -2,17 +2,19 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterable
+from collections.abc import Iterable, Mapping
 from dataclasses import dataclass, field
 
 from cellfuncs.books.grid import column_letters
 from cellfuncs.checks.finding import SEVERITIES, Finding
+from cellfuncs.checks.shown import number
 from cellfuncs.checks.stated import SheetCase
 from cellfuncs.sheets.inherited.formats import Shown
 from cellfuncs.sheets.inherited.page import Page, Spot
 
 ROWS_AROUND, MOST_COLUMNS = 2, 8
 LONGEST_TEXT = 60
+MOST_RESULTS = 4
 
 
 @dataclass(frozen=True)
@@ -46,6 +48,8 @@ class Report:
     excerpts: dict[str, Excerpt] = field(default_factory=dict)
     labels: dict[str, str] = field(default_factory=dict)
     final: tuple[str, ...] = ()
+    changes: dict[str, Mapping[str, tuple[float, float]]] = field(default_factory=dict)
+    units: dict[str, str] = field(default_factory=dict)
 
     def count(self, severity: str) -> int:
         """How many findings have a severity."""
@@ -61,13 +65,18 @@ class Report:
         return f"{label} ({cell})" if label else cell
 
     def consequence(self, finding: Finding) -> str:
-        """Which results at the end of the sheet rest on a finding."""
-        reached = [cell for cell in finding.inherited if cell in self.final]
+        """Which results at the end of the sheet rest on a finding, and what they would be without it."""
+        changed = self.changes.get(finding.cell)
+        if changed:
+            return "; ".join(self._change(cell, *pair) for cell, pair in list(changed.items())[:MOST_RESULTS])
+        reached = [cell for cell in finding.inherited if cell in self.final] or list(finding.inherited)
         if reached:
-            return ", ".join(self.name_of(cell) for cell in reached[:4]) + (" …" if len(reached) > 4 else "")
-        if finding.inherited:
-            return ", ".join(self.name_of(cell) for cell in finding.inherited[:4])
+            return ", ".join(map(self.name_of, reached[:MOST_RESULTS])) + (" …" if len(reached) > MOST_RESULTS else "")
         return "nothing else in the workbook rests on it"
+
+    def _change(self, cell: str, before: float, after: float) -> str:
+        unit = self.units.get(cell, "").strip("-– ")
+        return f"{self.name_of(cell)} {number(before)} would be {number(after)} {unit}".strip()
 
     def headline(self) -> str:
         """The outcome in a line."""
@@ -85,9 +94,9 @@ def excerpt(page: Page, spot: Spot) -> Excerpt:
     left = max(min([*filled, column]), column - MOST_COLUMNS + 2, 1)
     right = min(max([*filled, column]), left + MOST_COLUMNS - 1)
     lines = []
-    for number in range(top, bottom + 1):
-        cells = tuple(cell_text(page, (number, c)) for c in range(left, right + 1))
-        lines.append(Line(number, cells, column - left if number == row else None))
+    for at in range(top, bottom + 1):
+        cells = tuple(cell_text(page, (at, c)) for c in range(left, right + 1))
+        lines.append(Line(at, cells, column - left if at == row else None))
     return Excerpt(page.name, tuple(column_letters(c) for c in range(left, right + 1)), tuple(lines))
 
 
