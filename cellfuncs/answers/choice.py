@@ -8,13 +8,13 @@ in the case, or a method named in a cell, stands before the rule.
 """
 
 import math
-from collections.abc import Iterable, Sequence
+from collections.abc import Iterable, Iterator, Sequence
 from dataclasses import dataclass
 from functools import lru_cache
 
 from cellfuncs.answers.inputs import Inputs, View
 from cellfuncs.cases.case import Case
-from cellfuncs.errors import NoModel, NumberRefused, OutOfRange, UnknownName
+from cellfuncs.errors import CaseRefused, NoModel, OutOfRange, UnknownName
 from cellfuncs.methods import METHODS, Method, Range
 
 NUSSELT = ("mean Nu", "local Nu")
@@ -22,6 +22,7 @@ FRICTION = ("Darcy friction factor",)
 DROP = ("pressure drop", "pressure gradient")
 _OPEN, _HALF_OPEN = 8.0, 4.0  # decades that a range counts for where it has no end, or one
 _CHOICE = 2.0  # decades that a condition on a choice is worth
+Conditions = tuple[tuple[str, tuple[str, ...]], ...]
 _ENTRY = ("x_star", "x_plus", "length_over_diameter")
 
 
@@ -70,11 +71,50 @@ def _width(r: Range) -> float:
 
 
 @lru_cache(maxsize=64)
-def in_order(flow: str, gives: tuple[str, ...]) -> tuple[Method, ...]:
+def in_order(flow: str, gives: tuple[str, ...]) -> "Order":
     """The methods of a flow kind in the order of the rule, range aside."""
-    found = [m for m in METHODS.values() if flow in m.flows and m.gives in gives]
+    return by_rule(m for m in METHODS.values() if flow in m.flows and m.gives in gives)
+
+
+class Order(tuple[Method, ...]):
+    """Methods in the order of the rule; two orders are the same only if they are one object."""
+
+    __hash__ = object.__hash__
+    __eq__ = object.__eq__
+
+
+def by_rule(methods: Iterable[Method]) -> Order:
+    """Methods in the order of the rule, range aside."""
     place = {name: k for k, name in enumerate(METHODS)}
-    return tuple(sorted(found, key=lambda m: (m.scatter, -narrowness(m), place[m.name])))
+    return Order(sorted(methods, key=lambda m: (m.scatter, -narrowness(m), place[m.name])))
+
+
+@lru_cache(maxsize=512)
+def _open_conditions(
+    methods: Order, choices: tuple[tuple[str, str], ...], must: tuple[str, ...]
+) -> tuple[tuple[Method, Conditions], ...]:
+    """The methods that settled choices leave, each with the conditions on what is still open."""
+    settled = dict(choices)
+    return tuple(
+        (m, tuple((key, allowed) for key, allowed in m.where.items() if key not in settled))
+        for m in methods
+        if all(settled.get(key, allowed[0]) in allowed for key, allowed in m.where.items())
+        and all(name in m.inputs for name in must)
+    )
+
+
+def candidates(state: Inputs, methods: Order, at_end: bool = False) -> Iterator[Candidate]:
+    """The methods that are for a case and whose inputs it tells, in the order given."""
+    for method, conditions in _open_conditions(methods, state.known.choices, state.known.get("must", ())):
+        order = rank(method, at_end)
+        if order is None or not state.agrees(conditions):
+            continue
+        view = state.view(method)
+        for name in method.needed:
+            if view.get(name) is None:
+                break
+        else:
+            yield Candidate(method, view, missed(method, view), order)
 
 
 def rank(method: Method, at_end: bool) -> int | None:
@@ -83,18 +123,6 @@ def rank(method: Method, at_end: bool) -> int | None:
         return None if method.gives == "local Nu" else 0
     entry = method.gives == "mean Nu" and any(name in _ENTRY for name in method.inputs)
     return 1 if entry else 0
-
-
-def look(state: Inputs, method: Method, at_end: bool = False) -> Candidate | None:
-    """How a method lies to a case, or None where it is not for it or needs what the case does not tell."""
-    order = rank(method, at_end)
-    if order is None or not state.applies(method):
-        return None
-    view = state.view(method)
-    for name in method.needed:
-        if view.get(name) is None:
-            return None
-    return Candidate(method, view, missed(method, view), order)
 
 
 def missed(method: Method, view: View) -> tuple[tuple[Range, float], ...]:
@@ -113,15 +141,12 @@ def recommended(state: Inputs, gives: tuple[str, ...], what: str, allow: bool, a
 
 
 def first(
-    state: Inputs, methods: Iterable[Method], what: str, allow: bool, at_end: bool = False
+    state: Inputs, methods: Order, what: str, allow: bool, at_end: bool = False
 ) -> Candidate:
     """The first of the methods, which stand in order, that is in range."""
     second: Candidate | None = None
     outside: list[Candidate] = []
-    for method in methods:
-        found = look(state, method, at_end)
-        if found is None:
-            continue
+    for found in candidates(state, methods, at_end):
         if not found.in_range:
             outside.append(found)
         elif found.rank == 0:
@@ -152,18 +177,18 @@ def named(
     """The method of that name for a case, or a refusal that says why it is none."""
     method, flow = find(name), flow or state.case.flow
     if method.gives not in gives:
-        raise NoModel(f"{method.name} gives a {method.gives}, not the {what}")
+        raise CaseRefused(f"{method.name} gives a {method.gives}, not the {what}")
     if flow not in method.flows:
         fits = " or ".join(method.flows) or "no flow kind of cases"
-        raise NoModel(f"{method.name} is for {fits}, this case is a {flow}")
+        raise CaseRefused(f"{method.name} is for {fits}, this case is a {flow}")
     for key, allowed in method.where.items():
         known = state.choice(key)
         if known is not None and known not in allowed:
-            raise NoModel(f"{method.name} is for {key.replace('_', ' ')} {' or '.join(allowed)}, here {known}")
+            raise CaseRefused(f"{method.name} is for {key.replace('_', ' ')} {' or '.join(allowed)}, here {known}")
     view = state.view(method)
     missing = view.missing(method)
     if missing:
-        raise NumberRefused(f"{method.name} needs the {' and the '.join(missing)}, which this case does not tell")
+        raise CaseRefused(f"{method.name} needs the {' and the '.join(missing)}, which this case does not tell")
     found = Candidate(method, view, missed(method, view), 0)
     if not found.in_range and not allow:
         refuse_outside(found)
@@ -187,7 +212,7 @@ def find(name: str) -> Method:
         return METHODS[found]
     from rapidfuzz import fuzz, process
 
-    near, score, _ = process.extractOne(plain, list(_plain_names()), scorer=fuzz.WRatio)
+    near, score, _ = process.extractOne(plain, list(_plain_names()), scorer=fuzz.ratio)
     hint = f'the nearest is "{_plain_names()[near]}"' if score >= 60 else '=CF_LIST("methods") lists them'
     raise UnknownName(f'"{name[:40]}" is no method; {hint}')
 

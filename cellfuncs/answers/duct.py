@@ -10,7 +10,7 @@ from typing import Any
 
 from cellfuncs.answers.inputs import Inputs
 from cellfuncs.answers.internal import Internal
-from cellfuncs.answers.passage import Chosen, Values, solve_passage
+from cellfuncs.answers.passage import Chosen, Passage, Values, solve_passage
 from cellfuncs.answers.path import far_temperature
 from cellfuncs.cases.case import Case, Properties
 from cellfuncs.cases.sections import Duct
@@ -41,6 +41,7 @@ class DuctAnswers:
     film: float = 0.0  # the inside coefficient, where ``coefficient`` is the overall one
     chosen: Chosen | None = None
     state: Inputs | None = None  # what methods may ask
+    passage: Passage | None = None  # the case as methods see it
     values: Values | None = None  # coefficient and f with the factors of changing properties
 
     @property

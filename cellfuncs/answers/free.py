@@ -6,7 +6,7 @@ from typing import Any
 
 from cellfuncs.answers import choice
 from cellfuncs.answers import driving as driving_difference
-from cellfuncs.answers.inputs import Inputs
+from cellfuncs.answers.inputs import Inputs, Known
 from cellfuncs.answers.loop import told
 from cellfuncs.answers.surface import STATED, choose, close, stream_and_difference
 from cellfuncs.cases.case import Case, Properties
@@ -100,7 +100,7 @@ def solve_free(case: Case) -> FreeAnswers:
     size = _size(case, surface)
     gravity = case.get("gravity", STANDARD_GRAVITY) * math.cos(case.get("inclination", 0.0))
     flux, memo = case.get("heat_flux"), {}
-    known, lengths = free_known(case, surface, size.length), free_lengths(case, surface, size.length)
+    known, lengths = Known(free_known(case, surface, size.length)), free_lengths(case, surface, size.length)
 
     def state_of(driving: float | None) -> Inputs:
         return Inputs(case, known, lengths, stream, driving, memo, flux=flux, gravity=gravity)
@@ -186,6 +186,7 @@ def solve_enclosure(case: Case) -> FreeAnswers:
         known["aspect"] = case.need("length") / gap
     elif heated == "tilted":
         known |= {"tilt": 90.0 - math.degrees(case.need("inclination")), "aspect": case.need("length") / gap}
+    known = Known(known)
     area = None if width is None or length is None else width * length
     gravity, flux, memo = case.get("gravity", STANDARD_GRAVITY), case.get("heat_flux"), {}
     wall, difference = _walls(case)

@@ -19,8 +19,16 @@ GAS_CONSTANT = 8.31446261815324  # J/(mol K), exact by definition of the SI
 _AT_WALL = ("wall",)
 _AT_FILM = ("film", "mean of the walls")
 
-Known = Mapping[str, Any]
 Length = float | Callable[[Properties], float]
+
+
+class Known(dict[str, Any]):
+    """What is known of a case besides its properties: numbers, choices, or functions of a state that give them."""
+
+    @cached_property
+    def choices(self) -> tuple[tuple[str, str], ...]:
+        """The choices that are settled, as a key."""
+        return tuple(sorted((key, value) for key, value in self.items() if isinstance(value, str)))
 
 
 class Inputs:
@@ -35,7 +43,7 @@ class Inputs:
     def __init__(
         self,
         case: Case,
-        known: Known,
+        known: Mapping[str, Any],
         lengths: Mapping[str, Length],
         bulk: float | None,
         difference: float | None,
@@ -45,7 +53,8 @@ class Inputs:
         flux: float | None = None,
         friction: Callable[["View"], float] | None = None,
     ):
-        self.case, self.known, self.lengths, self.memo = case, known, lengths, memo
+        self.case, self.lengths, self.memo = case, lengths, memo
+        self.known = known if isinstance(known, Known) else Known(known)
         self.bulk, self.difference, self.flux, self.gravity = bulk, difference, flux, gravity
         self.friction_of = friction
         self._views: dict[tuple[float | None, str], View] = {}
@@ -113,11 +122,9 @@ class Inputs:
             return "heating" if self.difference > 0 else "cooling"
         return None
 
-    def applies(self, method: Method) -> bool:
-        """Whether nothing known of the case contradicts what a method is for."""
-        if any(name not in method.inputs for name in self.known.get("must", ())):
-            return False
-        for key, allowed in method.where.items():
+    def agrees(self, conditions: tuple[tuple[str, tuple[str, ...]], ...]) -> bool:
+        """Whether nothing known contradicts the conditions of a method."""
+        for key, allowed in conditions:
             found = self.choice(key)
             if found is not None and found not in allowed:
                 return False

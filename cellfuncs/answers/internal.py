@@ -36,6 +36,7 @@ class Internal(Passage):
     def __init__(self, case: Case, shape: Duct, length: float):
         super().__init__(case, {}, {"": shape.diameter}, length)
         self.section = shape
+        self.settled_friction: str | None = None  # the method of friction chosen last
         slender = length / shape.diameter
         self.known |= {
             "section": "tube" if shape.section == "other" else shape.section,
@@ -71,6 +72,12 @@ class Internal(Passage):
                 raise
             return super().choose_nusselt(state, True)
 
+    def choose(self, state: Inputs, allow: bool) -> Chosen:
+        self.settled_friction = None
+        found = super().choose(state, allow)
+        self.settled_friction = None if found.friction == STATED else found.friction
+        return found
+
     def choose_friction(self, state: Inputs, allow: bool) -> tuple[str, str]:
         if self._between(state) and not self.case.has("friction_factor") and self.friction_row() is None:
             return BLEND, ""
@@ -87,15 +94,16 @@ class Internal(Passage):
     # -- their numbers ----------------------------------------------------------------------
 
     def values(self, state: Inputs, chosen: Chosen) -> Values:
-        more, words = 1.0, ""
-        if chosen.nusselt == STATED:
-            h = self.case.get("coefficient")
-        else:
-            nusselt, view = self._nusselt(state, chosen.nusselt)
-            more, words = self._factor(state, chosen.nusselt, NUSSELT_FACTORS)
-            h = more * nusselt * view.p.conductivity / view.length
+        h, more, words = self.coefficient(state, chosen.nusselt)
         friction, other = self._friction(state, chosen.friction)
         return Values(h, friction, more, other, words)
+
+    def coefficient(self, state: Inputs, name: str) -> tuple[float, float, str]:
+        if name == STATED:
+            return self.case.get("coefficient"), 1.0, ""
+        nusselt, view = self._nusselt(state, name)
+        factor, words = self._factor(state, name, NUSSELT_FACTORS)
+        return factor * nusselt * view.p.conductivity / view.length, factor, words
 
     def _nusselt(self, state: Inputs, name: str) -> tuple[float, View]:
         if name == BLEND:
@@ -122,14 +130,11 @@ class Internal(Passage):
 
     def _factor(self, state: Inputs, name: str, names: tuple[str, ...]) -> tuple[float, str]:
         """The factor of changing properties in range, and its name; 1 where the method counts them itself."""
-        if state.at_wall is None or (name in METHODS and not _RATIOS.isdisjoint(METHODS[name].inputs)):
+        if state.at_wall is None or (name in METHODS and _counts_properties(METHODS[name])):
             return 1.0, ""
-        if name in METHODS and METHODS[name].property_temperature == "film":
-            return 1.0, ""
-        for method in _ordered(names):
-            found = choice.look(state, method)
-            if found is not None and found.in_range:
-                return choice.value(found), method.name
+        for found in choice.candidates(state, _ordered(names)):
+            if found.in_range:
+                return choice.value(found), found.method.name
         return 1.0, ""
 
     def _friction(self, state: Inputs, name: str) -> tuple[float, float]:
@@ -155,10 +160,19 @@ class Internal(Passage):
         if self.case.has("friction_factor"):
             return self.case.get("friction_factor")
         try:
-            name, _ = self.choose_friction(view.state, True)
+            name = self.settled_friction
+            if name is None or isinstance(view.state, _Moved):
+                name, _ = self.choose_friction(view.state, True)
             return self._friction_by(name, view)
         except OutOfRange:
             return None
+
+
+def _counts_properties(method: Method) -> bool:
+    """Whether a method counts changing properties itself: by a ratio, the film, or for heating and cooling apart."""
+    return (
+        not _RATIOS.isdisjoint(method.inputs) or method.property_temperature == "film" or "heating" in method.where
+    )
 
 
 class _Moved(Inputs):
@@ -172,6 +186,5 @@ class _Moved(Inputs):
 
 
 @lru_cache(maxsize=8)
-def _ordered(names: tuple[str, ...]) -> tuple[Method, ...]:
-    inside = [METHODS[name] for name in names if name in METHODS]
-    return tuple(sorted(inside, key=lambda m: (m.scatter, -choice.narrowness(m))))
+def _ordered(names: tuple[str, ...]) -> choice.Order:
+    return choice.by_rule(METHODS[name] for name in names)

@@ -9,7 +9,7 @@ from dataclasses import dataclass
 from typing import Any
 
 from cellfuncs.answers import choice
-from cellfuncs.answers.inputs import Inputs
+from cellfuncs.answers.inputs import Inputs, Known
 from cellfuncs.answers.surface import STATED, close, stream_and_difference
 from cellfuncs.cases.case import Case, Properties
 from cellfuncs.errors import CaseRefused
@@ -42,6 +42,7 @@ class LayerAnswers:
     group_length: float
     chosen: str = ""
     state: Inputs | None = None  # what methods may ask
+    blended: Inputs | None = None  # ... and what a blend with free convection asks
 
     @property
     def laminar(self) -> bool:
@@ -108,7 +109,7 @@ def solve_layer(
     length, group_length = _lengths(case)
     transition = case.get("transition", methods.TRANSITION) if case.flow == "plate" else _BODY_TRANSITION
     stream, difference = stream_and_difference(case)
-    known, memo = _known(case, length, group_length, transition), {}
+    known, memo = Known(_known(case, length, group_length, transition)), {}
     flux, gravity = case.get("heat_flux"), case.get("gravity", STANDARD_GRAVITY)
 
     def state_of(driving: float | None) -> Inputs:

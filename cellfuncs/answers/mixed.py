@@ -40,7 +40,7 @@ def solve_mixed(case: Case) -> LayerAnswers:
             blend = choice.named(both, blend_named, choice.NUSSELT, "coefficient", case.allow, "mixed")
         nusselt = choice.value(blend)
         h = nusselt * forced.properties.conductivity / size
-        return replace(forced, nusselt=nusselt, coefficient=h, method=blend.method.name)
+        return replace(forced, nusselt=nusselt, coefficient=h, method=blend.method.name, blended=both)
 
     return solve_layer(case.stating(stated, _FORCED[surface]), blended)
 

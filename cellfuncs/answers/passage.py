@@ -10,7 +10,7 @@ from typing import Any
 
 from cellfuncs.answers import choice
 from cellfuncs.answers import driving as driving_difference
-from cellfuncs.answers.inputs import Inputs, View
+from cellfuncs.answers.inputs import Inputs, Known, View
 from cellfuncs.answers.loop import settle
 from cellfuncs.answers.path import duct_resistance, far_temperature, refuse_without_end
 from cellfuncs.cases.case import Case, Properties
@@ -49,7 +49,8 @@ class Passage:
     what_friction = "friction factor"
 
     def __init__(self, case: Case, known: dict[str, Any], lengths: dict[str, Any], length: float):
-        self.case, self.known, self.lengths, self.length = case, known, lengths, length
+        self.case, self.lengths, self.length = case, lengths, length
+        self.known = Known(known)
         self.at_end = case.wall == "flux" and case.flow == "duct"
         self.memo: dict[Any, Properties] = {}
 
@@ -113,6 +114,10 @@ class Passage:
     def values(self, state: Inputs, chosen: Chosen) -> Values:
         raise NotImplementedError
 
+    def coefficient(self, state: Inputs, name: str) -> tuple[float, float, str]:
+        """Film coefficient [W/(m2 K)] by a method, the factor of changing properties in it, and that factor's name."""
+        raise NotImplementedError
+
     def answers(self, **known: Any) -> Any:
         raise NotImplementedError
 
@@ -170,7 +175,7 @@ def _at(
         case=case, shape=shape, length=passage.length, property_temperature=bulk, properties=p,
         nusselt=film * shape.diameter / p.conductivity, friction=values.friction, coefficient=h, method=method,
         outside=chosen.outside, difference=driving, flux=flux, inlet=inlet, film=film, chosen=chosen, state=state,
-        values=values,
+        values=values, passage=passage,
     )  # fmt: skip
 
 

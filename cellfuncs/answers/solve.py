@@ -6,6 +6,7 @@ from dataclasses import dataclass
 from functools import cached_property
 
 from cellfuncs import groups
+from cellfuncs.answers import choice
 from cellfuncs.answers.body import BodyAnswers, solve_body
 from cellfuncs.answers.duct import DuctAnswers, solve_duct
 from cellfuncs.answers.free import FreeAnswers, solve_enclosure, solve_free
@@ -96,7 +97,18 @@ class Solution:
 
 def solve(case: Case) -> Solution:
     """Solve a case of any flow kind."""
+    _refuse_other_methods(case)
     return Solution(case, _SOLVERS[case.flow](case))
+
+
+def _refuse_other_methods(case: Case) -> None:
+    """A named method that gives neither a coefficient nor friction would be passed over in silence."""
+    if not case.has("method"):
+        return
+    method = choice.find(case.get("method"))
+    friction = (*choice.FRICTION, *choice.DROP) if case.flow in ("duct", "bank", "bed") else ()
+    if method.gives not in (*choice.NUSSELT, *friction):
+        raise CaseRefused(f"{method.name} gives a {method.gives}; a {case.flow} takes it from CF_NUSSELT_OF, not here")
 
 
 def _attribute(name: str) -> Callable[[Solution], float | None]:

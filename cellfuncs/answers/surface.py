@@ -31,7 +31,7 @@ def choose(state: Inputs, allow: bool, flow: str | None = None) -> Candidate | N
     if case.has("coefficient"):
         return None
     name = choice.row(case, "method", choice.NUSSELT)
-    if name is not None and (flow or case.flow) in choice.find(name).flows:
+    if name is not None:
         return choice.named(state, name, choice.NUSSELT, "coefficient", allow, flow)
     methods = choice.in_order(flow or case.flow, choice.NUSSELT)
     return choice.first(state, methods, "coefficient", allow)

@@ -67,18 +67,20 @@ class _Through(Passage):
 
     def values(self, state: Inputs, chosen: Chosen) -> Values:
         p = self.at_bulk(state).p
-        if chosen.nusselt == STATED:
-            h = self.case.get("coefficient")
-        else:
-            method = METHODS[chosen.nusselt]
-            view = state.view(method)
-            h = choice.number(method, view) * view.p.conductivity / view.length
+        h, *_ = self.coefficient(state, chosen.nusselt)
         u = self.velocity(p)
         if chosen.friction == STATED:
             friction = self.case.get("friction_factor")
         else:
             friction = 2.0 * self.drop(state, chosen) * self.size(p) / (self.length * p.density * u**2)
         return Values(h, friction)
+
+    def coefficient(self, state: Inputs, name: str) -> tuple[float, float, str]:
+        if name == STATED:
+            return self.case.get("coefficient"), 1.0, ""
+        method = METHODS[name]
+        view = state.view(method)
+        return choice.number(method, view) * view.p.conductivity / view.length, 1.0, ""
 
     def answers(self, **known: Any) -> ThroughAnswers:
         p, shape = known["properties"], known["shape"]

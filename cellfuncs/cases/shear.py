@@ -26,8 +26,8 @@ class Sheared(NamedTuple):
     def words(self) -> str:
         """What stands in reasons."""
         return (
-            f"melt: viscosity {self.viscosity:.3g} Pa s at {self.apparent:.3g} 1/s"
-            f" (wall {self.wall:.3g} by Rabinowitsch, n {self.exponent:.3g})"
+            f"melt: n {self.exponent:.3g}, {self.viscosity:.3g} Pa s at {self.apparent:.3g} 1/s"
+            f" (wall {self.wall:.3g}, Rabinowitsch)"
         )
 
 

@@ -165,7 +165,7 @@ class QuantityReader:
         # what a plain float may be without a second look
         if kind == "temperature":
             self.low, self.high = COLDEST_BARE, math.inf
-        elif zero == "none":
+        elif zero in ("none", "value"):
             self.low, self.high = 0.0, math.inf
         else:
             self.low, self.high = -math.inf, math.inf

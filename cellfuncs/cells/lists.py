@@ -5,8 +5,9 @@ from collections.abc import Callable, Mapping
 from cellfuncs import groups, quantities, substances
 from cellfuncs.cases import labels
 from cellfuncs.cases.case import answers_of
-from cellfuncs.cells import catalogue
+from cellfuncs.cells import catalogue, inputs_block
 from cellfuncs.errors import UnknownName
+from cellfuncs.methods import METHODS
 from cellfuncs.terms import EQUATIONS, MEASURES, MOMENTUM_TERMS, TERMS
 
 
@@ -52,6 +53,17 @@ def _terms(of: str | None) -> list[str]:
     return list(by_equation[of.strip().casefold()])
 
 
+def _methods(of: str | None) -> list[str]:
+    """Methods, of one flow kind or of what they give where that is named."""
+    if of is None:
+        return list(METHODS)
+    given = [m.name for m in METHODS.values() if m.gives.casefold() == of.strip().casefold()]
+    if given:
+        return given
+    flow = labels.choice("flow_kind", of)
+    return [m.name for m in METHODS.values() if flow in m.flows]
+
+
 _LISTS: Mapping[str, Callable[[str | None], list[str]]] = {
     "labels": _labels,
     "quantities": _derived,
@@ -66,6 +78,8 @@ _LISTS: Mapping[str, Callable[[str | None], list[str]]] = {
     "properties": lambda of: [p.words for p in substances.PROPERTIES.values()],
     "moist air": lambda of: [p.words for p in substances.MOIST_AIR.values()],
     "substances": lambda of: [name for name, *_ in substances.names(of or "")],
+    "methods": _methods,
+    "method inputs": inputs_block.input_words,
     "groups": lambda of: [group.name for group in groups.table().values()],
     "functions": lambda of: list(catalogue.functions()),
 }

@@ -1,0 +1,182 @@
+"""Cell functions of the family Methods: published correlations, chosen for a case or named."""
+
+from functools import lru_cache
+from typing import Any
+
+from cellfuncs import sources
+from cellfuncs.answers import choice
+from cellfuncs.answers.friction import friction_factor
+from cellfuncs.answers.listing import listed
+from cellfuncs.cases import labels
+from cellfuncs.cells import faults, inputs_block, solved
+from cellfuncs.cells.catalogue import cell_function
+from cellfuncs.errors import CaseRefused, CellfuncsError, NoModel, UnknownName
+from cellfuncs.methods import METHODS
+
+COLUMNS = ("method", "nusselt", "coefficient", "in range", "scatter", "property temperature", "source", "reason")
+IN_RANGE = "in range"
+_SOURCE = "the method's own, as CF_SOURCE tells it"
+
+Block = tuple[tuple[Any, ...], ...]
+
+
+def with_method(block: Block, method: str | None, label: str = "method") -> Block:
+    """The block with a row that names the method; the rows that named one are left out."""
+    if method is None:
+        return block
+    try:
+        name = choice.find(method).name
+    except UnknownName as error:
+        error.argument = "method_name"
+        raise
+    rows = [row for row in block if not (isinstance(row[1], str) and label in labels.candidates(row[1]))]
+    return (*rows, (len(block) + 1, labels.dictionary()[label].label, name))
+
+
+def _solution(block: Block, method: str | None, label: str = "method") -> Any:
+    """The solved case by a method; what the method refuses is about the method."""
+    given = with_method(block, method, label)
+    try:
+        return solved.solution(given)
+    except CellfuncsError as error:
+        if method is not None and choice.find(method).name in str(error):
+            error.argument = "method_name"
+        raise
+
+
+@cell_function(
+    "CF_METHODS",
+    family="Methods",
+    summary="Every published method that gives the coefficient of a case: number, range, scatter, property "
+    "temperature, source; the recommended one first, with the reason.",
+    returns="table",
+    source=_SOURCE,
+    example="=CF_METHODS(coolant)",
+)
+def methods(block):
+    rows: list[list[Any]] = [list(COLUMNS)]
+    for row in listed(solved.solution(block)):
+        at = row.candidate.view.temperature
+        method = row.method
+        rows.append([
+            method.name, row.nusselt, row.coefficient,
+            faults.clip(f"outside: {row.candidate.outside}") if row.candidate.missed else IN_RANGE,
+            method.scatter, method.property_temperature if at is None else at,
+            _reference(method.source), faults.clip(row.reason),
+        ])  # fmt: skip
+    return rows
+
+
+@lru_cache(maxsize=1024)
+def _reference(keys: str) -> str:
+    """The references where there is room for all of them, else the first."""
+    full = sources.cite(keys)
+    return full if len(full) <= faults.LONGEST_TEXT else faults.clip(sources.cite(keys.split(";")[0]))
+
+
+@cell_function(
+    "CF_COEFFICIENT",
+    family="Methods",
+    summary="The heat transfer coefficient of a case by the recommended or a named method; its loops on film and wall "
+    "temperature are closed.",
+    returns="quantity",
+    kind="heat_transfer_coefficient",
+    source=_SOURCE,
+    example='=CF_COEFFICIENT(coolant,"Gnielinski","W/m2K")',
+)
+def coefficient(block, method_name=None):
+    if method_name is not None and choice.find(method_name).gives not in choice.NUSSELT:
+        named = choice.find(method_name)
+        raise NoModel(f"{named.name} gives a {named.gives}, no coefficient", argument="method_name")
+    answers = _solution(block, method_name).answers
+    found = getattr(answers, "film", 0.0) or getattr(answers, "coefficient", None)
+    if found is None:
+        raise NoModel("a sheared gap has no coefficient; its walls' fluxes are answers of CF_CASE")
+    return found
+
+
+@cell_function(
+    "CF_PRESSURE_DROP",
+    family="Methods",
+    summary="The frictional pressure drop of a case by the recommended or a named method of friction, with the losses "
+    "of fittings where the case states them.",
+    returns="quantity",
+    kind="pressure_difference",
+    source=_SOURCE,
+    example='=CF_PRESSURE_DROP(coolant,"Haaland","kPa")',
+)
+def pressure_drop(block, method_name=None):
+    solution = _solution(block, method_name, "friction_method")
+    if not hasattr(solution.answers, "pressure_drop"):
+        raise NoModel(f"a {solution.case.flow} has no pressure drop")
+    if method_name is not None and solution.case.has("pressure_drop"):
+        raise CaseRefused("the case states its pressure drop; leave the row out to compute it", argument="method_name")
+    return solution.answers.pressure_drop
+
+
+@cell_function(
+    "CF_NUSSELT_OF",
+    family="Methods",
+    summary="The Nusselt number of a case by a method; or the number of any named method from a block of its inputs "
+    "(Reynolds number, ratios, lengths), SI.",
+    returns="number",
+    source=_SOURCE,
+    example='=CF_NUSSELT_OF(groups,"Gnielinski")',
+)
+def nusselt_of(block, method_name=None):
+    if inputs_block.is_case(block):
+        solution = _solution(block, method_name)
+        found = getattr(solution.answers, "nusselt", None)
+        if found is None:
+            raise NoModel(f"a {solution.case.flow} has no Nusselt number")
+        return found
+    return inputs_block.number(block, method_name)
+
+
+@cell_function(
+    "CF_FRICTION",
+    family="Methods",
+    summary="Darcy's friction factor of a straight round tube from Reynolds number and relative roughness, by the "
+    "recommended or a named method.",
+    returns="number",
+    source=_SOURCE,
+    example='=CF_FRICTION(50000,0.001,"Colebrook-White")',
+    by_array=friction_factor,
+)
+def friction(reynolds, relative_roughness, method_name=None):
+    try:
+        return friction_factor(reynolds, relative_roughness, method_name)
+    except UnknownName as error:
+        error.argument = "method_name"
+        raise
+
+
+@cell_function(
+    "CF_SOURCE",
+    family="Methods",
+    summary="What stands behind a method: the reference in full, its range, its scatter, and the temperature at which "
+    "its author took properties.",
+    returns="text",
+    source="cellfuncs/data/sources.csv",
+    example='=CF_SOURCE("Gnielinski")',
+)
+def source(method_name):
+    try:
+        method = choice.find(method_name)
+    except UnknownName as error:
+        key = method_name.strip()
+        if key in sources.bibliography():
+            return faults.clip(sources.cite(key))
+        error.argument = "method_name"
+        raise
+    return describe(METHODS[method.name])
+
+
+def describe(method: Any) -> str:
+    """Reference, what it gives, range, scatter, property temperature; the reference in full where all has room."""
+    gives = f"{method.gives} on {method.length}" if method.length and "Nu" in method.gives else method.gives
+    span = ", ".join(r.words() for r in method.ranges) or "no limits"
+    scatter = f"±{100 * method.scatter:g} %" if method.scatter else "exact"
+    at = "" if method.property_temperature == "none" else f"; properties: {method.property_temperature}"
+    facts = f"{gives}; {span}; {scatter}{at}. "
+    return faults.clip(facts + sources.cite(method.source))
