@@ -1,4 +1,7 @@
-"""The solved duct against published values and against closed forms through general-purpose special functions."""
+"""The solved duct against published values and against closed forms through general-purpose special functions.
+
+Numbers of equations, chapters and tables of the sources are from memory, as are digits where it says so.
+"""
 
 import math
 
