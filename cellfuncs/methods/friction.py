@@ -1,9 +1,10 @@
 """Friction in turbulent ducts, smooth and rough. f is Darcy's friction factor, Re is on the hydraulic diameter.
 
-A wall counts as smooth while the roughness Reynolds number Reε = Re·√(f/8)·ε/D stays below 5, and as fully rough
-above 70 (Nikuradse 1933): these are the ranges of the formulas for smooth and for fully rough walls. The laws for
-smooth walls were measured in tubes; other sections have the laminar-equivalent diameter (``friction_laminar.py``) and
-Colebrook-White by the hydraulic diameter. The scatter of an explicit formula holds its distance from Colebrook-White.
+A wall of uniform sand counts as smooth while the roughness Reynolds number Reε = Re·√(f/8)·ε/D stays below 5, and as
+fully rough above 70 (Nikuradse 1933). Walls as they are made feel their highest grains earlier: at Reε 0.25
+Colebrook-White lies 2 % above the smooth wall, which is where the laws for smooth walls end here. They were measured in
+tubes; other sections have the laminar-equivalent diameter (``friction_laminar.py``) and Colebrook-White by the
+hydraulic diameter. The scatter of an explicit formula holds its distance from Colebrook-White.
 """
 
 import math
@@ -12,8 +13,9 @@ from cellfuncs.methods.algebra import log, log10, sqrt
 from cellfuncs.methods.base import Range, follows, method
 
 SMOOTH_UP_TO, ROUGH_FROM = 5.0, 70.0
+FELT_FROM = 0.25
 ROUGHNESS = Range("roughness", 0.0, 0.05)
-SMOOTH = Range("Reε", 0.0, SMOOTH_UP_TO)
+SMOOTH = Range("Reε", 0.0, FELT_FROM)
 STRAIGHT = {"shape": ("straight",)}
 TUBE = {"section": ("tube",), **STRAIGHT}
 LOG_SCALE = 2.0 / math.log(10.0)

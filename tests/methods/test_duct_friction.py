@@ -74,13 +74,14 @@ def test_smooth_laws_agree(reynolds):
 
 
 def test_limits_of_roughness():
-    """Nikuradse 1933: smooth below 5, fully rough above 70 in wall units; the smooth law refuses a rough wall."""
+    """Nikuradse 1933: smooth below 5, fully rough above 70 in wall units; made walls are felt from 0.25."""
     height = friction.roughness_reynolds(1e6, 0.0196, 1e-3)
     assert height == pytest.approx(49.5, rel=1e-3)
-    with pytest.raises(CellfuncsError, match=r"Reε 0 to 5, here 49\.5"):
+    with pytest.raises(CellfuncsError, match=r"Reε 0 to 0\.25, here 49\.5"):
         METHODS["smooth wall friction"].evaluate({"reynolds": 1e6, "roughness_reynolds": height})
-    METHODS["smooth wall friction"].evaluate({"reynolds": 1e6, "relative_roughness": 1e-6})
-    with pytest.raises(CellfuncsError, match=r"Reε 0 to 5"):
+    METHODS["smooth wall friction"].evaluate({"reynolds": 1e6, "relative_roughness": 5e-6})
+    assert friction.colebrook_white(1e6, 5e-6) == pytest.approx(friction.colebrook_white(1e6, 0.0), rel=0.02)
+    with pytest.raises(CellfuncsError, match=r"Reε 0 to 0\.25"):
         METHODS["smooth wall friction"].evaluate({"reynolds": 1e6, "relative_roughness": 1e-3})
     with pytest.raises(CellfuncsError, match=r"Reε from 70"):
         METHODS["Nikuradse fully rough"].evaluate({"relative_roughness": 1e-3, "roughness_reynolds": height})
