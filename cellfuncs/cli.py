@@ -19,6 +19,7 @@ FINE, FOUND, UNUSABLE, INTERRUPTED = 0, 1, 2, 130
 def main(arguments: Sequence[str] | None = None) -> int:
     """Run the command line; returns the exit code. Never raises an error into the terminal."""
     _mend_streams()
+    os.environ.setdefault("OPENBLAS_NUM_THREADS", "1")  # our matrices are small: threads cost more than they save
     options = _parser().parse_args(arguments)
     try:
         code = options.run(options)

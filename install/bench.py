@@ -9,6 +9,7 @@ import contextlib
 import functools
 import gc
 import itertools
+import os
 import subprocess
 import sys
 import tempfile
@@ -22,6 +23,7 @@ ROOT = Path(__file__).resolve().parent.parent
 ATMOSPHERE = 101_325.0
 
 sys.path.insert(0, str(ROOT))
+os.environ.setdefault("OPENBLAS_NUM_THREADS", "1")  # as the command line and the hosts set it
 
 
 @dataclass(frozen=True)

@@ -28,6 +28,7 @@ def answer(call: list[Any], functions: Any) -> Any:
 
 def main() -> None:
     """Answer until the pipe closes."""
+    os.environ.setdefault("OPENBLAS_NUM_THREADS", "1")  # our matrices are small: threads cost more than they save
     from cellfuncs.cells import catalogue
 
     signal.signal(signal.SIGINT, signal.SIG_IGN)  # Ctrl+C in the terminal the office was started from
