@@ -19,8 +19,8 @@ from cellfuncs.sources import read_table
 
 __all__ = ["Answer", "Argument", "CellFunction", "cell_function", "functions"]
 
-FAMILIES = ("Quantities", "Substances", "Groups", "Cases", "Terms", "Methods")
-MODULES = ("quantity", "substance", "group", "case", "term", "limit", "without", "premise", "method")
+FAMILIES = ("Quantities", "Substances", "Groups", "Cases", "Terms", "Methods", "Checks")
+MODULES = ("quantity", "substance", "group", "case", "term", "limit", "without", "premise", "method", "check")
 RETURNS = ("quantity", "number", "text", "table")
 LONGEST_HELP = 255
 LONGEST_NAMES = 254  # number of arguments plus the length of their names, for the function wizard

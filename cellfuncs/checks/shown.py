@@ -5,15 +5,27 @@ from cellfuncs.checks.stated import Stated
 from cellfuncs.errors import CellfuncsError
 
 
-def in_unit(si: float, entry: Stated) -> float:
-    """An SI value in the unit that the cell states."""
+def _scale(entry: Stated) -> tuple[float, float]:
+    """Factor and offset to SI of the unit that the cell states."""
     try:
         unit = quantities.read_unit(entry.unit, entry.kind) if entry.unit else None
     except CellfuncsError:
         unit = None
     if unit is None:
-        return si * entry.value / entry.si if entry.si else si
-    return (si - unit.offset) / unit.factor
+        return (entry.si / entry.value if entry.value and entry.si else 1.0), 0.0
+    return unit.factor, unit.offset
+
+
+def in_unit(si: float, entry: Stated) -> float:
+    """An SI value in the unit that the cell states."""
+    factor, offset = _scale(entry)
+    return (si - offset) / factor
+
+
+def from_unit(value: float, entry: Stated) -> float:
+    """A number in the unit that the cell states, in SI."""
+    factor, offset = _scale(entry)
+    return value * factor + offset
 
 
 def number(value: float) -> str:
