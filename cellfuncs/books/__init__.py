@@ -25,6 +25,7 @@ externals.py   tables of the workbook, and stored values of other workbooks
 translate.py   a formula of the file as the engine wants it
 stand_in.py    the small package that the engine gets instead of the file
 engine.py      evaluation: what has to be calculated, and the comparison with stored values
+what_if.py     some formulas with other values, beside the workbook
 exchange.py    values on their way to and from the engine
 outcome.py     what was calculated, as values for cells
 areas.py       contiguous areas of our formulas with labels and heads, for a reader

@@ -9,7 +9,7 @@ from __future__ import annotations
 import re
 from collections.abc import Callable
 from functools import lru_cache
-from typing import NamedTuple
+from typing import Any, NamedTuple
 
 from cellfuncs.books.grid import LAST_COLUMN, LAST_ROW, Area, column_letters, column_number
 
@@ -271,3 +271,33 @@ def calls(text: str) -> list[tuple[str, list[str]]]:
         elif part.kind == "open":
             opened.append(None)
     return [(name, [argument.strip() for argument in arguments]) for name, arguments in found]
+
+
+# -- trees -------------------------------------------------------------------------------------------
+
+MOST_NESTED = 60  # brackets in brackets; spreadsheet programs allow 64
+
+
+def depth(text: str) -> int:
+    """How deep brackets are nested."""
+    deepest = level = 0
+    for sign in text:
+        if sign == "(":
+            level += 1
+            deepest = max(deepest, level)
+        elif sign == ")":
+            level -= 1
+    return deepest
+
+
+@lru_cache(maxsize=4096)
+def tree(text: str) -> dict[str, Any] | None:
+    """The tree of a formula (without its `=`) as the engine's parser gives it, or None where it cannot be parsed."""
+    import formualizer as fz
+
+    if len(text) > 2 * MAX_LENGTH or depth(text) > MOST_NESTED:
+        return None
+    try:
+        return fz.parse("=" + text).to_dict()
+    except (fz.ParserError, fz.TokenizerError, ValueError, RecursionError):
+        return None

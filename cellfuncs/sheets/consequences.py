@@ -9,6 +9,7 @@ from __future__ import annotations
 import math
 from collections.abc import Mapping, Sequence
 
+from cellfuncs.books import what_if
 from cellfuncs.checks.finding import Finding
 from cellfuncs.sheets.inherited.links import Links
 from cellfuncs.sheets.inherited.reading import Reading
@@ -73,33 +74,14 @@ class Consequences:
         return list(seen)
 
     def _calculated(self, cell: str, number: float, formulas: Sequence[str], wanted: Sequence[str]) -> dict[str, float]:
-        import formualizer
-
+        """The wanted results with a number in a cell."""
         inside = set(formulas)
-        book = formualizer.Workbook()
-        for sheet in dict.fromkeys(self.links.pages):
-            book.add_sheet(sheet)
         given = {source for formula in formulas for source in self.reading.graph[formula]} - inside
-        found: dict[str, float] = {}
-        try:
-            for source in given:
-                self._put(book, source, number if source == cell else self._stored(source))
-            for formula in formulas:
-                sheet, _, _ = formula.rpartition("!")
-                row, column = self.links.place(formula)
-                text, _ = self.links.formula(formula)
-                book.set_formula(sheet, row, column, self.links.without_names(text, sheet))
-            for result in wanted:
-                sheet, _, _ = result.rpartition("!")
-                value = book.evaluate_cell(sheet, *self.links.place(result))
-                if isinstance(value, (int, float)) and math.isfinite(value):
-                    found[result] = float(value)
-        except Exception:  # whatever a strange formula makes of the engine, the finding stands without it
-            return {}
-        return found
+        values = {source: number if source == cell else self._stored(source) for source in given}
+        texts = {self._key(f): self.links.without_names(self.links.formula(f)[0], self._key(f)[0]) for f in formulas}
+        known = {self._key(source): value for source, value in values.items() if value is not None}
+        found = what_if.calculated(texts, known, [self._key(result) for result in wanted])
+        return {result: found[self._key(result)] for result in wanted if self._key(result) in found}
 
-    def _put(self, book, cell: str, value: float | None) -> None:
-        sheet, _, _ = cell.rpartition("!")
-        if value is not None:
-            row, column = self.links.place(cell)
-            book.set_value(sheet, row, column, value)
+    def _key(self, cell: str) -> what_if.Cell:
+        return (cell.rpartition("!")[0], *self.links.place(cell))

@@ -7,6 +7,7 @@ from dataclasses import dataclass, field
 from functools import lru_cache
 
 from cellfuncs import quantities
+from cellfuncs.books import formulas
 from cellfuncs.cases import labels
 from cellfuncs.quantities import KINDS
 from cellfuncs.sheets.dimensions import measure as m
@@ -16,7 +17,7 @@ from cellfuncs.sheets.dimensions.measure import NONE, UNKNOWN, Measure, alike
 from cellfuncs.sheets.inherited.gather import Quantity
 from cellfuncs.sheets.inherited.page import Spot, address
 from cellfuncs.sheets.inherited.reading import Reading
-from cellfuncs.sheets.inherited.shapes import Shape, parsed
+from cellfuncs.sheets.inherited.shapes import Shape
 
 _POINTS = frozenset(("temperature", "pressure_absolute", "pressure_gauge"))
 _DEEPEST = 40  # cells without unit that stand behind one another
@@ -102,7 +103,7 @@ class Cells:
         return self._results[key]
 
     def _walk(self, shape: Shape, targets: tuple, sheet: str, depth: int) -> tuple[Measure, tuple[Problem, ...]]:
-        tree = parsed(shape.text)
+        tree = formulas.tree(shape.text)
         if tree is None:
             return UNKNOWN, ()
         derivation = Derivation(targets, lambda name: self._name(name, sheet, depth))

@@ -1,19 +1,14 @@
 """Formulas with their references taken out: ``=C2*A2/D2`` copied down a column is one shape.
 
-Each shape is parsed once, by the engine's own parser; what a formula refers to stands beside it.
+Each shape is parsed once (``books.formulas.tree``); what a formula refers to stands beside it.
 """
 
 from __future__ import annotations
 
 import re
-from collections.abc import Mapping
-from functools import lru_cache
-from typing import Any, NamedTuple
+from typing import NamedTuple
 
-from cellfuncs.books.formulas import MAX_LENGTH
 from cellfuncs.books.grid import Area, column_number
-
-MOST_NESTED = 60  # brackets in brackets; spreadsheet programs allow 64
 
 _PIECES = re.compile(
     r'"(?:[^"]|"")*"'
@@ -61,28 +56,3 @@ def shape_of(text: str) -> Shape:
         return f"_r{len(targets)}_"
 
     return Shape(_PIECES.sub(take, text), tuple(targets))
-
-
-def depth(text: str) -> int:
-    """How deep brackets are nested."""
-    deepest = level = 0
-    for sign in text:
-        if sign == "(":
-            level += 1
-            deepest = max(deepest, level)
-        elif sign == ")":
-            level -= 1
-    return deepest
-
-
-@lru_cache(maxsize=4096)
-def parsed(shape: str) -> Mapping[str, Any] | None:
-    """The tree of a shape as the engine's parser gives it, or None where it cannot be parsed."""
-    import formualizer
-
-    if len(shape) > 2 * MAX_LENGTH or depth(shape) > MOST_NESTED:
-        return None
-    try:
-        return formualizer.parse("=" + shape).to_dict()
-    except (formualizer.ParserError, formualizer.TokenizerError, ValueError, RecursionError):
-        return None
