@@ -27,7 +27,7 @@ FRICTION_FACTORS = (
     "temperature correction of turbulent friction",
 )
 ANNULUS_FACTOR = "Petukhov-Roizen"
-_RATIOS = frozenset(("viscosity_ratio", "prandtl_ratio", "temperature_ratio"))
+RATIOS = frozenset(("viscosity_ratio", "prandtl_ratio", "temperature_ratio"))
 
 
 class Internal(Passage):
@@ -171,7 +171,7 @@ class Internal(Passage):
 def _counts_properties(method: Method) -> bool:
     """Whether a method counts changing properties itself: by a ratio, the film, or for heating and cooling apart."""
     return (
-        not _RATIOS.isdisjoint(method.inputs) or method.property_temperature == "film" or "heating" in method.where
+        not RATIOS.isdisjoint(method.inputs) or method.property_temperature == "film" or "heating" in method.where
     )
 
 

@@ -8,6 +8,7 @@ from functools import cached_property
 from cellfuncs import groups
 from cellfuncs.answers import choice
 from cellfuncs.answers.body import BodyAnswers, solve_body
+from cellfuncs.answers.completed import completed
 from cellfuncs.answers.duct import DuctAnswers, solve_duct
 from cellfuncs.answers.free import FreeAnswers, solve_enclosure, solve_free
 from cellfuncs.answers.gap import GapAnswers, solve_gap
@@ -98,7 +99,9 @@ class Solution:
 def solve(case: Case) -> Solution:
     """Solve a case of any flow kind."""
     _refuse_other_methods(case)
-    return Solution(case, _SOLVERS[case.flow](case))
+    solver = _SOLVERS[case.flow]
+    case = completed(case, solver)
+    return Solution(case, solver(case))
 
 
 def _refuse_other_methods(case: Case) -> None:

@@ -236,7 +236,7 @@ def _usual(kind: str) -> str:
 
 # stated quantities for which only a value above zero makes sense
 SIGNED = frozenset(
-    {"temperature_difference", "heat_flux", "expansion", "volumetric_source", "pressure_drop", "inclination"}
+    {"temperature_difference", "heat_flux", "expansion", "volumetric_source", "pressure_drop", "inclination", "duty"}
 )
 
 

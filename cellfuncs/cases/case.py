@@ -75,10 +75,15 @@ class Case:
         self.flow = flow
         self.stated = stated
         self.points = points  # properties at temperatures
+        self.origin: Case | None = None  # the case as stated, where a row was put in that follows
 
     def stating(self, stated: Mapping[str, Any], flow: str | None = None) -> "Case":
         """The case with other rows, of another flow kind where one is named."""
         return Case(flow or self.flow, stated, self.points)
+
+    def without(self, key: str) -> "Case":
+        """The case without a row."""
+        return self.stating({name: entry for name, entry in self.stated.items() if name != key})
 
     def get(self, key: str, default: Any = None) -> Any:
         """The stated value in SI, or the default."""

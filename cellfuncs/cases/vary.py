@@ -34,7 +34,8 @@ def row_key(case: Case, text: str) -> str:
 
 
 def with_value(case: Case, key: str, value: float) -> Case:
-    """The case with the row ``key`` at ``value`` [SI], added where it is not stated."""
+    """The case with the row ``key`` at ``value`` [SI], added where it is not stated; what followed is open again."""
+    case = case.origin or case
     entry = case.stated.get(key)
     if entry is None:
         entry = Stated(key, labels.dictionary()[key].label, 0, value, None, "")

@@ -4,6 +4,7 @@ from cellfuncs import groups
 from cellfuncs.answers import gap as gap_answers
 from cellfuncs.answers.free import TURBULENT_FROM
 from cellfuncs.errors import NoModel
+from cellfuncs.methods import METHODS
 from cellfuncs.methods import duct as duct_methods
 from cellfuncs.terms.facts import FALLING_FILM, Facts
 from cellfuncs.terms.figure import Figure
@@ -13,7 +14,7 @@ from cellfuncs.terms.thresholds import FAILS, HOLDS, STRAINED
 
 _ENTRY_LAMINAR, _ENTRY_TURBULENT = 0.05, 10.0  # of Re·D and of D
 _NEAR_TRANSITION = (0.6, 6.0)  # times the transition Reynolds number, where a layer may be either
-_METHODS_WITH_ENTRY = ("Hausen entry", "plates entry", "flux entry", "Gnielinski", "transition blend")
+_ENTRY_INPUTS = frozenset(("x_star", "x_plus", "length_over_diameter", "diameter_over_length"))
 
 
 def continuum(f: Facts) -> Figure:
@@ -99,23 +100,38 @@ def regime(f: Facts) -> Figure:
     if f.family == "body":
         raise NoModel("nothing flows")
     if f.family == "free":
-        words = f"Ra: {'laminar up to' if f.laminar else 'turbulent from'} {num(TURBULENT_FROM)}"
+        words = f"Ra: {'laminar up to' if f.laminar else 'turbulent from'} {num(TURBULENT_FROM)}{_assumed(f)}"
         return Figure(f.answers.rayleigh, words, limit=TURBULENT_FROM, state=HOLDS)
     if f.flow == "duct":
         low, high = duct_methods.LAMINAR_UP_TO, duct_methods.TURBULENT_FROM
         if low < f.reynolds < high:
             words = f"transitional: between {num(low)} and {num(high)} flow is unsettled, values are blended"
+            words += _assumed(f)
             return Figure(f.reynolds, words, limit=low, state=STRAINED)
         if f.reynolds <= low:
-            return Figure(f.reynolds, f"laminar: up to {num(low)}", limit=low, state=HOLDS)
-        return Figure(f.reynolds, f"turbulent: from {num(high)}", limit=high, state=HOLDS)
+            return Figure(f.reynolds, f"laminar: up to {num(low)}{_assumed(f)}", limit=low, state=HOLDS)
+        return Figure(f.reynolds, f"turbulent: from {num(high)}{_assumed(f)}", limit=high, state=HOLDS)
     if f.family == "layer":
         limit = f.answers.transition
         near = _NEAR_TRANSITION[0] * limit < f.reynolds < _NEAR_TRANSITION[1] * limit
         words = f"{'laminar' if f.laminar else 'turbulent'}: transition taken at {num(limit)}"
         words += ", which depends on roughness and the stream's turbulence" if near else ""
+        words += _assumed(f)
         return Figure(f.reynolds, words, limit=limit, state=STRAINED if near else HOLDS)
-    raise NoModel(f"the method's range covers the regimes of a {f.flow}")
+    raise NoModel(f"the method's range covers the regimes of a {f.flow}{_assumed(f)}")
+
+
+def _assumed(f: Facts) -> str:
+    """The method of the coefficient, and the regime that its range speaks of."""
+    method = METHODS.get(getattr(f.answers, "chosen", None) and _name(f))
+    if method is None:
+        return ""
+    spans = ", ".join(r.words() for r in method.ranges if r.variable in ("Re", "Ra", "Gr", "Pe", "film Re", "Ra*"))
+    return f"; the coefficient is by {method.name} ({spans})" if spans else f"; the coefficient is by {method.name}"
+
+
+def _name(f: Facts) -> str:
+    return getattr(f.answers.chosen, "nusselt", f.answers.chosen)
 
 
 def _entry(f: Facts, thermal: bool) -> tuple[float, str]:
@@ -136,8 +152,11 @@ def developed_velocity(f: Facts) -> Figure:
 def developed_temperature(f: Facts) -> Figure:
     """Thermal entry length over length."""
     entry, words = _entry(f, thermal=True)
-    if f.answers.method in _METHODS_WITH_ENTRY:
-        words += f"; the coefficient ({f.answers.method}) counts the entry in, developed values would not hold early on"
+    method = METHODS.get(f.answers.chosen.nusselt)
+    if method is not None and not _ENTRY_INPUTS.isdisjoint(method.inputs):
+        words += f"; the coefficient ({method.name}) counts the entry in, developed values would not hold early on"
+    elif method is not None:
+        words += f"; {method.name} is for developed flow"
     return Figure(entry / f.length, words)
 
 

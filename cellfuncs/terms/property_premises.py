@@ -4,7 +4,9 @@ A property that is r times as large at the wall asks for a correction r^n (visco
 limit is the change for which that is the tolerance, (1 + tolerance)^(1/n) − 1.
 """
 
+from cellfuncs.answers.internal import RATIOS
 from cellfuncs.errors import NoModel
+from cellfuncs.methods import METHODS
 from cellfuncs.terms.facts import Facts
 from cellfuncs.terms.figure import Figure
 from cellfuncs.terms.one_phase import celsius
@@ -51,6 +53,8 @@ def _changed(f: Facts, name: str, limits: str, what: str, sign: float = 1.0) -> 
     asks = f"correct the {what} by a factor {num(ratio ** (sign * row.exponent))}"
     if f.family != "through":
         asks = "one temperature stands for both"
+    elif counted := _counted(f, what):
+        asks = counted
     return Figure(
         change,
         f"{num(here)} at {celsius(f.temperature)} where properties are taken, {num(there)} at the {where}, "
@@ -59,3 +63,17 @@ def _changed(f: Facts, name: str, limits: str, what: str, sign: float = 1.0) -> 
         limit=strained,
         state=FAILS if change >= fails else STRAINED if change >= strained else HOLDS,
     )
+
+
+def _counted(f: Facts, what: str) -> str:
+    """Words where the coefficient or the friction of a duct counts changing properties already; empty else."""
+    values = getattr(f.answers, "values", None)
+    if values is None:
+        return ""
+    if what == "friction":
+        return f"the friction counts a factor {num(values.friction_factor)}" if values.friction_factor != 1.0 else ""
+    if values.words:
+        return f"the coefficient counts a factor {num(values.nusselt_factor)} ({values.words})"
+    method = METHODS.get(f.answers.chosen.nusselt)
+    counts = method is not None and not RATIOS.isdisjoint(method.inputs)
+    return f"the method ({method.name}) counts it" if counts else ""
