@@ -66,7 +66,7 @@ class Admissible:
     """One of several answers, with the words that say which and its relative scatter.
 
     With a ``code`` it is what a known mistake gives; ``loose`` ones (a spread of methods) count only where no known
-    mistake fits better.
+    mistake fits better. ``assumed`` is what a sheet may take for granted even where it computes the rest.
     """
 
     value: float
@@ -74,6 +74,7 @@ class Admissible:
     scatter: float
     code: str = ""
     loose: bool = False
+    assumed: bool = False
 
 
 @dataclass(frozen=True)

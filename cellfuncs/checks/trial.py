@@ -111,7 +111,7 @@ class Trial:
         """The first answer that the number agrees with; one with a code is a known mistake."""
         pasted = self.references.pasted(self.entry.cell) >= PASTED
         for answer in self.answers:
-            if answer.loose and pasted and not self._near_a_method(answer):
+            if answer.loose and not answer.assumed and pasted and not self._near_a_method(answer):
                 continue
             stated = self.entry.si
             if self.entry.kind in _EITHER_SIGN and stated * answer.value < 0:

@@ -38,6 +38,12 @@ def _giving(gives: tuple[str, ...]) -> tuple[Method, ...]:
     return tuple(m for m in METHODS.values() if m.gives in gives)
 
 
+@lru_cache(maxsize=1)
+def _conditions() -> frozenset[str]:
+    """What methods make conditions on: section, surface, regime …"""
+    return frozenset(key for m in METHODS.values() for key in m.where) | frozenset(inputs())
+
+
 @lru_cache(maxsize=256)
 def _plain(name: str) -> str:
     return "".join(letter for letter in name.casefold() if letter.isalnum())
@@ -191,7 +197,7 @@ def _stream_heating(case: SheetCase, wall: float | None, bulk: float | None, out
 
 def _choices(case: SheetCase) -> dict[str, Any]:
     facts = case.facts
-    known = {**_DEFAULTS, **{k: v for k, v in facts.items() if k in inputs() and isinstance(v, str)}}
+    known = {**_DEFAULTS, **{k: v for k, v in facts.items() if k in _conditions() and isinstance(v, str)}}
     if facts.get("heated_walls"):
         known["heated"] = facts["heated_walls"]
     if "heat_flux" in case.stated and "wall_temperature" not in case.stated:
@@ -256,7 +262,7 @@ def friction_factor(case, reynolds, relative_roughness=None):
     ]
     if relative_roughness is None and reynolds > LAMINAR:
         # an unknown roughness only adds to a smooth wall's
-        found += [Admissible(a.value * 1.15, a.words, 0.3, loose=True) for a in found if a.loose]
+        found += [Admissible(a.value * 1.15, a.words, 0.3, loose=True, assumed=True) for a in found if a.loose]
     tight = [a for a in found if not a.code and not a.loose]
     if reynolds > TURBULENT:
         # the round tube's laminar law stands for every section in sheets
