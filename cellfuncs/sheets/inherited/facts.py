@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import re
-from collections.abc import Iterable, Mapping
+from collections.abc import Callable, Mapping
 from dataclasses import dataclass, field
 from functools import lru_cache
 from typing import Any
@@ -97,12 +97,16 @@ def side_of(text: str) -> str:
     return "" if bool(hot) == bool(cold) else "hot" if hot else "cold"
 
 
-def facts_of(page: Page) -> Facts:
-    """What the texts of a sheet say; the sheet's name counts as one."""
+def facts_of(page: Page, own: Callable[[Spot], bool | None] = lambda spot: True) -> Facts:
+    """What the texts of a sheet say; the sheet's name counts as one.
+
+    ``own`` tells whether a text belongs to a calculation (True), to the whole sheet (False) or to another (None).
+    """
     facts = Facts()
-    written: list[tuple[Spot, str]] = sorted(
-        (spot, value) for spot, value in page.values.items() if isinstance(value, str) and len(value) <= _LONGEST
-    )
+    places = {spot: own(spot) for spot, value in page.values.items() if isinstance(value, str)}
+    kept = [spot for spot, mine in places.items() if mine is not None and len(page.values[spot]) <= _LONGEST]
+    kept.sort(key=lambda spot: (not places[spot], spot))
+    written: list[tuple[Spot, str]] = [(spot, page.values[spot]) for spot in kept]
     for spot, text in written:
         _rows_that_ask(page, spot, text, facts)
     for spot, text in ((1, 1), page.name), *written:
@@ -188,8 +192,3 @@ def _with_share(text: str) -> str:
         return substances.find(match[0].replace("(", " ")) and match[0]
     except CellfuncsError:
         return ""
-
-
-def substances_in(written: Iterable[str]) -> set[str]:
-    """All substances that texts name."""
-    return {name for text in written if (name := substance_in(text))}

@@ -4,15 +4,19 @@ from __future__ import annotations
 
 from collections import Counter, defaultdict
 from collections.abc import Iterable, Mapping, Sequence
-from dataclasses import dataclass, field
+from dataclasses import dataclass, field, replace
+from itertools import combinations, pairwise
 
+from cellfuncs.books.grid import Area
 from cellfuncs.checks.finding import Judgement
 from cellfuncs.checks.stated import SheetCase, Stated
 from cellfuncs.sheets.inherited.facts import SIDES, Facts, side_of
 from cellfuncs.sheets.inherited.found import Found
 from cellfuncs.sheets.inherited.settle import Settled
 
+MOST_BLOCKS = 60  # blocks of a sheet that are compared with one another
 MOST_CASES = 60  # cases with the same formulas that are judged one by one
+_HEADING = 6  # rows between a heading and the first number below it
 _JUDGED = 6  # of more, so many are judged: the first ones, the last, and those that differ
 
 
@@ -37,6 +41,19 @@ class Group:
 
     blocks: list[tuple[str, int, int]]
     quantities: list[Quantity] = field(default_factory=list)
+
+    def areas(self) -> dict[str, list[Area]]:
+        """Where its blocks stand on each sheet, with their headings: the rectangle round each."""
+        found: dict[str, list[Area]] = defaultdict(list)
+        by_block: dict[tuple[str, int, int], list[Quantity]] = defaultdict(list)
+        for quantity in self.quantities:
+            by_block[quantity.block].append(quantity)
+        for (page, block, section), quantities in by_block.items():
+            rows = [q.found.spot[0] for q in quantities]
+            columns = [q.found.spot[1] for q in quantities] + ([block] if block > 0 else [])
+            top = section if section and min(rows) - section <= _HEADING else min(rows)
+            found[page].append((top, min(columns), max(rows), max(columns) + 1))
+        return found
 
 
 def groups_of(quantities: Sequence[Quantity], graph: Mapping[str, tuple[str, ...]]) -> list[Group]:
@@ -73,10 +90,17 @@ def groups_of(quantities: Sequence[Quantity], graph: Mapping[str, tuple[str, ...
     )
     for (one, other), _ in near.most_common():
         join(*sorted((one, other), key=order.index))
-    for index, name in enumerate(order):
-        for other in order[:index]:
-            if other[0] == name[0]:
-                join(other, name)
+    for page in dict.fromkeys(name[0] for name in order):
+        here = [name for name in order if name[0] == page]
+        roots = list(dict.fromkeys(map(root, here)))
+        if len(roots) > MOST_BLOCKS or any(_contradict(a, b, members, own) for a, b in combinations(roots, 2)):
+            # several calculations on one sheet: a block goes with the one before it, where they have nothing in common
+            for before, name in pairwise(here):
+                if not own[name] & set().union(*(own[m] for m in members[root(before)])):
+                    join(before, name)
+            continue
+        for other in here[1:]:
+            join(here[0], other)
     if len({root(name) for name in order}) > 1:
         _attach_lonely(order, members, root, parent, own)
     found = []
@@ -94,6 +118,8 @@ def _keys(entries: Iterable[Quantity]) -> set[str]:
 
 def _contradict(one, other, members, own) -> bool:
     """Whether two sets of blocks state the same things twice, as two calculations do."""
+    if one == other:
+        return False
     first = set().union(*(own[m] for m in members[one]))
     second = set().union(*(own[m] for m in members[other]))
     common = first & second
@@ -132,6 +158,33 @@ def cases_of(group: Group, facts: Facts, name: str, notes: Judgement) -> list[Sh
         beside = [q for q in shared if q.stated.key not in own]
         found.append(_case(head, [*beside, *lanes[lane]], facts))
     return found
+
+
+_ENDS = {"inlet_temperature", "outlet_temperature"}
+
+
+def exchanger_of(quantities: Sequence[Quantity], facts: Facts, name: str, dictionary: Mapping[str, object]) -> list:
+    """The case of an exchanger whose streams stand in two blocks that do not say which is hot (tube side, shell side):
+    the one that enters hotter. Nothing where there are no two such blocks."""
+    blocks: dict[tuple[str, int, int], dict[str, Stated]] = defaultdict(dict)
+    for quantity in quantities:
+        if quantity.found.lane is None:
+            blocks[quantity.block].setdefault(quantity.stated.key, quantity.stated)
+    ends = [block for block, stated in blocks.items() if stated.keys() >= _ENDS]
+    if len(ends) != 2 or any(q.stated.key.startswith("hot_") for q in quantities):
+        return []
+    cold, hot = sorted(ends, key=lambda block: blocks[block]["inlet_temperature"].si)
+    sides = {hot: "hot", cold: "cold"}
+    case = _case(name, [], facts)
+    for quantity in sorted(quantities, key=lambda q: (q.page, q.found.spot)):
+        key = quantity.stated.key
+        if quantity.block in sides and f"{sides[quantity.block]}_{key}" in dictionary:
+            key = f"{sides[quantity.block]}_{key}"
+        elif quantity.block in sides and all(key in blocks[side] for side in sides):
+            continue
+        if quantity.found.lane is None:
+            case.add(replace(quantity.stated, key=key))
+    return [case]
 
 
 def _chosen(lanes: Mapping[int, Sequence[Quantity]], notes: Judgement) -> list[int]:

@@ -5,8 +5,10 @@ from __future__ import annotations
 from collections import defaultdict
 from collections.abc import Mapping
 from dataclasses import dataclass, field
+from functools import partial
 
 from cellfuncs.books import Book
+from cellfuncs.books.grid import Area
 from cellfuncs.cases import labels
 from cellfuncs.checks.finding import Judgement
 from cellfuncs.checks.stated import SheetCase, Stated
@@ -15,9 +17,10 @@ from cellfuncs.sheets.inherited import gather, rows, settle, tables
 from cellfuncs.sheets.inherited.facts import Facts, facts_of
 from cellfuncs.sheets.inherited.gather import Quantity
 from cellfuncs.sheets.inherited.links import Links
-from cellfuncs.sheets.inherited.page import Page, address, is_error, read_pages
+from cellfuncs.sheets.inherited.page import Page, Spot, address, is_error, read_pages
 
 MOST_NOTES = 200
+MOST_GROUPS = 40  # calculations whose texts are told apart
 
 
 @dataclass
@@ -100,10 +103,13 @@ def _settle(found: list[Quantity], facts: Mapping[str, Facts], links: Links, not
     """Settle what is clear, then the rest by its neighbours; what stays open becomes a note."""
     keys: dict[str, set[str]] = defaultdict(set)
     waiting = []
+    told: set[tuple[str, str, int, str]] = set()  # one note for all numbers beside or under a label
     for quantity in found:
         if not quantity.settled.options:
             why = quantity.settled.why
-            if why not in ("remark", "no label"):
+            place = (quantity.page, quantity.found.written_label, quantity.found.block, why)
+            if why not in ("remark", "no label") and place not in told:
+                told.add(place)
                 notes.notes.append((_cell(quantity), f'"{quantity.found.written_label[:60]}": {why}'))
             continue
         if quantity.settled.clear:
@@ -156,15 +162,33 @@ def _state(quantity: Quantity, option: settle.Option, links: Links) -> None:
 def _cases(known: list[Quantity], facts: Mapping[str, Facts], links: Links, notes: Judgement) -> list[SheetCase]:
     found: list[SheetCase] = []
     groups = gather.groups_of(known, links.graph)
-    for group in groups:
+    areas = [group.areas() for group in groups]
+    for number, group in enumerate(groups):
         said = Facts()
         sheets = dict.fromkeys(q.page for q in group.quantities)
         for sheet in sheets:
-            for key, value in facts[sheet].said.items():
-                cells = facts[sheet].cells
+            others = [area for place, of in enumerate(areas) if place != number for area in of.get(sheet, ())]
+            here = facts[sheet]
+            if others and len(groups) <= MOST_GROUPS:
+                here = facts_of(links.pages[sheet], partial(_belongs, areas[number][sheet], others))
+            for key, value in here.said.items():
                 for one in value if isinstance(value, list) else [value]:
-                    said.put(key, one, cells.get(f"{key} {one}", cells[key]))
+                    said.put(key, one, here.cells.get(f"{key} {one}", here.cells[key]))
         section = next((q.found.section for q in group.quantities if q.found.section), "")
         name = section if len(groups) > 1 and section else next(iter(sheets))
         found += gather.cases_of(group, said, name, notes)
+    for sheet in dict.fromkeys(q.page for q in known):
+        here = [q for q in known if q.page == sheet]
+        found += gather.exchanger_of(here, facts[sheet], f"{sheet}, both streams", labels.dictionary())
     return found
+
+
+def _belongs(own: list[Area], others: list[Area], spot: Spot) -> bool | None:
+    """Whether a text stands among the numbers of a calculation (True), of another (None), or of none (False)."""
+    if any(_inside(spot, area) for area in own):
+        return True
+    return None if any(_inside(spot, area) for area in others) else False
+
+
+def _inside(spot: Spot, area: Area) -> bool:
+    return area[0] <= spot[0] <= area[2] and area[1] <= spot[1] <= area[3]

@@ -170,6 +170,8 @@ def _sections(page: Page, found: list[Found], taken: set[Spot]) -> None:
         beside = [page.values.get((row, column + step)) for step in (1, 2, 3)]
         if row in rows_with and any(is_number(v) for v in beside):
             continue
+        if isinstance(beside[0], str) or isinstance(beside[1], str):
+            continue  # a row of texts, or the head of a table
         headings[column].append((row, value.strip()))
     for column in headings:
         headings[column].sort()

@@ -139,6 +139,30 @@ def test_hot_and_cold_stream_by_their_headings(read):
     assert case.stated["cold_mass_flow"][0].value == 3.0
 
 
+def test_streams_that_do_not_say_which_is_hot(read):
+    cells = {"A1": "Tube side", "E1": "Shell side"}
+    rows = [("Inlet temperature", 20.0, 90.0, "°C"), ("Outlet temperature", 45.0, 60.0, "°C")]
+    for row, (label, tube, shell, unit) in enumerate([*rows, ("Mass flow", 2.0, 1.7, "kg/s")], 2):
+        cells |= {f"A{row}": label, f"B{row}": tube, f"C{row}": unit}
+        cells |= {f"E{row}": label, f"F{row}": shell, f"G{row}": unit}
+    cells |= {"A8": "LMTD", "B8": ("=((F2-B3)-(F3-B2))/LN((F2-B3)/(F3-B2))", 42.45), "C8": "K"}
+    cases = {case.name: case for case in read(cells).cases}
+    both = cases["Sheet1, both streams"].stated
+    assert both["hot_inlet_temperature"][0].cell == "Sheet1!F2" and both["cold_mass_flow"][0].cell == "Sheet1!B4"
+    assert both["log_mean_difference"][0].cell == "Sheet1!B8"
+
+
+def test_facts_belong_to_their_calculation(read):
+    cells = {}
+    for number, substance in enumerate(("Water", "Air")):
+        top = 1 + 10 * number
+        cells |= {f"A{top}": f"Line {number + 1}", f"A{top + 1}": "Fluid", f"B{top + 1}": substance}
+        for row, (label, unit) in enumerate((("Velocity", "m/s"), ("Inside diameter", "mm"), ("Density", "kg/m³")), 2):
+            cells |= {f"A{top + row}": label, f"B{top + row}": 2.0 + number, f"C{top + row}": unit}
+    cases = read(cells).cases
+    assert [(case.name, case.facts["substance"]) for case in cases] == [("Line 1", "Water"), ("Line 2", "Air")]
+
+
 def test_defined_names_are_labels_and_are_followed(read):
     cells = {"A1": (2.0), "B1": "m/s", "A2": 0.025, "B2": "m", "A3": 1e-6, "B3": "m²/s",
              "A4": ("=w_mean*d_i/nu", 50000.0)}  # fmt: skip
