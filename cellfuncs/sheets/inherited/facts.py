@@ -30,7 +30,9 @@ _SHARE = re.compile(r"[a-z][a-z ]*[a-z][ ,(]*\d[\d.]* ?%(?: by (?:mass|weight|vo
 SIDES = ("hot", "cold")
 _PIPE = re.compile(r"\b(?:pipe|pipes|pipeline|tube|tubes|bore|duct)\b", re.IGNORECASE)
 _AROUND = re.compile(
-    r"\b(?:insulat\w*|lagging|outside film|shell|hot|cold|bank|bundle|cross.?flow|fin|fins)\b", re.IGNORECASE
+    r"\b(?:insulat\w*|lagging|bare|heat loss|outside|outer|od|ambient|surface temp\w*|shell|hot|cold|bank|bundle"
+    r"|cross.?flow|fin|fins)\b",
+    re.IGNORECASE,
 )
 _PIPE_LABELS = 2
 

@@ -93,10 +93,12 @@ def _fitting(names: tuple[str, ...], units: tuple[str, ...], in_si: bool, atmosp
 
 def _unit_of(units: Sequence[str], kind: str, in_si: bool, atmosphere: float) -> tuple[str, Unit] | None:
     for text in units:
-        try:
-            return text, quantities.read_unit(text, kind, atmosphere)
-        except CellfuncsError:
-            continue
+        # where the label says gauge, the unit need not
+        for spelling in (text, f"{text}g") if kind == "pressure_gauge" else (text,):
+            try:
+                return spelling, quantities.read_unit(spelling, kind, atmosphere)
+            except CellfuncsError:
+                continue
     if units and any(quantities.kinds_for(text) for text in units):
         return None
     if kind in UNITLESS:

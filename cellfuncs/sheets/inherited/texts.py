@@ -109,9 +109,11 @@ def label_in(text: str) -> Labelled:
     head, _, tail = names[0].rpartition(" ")
     if head and _is_symbol_of(tail, head):
         names.append(head.rstrip(" ,;:=-"))
-    head, comma, _ = names[0].partition(", ")
-    if comma:
-        names.append(head.strip())
+    for joint in (", ", " = ", "="):
+        head, found, _ = names[0].partition(joint)
+        if found and head.strip():
+            names.append(head.strip())
+            break
     return Labelled(tuple(dict.fromkeys(name for name in names if name)), unit)
 
 
