@@ -28,6 +28,7 @@ engine.py      evaluation: what has to be calculated, and the comparison with st
 what_if.py     some formulas with other values, beside the workbook
 exchange.py    values on their way to and from the engine
 outcome.py     what was calculated, as values for cells
+child.py       a bounded process for work on files from strangers
 areas.py       contiguous areas of our formulas with labels and heads, for a reader
 =============  ==============================================================================
 """

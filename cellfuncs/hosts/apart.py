@@ -1,8 +1,7 @@
 """A recalculation in a process of its own, so that no workbook can take all memory or time of the machine.
 
-The process is started as Python starts, which costs less than a tenth of a second, since what it imports the
-parent need not. It gets what to do on its input, and answers with progress and the result on its output. The
-parent alone writes the file, so that a process that is ended at any moment leaves nothing behind.
+It gets what to do on its input, and answers with progress and the result on its output. The parent alone writes
+the file, so that a process that is ended at any moment leaves nothing behind.
 """
 
 from __future__ import annotations
@@ -11,25 +10,19 @@ import contextlib
 import os
 import pickle
 import signal
-import subprocess
 import sys
 import threading
 from collections.abc import Callable
 from pathlib import Path
 from typing import TYPE_CHECKING, Any
 
+from cellfuncs.books.child import GRACE, MEMORY, bound_memory, ended, start_of, started
 from cellfuncs.errors import BookRefused
 
 if TYPE_CHECKING:
     from cellfuncs.hosts.embedded import Calculated
 
-MEMORY = 2 * 1024**3  # bytes, beyond what the libraries take; the largest workbook that is let in needs half
-GRACE = 30.0  # s, past the time in which the calculation should have ended by itself
-
-_START = (
-    "import json, sys; sys.path[:] = json.loads(sys.stdin.buffer.readline());"
-    " from cellfuncs.hosts.apart import main; main()"
-)
+_START = start_of("cellfuncs.hosts.apart")
 _TOO_MUCH = "The calculation needs more than {:.3g} GB of memory and was stopped."
 _TOO_LONG = "The calculation took longer than it may and was stopped."
 _BROKEN = "The calculation broke off in the engine (code {}); no values were written."
@@ -37,15 +30,7 @@ _BROKEN = "The calculation broke off in the engine (code {}); no values were wri
 
 def calculated_apart(path: Path, *, progress: Callable[[str], None] | None, seconds: float, **how: Any) -> Calculated:
     """As ``embedded.calculated``, in a process whose memory (where the system can do that) and time are bounded."""
-    import json
-
-    # -P: a file beside the user's workbook must not be taken for a module.
-    command = [sys.executable, "-P", "-X", "utf8", "-c", _START]
-    # A linear algebra library takes room for as many threads as there are processors, all within the bound.
-    variables = {"OPENBLAS_NUM_THREADS": "1", "OMP_NUM_THREADS": "1"} | os.environ
-    process = subprocess.Popen(
-        command, stdin=subprocess.PIPE, stdout=subprocess.PIPE, stderr=subprocess.DEVNULL, env=variables
-    )
+    process = started(_START)
     late = threading.Event()
 
     def end() -> None:
@@ -57,7 +42,6 @@ def calculated_apart(path: Path, *, progress: Callable[[str], None] | None, seco
     timer.start()
     try:
         with contextlib.suppress(BrokenPipeError):  # it died at once: the reading says so
-            process.stdin.write(json.dumps(sys.path).encode() + b"\n")
             pickle.dump((str(path.absolute()), seconds, MEMORY, how), process.stdin)
             process.stdin.flush()
         while True:
@@ -78,11 +62,7 @@ def calculated_apart(path: Path, *, progress: Callable[[str], None] | None, seco
         raise BookRefused(text) from error
     finally:
         timer.cancel()
-        process.kill()
-        process.wait()
-        for pipe in (process.stdin, process.stdout):
-            with contextlib.suppress(OSError):
-                pipe.close()
+        ended(process)
 
 
 def main() -> None:
@@ -98,7 +78,10 @@ def main() -> None:
 
     path, seconds, memory, how = pickle.load(sys.stdin.buffer)
     try:
-        _bound_memory(memory)
+        import formualizer  # noqa: F401  (its own size and that of numpy are not the workbook's)
+        import numpy  # noqa: F401
+
+        bound_memory(memory)
         tell(
             "done",
             embedded.calculated(Path(path), progress=lambda text: tell("progress", text), seconds=seconds, **how),
@@ -123,21 +106,3 @@ def _portable(error: BaseException) -> BaseException:
         error = RuntimeError(f"{type(error).__name__}: {error}")
     error.add_note(trace)
     return error
-
-
-def _bound_memory(memory: int) -> None:
-    """Bound the memory [bytes] of this process where the system can."""
-    try:
-        import resource
-    except ImportError:  # Windows
-        return
-    import formualizer  # noqa: F401  (its own size and that of numpy are not the workbook's)
-    import numpy  # noqa: F401
-
-    try:
-        own = int(Path("/proc/self/statm").read_text().split()[0]) * resource.getpagesize()
-        _, hard = resource.getrlimit(resource.RLIMIT_AS)
-        wanted = own + memory
-        resource.setrlimit(resource.RLIMIT_AS, (wanted if hard < 0 else min(wanted, hard), hard))
-    except (OSError, ValueError):  # no such file, or the system does not bound it
-        return
