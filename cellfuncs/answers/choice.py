@@ -14,7 +14,7 @@ from functools import lru_cache
 
 from cellfuncs.answers.inputs import Inputs, View
 from cellfuncs.cases.case import Case
-from cellfuncs.errors import CaseRefused, NoModel, OutOfRange, UnknownName
+from cellfuncs.errors import CaseRefused, CellfuncsError, NoModel, OutOfRange, UnknownName
 from cellfuncs.methods import METHODS, Method, Range
 
 NUSSELT = ("mean Nu", "local Nu")
@@ -235,7 +235,9 @@ def number(method: Method, view: View) -> float:
     """A method's number at a view, its range aside."""
     try:
         result = method.function(**view.given(method))
-    except (ZeroDivisionError, OverflowError):
+    except CellfuncsError:
+        raise
+    except (ZeroDivisionError, OverflowError, ValueError):  # ValueError: a logarithm or root of less than nothing
         result = math.nan
     if isinstance(result, complex) or not math.isfinite(result):
         raise OutOfRange(f"{method.name} has no finite value here")
