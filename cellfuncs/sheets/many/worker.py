@@ -1,0 +1,170 @@
+"""A process that checks one workbook after another, with bounded time and memory for each.
+
+What is imported once stays imported, which saves seconds a file. A process that dies, takes too long or runs out of
+memory is replaced; its file gets one more go in a new one, since an end may come from outside or from what the files
+before have left behind. Only a file that takes too long gets none.
+"""
+
+from __future__ import annotations
+
+import contextlib
+import os
+import pickle
+import signal
+import subprocess
+import sys
+import threading
+from typing import Any
+
+from cellfuncs.books.child import GRACE, MEMORY, bound_memory, ended, own_memory, start_of, started
+from cellfuncs.sheets.many.one import Answer, Task, checked_one, failed
+
+SECONDS = 120.0  # for one file; the largest that are let in need a quarter of it
+_START = start_of("cellfuncs.sheets.many.worker")
+_GROWN = 4  # a process that has grown by this part of the memory is replaced
+TOO_LONG = "the check took longer than {:.3g} s and was stopped"
+TOO_MUCH = "the check needs more than {:.3g} GB of memory and was stopped"
+BROKEN = "the check broke off (code {})"
+
+
+class Ended(Exception):
+    """The process is no more; ``text`` says of its file what happened, ``again`` whether it may have another go."""
+
+    def __init__(self, text: str, again: bool) -> None:
+        super().__init__(text)
+        self.text, self.again = text, again
+
+
+class Worker:
+    """A worker of its own process. ``check`` is for one thread, ``stop`` for any."""
+
+    def __init__(self, seconds: float | None = None, memory: int | None = None) -> None:
+        self.seconds = SECONDS if seconds is None else seconds
+        self.memory = MEMORY if memory is None else memory
+        self._process: subprocess.Popen | None = None
+        self._lock = threading.Lock()
+        self._stopped = False
+
+    def check(self, task: Task) -> Answer | None:
+        """The answer for a file, whatever happens to the process; None once the worker was stopped."""
+        try:
+            return self._asked(task)
+        except Ended as first:
+            if self._stopped or not first.again:
+                return None if self._stopped else failed(task, first.text)
+        try:
+            return self._asked(task)
+        except Ended as second:
+            return None if self._stopped else failed(task, second.text)
+
+    def stop(self) -> None:
+        """End the process; a check under way comes back without an answer."""
+        with self._lock:
+            self._stopped = True
+            if self._process is not None:
+                self._process.kill()
+
+    def close(self) -> None:
+        """End the process and all that belongs to it."""
+        self.stop()
+        self._replace()
+
+    def _asked(self, task: Task) -> Answer:
+        process = self._running()
+        late = threading.Event()
+
+        def end() -> None:
+            late.set()
+            process.kill()
+
+        timer = threading.Timer(self.seconds, end)
+        timer.daemon = True
+        timer.start()
+        try:
+            with contextlib.suppress(BrokenPipeError):  # it died before: the reading says so
+                pickle.dump(task, process.stdin)
+                process.stdin.flush()
+            answer, replace = pickle.load(process.stdout)
+        except (EOFError, OSError, pickle.UnpicklingError) as error:
+            raise self._end_of(process, late.is_set()) from error
+        finally:
+            timer.cancel()
+        if answer is None:
+            self._replace()
+            raise Ended(TOO_MUCH.format(self.memory / 1024**3), True)
+        if replace:
+            self._replace()
+        return answer
+
+    def _running(self) -> subprocess.Popen:
+        """The process, a new one where there is none."""
+        with self._lock:
+            if self._stopped:
+                raise Ended("", False)
+            if self._process is None:
+                self._process = started(_START)
+                with contextlib.suppress(BrokenPipeError):
+                    pickle.dump((self.seconds, self.memory), self._process.stdin)
+            return self._process
+
+    def _end_of(self, process: subprocess.Popen, late: bool) -> Ended:
+        with contextlib.suppress(subprocess.TimeoutExpired):
+            process.wait(1.0)  # its output has ended: it ends itself, with a code that tells why
+        code = self._replace()
+        if late:
+            return Ended(TOO_LONG.format(self.seconds), False)
+        # The engine aborts the process where it gets no memory.
+        aborted = code == -signal.SIGABRT
+        return Ended(TOO_MUCH.format(self.memory / 1024**3) if aborted else BROKEN.format(code), True)
+
+    def _replace(self) -> int:
+        with self._lock:
+            process, self._process = self._process, None
+        return ended(process) if process is not None else 0
+
+
+def main() -> None:
+    """The process itself: answers come with a word whether it wants to be replaced; no answer is want of memory."""
+    signal.signal(signal.SIGINT, signal.SIG_IGN)  # Ctrl+C goes to all processes of a terminal; the parent decides
+    outgoing = os.fdopen(os.dup(1), "wb")
+    os.dup2(2, 1)  # what a library prints must not get between the messages
+
+    def tell(answer: Answer | None, replace: bool) -> None:
+        pickle.dump((answer, replace), outgoing)
+        outgoing.flush()
+
+    try:
+        seconds, memory = pickle.load(sys.stdin.buffer)
+        _imports()
+        bound_memory(memory)
+        own = own_memory()
+        while True:
+            task: Any = pickle.load(sys.stdin.buffer)
+            _bound_time(seconds + GRACE)
+            try:
+                answer = checked_one(task)
+            except MemoryError:
+                tell(None, True)
+                break
+            _bound_time(0.0)
+            now = own_memory()
+            tell(answer, own is not None and now is not None and now - own > memory / _GROWN)
+    except (EOFError, BrokenPipeError):  # no more files, or the parent is gone
+        pass
+    os._exit(0)  # threads of libraries need not be waited for
+
+
+def _bound_time(seconds: float) -> None:
+    """End this process after so many seconds (0: never), should the parent be gone and nobody else do it."""
+    if hasattr(signal, "setitimer"):
+        signal.signal(signal.SIGALRM, signal.SIG_DFL)
+        signal.setitimer(signal.ITIMER_REAL, seconds)
+
+
+def _imports() -> None:
+    """What most files need, so that its size and its time are not counted as a file's."""
+    import formualizer  # noqa: F401
+    from CoolProp import CoolProp  # noqa: F401
+    from scipy import optimize  # noqa: F401
+
+    from cellfuncs.sheets import check  # noqa: F401
