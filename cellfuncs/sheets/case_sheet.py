@@ -5,7 +5,7 @@ weight. One formula a cell and no array formulas, so that whoever lacks Cellfunc
 """
 
 import datetime as dt
-from collections.abc import Sequence
+from collections.abc import Callable, Sequence
 from dataclasses import dataclass
 from pathlib import Path
 from typing import Any
@@ -22,7 +22,9 @@ class CaseSheet:
     """What stands in the sheet.
 
     ``rows`` are label, value, unit, ±; ``results`` what, unit, number format; ``sweep`` the label that varies,
-    its unit, its values, and the term whose share is shown.
+    its unit, its values, and the term whose share (or ``sweep_measure``) is shown. ``pages`` write further sheets into the book, given the
+    block's workbook name (``{block}_values`` is the block without ±), and tell what stands there, where, and what
+    it says.
     """
 
     title: str
@@ -34,6 +36,8 @@ class CaseSheet:
     sweep: tuple[str, str, tuple[float, ...], str]
     spare: int = 4
     protected: bool = False
+    sweep_measure: str = "share"
+    pages: tuple[Callable[[Any, str], tuple[str, str, str]], ...] = ()
 
 
 def write_book(sheet: CaseSheet, path: str | Path) -> None:
@@ -81,6 +85,7 @@ class _Writer:
         self._print()
         write_premises(self.premises, self.style, content.block, content.title)
         self.places.append(("Premises", "Premises!A1", "what the calculation rests on, safety first"))
+        self.places.extend(page(self.book, content.block) for page in content.pages)
         self._contents()
         self.sheet.activate()
         if content.protected:
@@ -101,7 +106,7 @@ class _Writer:
         """The sheet that says what stands where."""
         sheet = self.contents
         sheet.hide_gridlines(2)
-        for column, width in enumerate((26, 8, 60, 4, 4, 30)):
+        for column, width in enumerate((26, 22, 60, 4, 4, 30)):
             sheet.set_column(column, column, width)
         sheet.set_row(0, 24)
         sheet.write(0, 0, self.content.title, self.style(bold=True, font_size=16))
@@ -164,6 +169,8 @@ class _Writer:
                 sheet.write_blank(at, column, None, self.entry(ruled=column == 1))
         self.places.append(("Case block", f"A{row + 1}", f"the workbook name {content.block}, with spare rows"))
         self.book.define_name(content.block, f"=Case!$A${first + 1}:$D${last + 1}")
+        if content.pages:
+            self.book.define_name(f"{content.block}_values", f"=Case!$A${first + 1}:$C${last + 1}")
         return last + 2
 
     def _heading(self, row: int, words: Sequence[str], column: int = 0) -> None:
@@ -187,17 +194,18 @@ class _Writer:
         sheet.set_column(6, 6, 16)
         label, unit, values, term = content.sweep
         top = row + len(content.results) + 1
-        self.places.append(("Sweep", f"F{top + 1}", f"one row varied, and the share of {term}"))
+        self.places.append(("Sweep", f"F{top + 1}", f"one row varied, and the {content.sweep_measure} of {term}"))
         sheet.write(
             top,
             5,
-            f"{label} [{unit}] and the share that follows",
+            f"{label} [{unit}] and the {content.sweep_measure} that follows",
             self.style(bold=True, bottom=1, bottom_color=INK, indent=2),
         )
         sheet.write(top, 6, term, self.style(bold=True, bottom=1, bottom_color=INK, align="right"))
+        measure = "" if content.sweep_measure == "share" else f',"{content.sweep_measure}"'
         for k, value in enumerate(values, start=1):
             sheet.write(top + k, 5, value, self.entry(align="left", indent=1))
-            formula = f'=CF_TERM(CF_VARY({content.block},"{label}",$F{top + k + 1},"{unit}"),"{term}")'
+            formula = f'=CF_TERM(CF_VARY({content.block},"{label}",$F{top + k + 1},"{unit}"),"{term}"{measure})'
             sheet.write_formula(top + k, 6, formula, self.style(num_format=SHARES, bottom=4, bottom_color=LINE))
 
     def _terms(self, row: int) -> None:

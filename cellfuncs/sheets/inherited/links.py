@@ -54,11 +54,12 @@ class Links:
 
     @cached_property
     def shapes(self) -> Mapping[str, tuple[str, Spot, Shape]]:
-        """Every formula: sheet, place, and shape, by its cell."""
+        """Every formula but copies in long tables: sheet, place, and shape, by its cell."""
         found = {}
         for page in self.pages.values():
             for spot, formula in page.formulas.items():
-                found[address(page.name, spot)] = (page.name, spot, shape_of(formula.text))
+                if spot not in page.copies:
+                    found[address(page.name, spot)] = (page.name, spot, shape_of(formula.text))
         return found
 
     @cached_property

@@ -33,6 +33,7 @@ class Page:
     formats: dict[Spot, Shown] = field(default_factory=dict)
     covers: dict[Spot, Spot] = field(default_factory=dict)
     cut: bool = False  # not all cells were read
+    copies: set[Spot] = field(default_factory=set)  # numbers of long tables that repeat the formulas of others
 
     def at(self, row: int, column: int) -> Value:
         """The value of a cell, that of the merged cell where it lies under one."""

@@ -57,7 +57,9 @@ def read_book(book: Book) -> Reading:
 
 
 def _quantities(page: Page, facts: Facts, links: Links, notes: Judgement) -> list[Quantity]:
-    in_tables, taken = tables.tables_in(page)
+    in_tables, taken, copies = tables.tables_in(page)
+    for spot, number in copies:
+        notes.notes.append((page.address(spot), f"{number} more rows with the same formulas were not recomputed"))
     entries = in_tables + rows.rows_in(page, taken)
     for name, spot in links.named(page.name):
         _use_name(page, name, spot, entries)

@@ -7,6 +7,7 @@ the row below.
 from __future__ import annotations
 
 from collections import defaultdict
+from typing import NamedTuple
 
 from cellfuncs.sheets.inherited import texts
 from cellfuncs.sheets.inherited.found import Found
@@ -16,19 +17,32 @@ _LEAST_COLUMNS = 2
 _WIDEST_GAP = 2  # columns from one head to the next
 _LOOK_DOWN = 3  # rows between a head and its first number
 _KNOWN_SHARE = 0.5
+MANY_ROWS = 200  # rows from which copies of one row are passed over
+KEPT_ROWS = 6  # of which so many are kept
 
 
-def tables_in(page: Page) -> tuple[list[Found], set[Spot]]:
-    """The numbers of all such tables, and every cell that belongs to one."""
+class Copies(NamedTuple):
+    """Rows of a long table that repeat the formulas of others: its first number, and how many were passed over."""
+
+    spot: Spot
+    rows: int
+
+
+def tables_in(page: Page) -> tuple[list[Found], set[Spot], list[Copies]]:
+    """The numbers of all such tables, every cell that belongs to one, and what was passed over."""
     rows: dict[int, list[int]] = defaultdict(list)
     for row, column in page.values:
         rows[row].append(column)
     found: list[Found] = []
     taken: set[Spot] = set()
+    copies: list[Copies] = []
     for row in sorted(rows):
         for run in _runs(page, row, sorted(rows[row]), taken):
-            found += _read(page, row, run, taken)
-    return found, taken
+            entries, passed = _read(page, row, run, taken)
+            found += entries
+            if passed:
+                copies.append(Copies(entries[0].spot, passed))
+    return found, taken, copies
 
 
 def _label(page: Page, spot: Spot) -> texts.Labelled | None:
@@ -77,12 +91,11 @@ def _first_below(page: Page, row: int, column: int) -> int | None:
     return None
 
 
-def _read(page: Page, row: int, columns: list[int], taken: set[Spot]) -> list[Found]:
-    """The numbers of one table."""
+def _read(page: Page, row: int, columns: list[int], taken: set[Spot]) -> tuple[list[Found], int]:
+    """The numbers of one table, and how many of its rows were passed over as copies."""
     firsts = {c: below for c in columns if (below := _first_below(page, row, c)) is not None}
     start = min(firsts.values())
     taken |= {(row, c) for c in columns}
-    found: list[Found] = []
     heads = {}
     for column in columns:
         label = _label(page, (row, column))
@@ -91,50 +104,79 @@ def _read(page: Page, row: int, columns: list[int], taken: set[Spot]) -> list[Fo
         units = [texts.bare_unit(v) for v in texts_between if texts.is_unit(v)]
         symbols = [v for v in texts_between if not texts.is_unit(v)]
         taken |= {(r, column) for r in range(row + 1, start)}
-        heads[column] = (label, (label.unit, *units) if label.unit else tuple(units), symbols)
+        heads[column] = ((*label.names, *symbols), (label.unit, *units) if label.unit else tuple(units))
     section = _title(page, row, columns[0], columns[-1])
-    rows_read = 0
-    below = start
-    gap = 0
-    while gap <= 1 and rows_read < 100_000:
-        cells = {c: page.values.get((below, c)) for c in columns}
-        numbers = {c: v for c, v in cells.items() if _number(v) is not None}
-        if not numbers:
-            if any(isinstance(v, str) for v in cells.values()):
-                break
-            gap += 1
-            below += 1
-            continue
-        gap = 0
-        name = _row_name(page, below, columns)
-        for column, value in numbers.items():
-            label, units, symbols = heads[column]
-            number, unit = _number(value)
-            spot = (below, column)
-            taken.add(spot)
+    rows = _rows_of(page, columns, start)
+    taken |= {(at, column) for at, numbers in rows for column in numbers}
+    kept = _chosen(page, rows)
+    lane = len(rows) > 1
+    found = []
+    for at, numbers in kept:
+        name = _row_name(page, at, columns)
+        for column, (number, unit) in numbers.items():
+            names, units = heads[column]
+            spot = (at, column)
             own = page.shown(spot).text
+            if unit or own:
+                units = tuple(u for u in (unit, *units, own) if u)
+            written, in_text = str(page.values[row, column]), isinstance(page.values[spot], str)
             found.append(
-                Found(
-                    spot,
-                    number,
-                    (*label.names, *symbols),
-                    tuple(u for u in (unit, *units, own) if u),
-                    str(page.values[row, column]),
-                    block=-row,
-                    lane=below,
-                    section=section,
-                    section_row=row,
-                    head=name,
-                    in_text=isinstance(value, str),
-                )
+                Found(spot, number, names, units, written, -row, at if lane else None, section, row, name, in_text)
             )
-        rows_read += 1
-        below += 1
-    lanes = {f.lane for f in found}
-    if len(lanes) == 1:
-        for entry in found:
-            entry.lane = None
-    return found
+    return found, len(rows) - len(kept)
+
+
+_Row = tuple[int, dict[int, tuple[float, str]]]  # its number, and column -> number and unit
+
+
+def _rows_of(page: Page, columns: list[int], start: int) -> list[_Row]:
+    """The rows of a table that hold numbers, to the first that is all blank or holds only texts."""
+    rows: list[_Row] = []
+    at, gap = start, 0
+    while gap <= 1:
+        numbers: dict[int, tuple[float, str]] = {}
+        text = False
+        for column in columns:
+            value = page.values.get((at, column))
+            if value is not None:
+                number = _number(value)
+                if number is not None:
+                    numbers[column] = number
+                text |= number is None and isinstance(value, str)
+        if numbers:
+            rows.append((at, numbers))
+            gap = 0
+        elif text:
+            break
+        else:
+            gap += 1
+        at += 1
+    return rows
+
+
+def _chosen(page: Page, rows: list[_Row]) -> list[_Row]:
+    """All rows; of very many those that differ from the usual one, and a few of the usual."""
+    if len(rows) <= MANY_ROWS:
+        return rows
+    alike: dict[tuple, list[_Row]] = defaultdict(list)
+    for at, numbers in rows:
+        alike[tuple(_pattern(page, (at, column), at) for column in numbers)].append((at, numbers))
+    usual = max(alike.values(), key=len)
+    left = [*usual[: KEPT_ROWS - 1], usual[-1]]
+    for others in alike.values():
+        if others is not usual:
+            left += others[:MANY_ROWS]
+    keep = {at for at, _ in left[: 2 * MANY_ROWS]}
+    for at, numbers in rows:
+        if at not in keep:
+            page.copies.update((at, column) for column in numbers)
+    return [row for row in rows if row[0] in keep]
+
+
+def _pattern(page: Page, spot: Spot, row: int) -> str:
+    """What a copy of a formula further down has in common with it; a dash for a typed number."""
+    formula = page.formulas.get(spot)
+    return "-" if formula is None else formula.text.replace(str(row), "#")
 
 
 def _number(value: object) -> tuple[float, str] | None:
