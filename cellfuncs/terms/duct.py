@@ -16,6 +16,8 @@ from cellfuncs.terms.size import STEADY, Size, absent, num, percent
 
 _MEANS = (0.01, 0.03)  # wall conduction number: leave out below, keep above, for mean answers
 _LOCAL = (0.003, 0.009)  # ... for local answers (Maranzana et al. 2004)
+_ROUGHLY = 1.25  # kelvins of a share may be so much more
+_SOURCE_RISE = {"tube": 1.0 / 64.0, "plates": 3.0 / 560.0}  # of q‴D²/k, laminar, wall above bulk where insulated
 _LOCAL_ANSWERS = ("wall temperature", "local flux")
 
 
@@ -103,16 +105,42 @@ def _conduction_along(solution: Solution, a: DuctAnswers) -> Size:
     peclet = a.reynolds * p.prandtl
     grows_over = min(a.length, a.length / a.transfer_units)
     size = p.conductivity * solution.driving / grows_over**2
-    share = None
+    ratio = size / balance(solution, a)
+    share = min(ratio, 1.0)  # over the balance itself: what else is large does not lessen it
     says = f"temperature changes over {num(grows_over)} m; Pe {num(peclet)}"
-    if solution.case.answer == "duty" and a.flux is None:
+    if a.flux is not None:
+        # the bulk runs ahead by (k/ρcpU)·dTb/dx, 4Nu/Pe² of q/h, whatever the length
+        ahead = p.conductivity * abs(a.bulk_rise) / (a.capacity_flux * a.length)
+        share = max(share, ahead / _base(solution, a))
+    elif solution.case.answer in ("duty", "coefficient"):
         reach = a.shape.diameter / math.sqrt(8.0 * peclet)
         ends = 0.35 * reach / a.length
-        share = ends if ends > size / balance(solution, a) else None
-        says += f"; about {percent(ends)} of the duty by the step at the inlet"
-    ratio = size / balance(solution, a)
-    kelvins = _kelvins(solution, a, 3.0 * ratio)
+        if solution.case.answer == "coefficient":
+            ends = 0.35 * reach / grows_over  # the mean difference lives near the inlet
+        share = max(share, ends)
+        says += f"; about {percent(ends)} of the {solution.case.answer} by the step at the inlet"
+    steeper = _steeper(solution, a)
+    if steeper > 1.0:
+        share *= steeper
+    kelvins = _kelvins(solution, a, 3.0 * max(ratio, share))
     return Size("conduction along", 1.0 / peclet_length, size, says, asked=share, kelvins=kelvins)
+
+
+def _made(solution: Solution, a: DuctAnswers) -> float:
+    """What friction and a source make in the stream, as temperatures over the driving difference."""
+    p = a.properties
+    beta_t = p.expansion * a.property_temperature if a.property_temperature is not None else 0.0
+    friction = abs((1.0 - beta_t) * a.pressure_drop) / (p.density * p.specific_heat) + rise_or_bound(a)[0]
+    source = abs(solution.case.get("volumetric_source", 0.0)) * a.length / a.capacity_flux
+    return (friction + source) / solution.driving
+
+
+def _steeper(solution: Solution, a: DuctAnswers) -> float:
+    """By how much what is made in the stream makes larger temperature differences than the wall does, at least 1.
+
+    Terms that act on these differences grow with them, and must not be diluted by the heat that makes them.
+    """
+    return max(1.0, _made(solution, a))
 
 
 def _storage(solution: Solution, a: DuctAnswers) -> Size:
@@ -124,12 +152,20 @@ def _storage(solution: Solution, a: DuctAnswers) -> Size:
     wall, words = _wall_capacity(solution, a, time)
     size = p.density * p.specific_heat * moving / time * (1.0 + wall)
     passing = a.length / (a.velocity * time)
+    # over the balance itself: what else is large does not lessen a lag
+    lagging = share = _steeper(solution, a) * size / balance(solution, a)
+    n = a.transfer_units
+    if a.flux is not None and solution.case.answer == "wall temperature":
+        lagging = share * abs(a.bulk_rise) / solution.driving  # the wall rides on the bulk
+    elif a.flux is None and solution.case.answer == "local flux":
+        lagging = share * math.expm1(min(n, 300.0)) / max(n, 1.0)  # what the bulk misses, over what is left
     return Size(
         "storage",
         passing,
         size,
         f"the stream passes in {num(a.length / a.velocity)} s, the change takes {num(time)} s; {words}",
-        kelvins=_kelvins(solution, a, 3.0 * size / balance(solution, a)),
+        asked=lagging,
+        kelvins=_kelvins(solution, a, 3.0 * lagging),
     )
 
 
@@ -149,15 +185,17 @@ def _wall_conduction(solution: Solution, a: DuctAnswers) -> Size:
     m = walls.conduction_number(case, a)
     if m is None:
         return absent("wall conduction", "no wall is stated; add wall thickness and wall conductivity to judge it")
-    thresholds = _LOCAL if case.answer in _LOCAL_ANSWERS else _MEANS
+    says = f"M = {num(m)} (Maranzana et al. 2004)"
+    local = case.answer in _LOCAL_ANSWERS
+    if local and a.flux is not None:
+        # the end is felt over √(M/NTU) of the length, over which the wall gains that part of the stream's rise
+        n = a.transfer_units
+        end = min(math.sqrt(m / n), 0.5) * (n + _made(solution, a))
+        says += f"; its end is felt over √(M/NTU) of the length: {num(end)}"
+        return Size("wall conduction", m, m * balance(solution, a), says, asked=max(m, end))
     return Size(
-        "wall conduction",
-        m,
-        m * balance(solution, a),
-        f"M = {num(m)} (Maranzana et al. 2004: below {num(thresholds[0])} leave out)",
-        asked=m,
-        thresholds=thresholds,
-    )
+        "wall conduction", m, m * balance(solution, a), says, asked=m, thresholds=_LOCAL if local else _MEANS
+    )  # fmt: skip
 
 
 def _friction_pair(solution: Solution, a: DuctAnswers) -> tuple[Size, Size]:
@@ -177,7 +215,6 @@ def _friction_pair(solution: Solution, a: DuctAnswers) -> tuple[Size, Size]:
     share, exact = _friction_share(solution, a, net, rise)
     if remark:
         exact = False
-    kelvins = _kelvins(solution, a, share)
     ec_re = (
         p.viscosity * a.velocity / (p.density * p.specific_heat * solution.driving * a.length)
     )  # Ec/Re = μU/(ρcpΔT·L), both on the length along the stream
@@ -193,6 +230,7 @@ def _friction_pair(solution: Solution, a: DuctAnswers) -> tuple[Size, Size]:
     if sheared is not None:
         says += f"; {sheared.words()}"
     apart = _uncancelled(solution, a, net, rise)
+    kelvins = _kelvins(solution, a, max(_ROUGHLY * share, apart or 0.0))
     shared = {"asked": share, "exact": exact, "kelvins": kelvins, "pair": True, "uncancelled": apart}
     viscous = Size("viscous heating", ec_re, heating, says, nets_to=abs(net), **shared)
     if beta_t == 0:
@@ -221,16 +259,22 @@ def _compressible(solution: Solution, a: DuctAnswers) -> str:
 
 
 def _uncancelled(solution: Solution, a: DuctAnswers, net: float, rise: float) -> float | None:
-    """The larger of bulk warming and recovery over the base, where a laminar profile is still developing.
+    """The larger of what bulk warming and recovery do by themselves at a wall temperature.
 
-    The closed forms subtract a recovery that a developed profile has; on the way there the two do not cancel.
+    The closed forms subtract one from the other; a share that is small because they cancel is none to rest on: a
+    profile that still develops has less recovery, and of turbulent flow it is known to a tenth.
     """
-    peclet = a.reynolds * a.properties.prandtl
-    developing = a.reynolds <= LAMINAR_UP_TO and a.length / a.shape.diameter / peclet < 0.05
-    if not developing or a.flux is not None or solution.case.answer != "outlet temperature":
+    answer, n = solution.case.answer, a.transfer_units
+    if a.flux is not None:
         return None
-    bulk = abs(net) * a.length / a.capacity_flux
-    return max(bulk, rise * -math.expm1(-a.transfer_units)) / solution.driving
+    taken = -math.expm1(-n)
+    w = rise / solution.driving
+    r = abs(net) * a.length / a.capacity_flux / solution.driving / n
+    if answer == "outlet temperature":
+        return max(r, w) * taken
+    if answer == "duty":
+        return max(w, r * (n / taken - 1.0))
+    return max(w, r * math.expm1(min(n, 300.0))) if answer == "local flux" else None
 
 
 def _friction_share(solution: Solution, a: DuctAnswers, net: float, rise: float) -> tuple[float, bool]:
@@ -253,7 +297,7 @@ def _friction_share(solution: Solution, a: DuctAnswers, net: float, rise: float)
     if answer == "local flux":
         return abs(w + r * math.expm1(min(n, 300.0))), True
     if answer == "coefficient":
-        return max(abs(net) / balance(solution, a), w), False
+        return max(abs(net) / balance(solution, a), w * n / taken), False  # over the mean difference
     return abs(net) / balance(solution, a), False
 
 
@@ -266,7 +310,12 @@ def _source(solution: Solution, a: DuctAnswers) -> Size:
     if q is None:
         return absent("volumetric source", "no source is stated; add one for electric, absorbed or reaction heat")
     one_scale = abs(q) * a.length / (a.capacity_flux * solution.driving)
-    share, exact = _friction_share(solution, a, q, 0.0)
+    p = a.properties
+    # the wall's layer is slow and takes up more: an insulated wall stands above the bulk, when the layer has developed
+    part = _SOURCE_RISE["plates" if a.shape.section == "plates" else "tube"] * a.shape.diameter**2 / p.conductivity
+    rise = q * (part if a.reynolds <= LAMINAR_UP_TO else min(part, p.conductivity / a.coefficient**2))
+    share, exact = max(_friction_share(solution, a, q, r) for r in (0.0, rise))
+    share *= 1.0 + p.conductivity / (a.capacity_flux * a.length)  # conduction along brings back what is made farther on
     shift = abs(q) * a.length / a.capacity_flux
     return Size(
         "volumetric source",

@@ -56,6 +56,8 @@ def _viscous(solution: Solution, a: GapAnswers) -> Size:
     size = p.viscosity * a.velocity**2 / a.gap**2
     one_scale = a.velocity**2 / (p.specific_heat * a.difference) / (p.density * a.velocity * a.length / p.viscosity)
     kelvins = a.peak_rise if solution.case.answer == "peak temperature" else None
+    if kelvins is not None and solution.case.has("volumetric_source"):
+        kelvins = max(kelvins, a.full_rise / 8.0)  # a source has made a peak already
     sheared = solution.case.sheared(a.property_temperature)
     melt = f"; {sheared.words()}" if sheared is not None else ""
     if not a.walls_apart:
@@ -66,7 +68,14 @@ def _viscous(solution: Solution, a: GapAnswers) -> Size:
         says = f"Br {num(a.brinkman)}: a peak {num(a.peak_rise)} K above the hotter wall{_feedback(solution)}{melt}"
     else:
         says = f"Br {num(a.brinkman)}: no peak inside below Br 2, the flux at a wall changes by Br/2{melt}"
-    return Size("viscous heating", one_scale, size, says, exact=True, kelvins=kelvins)
+    return Size("viscous heating", one_scale, size, says, exact=True, kelvins=kelvins, asked=_asked(solution, a, size))
+
+
+def _asked(solution: Solution, a: GapAnswers, size: float) -> float | None:
+    """Heat made in the film changes the flux through a wall by half of itself, whatever else is large."""
+    if solution.case.answer != "local flux" or not a.walls_apart:
+        return None
+    return 0.5 * abs(size) * a.gap**2 / (a.properties.conductivity * a.walls_apart)
 
 
 def _feedback(solution: Solution) -> str:
@@ -100,4 +109,5 @@ def _source(solution: Solution, a: GapAnswers) -> Size:
     one_scale = abs(q) * a.length / (p.density * p.specific_heat * a.velocity * a.difference)
     peak = abs(q) * a.gap**2 / (8.0 * p.conductivity)
     kelvins = peak if solution.case.answer == "peak temperature" else None
-    return Size("volumetric source", one_scale, abs(q), f"{num(q)} W/m3 alone peaks at {num(peak)} K", kelvins=kelvins)
+    says = f"{num(q)} W/m3 alone peaks at {num(peak)} K"
+    return Size("volumetric source", one_scale, abs(q), says, kelvins=kelvins, asked=_asked(solution, a, q))

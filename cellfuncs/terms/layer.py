@@ -13,6 +13,7 @@ from cellfuncs.terms.recovery import rise_or_bound
 from cellfuncs.terms.size import STEADY, Size, absent, num, percent
 from cellfuncs.terms.thresholds import FAILS, HOLDS, STRAINED, threshold
 
+_ROUGHLY = 1.1  # the formulas of recovery are good to 6 or 8 %
 _VERDICTS = {HOLDS: "leave out", STRAINED: "borderline", FAILS: "keep"}  # of conduction along, by the thin layer
 
 
@@ -88,7 +89,8 @@ def _viscous(solution: Solution, a: LayerAnswers, balance: float) -> Size:
         says += f"; {remark}"
     elif not a.laminar and p.prandtl > 1.0:
         says += "; Pr^1/3 is meant for gases, rough here"
-    return Size("viscous heating", ec_re, share * balance, says, kelvins=_kelvins(solution, share))
+    kelvins = _kelvins(solution, _ROUGHLY * share)
+    return Size("viscous heating", ec_re, share * balance, says, asked=share, kelvins=kelvins)
 
 
 def _source(solution: Solution, a: LayerAnswers) -> Size:
@@ -112,6 +114,6 @@ def radiation(solution: Solution, a: Any, balance: float) -> Size:
     share = abs(flux) / (a.coefficient * solution.driving)
     says = f"the wall radiates {num(flux)} W/m2, {percent(share)} of what it gives to the stream"
     return Size(
-        "wall radiation", abs(flux) / a.capacity_flux / solution.driving, share * balance, says,
+        "wall radiation", abs(flux) / a.capacity_flux / solution.driving, share * balance, says, asked=share,
         kelvins=_kelvins(solution, 3.0 * share),
     )  # fmt: skip

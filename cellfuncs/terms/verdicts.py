@@ -109,7 +109,7 @@ def _one(s: Size, largest: float, tolerance: float, smallest: float) -> Judged:
         against = f"limits {num(low)} and {num(high)}"
     if share < low and s.uncancelled is not None and s.uncancelled > tolerance:
         why = (
-            f"share {percent(share)} rests on a cancellation that a developing profile does not have; "
+            f"share {percent(share)} rests on a cancellation that is not sure; "
             f"apart {percent(s.uncancelled)}"
         )
         return Judged(s, share, BORDERLINE, why)

@@ -24,6 +24,7 @@ from cellfuncs.answers.effects.model import (
     WALL_CONDUCTION,
     EffectModel,
     expansion_part,
+    plain_size,
     source_density,
     twice,
 )
@@ -155,7 +156,7 @@ class BalancedDuct(EffectModel):
             if a.flux is not None:
                 return self.solution.driving
             return abs(self.unit) * math.exp(-min(a.transfer_units, 600.0))
-        return abs(without)
+        return max(abs(without), plain_size(a, answer))
 
     def effect(self, answer, left):
         found = super().effect(answer, left)
@@ -224,7 +225,7 @@ class RampedDuct(EffectModel):
     def base(self, answer: str, without: float) -> float | None:
         if answer == OUTLET:
             return abs(self.a.bulk_rise) if self.a.flux is not None else abs(self.unit)
-        return self.solution.driving if answer == WALL else abs(without)
+        return self.solution.driving if answer == WALL else max(abs(without), plain_size(self.a, answer))
 
 
 class ExpandingDuct(EffectModel):

@@ -21,6 +21,7 @@ from cellfuncs.answers.effects.model import (
     Effect,
     EffectModel,
     expansion_part,
+    plain_size,
     source_density,
 )
 from cellfuncs.answers.path import far_temperature
@@ -38,7 +39,8 @@ class SolvedDuct(EffectModel):
     """The spectral solution of the case's duct; upstream its wall is adiabatic.
 
     With conduction along at a wall temperature, outlet and duty are those of a heated length that ends (the stream
-    leaves with what it has been given in all); what is asked at the end itself is that of a wall that goes on.
+    leaves with what it has been given in all); what is asked at the end itself, and what friction and sources do, is
+    that of a wall that goes on.
     """
 
     terms = PAIR | {ALONG, SOURCE}
@@ -123,15 +125,19 @@ class SolvedDuct(EffectModel):
         if SOURCE not in left and self.source:
             acts["source"] = self.source * a.shape.diameter**2 / (a.properties.conductivity * self.unit)
         problem = self._problem("flux" if self.flux else "temperature", None if ALONG in left else self.peclet)
-        if self.ends and problem.peclet is not None and not self.flux and answer in (OUTLET, DUTY):
-            problem = replace(problem, heated_length=_short(self.place, self.digits))
-            solved = duct.solve(problem)
-            both = (solved, solved.coarse)
-            if answer == OUTLET:
-                return tuple(on.energy(problem.heated_length, **acts) * self.unit for on in both)
-            return tuple(self._answer(DUTY, on, acts, problem.heated_length) for on in both)
         solved = duct.solve(problem)
-        return tuple(self._answer(answer, on, acts, self.place) for on in (solved, solved.coarse))
+        both = (solved, solved.coarse)
+        if not (self.ends and problem.peclet is not None and not self.flux and answer in (OUTLET, DUTY)):
+            return tuple(self._answer(answer, on, acts, self.place) for on in both)
+        length = _short(self.place, self.digits)
+        ending = duct.solve(replace(problem, heated_length=length))
+        # what the wall gives ends with it; what is made in the stream does not, and must not be felt from behind
+        made = tuple(self._answer(answer, on, {**acts, "drive": 0.0}, length) if acts else 0.0 for on in both)
+        if answer == OUTLET:
+            given = tuple(on.energy(length) * self.unit for on in (ending, ending.coarse))
+        else:
+            given = tuple(self._answer(DUTY, on, {}, length) for on in (ending, ending.coarse))
+        return given[0] + made[0], given[1] + made[1]
 
     def _answer(self, answer: str, solved, acts: dict[str, float], x: float) -> float:
         a = self.a
@@ -166,7 +172,7 @@ class SolvedDuct(EffectModel):
             return abs(a.bulk_rise) if self.flux else abs(self.unit)
         if answer == WALL:
             return self.solution.driving
-        return abs(without)
+        return max(abs(without), plain_size(a, answer))
 
 
 @lru_cache(maxsize=256)

@@ -6,6 +6,7 @@ from cellfuncs.answers.gap import GapAnswers
 from cellfuncs.errors import CellfuncsError, NoModel
 
 _POINTS = 9  # viscosities over the film's temperatures
+_CARRIED = 5.0  # Uh²/(αL) up to which a film is warm over most of its length; the mean effect is a fifth of it
 _MARGIN = 1.0  # K above what a constant viscosity would give
 _WEAK = 1e-3  # relative change of the viscosity that is none
 
@@ -23,6 +24,12 @@ class HeatedFilm(EffectModel):
             raise NoModel("no sheared gap")
         self.solution, self.a = solution, a
         self.unit = a.difference  # K
+        carried = a.velocity * a.gap**2 / (a.properties.diffusivity * a.length)
+        if carried > _CARRIED:
+            raise NoModel(
+                f"a developed film is solved; this one is carried off before heat crosses it, Uh²/(αL) = {carried:.3g}"
+            )
+        self.spread = carried / _CARRIED
         self.thinning, self.reference = self._viscosities()
 
     def _viscosities(self):

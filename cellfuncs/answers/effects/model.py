@@ -110,3 +110,11 @@ def expansion_part(solution: Any) -> float:
     if a.property_temperature is None or solution.case.flow == "falling film":
         return 0.0
     return a.properties.expansion * a.property_temperature
+
+
+def plain_size(a: Any, answer: str) -> float:
+    """Duty or local flux of a duct as the case is solved without any of these terms: no remainder that a source leaves
+    is taken for the size of an answer."""
+    if answer == DUTY:
+        return a.capacity_flux * (a.shape.area or 1.0) * abs(a.bulk_rise)
+    return abs(a.local_flux) if answer == FLUX else 0.0
