@@ -98,12 +98,24 @@ def _parser() -> argparse.ArgumentParser:
         "check",
         help="check workbooks that somebody else wrote: units, properties, correlations, neglected effects",
         description="Reads BOOK (.xlsx, .xlsm) as it stands, follows the units through its formulas, recomputes what "
-        "it states from what else it states, and names the likely cause where they differ. BOOK is never changed.",
+        "it states from what else it states, and names the likely cause where they differ. BOOK is never changed. A "
+        "folder is searched for workbooks; interrupted, the same command goes on where it was, and only what has "
+        "changed is checked anew.",
     )
     check.add_argument("books", metavar="BOOK", nargs="+", help="a workbook, or a folder with workbooks")
     check.add_argument("--json", metavar="F", help="write the report as JSON (with several workbooks F is a folder)")
     check.add_argument("--html", metavar="F", help="write it as one page to read and print (likewise)")
     check.add_argument("--annotate", metavar="F", help="write a copy with notes on its cells (likewise)")
+    check.add_argument(
+        "--summary",
+        metavar="FOLDER",
+        help="write one summary of all workbooks into a folder, the worst first (HTML and CSV)",
+    )
+    check.add_argument(
+        "--scheduler",
+        metavar="ADDRESS",
+        help="check on the running Dask cluster of that scheduler (pip install cellfuncs[cluster])",
+    )
     check.set_defaults(run=_check)
 
     functions = commands.add_parser(
@@ -152,32 +164,9 @@ def _recalc(options: argparse.Namespace) -> int:
 
 
 def _check(options: argparse.Namespace) -> int:
-    from pathlib import Path
+    from cellfuncs.sheets.many import command
 
-    from cellfuncs.sheets.reporting import files, terminal
-
-    books = list(dict.fromkeys(files.workbooks(options.books)))
-    if not books:
-        return _refuse("there is no .xlsx or .xlsm workbook there")
-    names = files.names_of(books)
-    places = (Path(wanted) if wanted else None for wanted in (options.json, options.html, options.annotate))
-    outputs = files.Outputs(*places)
-    outputs.refuse_input(books)
-    show, code = _Progress(), FINE
-    for book in books:
-        show(f"checking {book}")
-        try:
-            report = files.check_file(book, outputs, names.get(book))
-        except CellfuncsError as error:
-            show.clear()
-            _refuse(f"{book}: {error}" if names else str(error))
-            code = code or UNUSABLE
-            continue
-        show.clear()
-        terminal.show([report], sys.stdout)
-        if report.has_errors:
-            code = FOUND
-    return code
+    return command.from_options(options)
 
 
 def _starter(options: argparse.Namespace) -> int:

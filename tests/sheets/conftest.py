@@ -29,6 +29,14 @@ def book_of(cells=None, *, sheets=None, names=(), formats=None, merges=()):
     return out.getvalue()
 
 
+@pytest.fixture(autouse=True)
+def own_state(tmp_path_factory, monkeypatch):
+    """What is kept of a run lies in a folder of the test, whatever the system."""
+    folder = tmp_path_factory.mktemp("state")
+    monkeypatch.setattr("platformdirs.user_state_path", lambda *_, **__: folder)
+    return folder
+
+
 @pytest.fixture
 def make_book():
     return book_of

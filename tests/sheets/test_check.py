@@ -210,7 +210,8 @@ def test_a_folder_with_a_broken_file(make_book, tmp_path, capsys):
     code = cli.main(["check", str(tmp_path / "in"), "--json", str(tmp_path / "out")])
     said = capsys.readouterr()
     assert code == 1 and "b.xlsx" in said.err and said.err.count("\n") == 1
-    assert sorted(path.name for path in (tmp_path / "out").iterdir()) == ["a 2.json", "a.json"]
+    written = sorted(path.relative_to(tmp_path / "out").as_posix() for path in (tmp_path / "out").rglob("*.json"))
+    assert written == ["a.xlsx.json", "deep/a.xlsx.json"]
     empty = tmp_path / "empty"
     empty.mkdir()
     assert cli.main(["check", str(empty)]) == 2

@@ -111,7 +111,7 @@ def _sent(client: Any, task: Task) -> Any:
     with warnings.catch_warnings():
         # a file of some MB goes with its task on purpose: the scheduler then has it when a worker is lost
         warnings.simplefilter("ignore", UserWarning)
-        return client.submit(check_there, task, key=f"cellfuncs-{id(client)}-{task.digest[:16]}-{task.place}", pure=False)
+        return client.submit(check_there, task, pure=False)
 
 
 def _next(done: queue.SimpleQueue) -> list[Any]:

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import argparse
 import os
 import shutil
 import sys
@@ -127,7 +128,7 @@ def _told(
         print(f"{before} of them were checked before and have not changed")
     if state.trouble:
         print(f"cellfuncs: {state.trouble}", file=sys.stderr)
-    else:
+    elif len(state):
         print(f"what is done is kept in {state.place}; delete it to check everything anew")
     code = FINE
     for outcome in outcomes:
@@ -231,7 +232,7 @@ def _worse(one: int, other: int) -> int:
     return FOUND if FOUND in (one, other) else max(one, other)
 
 
-def from_options(options) -> int:  # noqa: ANN001
+def from_options(options: argparse.Namespace) -> int:
     """Run what the command line asks for."""
     outputs = {kind: Path(wanted) for kind in KINDS if (wanted := getattr(options, kind))}
     run = Run(

@@ -11,6 +11,7 @@ from cellfuncs.sheets.many.found import Found
 from cellfuncs.sheets.many.one import Answer, Screen, Task, task_of
 from cellfuncs.sheets.many.worker import Worker
 
+_LEAST = 4  # files for which another process is worth its imports
 _TURN = 0.5  # s; a wait without an end cannot be interrupted on every system
 
 
@@ -25,7 +26,8 @@ def answers_here(
     files: Sequence[Found], wanted: tuple[str, ...] = (), screen: Screen | None = None, count: int | None = None
 ) -> Iterator[Answer]:
     """The answers as they come, from ``count`` processes; whoever stops listening ends the processes."""
-    workers = [Worker() for _ in range(max(1, min(count or processors(), len(files))))]
+    useful = -(-len(files) // _LEAST)
+    workers = [Worker(is_for_many=len(files) >= _LEAST) for _ in range(max(1, min(count or processors(), useful)))]
     waiting = iter(files)
     turn, done = threading.Lock(), queue.SimpleQueue()
 

@@ -24,7 +24,7 @@ WORST = 3  # findings of a file that a summary names
 
 @dataclass(frozen=True)
 class Screen:
-    """How a report is to be shown: characters in a line (None: as many as without a terminal), and whether bold shows."""
+    """How a report is to be shown: characters in a line (None: as without a terminal), and whether bold shows."""
 
     width: int | None
     terminal: bool

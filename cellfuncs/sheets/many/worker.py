@@ -20,6 +20,7 @@ from cellfuncs.books.child import GRACE, MEMORY, bound_memory, ended, own_memory
 from cellfuncs.sheets.many.one import Answer, Task, checked_one, failed
 
 SECONDS = 120.0  # for one file; the largest that are let in need a quarter of it
+START = 120.0  # s, for the imports on a machine that is busy
 _START = start_of("cellfuncs.sheets.many.worker")
 _GROWN = 4  # a process that has grown by this part of the memory is replaced
 TOO_LONG = "the check took longer than {:.3g} s and was stopped"
@@ -36,9 +37,13 @@ class Ended(Exception):
 
 
 class Worker:
-    """A worker of its own process. ``check`` is for one thread, ``stop`` for any."""
+    """A worker of its own process. ``check`` is for one thread, ``stop`` for any.
 
-    def __init__(self, seconds: float | None = None, memory: int | None = None) -> None:
+    One ``is_for_many`` imports beforehand what not every workbook needs.
+    """
+
+    def __init__(self, seconds: float | None = None, memory: int | None = None, is_for_many: bool = True) -> None:
+        self.is_for_many = is_for_many
         self.seconds = SECONDS if seconds is None else seconds
         self.memory = MEMORY if memory is None else memory
         self._process: subprocess.Popen | None = None
@@ -71,24 +76,7 @@ class Worker:
 
     def _asked(self, task: Task) -> Answer:
         process = self._running()
-        late = threading.Event()
-
-        def end() -> None:
-            late.set()
-            process.kill()
-
-        timer = threading.Timer(self.seconds, end)
-        timer.daemon = True
-        timer.start()
-        try:
-            with contextlib.suppress(BrokenPipeError):  # it died before: the reading says so
-                pickle.dump(task, process.stdin)
-                process.stdin.flush()
-            answer, replace = pickle.load(process.stdout)
-        except (EOFError, OSError, pickle.UnpicklingError) as error:
-            raise self._end_of(process, late.is_set()) from error
-        finally:
-            timer.cancel()
+        answer, replace = self._heard(process, self.seconds, task)
         if answer is None:
             self._replace()
             raise Ended(TOO_MUCH.format(self.memory / 1024**3), True)
@@ -101,18 +89,39 @@ class Worker:
         with self._lock:
             if self._stopped:
                 raise Ended("", False)
-            if self._process is None:
-                self._process = started(_START)
-                with contextlib.suppress(BrokenPipeError):
-                    pickle.dump((self.seconds, self.memory), self._process.stdin)
-            return self._process
+            if self._process is not None:
+                return self._process
+            process = self._process = started(_START)
+        self._heard(process, START, (self.seconds, self.memory, self.is_for_many))
+        return process
 
-    def _end_of(self, process: subprocess.Popen, late: bool) -> Ended:
+    def _heard(self, process: subprocess.Popen, seconds: float, said: Any) -> Any:
+        """What the process answers, within its time; raises Ended."""
+        late = threading.Event()
+
+        def end() -> None:
+            late.set()
+            process.kill()
+
+        timer = threading.Timer(seconds, end)
+        timer.daemon = True
+        timer.start()
+        try:
+            with contextlib.suppress(BrokenPipeError):  # it died before: the reading says so
+                pickle.dump(said, process.stdin)
+                process.stdin.flush()
+            return pickle.load(process.stdout)
+        except (EOFError, OSError, pickle.UnpicklingError) as error:
+            raise self._end_of(process, seconds if late.is_set() else None) from error
+        finally:
+            timer.cancel()
+
+    def _end_of(self, process: subprocess.Popen, late: float | None) -> Ended:
         with contextlib.suppress(subprocess.TimeoutExpired):
             process.wait(1.0)  # its output has ended: it ends itself, with a code that tells why
         code = self._replace()
-        if late:
-            return Ended(TOO_LONG.format(self.seconds), False)
+        if late is not None:
+            return Ended(TOO_LONG.format(late), False)
         # The engine aborts the process where it gets no memory.
         aborted = code == -signal.SIGABRT
         return Ended(TOO_MUCH.format(self.memory / 1024**3) if aborted else BROKEN.format(code), True)
@@ -134,10 +143,11 @@ def main() -> None:
         outgoing.flush()
 
     try:
-        seconds, memory = pickle.load(sys.stdin.buffer)
-        _imports()
+        seconds, memory, is_for_many = pickle.load(sys.stdin.buffer)
+        _imports(is_for_many)
         bound_memory(memory)
         own = own_memory()
+        tell(None, False)  # ready
         while True:
             task: Any = pickle.load(sys.stdin.buffer)
             _bound_time(seconds + GRACE)
@@ -161,10 +171,12 @@ def _bound_time(seconds: float) -> None:
         signal.setitimer(signal.ITIMER_REAL, seconds)
 
 
-def _imports() -> None:
-    """What most files need, so that its size and its time are not counted as a file's."""
+def _imports(is_for_many: bool) -> None:
+    """What is needed, so that its size and its time are not counted as a file's."""
     import formualizer  # noqa: F401
-    from CoolProp import CoolProp  # noqa: F401
-    from scipy import optimize  # noqa: F401
 
     from cellfuncs.sheets import check  # noqa: F401
+
+    if is_for_many:
+        from CoolProp import CoolProp  # noqa: F401
+        from scipy import optimize  # noqa: F401
