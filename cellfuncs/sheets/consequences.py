@@ -26,11 +26,6 @@ class Consequences:
     def __init__(self, reading: Reading, final: Sequence[str]) -> None:
         self.reading, self.final = reading, set(final)
         self.links: Links = reading.links
-        users: dict[str, list[str]] = {}
-        for cell, sources in reading.graph.items():
-            for source in sources:
-                users.setdefault(source, []).append(cell)
-        self.users = users
 
     def of(self, finding: Finding) -> Results:
         """The final results that change with a finding; nothing where they cannot be calculated."""
@@ -40,7 +35,7 @@ class Consequences:
         right = finding.recomputed * (stored / finding.stated)
         if not math.isfinite(right):
             return {}
-        formulas = self._between(finding.cell)
+        formulas = [c for c in self.links.resting_on([finding.cell], MOST_FORMULAS) if c != finding.cell]
         wanted = [cell for cell in formulas if cell in self.final]
         if not wanted or len(formulas) > MOST_FORMULAS:
             return {}
@@ -61,17 +56,6 @@ class Consequences:
     def _is_stored(self, cell: str, value: float) -> bool:
         stored = self._stored(cell)
         return stored is not None and math.isclose(stored, value, rel_tol=_SAME, abs_tol=1e-300)
-
-    def _between(self, cell: str) -> list[str]:
-        """All formulas that rest on a cell."""
-        seen: dict[str, None] = {}
-        waiting = list(self.users.get(cell, ()))
-        while waiting and len(seen) <= MOST_FORMULAS:
-            at = waiting.pop()
-            if at not in seen and at != cell:
-                seen[at] = None
-                waiting.extend(self.users.get(at, ()))
-        return list(seen)
 
     def _calculated(self, cell: str, number: float, formulas: Sequence[str], wanted: Sequence[str]) -> dict[str, float]:
         """The wanted results with a number in a cell."""

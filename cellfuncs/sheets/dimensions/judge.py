@@ -25,7 +25,10 @@ def findings(reading: Reading) -> Iterator[Finding]:
     """What is wrong with the units in the formulas of a workbook, in reading order."""
     cells = Cells(reading)
     seen: dict[tuple, Problem | None] = {}  # copies of a formula are compared once
+    known = reading.links.resting_on(reading.quantities)  # where no unit goes in, none comes out
     for cell in reading.links.shapes:
+        if cell not in known:
+            continue
         measure, problems = cells.derived(cell)
         quantity = reading.quantities.get(cell)
         stated = cells.stated(cell)

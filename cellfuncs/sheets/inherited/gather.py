@@ -106,8 +106,9 @@ def groups_of(quantities: Sequence[Quantity], graph: Mapping[str, tuple[str, ...
     found = []
     for top in dict.fromkeys(root(name) for name in order):
         group = Group(members[top])
-        inside = set(members[top])
-        group.quantities = [q for q in quantities if q.block in inside]
+        group.quantities = sorted(
+            (q for name in members[top] for q in blocks[name]), key=lambda q: (q.page, q.found.spot)
+        )
         found.append(group)
     return found
 

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import re
-from collections.abc import Iterator, Mapping, Sequence
+from collections.abc import Iterable, Iterator, Mapping, Sequence
 from functools import cached_property
 
 from cellfuncs.books.externals import absolute
@@ -66,6 +66,26 @@ class Links:
     def graph(self) -> Mapping[str, tuple[str, ...]]:
         """Every formula cell and the cells that its formula uses directly."""
         return {cell: tuple(self._used(sheet, shape)) for cell, (sheet, _, shape) in self.shapes.items()}
+
+    @cached_property
+    def users(self) -> Mapping[str, tuple[str, ...]]:
+        """Every cell that formulas use, and these formulas."""
+        found: dict[str, list[str]] = {}
+        for cell, sources in self.graph.items():
+            for source in sources:
+                found.setdefault(source, []).append(cell)
+        return {cell: tuple(users) for cell, users in found.items()}
+
+    def resting_on(self, cells: Iterable[str], most: int | None = None) -> dict[str, None]:
+        """All formulas that rest on some cells, up to ``most`` of them."""
+        found: dict[str, None] = {}
+        waiting = [user for cell in cells for user in self.users.get(cell, ())]
+        while waiting and (most is None or len(found) <= most):
+            at = waiting.pop()
+            if at not in found:
+                found[at] = None
+                waiting.extend(self.users.get(at, ()))
+        return found
 
     def _used(self, sheet: str, shape: Shape) -> list[str]:
         targets = list(shape.targets)

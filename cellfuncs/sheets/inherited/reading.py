@@ -20,6 +20,7 @@ from cellfuncs.sheets.inherited.links import Links
 from cellfuncs.sheets.inherited.page import Page, Spot, address, is_error, read_pages
 
 MOST_NOTES = 200
+MOST_JUDGED = 200  # cases of a workbook
 MOST_GROUPS = 40  # calculations whose texts are told apart
 
 
@@ -182,7 +183,10 @@ def _cases(known: list[Quantity], facts: Mapping[str, Facts], links: Links, note
     for sheet in dict.fromkeys(q.page for q in known):
         here = [q for q in known if q.page == sheet]
         found += gather.exchanger_of(here, facts[sheet], f"{sheet}, both streams", labels.dictionary())
-    return found
+    if len(found) > MOST_JUDGED:
+        first = next(iter(found[MOST_JUDGED].all())).cell
+        notes.notes.append((first, f"{len(found) - MOST_JUDGED} more calculations were not recomputed"))
+    return found[:MOST_JUDGED]
 
 
 def _belongs(own: list[Area], others: list[Area], spot: Spot) -> bool | None:
