@@ -255,12 +255,32 @@ def _check_sign(key: str, si: float) -> None:
         raise CaseRefused(f"is {'zero' if si == 0 else 'negative'}; it must be above zero")
 
 
+_INTERVAL = re.compile(r"…|\.\.\.?|\bto\b")
+
+
+def _of_interval(cell: str, unit: Any, kind: str, si: float) -> float:
+    """Standard uncertainty of a value that may lie anywhere in ``a … b``: half the width over √3 (JCGM 100, 4.3.7)."""
+    ends = []
+    for text in _INTERVAL.split(cell, maxsplit=1):
+        reading = quantities.read_number(text.strip())
+        if reading.unit_text:
+            ends.append(quantities.to_si(reading.value, reading.unit_text, kind))
+        else:
+            ends.append(reading.value * unit.factor + unit.offset if unit else reading.value)
+    low, high = ends
+    if not low <= si <= high or low == high:
+        raise CaseRefused("the value lies outside the interval of its ±, or the interval has no width")
+    return (high - low) / (2.0 * 3.0**0.5)
+
+
 def _plus_minus(cell: Any, own: float | None, unit: Any, kind: str, si: float) -> float | None:
-    """The standard uncertainty in SI: a number in the row's unit, or a text such as 5 % or 0.2 m/s."""
+    """The standard uncertainty in SI: a number in the row's unit, or a text such as 5 % or 0.2 m/s, or an interval."""
     if cell is None:
         return None if own is None else own * (unit.factor if unit else 1.0)
     if isinstance(cell, float):
         spread = cell
+    elif _INTERVAL.search(cell):
+        return _of_interval(cell, unit, kind, si)
     else:
         text = re.sub(r"^\s*(±|\+/-)\s*", "", cell)
         reading = quantities.read_number(text)

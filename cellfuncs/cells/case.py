@@ -8,6 +8,14 @@ from cellfuncs.cells.catalogue import Answer, cell_function
 from cellfuncs.errors import CaseRefused, CellfuncsError, UnknownName
 
 _SOURCE = "the labels of cellfuncs/data/labels.csv"
+_SPREAD = ("±", "+/-")
+_SPREAD_BY = "by ±"
+# an uncertainty is a difference, whatever the quantity counts from
+_DIFFERENCES = {
+    "temperature": "temperature_difference",
+    "pressure_absolute": "pressure_difference",
+    "pressure_gauge": "pressure_difference",
+}
 
 
 @cell_function(
@@ -122,18 +130,39 @@ def _flow(rows: list[list[Any]]) -> str | None:
 @cell_function(
     "CF_CASE",
     family="Cases",
-    summary="Any stated or derived quantity of a case: a row, a property, a characteristic number or an answer.",
+    summary="Any stated or derived quantity of a case: a row, a property, a characteristic number or an answer. With ± "
+    "before its name its standard uncertainty, with \"by ±\" the rows that make it.",
     returns="quantity",
     source=_SOURCE,
     example='=CF_CASE(coolant,"outlet temperature","degC")',
 )
 def case_value(block, what):
     solution = solved.solution(block)
+    asked = what.strip()
+    if asked.startswith(_SPREAD):
+        return _spread_of(solution, asked.lstrip("±+/- "))
+    if asked.startswith(_SPREAD_BY):
+        return _spread_of(solution, asked.removeprefix(_SPREAD_BY).strip(), in_words=True)
     key = quantity_key(solution, what)
     value = solution.value(key)
     if isinstance(value, str):
         return value
     return Answer(float(value), labels.dictionary()[key].kind)
+
+
+def _spread_of(solution: Any, what: str, in_words: bool = False) -> Any:
+    """The standard uncertainty of a quantity, or which rows make it."""
+    from cellfuncs.answers.uncertainty import uncertainty
+
+    key = quantity_key(solution, what)
+    entry = labels.dictionary()[key]
+    if entry.role not in ("stated", "derived") or isinstance(solution.value(key), str):
+        raise UnknownName(f'"{entry.label}" is no number; it has no ±', argument="what")
+    found = uncertainty(solution, key)
+    if in_words:
+        return found.words()
+    kind = _DIFFERENCES.get(entry.kind, entry.kind)
+    return Answer(found.standard, kind)
 
 
 def quantity_key(solution: Any, what: str) -> str:

@@ -14,6 +14,7 @@ from dataclasses import dataclass, fields
 from typing import Any
 
 from cellfuncs.answers import Solution, solve
+from cellfuncs.cases import labels
 from cellfuncs.cases.block import SIGNED
 from cellfuncs.cases.case import Case
 from cellfuncs.cases.vary import with_value
@@ -35,12 +36,22 @@ SizesOf = Callable[[Solution], Sequence[Size]]
 
 
 @dataclass(frozen=True)
+class Doubt:
+    """Relative standard uncertainty of an effect by the ± of a case, and the input that makes most of its variance."""
+
+    relative: float
+    label: str
+    part: float
+
+
+@dataclass(frozen=True)
 class Survival:
     """In how many of the samples that could be answered a term has the verdict of the table."""
 
     kept: int
     answered: int
     drawn: int
+    doubt: Doubt | None = None
 
     def words(self) -> str:
         if self.answered == 0:
@@ -48,6 +59,8 @@ class Survival:
         of = f"{self.answered:,} samples within ±"
         if self.answered < self.drawn:
             of += f" ({self.drawn - self.answered:,} are refused)"
+        if self.doubt is not None:
+            of += f", {100 * self.doubt.part:.0f} % by {self.doubt.label}"
         if self.kept == self.answered:
             return f"holds in all {of}"
         return f"holds in {1000 * self.kept // self.answered / 10:g} % of {of}"
@@ -77,7 +90,7 @@ def survival(
     judged: Sequence[Judged],
     sizes_of: SizesOf,
     effects: Effects | None = None,
-    uncertainty: Mapping[str, float] | None = None,
+    uncertainty: Mapping[str, Doubt] | None = None,
 ) -> dict[str, Survival]:
     """Term -> how its verdict survives the ± of the case; empty without ±, and without terms that could change.
 
@@ -102,19 +115,31 @@ def _shares(sizes: Sequence[Any]) -> list[float]:
     return [s.asked if s.asked is not None else s.size / largest if largest > 0 else 0.0 for s in sizes]
 
 
-def uncertainty_of(solution: Solution, sizes: Sequence[Size], sizes_of: SizesOf) -> dict[str, float]:
-    """Term -> relative standard uncertainty of its share and so its effect, by the ± of the case, to first order."""
+def uncertainty_of(solution: Solution, sizes: Sequence[Size], sizes_of: SizesOf) -> dict[str, Doubt]:
+    """Term -> uncertainty of its share and so its effect, by the ± of the case, to first order (one step each)."""
     rows = uncertain(solution.case)
     base = _shares(sizes) if rows else []
-    total = [0.0] * len(base)
+    parts: list[list[tuple[float, str]]] = [[] for _ in base]
     for key, value, spread in rows:
         try:
             moved = _shares(sizes_of(solve(with_value(solution.case, key, value + spread))))
         except (ArithmeticError, ValueError):
             continue
-        for t, (a, b) in enumerate(zip(base, moved, strict=True)):
-            total[t] += (b / a - 1.0) ** 2 if a else 0.0
-    return {s.term: math.sqrt(v) for s, v in zip(sizes, total, strict=False) if v > 0}
+        for found, a, b in zip(parts, base, moved, strict=True):
+            if a and b != a:
+                found.append(((b / a - 1.0) ** 2, labels.dictionary()[key].label))
+    doubts = {}
+    for s, found in zip(sizes, parts, strict=False):
+        variance = sum(v for v, _ in found)
+        if variance > 0:
+            most, label = max(found)
+            doubts[s.term] = Doubt(math.sqrt(variance), label, most / variance)
+    return doubts
+
+
+def relative(doubts: Mapping[str, Doubt]) -> dict[str, float]:
+    """Only how uncertain, as the verdicts want it."""
+    return {term: doubt.relative for term, doubt in doubts.items()}
 
 
 class _Sampling:
@@ -127,9 +152,10 @@ class _Sampling:
         judged: Sequence[Judged],
         sizes_of: SizesOf,
         effects: Effects | None = None,
-        uncertainty: Mapping[str, float] | None = None,
+        uncertainty: Mapping[str, Doubt] | None = None,
     ):
-        self.effects, self.uncertainty = effects or {}, uncertainty or {}
+        self.effects, self.doubts = effects or {}, uncertainty or {}
+        self.relative = relative(self.doubts)
         self.case = case
         self.rows = rows
         self.judged = judged
@@ -157,7 +183,7 @@ class _Sampling:
                 effect = self.effects.get(j.size.term)
                 if isinstance(effect, Priced):
                     effects[j.size.term] = effect.scaled(share / j.share) if j.share else effect
-        return [j.verdict for j in judge(sizes, self.case.tolerance, self.case.smallest, effects, self.uncertainty)]
+        return [j.verdict for j in judge(sizes, self.case.tolerance, self.case.smallest, effects, self.relative)]
 
     def by_solving(self, draws: Any) -> dict[str, Survival]:
         """Every sample solved."""
@@ -200,7 +226,9 @@ class _Sampling:
 
     def _counted(self, found: list[list[str]], drawn: int) -> dict[str, Survival]:
         return {
-            j.size.term: Survival(sum(verdicts[t] == j.verdict for verdicts in found), len(found), drawn)
+            j.size.term: Survival(
+                sum(verdicts[t] == j.verdict for verdicts in found), len(found), drawn, self.doubts.get(j.size.term)
+            )
             for t, j in enumerate(self.judged)
             if not j.size.leading and (j.share != 0 or j.size.settled)
         }

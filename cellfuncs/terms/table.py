@@ -6,7 +6,7 @@ from cellfuncs.answers import Solution
 from cellfuncs.errors import UnknownName
 from cellfuncs.terms import body, duct, free, gap, layer, momentum, priced
 from cellfuncs.terms.size import Size, num, percent
-from cellfuncs.terms.spread import Survival, survival, uncertainty_of
+from cellfuncs.terms.spread import Doubt, Survival, relative, survival, uncertainty_of
 from cellfuncs.terms.verdicts import KEEP, LEAVE_OUT, Judged, judge, left_out
 
 COLUMNS = ("term", "one-scale", "share", "effect", "verdict", "reason")
@@ -53,7 +53,7 @@ def judged(solution: Solution, equation: str = "energy", quickly_for: str = "") 
 
 def _judged(
     solution: Solution, equation: str, quickly_for: str = ""
-) -> tuple[list[Judged], priced.Effects, Mapping[str, float]]:
+) -> tuple[list[Judged], priced.Effects, Mapping[str, Doubt]]:
     if equation not in EQUATIONS:
         named = " or ".join(EQUATIONS)
         raise UnknownName(f'"{equation[:40]}" is not an equation that is judged; write {named}', argument="equation")
@@ -61,10 +61,10 @@ def _judged(
     sizes_of = _sizes_of(case.flow, equation)
     sizes = sizes_of(solution)
     if equation != "energy":
-        return judge(sizes, case.tolerance, case.smallest), {}, {}
+        return judge(sizes, case.tolerance, case.smallest), {}, uncertainty_of(solution, sizes, sizes_of)
     effects = priced.priced(solution, sizes, quickly_for)
     uncertain = {} if quickly_for else uncertainty_of(solution, sizes, sizes_of)
-    return judge(sizes, case.tolerance, case.smallest, effects, uncertain), effects, uncertain
+    return judge(sizes, case.tolerance, case.smallest, effects, relative(uncertain)), effects, uncertain
 
 
 def sizes(solution: Solution, equation: str = "energy") -> list[Size]:
