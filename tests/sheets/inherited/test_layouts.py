@@ -221,6 +221,20 @@ def test_units_settle_a_symbol_that_means_several_things(read):
     }  # fmt: skip
 
 
+@pytest.mark.parametrize(
+    ("label", "unit", "key"),
+    [
+        ("Viscosity", "cSt", "kinematic_viscosity"), ("Viscosity", "cP", "viscosity"),
+        ("Heat loss", "W/m", "heat_per_length"), ("Heat loss", "kW", "duty"), ("Heat loss", "W/m²", "heat_flux"), ("Pressure drop", "m", "head"),
+        ("Pressure drop", "Pa/m", "pressure_gradient"), ("Pressure drop", "psi", "pressure_drop"),
+        ("Thermal resistance", "m²K/W", "total_insulance"), ("Thermal resistance", "K/W", "total_resistance"),
+        ("Pressure", "barg", "pressure"), ("Flow rate", "gpm", "volume_flow"), ("Flow rate", "lb/h", "mass_flow"),
+    ],
+)  # fmt: skip
+def test_the_unit_tells_which_of_several_is_meant(read, label, unit, key):
+    assert read({"A1": label, "B1": 2.0, "C1": unit}).quantities["Sheet1!B1"].stated.key == key
+
+
 def test_neighbours_settle_what_the_unit_leaves_open(read):
     beside = {"A1": "NTU", "B1": 1.5, "C1": "-", "A2": "Minimum capacity rate", "B2": 4.0, "C2": "kW/K",
               "A3": "Largest possible duty", "B3": 200.0, "C3": "kW", "A4": "Duty", "B4": 140.0,
