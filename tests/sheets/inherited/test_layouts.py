@@ -225,7 +225,8 @@ def test_units_settle_a_symbol_that_means_several_things(read):
     ("label", "unit", "key"),
     [
         ("Viscosity", "cSt", "kinematic_viscosity"), ("Viscosity", "cP", "viscosity"),
-        ("Heat loss", "W/m", "heat_per_length"), ("Heat loss", "kW", "duty"), ("Heat loss", "W/m²", "heat_flux"), ("Pressure drop", "m", "head"),
+        ("Heat loss", "W/m", "heat_per_length"), ("Heat loss", "kW", "duty"),
+        ("Heat loss", "W/m²", "heat_flux"), ("Pressure drop", "m", "head"),
         ("Pressure drop", "Pa/m", "pressure_gradient"), ("Pressure drop", "psi", "pressure_drop"),
         ("Thermal resistance", "m²K/W", "total_insulance"), ("Thermal resistance", "K/W", "total_resistance"),
         ("Pressure", "barg", "pressure"), ("Flow rate", "gpm", "volume_flow"), ("Flow rate", "lb/h", "mass_flow"),
