@@ -9,6 +9,7 @@ import json
 import shutil
 import sys
 import tempfile
+from functools import partial
 from pathlib import Path
 
 from cellfuncs.hosts import embedded
@@ -20,10 +21,15 @@ from cellfuncs.sheets.reference_pages import write_pages
 from cellfuncs.sources import DATA
 
 sys.path.insert(0, str(Path(__file__).resolve().parent))
-from scenario import COOLANT, SAMPLES, TWENTY, TWENTY_FILE
+from pages.methods import write_methods
+from scenario import COOLANT, METHODS, METHODS_FILE, SAMPLES, TWENTY, TWENTY_FILE
 
 HERE = Path(__file__).resolve().parent
 PUBLISHED = HERE.parent / "tests" / "published"
+WRITERS = {name: partial(write_book, sheet) for name, sheet in SAMPLES.items()} | {
+    METHODS_FILE: partial(write_methods, METHODS),
+    TWENTY_FILE: partial(write_many, TWENTY),
+}
 REFERENCE, SELF_TEST = "functions.xlsx", "self_test.xlsx"
 
 
@@ -31,10 +37,7 @@ def build(name: str, folder: Path) -> Path:
     """Write one sample with its stored values and return its path."""
     with tempfile.TemporaryDirectory() as temporary:
         raw = Path(temporary) / name
-        if name == TWENTY_FILE:
-            write_many(TWENTY, raw)
-        else:
-            write_book(SAMPLES[name], raw)
+        WRITERS[name](raw)
         embedded.recalc(raw, folder / name)
     return folder / name
 
@@ -75,7 +78,7 @@ def main(arguments: list[str]) -> int:
     if not arguments:
         (DATA / reference.EXAMPLES_FILE).write_text(answer_examples(), "utf-8", newline="\n")
         reference.stored.cache_clear()
-    for name in (*SAMPLES, TWENTY_FILE):
+    for name in WRITERS:
         print("built", build(name, folder))
     print("built", build_reference(folder))
     print("built", build_self_test(folder))

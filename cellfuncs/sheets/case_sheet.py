@@ -21,10 +21,10 @@ from cellfuncs.terms.table import ALL_LEFT_OUT
 class CaseSheet:
     """What stands in the sheet.
 
-    ``rows`` are label, value, unit, ±; ``results`` what, unit, number format; ``sweep`` the label that varies,
-    its unit, its values, and the term whose share (or ``sweep_measure``) is shown. ``pages`` write further sheets into the book, given the
-    block's workbook name (``{block}_values`` is the block without ±), and tell what stands there, where, and what
-    it says.
+    ``rows`` are label, value (or formula), unit, ±; ``results`` what, unit, number format; ``sweep`` the label that
+    varies, its unit, its values, and the term whose share (or ``sweep_measure``) is shown. ``pages`` write further
+    sheets into the book, given the block's workbook name (``{block}_values`` is the block without ±), and tell what
+    stands there, where, and what it says.
     """
 
     title: str
@@ -154,7 +154,11 @@ class _Writer:
             at = first + k
             sheet.write(at, 0, label, self.style(bottom=4, bottom_color=LINE))
             text = isinstance(value, str)
-            sheet.write(at, 1, value, self.entry(align="left" if text else "right", indent=1))
+            if text and value.startswith("="):
+                computed = self.style(align="right", indent=1, num_format="0.0##", bottom=4, bottom_color=LINE)
+                sheet.write_formula(at, 1, value, computed)
+            else:
+                sheet.write(at, 1, value, self.entry(align="left" if text else "right", indent=1))
             sheet.write(at, 2, unit, self.entry(ruled=False, align="left", indent=1))
             sheet.write(at, 3, spread, self.entry(ruled=False, align="right"))
             key = labels.find(label)

@@ -1,0 +1,1 @@
+"""Pages that some samples have beside their case: effects, maps, methods, the outside of a pipe."""
