@@ -355,6 +355,7 @@ ROWS = {
 def outside_rows() -> dict[str, Callable[[], Row]]:
     """Rows measured in files of their own; those about LibreOffice Calc where it is installed."""
     import duct_bench as duct
+    import method_bench as method
     import spread_bench as spread
     from calc import bench as calc
 
@@ -364,6 +365,7 @@ def outside_rows() -> dict[str, Callable[[], Row]]:
     found = {"l": row(spread.stated), "m": row(spread.with_properties)}
     found |= {"n": row(spread.flow_kinds), "o": row(spread.twenty_cases)}
     found |= {"p": row(duct.first_time), "q": row(duct.another), "r": row(duct.against_differences)}
+    found |= {"s": row(method.table), "t": row(method.colebrook), "u": row(method.columns)}
     if calc.available():
         found |= {"i": row(calc.cells), "j": row(calc.column), "k": row(calc.opening)}
     return dict(sorted(found.items()))
