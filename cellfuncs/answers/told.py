@@ -38,6 +38,8 @@ class Told:
         if self.substance is None:
             return self
         known = dict(self.known)
+        if (boiling := _saturation(self)) is not None:
+            known.setdefault("saturation_temperature", boiling)
         for name in (*method.inputs, *(parameter_of(r.variable) for r in method.ranges)):
             if name and name not in known:
                 value = _property(self, name, method.property_temperature)
@@ -169,7 +171,8 @@ def _property(told: Told, name: str, rule: str) -> float | None:
         for ending, phase in ((_LIQUID, "liquid"), (_VAPOUR, "vapour")):
             if name.endswith(ending) and name.removesuffix(ending) in _PROPERTIES:
                 key = name.removesuffix(ending)
-                if ts is not None and (rule == "saturation" or (name == "density_vapour" and rule != "vapour film")):
+                saturated = rule == "saturation" or (phase == "liquid") == (rule == "vapour film")
+                if saturated and ts is not None:  # of the phase that the film is not made of
                     return substance.saturation(key, phase, temperature=ts)
                 return substance.get(key, at, pressure, phase)
         if name in _PROPERTIES and at is not None:

@@ -139,7 +139,7 @@ def input_of(label: str) -> str | None:
     """The input that a label means: by its words, symbol or name, or by what a case calls it; None for none."""
     plain = _plain(label)
     for name, entry in all_inputs().items():
-        if plain in (_plain(entry.words), _plain(name)):
+        if plain in (_plain(entry.words), _plain(entry.words.split(":")[0]), _plain(name)):
             return name
     for name, entry in all_inputs().items():
         if label.strip().rstrip(":").strip() == entry.symbol:

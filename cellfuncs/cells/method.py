@@ -178,5 +178,6 @@ def describe(method: Any) -> str:
     span = ", ".join(r.words() for r in method.ranges) or "no limits"
     scatter = f"±{100 * method.scatter:g} %" if method.scatter else "exact"
     at = "" if method.property_temperature == "none" else f"; properties: {method.property_temperature}"
-    facts = f"{gives}; {span}; {scatter}{at}. "
+    warning = f"{method.warning}. " if method.warning else ""
+    facts = f"{gives}; {span}; {scatter}{at}. {warning}"
     return faults.clip(facts + sources.cite(method.source))

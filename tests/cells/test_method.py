@@ -153,16 +153,41 @@ def test_friction_has_no_jump_at_the_ends_of_the_transition(reynolds):
     assert below == pytest.approx(above, rel=1e-6)
 
 
+STEAM = [["substance", "water"], ["pressure", 1.01325, "bar"], ["acceleration of gravity", 9.81, "m/s2"]]
+
+
 def test_condensation_from_labelled_inputs_and_a_substance():
-    steam = [
-        ["substance", "water"],
-        ["pressure", 1.01325, "bar"],
-        ["wall temperature", 90.0, "degC"],
-        ["height of the wall", 0.3, "m"],
-        ["gravity", 9.81, "m/s2"],
-    ]
-    answer = call("NUSSELT_OF", steam, "Nusselt plate condensation") if "Nusselt plate condensation" in METHODS else 1.0
-    assert isinstance(answer, float) and math.isfinite(answer) and answer > 0, answer
+    """Nusselt 1916 on a wall: 0.943 (ρl(ρl − ρv) g hfg' k³/(μ H ΔT))^1/4, liquid at the film's temperature."""
+    wall, height = 363.15, 0.3
+    boiling = call("SATURATION", "water", "saturation temperature", "liquid", None, 101325.0)
+    film = 0.5 * (wall + boiling)
+    rho, mu, k, cp = (call("PROPERTY", "water", what, film, 101325.0)
+                      for what in ("density", "viscosity", "conductivity", "specific heat"))  # fmt: skip
+    vapour = call("SATURATION", "water", "density", "vapour", boiling)
+    latent = call("SATURATION", "water", "heat of vaporisation", "vapour", boiling) + 0.68 * cp * (boiling - wall)
+    falls = rho * (rho - vapour) * 9.81 * latent * k**3 / (mu * height * (boiling - wall))
+    block = [*STEAM, ["wall temperature", 90.0, "degC"], ["height of the wall", height, "m"], ["beyond range", "allow"]]
+    assert call("NUSSELT_OF", block, "Nusselt condensation, wall") == pytest.approx(0.943 * falls**0.25, rel=0.01)
+
+
+def test_boiling_and_its_crisis_from_labelled_inputs_and_a_substance():
+    """Zuber 1958: 0.131 hfg ρv^1/2 (σ g (ρl − ρv))^1/4, about 1.1 MW/m2 for water at one atmosphere."""
+    assert call("NUSSELT_OF", STEAM, "Zuber") == pytest.approx(1.1e6, rel=0.03)
+    surface = [["factor of liquid and surface", 0.013], ["exponent of Pr", 1.0]]
+    by_superheat = call("NUSSELT_OF", [*STEAM, *surface, ["wall superheat", 10.0, "K"]], "Rohsenow")
+    wall = call("SATURATION", "water", "saturation temperature", "liquid", None, 101325.0) + 10.0
+    assert call("NUSSELT_OF", [*STEAM, *surface, ["wall temperature", wall, "K"]], "Rohsenow") == pytest.approx(
+        by_superheat, rel=1e-9
+    )
+    hot = [*STEAM, ["wall temperature", 400.0, "degC"], ["diameter", 10.0, "mm"]]
+    assert 50 < call("NUSSELT_OF", hot, "Bromley") < 500
+
+
+def test_an_exchanger_from_labelled_inputs():
+    ratio = math.exp(-2 * (1 - 0.5))
+    expected = (1 - ratio) / (1 - 0.5 * ratio)  # Kays and London 1984, counter-flow
+    block = [["number of transfer units", 2.0], ["Cmin/Cmax", 0.5]]
+    assert call("NUSSELT_OF", block, "counter-flow") == pytest.approx(expected, rel=1e-12)
 
 
 def test_a_fin_from_labelled_inputs():
