@@ -12,6 +12,7 @@ from cellfuncs.cases import labels
 from cellfuncs.checks.finding import SEVERITIES, Finding
 from cellfuncs.checks.judge import judge
 from cellfuncs.checks.references import References
+from cellfuncs.sheets import own_formulas
 from cellfuncs.sheets.consequences import Consequences
 from cellfuncs.sheets.dimensions import judge as units
 from cellfuncs.sheets.inherited.page import Page, Spot
@@ -40,6 +41,7 @@ def checked(reading: Reading) -> Report:
     """The report on a workbook that was read."""
     found, agreed = judge(reading.cases, reading.graph)
     findings = _together(found, units.findings(reading), {cell for cell, _ in agreed})
+    findings += [f for f in own_formulas.findings(reading) if f.cell not in {other.cell for other in findings}]
     references = References(reading.cases, reading.graph)
     findings = [
         f if f.inherited else replace(f, inherited=tuple(c for c in references.below(f.cell) if c != f.cell))

@@ -10,6 +10,9 @@ rows.py        numbers beside labels: one value, or one column a case
 settle.py      which quantity of the dictionary a label with its unit stands for
 facts.py       what texts say: substances, arrangement, methods, regime, what is neglected
 gather.py      labelled quantities into cases
+regions.py     which texts belong to which calculation
+found.py       a number with what stands around it
+links.py       what depends on what
 reading.py     all of it together: ``read_book``
 =============  ============================================================================
 

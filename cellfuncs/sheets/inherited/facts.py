@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import re
-from collections.abc import Callable, Mapping
+from collections.abc import Mapping
 from dataclasses import dataclass, field
 from functools import lru_cache
 from typing import Any
@@ -99,16 +99,19 @@ def side_of(text: str) -> str:
     return "" if bool(hot) == bool(cold) else "hot" if hot else "cold"
 
 
-def facts_of(page: Page, own: Callable[[Spot], bool | None] = lambda spot: True) -> Facts:
-    """What the texts of a sheet say; the sheet's name counts as one.
+Written = list[tuple[Spot, str]]
 
-    ``own`` tells whether a text belongs to a calculation (True), to the whole sheet (False) or to another (None).
-    """
+
+def written_on(page: Page) -> Written:
+    """The texts of a sheet in reading order."""
+    return sorted((s, v) for s, v in page.values.items() if isinstance(v, str) and len(v) <= _LONGEST)
+
+
+def facts_of(page: Page, written: Written | None = None) -> Facts:
+    """What the texts of a sheet say, or some of them; the sheet's name counts as one."""
     facts = Facts()
-    places = {spot: own(spot) for spot, value in page.values.items() if isinstance(value, str)}
-    kept = [spot for spot, mine in places.items() if mine is not None and len(page.values[spot]) <= _LONGEST]
-    kept.sort(key=lambda spot: (not places[spot], spot))
-    written: list[tuple[Spot, str]] = [(spot, page.values[spot]) for spot in kept]
+    if written is None:
+        written = written_on(page)
     for spot, text in written:
         _rows_that_ask(page, spot, text, facts)
     for spot, text in ((1, 1), page.name), *written:

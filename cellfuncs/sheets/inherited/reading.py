@@ -5,10 +5,8 @@ from __future__ import annotations
 from collections import defaultdict
 from collections.abc import Mapping
 from dataclasses import dataclass, field
-from functools import partial
 
 from cellfuncs.books import Book
-from cellfuncs.books.grid import Area
 from cellfuncs.cases import labels
 from cellfuncs.checks.finding import Judgement
 from cellfuncs.checks.stated import SheetCase, Stated
@@ -17,11 +15,11 @@ from cellfuncs.sheets.inherited import gather, rows, settle, tables
 from cellfuncs.sheets.inherited.facts import Facts, facts_of
 from cellfuncs.sheets.inherited.gather import Quantity
 from cellfuncs.sheets.inherited.links import Links
-from cellfuncs.sheets.inherited.page import Page, Spot, address, is_error, read_pages
+from cellfuncs.sheets.inherited.page import Page, address, is_error, read_pages
+from cellfuncs.sheets.inherited.regions import Regions
 
 MOST_NOTES = 200
 MOST_JUDGED = 200  # cases of a workbook
-MOST_GROUPS = 40  # calculations whose texts are told apart
 
 
 @dataclass
@@ -165,15 +163,12 @@ def _state(quantity: Quantity, option: settle.Option, links: Links) -> None:
 def _cases(known: list[Quantity], facts: Mapping[str, Facts], links: Links, notes: Judgement) -> list[SheetCase]:
     found: list[SheetCase] = []
     groups = gather.groups_of(known, links.graph)
-    areas = [group.areas() for group in groups]
+    parted = {sheet: Regions(page, groups) for sheet, page in links.pages.items()} if len(groups) > 1 else {}
     for number, group in enumerate(groups):
         said = Facts()
         sheets = dict.fromkeys(q.page for q in group.quantities)
         for sheet in sheets:
-            others = [area for place, of in enumerate(areas) if place != number for area in of.get(sheet, ())]
-            here = facts[sheet]
-            if others and len(groups) <= MOST_GROUPS:
-                here = facts_of(links.pages[sheet], partial(_belongs, areas[number][sheet], others))
+            here = facts_of(links.pages[sheet], parted[sheet].of(number)) if parted else facts[sheet]
             for key, value in here.said.items():
                 for one in value if isinstance(value, list) else [value]:
                     said.put(key, one, here.cells.get(f"{key} {one}", here.cells[key]))
@@ -187,14 +182,3 @@ def _cases(known: list[Quantity], facts: Mapping[str, Facts], links: Links, note
         first = next(iter(found[MOST_JUDGED].all())).cell
         notes.notes.append((first, f"{len(found) - MOST_JUDGED} more calculations were not recomputed"))
     return found[:MOST_JUDGED]
-
-
-def _belongs(own: list[Area], others: list[Area], spot: Spot) -> bool | None:
-    """Whether a text stands among the numbers of a calculation (True), of another (None), or of none (False)."""
-    if any(_inside(spot, area) for area in own):
-        return True
-    return None if any(_inside(spot, area) for area in others) else False
-
-
-def _inside(spot: Spot, area: Area) -> bool:
-    return area[0] <= spot[0] <= area[2] and area[1] <= spot[1] <= area[3]

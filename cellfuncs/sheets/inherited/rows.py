@@ -175,6 +175,7 @@ def _sections(page: Page, found: list[Found], taken: set[Spot]) -> None:
         headings[column].append((row, value.strip()))
     for column in headings:
         headings[column].sort()
+    starts = {block: _starts(page, block) for block in {entry.block for entry in found}}
     for entry in found:
         best = (0, "")
         for column in (entry.block - 1, entry.block):
@@ -182,7 +183,16 @@ def _sections(page: Page, found: list[Found], taken: set[Spot]) -> None:
             place = bisect_left(above, (entry.spot[0], ""))
             if place and above[place - 1] > best:
                 best = above[place - 1]
-        entry.section_row, entry.section = best[0], best[1][:80]
+        entry.section_row, entry.section = max(best[0], starts[entry.block][entry.spot[0]]), best[1][:80]
+
+
+def _starts(page: Page, block: int) -> dict[int, int]:
+    """For each row the first row of its stretch without a blank row, seen from a column of labels."""
+    filled = sorted({row for row, column in page.values if block <= column <= block + _WIDEST_GAP})
+    found: dict[int, int] = {}
+    for row in filled:
+        found[row] = found.get(row - 1, row)
+    return found
 
 
 def _lanes(page: Page, found: list[Found]) -> list[Found]:

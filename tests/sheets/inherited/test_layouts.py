@@ -179,6 +179,27 @@ def test_facts_belong_to_their_calculation(read):
     assert [(case.name, case.facts["substance"]) for case in cases] == [("Line 1", "Water"), ("Line 2", "Air")]
 
 
+def test_calculations_below_one_another_without_headings(read):
+    cells = {}
+    for number in range(3):
+        top = 1 + 5 * number
+        for row, (label, value, unit) in enumerate(
+            (("Fluid", ("water", "air", "glycerol")[number], None), ("Velocity", 1.0 + number, "m/s"),
+             ("Diameter", 20.0, "mm"), ("Density", 998.0, "kg/m³"))
+        ):  # fmt: skip
+            cells |= {f"A{top + row}": label, f"B{top + row}": value} | ({f"C{top + row}": unit} if unit else {})
+    cases = read(cells).cases
+    assert [case.stated["velocity"][0].si for case in cases] == [1.0, 2.0, 3.0]
+    assert [case.facts["substance"] for case in cases] == ["water", "air", "glycerol"]
+
+
+def test_blank_rows_within_one_calculation(read):
+    cells = {"A1": "Velocity", "B1": 2.0, "C1": "m/s", "A4": "Diameter", "B4": 20.0, "C4": "mm", "A9": "Density",
+             "B9": 998.0, "C9": "kg/m³"}  # fmt: skip
+    (case,) = read(cells).cases
+    assert set(case.stated) == {"velocity", "diameter", "density"}
+
+
 def test_defined_names_are_labels_and_are_followed(read):
     cells = {"A1": (2.0), "B1": "m/s", "A2": 0.025, "B2": "m", "A3": 1e-6, "B3": "m²/s",
              "A4": ("=w_mean*d_i/nu", 50000.0)}  # fmt: skip
