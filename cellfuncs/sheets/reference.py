@@ -28,7 +28,6 @@ FAMILY_WORDS = {
     "Terms": "Which terms of the equations matter for a case, and why.",
     "Methods": "Coefficients, friction and pressure drop from published correlations.",
     "Checks": "Whether a number agrees with what it rests on, and what was probably done where it does not.",
-    "Checks": "Whether stated values agree with what follows from the others.",
 }
 _FORM_WORDS = {
     "text": "text",

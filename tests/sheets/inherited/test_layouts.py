@@ -184,13 +184,13 @@ def test_calculations_below_one_another_without_headings(read):
     for number in range(3):
         top = 1 + 5 * number
         for row, (label, value, unit) in enumerate(
-            (("Fluid", ("water", "air", "glycerol")[number], None), ("Velocity", 1.0 + number, "m/s"),
+            (("Fluid", ("water", "air", "nitrogen")[number], None), ("Velocity", 1.0 + number, "m/s"),
              ("Diameter", 20.0, "mm"), ("Density", 998.0, "kg/m³"))
         ):  # fmt: skip
             cells |= {f"A{top + row}": label, f"B{top + row}": value} | ({f"C{top + row}": unit} if unit else {})
     cases = read(cells).cases
     assert [case.stated["velocity"][0].si for case in cases] == [1.0, 2.0, 3.0]
-    assert [case.facts["substance"] for case in cases] == ["water", "air", "glycerol"]
+    assert [case.facts["substance"] for case in cases] == ["water", "air", "nitrogen"]
 
 
 def test_blank_rows_within_one_calculation(read):
