@@ -9,6 +9,8 @@ from pathlib import Path
 from environment import ROOT, Trouble, clean_variables, environment_folder, prepare
 
 SAMPLE = ROOT / "workbooks" / "coolant_channel.xlsx"
+INHERITED = ROOT / "workbooks" / "inherited" / "cooling_water_line.xlsx"
+FOUND = 1  # the exit code of a check that found an error
 
 
 def setup(words: list[str]) -> int:
@@ -21,7 +23,7 @@ def setup(words: list[str]) -> int:
 
 
 def demo(words: list[str]) -> int:
-    """Recalculate a sample workbook and print its term table."""
+    """Recalculate a sample workbook and print its term table; then check a sheet that somebody else wrote."""
     if len(words) > 1:
         raise Trouble("demo takes at most one argument, the folder to write the recalculated workbook to")
     folder = Path(words[0]).absolute() if words else Path(tempfile.gettempdir()) / "cellfuncs-demo"
@@ -30,7 +32,16 @@ def demo(words: list[str]) -> int:
         folder.mkdir(parents=True, exist_ok=True)
     except OSError as error:
         raise Trouble(f"cannot make {folder} ({error.strerror}); name another folder: demo FOLDER") from error
-    return _run([python, "-m", "cellfuncs", "recalc", SAMPLE, "-o", folder / SAMPLE.name])
+    code = _run([python, "-m", "cellfuncs", "recalc", SAMPLE, "-o", folder / SAMPLE.name])
+    if code:
+        return code
+    page = folder / f"{INHERITED.stem}.html"
+    print(f"\nAnd a sheet that somebody else wrote, checked: {INHERITED.name}", flush=True)
+    code = _run([python, "-m", "cellfuncs", "check", INHERITED, "--html", page])
+    if code not in (0, FOUND):
+        return code
+    print(f"wrote {page}")
+    return 0
 
 
 def test(words: list[str]) -> int:

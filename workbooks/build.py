@@ -1,4 +1,4 @@
-"""Builds the sample workbooks, the function reference and the self-test.
+"""Builds the sample workbooks, the inherited sheets with their reports, the function reference and the self-test.
 
 Run it with ``python workbooks/build.py [FOLDER]``. Without a folder the answers of the catalogue's examples, which
 ``cellfuncs functions NAME`` shows, are stored anew as well. The stored values come from the embedded host, so that a
@@ -15,12 +15,17 @@ from pathlib import Path
 from cellfuncs.hosts import embedded
 from cellfuncs.sheets import examples, reference, self_test
 from cellfuncs.sheets.case_sheet import write_book
+from cellfuncs.sheets.check import check_book
 from cellfuncs.sheets.many_cases import write_many
 from cellfuncs.sheets.reference_book import write_reference
 from cellfuncs.sheets.reference_pages import write_pages
+from cellfuncs.sheets.reporting.page import as_html
+from cellfuncs.sheets.reporting.written import as_json
 from cellfuncs.sources import DATA
 
 sys.path.insert(0, str(Path(__file__).resolve().parent))
+from inherited_book import write_inherited
+from inherited_scenario import INHERITED
 from pages.methods import write_methods
 from scenario import COOLANT, METHODS, METHODS_FILE, SAMPLES, TWENTY, TWENTY_FILE
 
@@ -40,6 +45,17 @@ def build(name: str, folder: Path) -> Path:
         WRITERS[name](raw)
         embedded.recalc(raw, folder / name)
     return folder / name
+
+
+def build_inherited(name: str, folder: Path) -> Path:
+    """Write one sheet of another hand, and its check report beside it as a page and as JSON."""
+    folder.mkdir(parents=True, exist_ok=True)
+    book = folder / name
+    write_inherited(INHERITED[name], book)
+    report = check_book(book)
+    for ending, text in ((".json", as_json(report)), (".html", as_html(report))):
+        book.with_suffix(ending).write_text(text, "utf-8", newline="\n")
+    return book
 
 
 def answer_examples() -> str:
@@ -80,6 +96,8 @@ def main(arguments: list[str]) -> int:
         reference.stored.cache_clear()
     for name in WRITERS:
         print("built", build(name, folder))
+    for name in INHERITED:
+        print("built", build_inherited(name, folder / "inherited"))
     print("built", build_reference(folder))
     print("built", build_self_test(folder))
     return 0

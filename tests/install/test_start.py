@@ -281,8 +281,19 @@ def test_demo_writes_outside_the_project(monkeypatch, tmp_path):
     assert commands.main(["demo"]) == 0
     assert commands.main(["demo", "out"]) == 0
     written = [Path(words[-1]) for words in ran]
+    assert len(written) == 4
     assert all(ROOT not in path.parents for path in written)
-    assert written[1] == tmp_path / "out" / "coolant_channel.xlsx"
+    assert written[2] == tmp_path / "out" / "coolant_channel.xlsx"
+    assert written[3] == tmp_path / "out" / "cooling_water_line.html"
+
+
+def test_demo_is_fine_when_the_check_finds_what_it_should(monkeypatch, tmp_path):
+    monkeypatch.setattr(commands, "prepare", lambda: Path(sys.executable))
+    for codes, wanted in (((0, 1), 0), ((0, 0), 0), ((0, 2), 2), ((3,), 3)):
+        left = list(codes)
+        monkeypatch.setattr(commands, "_run", lambda words, folder=None, left=left: left.pop(0))
+        assert commands.main(["demo", str(tmp_path)]) == wanted
+        assert not left
 
 
 def test_pytest_gets_paths_as_they_are_meant_here(monkeypatch, tmp_path):
