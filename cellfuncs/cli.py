@@ -126,6 +126,21 @@ def _parser() -> argparse.ArgumentParser:
     functions.add_argument("name", metavar="NAME", nargs="?", help="a function, with or without CF_")
     functions.set_defaults(run=_functions)
 
+    regime = commands.add_parser(
+        "map",
+        help="draw where a term of a case may be left out, as a picture",
+        description="Draws the verdict on a term over two rows or groups of a case block of BOOK, with the case's own "
+        "place. The block is read as it is stored in the file; BOOK is never changed.",
+    )
+    regime.add_argument("book", metavar="BOOK", help="the workbook")
+    regime.add_argument("--block", metavar="NAME", help="the name of the case block (without it the only one)")
+    regime.add_argument("--term", metavar="T", default="viscous heating", help="the term (default: viscous heating)")
+    regime.add_argument("--x", metavar="A", help="the row or group of the horizontal axis (default: one that rules it)")
+    regime.add_argument("--y", metavar="B", help="that of the vertical axis")
+    regime.add_argument("--points", metavar="N", type=int, default=41, help="points on each axis (default: 41)")
+    regime.add_argument("--png", metavar="F", required=True, help="the picture to write")
+    regime.set_defaults(run=_map)
+
     starter = commands.add_parser(
         "starter",
         help="write a starter workbook for a flow kind",
@@ -167,6 +182,32 @@ def _check(options: argparse.Namespace) -> int:
     from cellfuncs.sheets.many import command
 
     return command.from_options(options)
+
+
+def _map(options: argparse.Namespace) -> int:
+    from pathlib import Path
+
+    from cellfuncs.books.package import write_whole
+    from cellfuncs.cases import read_case
+    from cellfuncs.cells.term import term_name
+    from cellfuncs.sheets import regime_book, regime_picture
+
+    target = Path(options.png)
+    if target.suffix.casefold() != ".png":
+        return _refuse(f"the picture is a .png; write for instance {target.stem or 'map'}.png")
+    name, rows = regime_book.block_of(options.book, options.block)
+    show = _Progress()
+    try:
+        drawn = regime_picture.draw(
+            read_case(rows), term_name(options.term), options.x, options.y, options.points, progress=show
+        )
+    finally:
+        show.clear()
+    write_whole(target, drawn.png)
+    counts = ", ".join(f"{verdict} {count}" for verdict, count in drawn.counts.items() if count)
+    print(f"{name}: {term_name(options.term)} over {drawn.x} and {drawn.y}: {counts}")
+    print(f"wrote {target}")
+    return FINE
 
 
 def _starter(options: argparse.Namespace) -> int:

@@ -71,6 +71,17 @@ class Axis:
 
 
 @dataclass(frozen=True)
+class Point:
+    """One place of a map; ``weight`` is the effect, or the share where no model gives one (None: kelvins decide)."""
+
+    x: float
+    y: float
+    verdict: str
+    share: float | None
+    weight: float | None
+
+
+@dataclass(frozen=True)
 class RegimeMap:
     """Two axes and the way from a place on them to a case."""
 
@@ -87,14 +98,40 @@ class RegimeMap:
 
     def at(self, x: float, y: float) -> tuple[float, float, str, float | str]:
         """x, y, verdict and share at a place; where the case has no answer there the verdict says so."""
+        p = self.point(x, y)
+        return p.x, p.y, p.verdict, NO_MODEL if p.share is None else p.share
+
+    def point(self, x: float, y: float) -> Point:
+        """The same with what decides the verdict: the effect, or the share where no model gives one."""
         try:
             solution = solve(self.case_at(x, y))
             terms = judged(solution, equation_of(self.term), quickly_for=self.term)
             j = next(j for j in terms if j.size.term == self.term)
             found = (_value(solution, self.x, x), _value(solution, self.y, y))
         except (CellfuncsError, ArithmeticError):
-            return x, y, NO_ANSWER, NO_MODEL
-        return *found, j.verdict, NO_MODEL if j.size.no_share else j.share
+            return Point(x, y, NO_ANSWER, None, None)
+        by_kelvins = j.size.settled is not None or (j.effect is not None and j.effect.ratio is None)
+        return Point(*found, j.verdict, None if j.size.no_share else j.share, None if by_kelvins else j.weight)
+
+    def spread(self) -> list[tuple[float, float]]:
+        """How one standard uncertainty of each row with a ± moves the case's own place, along both axes.
+
+        Differences of the logarithm on a logarithmic axis. Empty without ±.
+        """
+        moves = []
+        for name, entry in self.case.stated.items():
+            if not entry.plus_minus:
+                continue
+            try:
+                solution = solve(with_value(self.case, name, entry.value + entry.plus_minus))
+                ends = [_own(solution, axis.key) for axis in (self.x, self.y)]
+            except (CellfuncsError, ArithmeticError):
+                continue
+            moves.append(tuple(
+                math.log(end / axis.own) if axis.logarithmic else end - axis.own
+                for end, axis in zip(ends, (self.x, self.y), strict=True)
+            ))  # fmt: skip
+        return moves
 
     def case_at(self, x: float, y: float) -> Case:
         """The case at a place."""
@@ -157,7 +194,7 @@ def _completed(solution: Solution, term: str, given: list[str], given_y: bool) -
     for key in (*_RULING.get(term, ()), *_FALLBACK):
         if len(found) == 2:
             break
-        if key in found or not _serves(solution, key):
+        if key in found or not _serves(solution, key, found):
             continue
         found.append(key)
     if len(found) < 2:
@@ -165,9 +202,14 @@ def _completed(solution: Solution, term: str, given: list[str], given_y: bool) -
     return found[::-1] if given_y else found
 
 
-def _serves(solution: Solution, key: str) -> bool:
+def _serves(solution: Solution, key: str, others: Sequence[str]) -> bool:
+    """Whether the case has this row, or rows that vary this group."""
     try:
-        return _own(solution, key) is not None and (not _is_row(key) or solution.case.has(key))
+        if _is_row(key):
+            return solution.case.has(key) and _own(solution, key) is not None
+        _own(solution, key)
+        groups = [k for k in (*others, key) if not _is_row(k)]
+        return bool(_levers(solution.case, solution, groups, [k for k in others if _is_row(k)]))
     except CellfuncsError:
         return False
 

@@ -31,7 +31,9 @@ from cellfuncs.methods.duct import LAMINAR_UP_TO
 _TURBULENT_SPREAD = 0.1  # of an effect, by the eddy diffusivity; own judgement
 _FRICTION_SPREAD = 0.3  # ... by how far the friction of the case is from the solved one's, in its logarithm
 _FRICTION_OFF = {True: 2.5, False: 1.3}  # laminar: changing viscosity; turbulent: a rough wall has another layer
-_CLOSE = 0.4  # of the tolerance
+_END_FELT = 0.06  # of the tolerance, a conducted part of the driving difference
+_MUCH = 1e3  # Pe
+_FEW = 2  # digits of Re and Pr on a map of turbulent flow
 DIGITS = 10  # of Re, Pr and Pe: cases that differ by rounding are one duct
 
 
@@ -47,7 +49,7 @@ class SolvedDuct(EffectModel):
     answers = (OUTLET, WALL, COEFFICIENT, DUTY, FLUX)
 
     def __init__(self, solution: Solution, digits: int = DIGITS):
-        self.digits, self.ends = digits, True
+        self.digits, self.ignores_along = digits, False
         a, case = solution.answers, solution.case
         if not isinstance(a, DuctAnswers) or case.flow != "duct":
             raise NoModel(f"a {case.flow} is not solved across its section")
@@ -73,16 +75,18 @@ class SolvedDuct(EffectModel):
         self.expansion = expansion_part(solution)
         self.brinkman, self.spread = self._brinkman()
 
-    def _problem(self, wall: str, peclet: float | None):
+    def _problem(self, peclet: float | None):
         from cellfuncs.models.duct import DuctProblem
 
         shape = self.a.shape
+        wall = "flux" if self.flux else "temperature"
         heated = "one" if shape.heated == "one" else "both"
         if self.laminar:
             index = _short(self.index, self.digits)
             return DuctProblem(shape.section, heated, wall, index, peclet and _short(peclet, self.digits))
-        prandtl = _short(self.a.properties.prandtl, self.digits)
-        reynolds = _short(self.a.reynolds, self.digits)
+        digits = self.digits if self.digits >= DIGITS else _FEW  # the eddy diffusivity is not known any better
+        prandtl = _short(self.a.properties.prandtl, digits)
+        reynolds = _short(self.a.reynolds, digits)
         peclet = peclet and reynolds * prandtl
         return DuctProblem(shape.section, heated, wall, 1.0, peclet, reynolds=reynolds, prandtl=prandtl)
 
@@ -91,9 +95,11 @@ class SolvedDuct(EffectModel):
 
         The bulk of an insulated duct rises by f·Re/2·Br a unit of x*; the case has Δp·D²/(L·U)·U²/(kΔT).
         """
+        from cellfuncs.models.duct import solve
+
         a, p = self.a, self.a.properties
         heat = abs(a.pressure_drop) * a.velocity * a.shape.diameter**2 / (a.length * p.conductivity * self.unit)
-        brinkman = heat / _friction_heat(self._problem("flux", None))
+        brinkman = heat / solve(self._problem(None)).friction_heat
         # what the friction would be by the viscosity of the properties alone
         newtonian = p.viscosity * a.velocity**2 / (p.conductivity * self.unit)
         off = brinkman / newtonian if self.index == 1.0 else 1.0
@@ -104,16 +110,9 @@ class SolvedDuct(EffectModel):
         return brinkman, spread if self.laminar else max(spread, _TURBULENT_SPREAD)
 
     def effect(self, answer: str, left: frozenset[str]) -> Effect:
-        self.ends = self.digits >= DIGITS
-        found = super().effect(answer, left)
-        if (
-            not self.ends
-            and found.ratio is not None
-            and _CLOSE < found.ratio / self.solution.case.tolerance < 1.0 / _CLOSE
-        ):
-            self.ends = True  # where the verdict may turn, at the cost of a solution of its own
-            found = super().effect(answer, left)
-        return found
+        # on a map, what friction and sources do is not followed into a conduction along that is nothing
+        self.ignores_along = self.digits < DIGITS and ALONG not in left and self.peclet > _MUCH
+        return super().effect(answer, left)
 
     def value(self, answer: str, left: frozenset[str]) -> tuple[float, float]:
         from cellfuncs.models import duct
@@ -124,10 +123,10 @@ class SolvedDuct(EffectModel):
             acts = {"brinkman": self.brinkman, "expansion": self.expansion}
         if SOURCE not in left and self.source:
             acts["source"] = self.source * a.shape.diameter**2 / (a.properties.conductivity * self.unit)
-        problem = self._problem("flux" if self.flux else "temperature", None if ALONG in left else self.peclet)
+        problem = self._problem(None if ALONG in left or self.ignores_along else self.peclet)
         solved = duct.solve(problem)
         both = (solved, solved.coarse)
-        if not (self.ends and problem.peclet is not None and not self.flux and answer in (OUTLET, DUTY)):
+        if problem.peclet is None or self.flux or answer not in (OUTLET, DUTY) or not self._ends(solved):
             return tuple(self._answer(answer, on, acts, self.place) for on in both)
         length = _short(self.place, self.digits)
         ending = duct.solve(replace(problem, heated_length=length))
@@ -138,6 +137,12 @@ class SolvedDuct(EffectModel):
         else:
             given = tuple(self._answer(DUTY, on, {}, length) for on in (ending, ending.coarse))
         return given[0] + made[0], given[1] + made[1]
+
+    def _ends(self, solved) -> bool:
+        """Whether the end of the heated length matters; on a map only where conduction carries something there."""
+        if self.digits >= DIGITS:
+            return True
+        return abs(solved.bulk(self.place) - solved.energy(self.place)) > _END_FELT * self.solution.case.tolerance
 
     def _answer(self, answer: str, solved, acts: dict[str, float], x: float) -> float:
         a = self.a
@@ -173,14 +178,6 @@ class SolvedDuct(EffectModel):
         if answer == WALL:
             return self.solution.driving
         return max(abs(without), plain_size(a, answer))
-
-
-@lru_cache(maxsize=256)
-def _friction_heat(problem) -> float:
-    """f·Re/2 of the solved flow, from the rise of the bulk of an insulated duct."""
-    from cellfuncs.models.duct import solve
-
-    return solve(problem).bulk(1.0, drive=0.0, brinkman=1.0)
 
 
 @lru_cache(maxsize=256)
