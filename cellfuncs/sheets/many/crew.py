@@ -26,8 +26,9 @@ def answers_here(
     files: Sequence[Found], wanted: tuple[str, ...] = (), screen: Screen | None = None, count: int | None = None
 ) -> Iterator[Answer]:
     """The answers as they come, from ``count`` processes; whoever stops listening ends the processes."""
-    useful = -(-len(files) // _LEAST)
-    workers = [Worker(is_for_many=len(files) >= _LEAST) for _ in range(max(1, min(count or processors(), useful)))]
+    useful = min(processors(), -(-len(files) // _LEAST))
+    is_for_many = len(files) >= _LEAST
+    workers = [Worker(is_for_many=is_for_many) for _ in range(max(1, count or useful))]
     waiting = iter(files)
     turn, done = threading.Lock(), queue.SimpleQueue()
 

@@ -146,20 +146,21 @@ def checked_one(task: Task) -> Answer:
 def _checked(task: Task, start: float) -> Answer:
     from cellfuncs.books import inspect
     from cellfuncs.sheets.check import checked
+    from cellfuncs.sheets.inherited.page import printable
     from cellfuncs.sheets.inherited.reading import read_book
 
     book = inspect(task.data)
     report = checked(read_book(book))
-    report.workbook = Path(task.path).name
+    report.workbook = printable(Path(task.path).name)
     products: dict[str, bytes] = {}
     if "json" in task.wanted:
         from cellfuncs.sheets.reporting.written import as_json
 
-        products["json"] = as_json(report).encode()
+        products["json"] = as_json(report).encode("utf-8", "replace")
     if "html" in task.wanted:
         from cellfuncs.sheets.reporting.page import as_html
 
-        products["html"] = as_html(report).encode()
+        products["html"] = as_html(report).encode("utf-8", "replace")
     if "annotate" in task.wanted:
         from cellfuncs.sheets.reporting.annotated import annotated
 

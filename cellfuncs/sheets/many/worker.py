@@ -23,6 +23,8 @@ SECONDS = 120.0  # for one file; the largest that are let in need a quarter of i
 START = 120.0  # s, for the imports on a machine that is busy
 _START = start_of("cellfuncs.sheets.many.worker")
 _GROWN = 4  # a process that has grown by this part of the memory is replaced
+# what reading an answer raises that is cut off, or none
+_NO_ANSWER = (OSError, pickle.UnpicklingError, EOFError, AttributeError, ImportError, LookupError, ValueError)
 TOO_LONG = "the check took longer than {:.3g} s and was stopped"
 TOO_MUCH = "the check needs more than {:.3g} GB of memory and was stopped"
 BROKEN = "the check broke off (code {})"
@@ -111,7 +113,7 @@ class Worker:
                 pickle.dump(said, process.stdin)
                 process.stdin.flush()
             return pickle.load(process.stdout)
-        except (EOFError, OSError, pickle.UnpicklingError) as error:
+        except _NO_ANSWER as error:
             raise self._end_of(process, seconds if late.is_set() else None) from error
         finally:
             timer.cancel()
