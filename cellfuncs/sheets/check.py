@@ -42,6 +42,9 @@ def checked(reading: Reading) -> Report:
     found, agreed = judge(reading.cases, reading.graph)
     findings = _together(found, units.findings(reading), {cell for cell, _ in agreed})
     findings += [f for f in own_formulas.findings(reading) if f.cell not in {other.cell for other in findings}]
+    final = _final(reading)
+    consequences = Consequences(reading, final)
+    findings = _origins(findings, consequences)
     references = References(reading.cases, reading.graph)
     findings = [
         f if f.inherited else replace(f, inherited=tuple(c for c in references.below(f.cell) if c != f.cell))
@@ -54,8 +57,6 @@ def checked(reading: Reading) -> Report:
     notes = reading.notes.notes[:MOST_NOTES]
     if not reading.quantities:
         notes = [*notes, ("", "no quantity was recognised in this workbook")]
-    final = _final(reading)
-    consequences = Consequences(reading, final)
     changes = {f.cell: found for f in findings[:_MOST_FOLLOWED] if (found := consequences.of(f))}
     return Report(
         workbook="",
@@ -103,9 +104,22 @@ def _together(recomputed: Iterable[Finding], of_units: Iterable[Finding], agreed
 
 def _says_more(of_units: Finding, recomputed: Finding) -> bool:
     """Units that do not fit explain a number better than a factor that happens to give it."""
-    return (
-        of_units.code == "dimension-mismatch" and recomputed.code == "unit-factor" and recomputed.confidence < _SURE
-    )
+    return of_units.code == "dimension-mismatch" and recomputed.code == "unit-factor" and recomputed.confidence < _SURE
+
+
+def _origins(findings: list[Finding], consequences: Consequences) -> list[Finding]:
+    """Findings without those that come out right when another one is mended; they are listed under that one."""
+    if not 1 < len(findings) <= _MOST_FOLLOWED:
+        return findings
+    kept: list[Finding] = []
+    explained: set[str] = set()
+    for finding in findings:
+        mine = [other.cell for other in findings if consequences.explains(finding, other)]
+        explained.update(mine)
+        if mine and finding.inherited:
+            finding = replace(finding, inherited=tuple(dict.fromkeys((*finding.inherited, *mine))))
+        kept.append(finding)
+    return [finding for finding in kept if finding.cell not in explained]
 
 
 def _final(reading: Reading) -> tuple[str, ...]:

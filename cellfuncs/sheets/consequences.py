@@ -16,6 +16,7 @@ from cellfuncs.sheets.inherited.reading import Reading
 
 MOST_FORMULAS = 400  # between a wrong number and the results
 _SAME = 1e-6  # relative
+_COMES_OUT = 0.02  # relative, between a result calculated anew and what a relation gives
 
 Results = Mapping[str, tuple[float, float]]  # a cell, as stored and as it would be
 
@@ -29,17 +30,34 @@ class Consequences:
 
     def of(self, finding: Finding) -> Results:
         """The final results that change with a finding; nothing where they cannot be calculated."""
+        wanted = [cell for cell in self.links.resting_on([finding.cell], MOST_FORMULAS) if cell in self.final]
+        return self._changed(finding, [cell for cell in wanted if cell != finding.cell])
+
+    def explains(self, finding: Finding, other: Finding) -> bool:
+        """Whether ``other`` is wrong only because it rests on ``finding``: mend that, and it comes out right."""
+        right = self._right(other)
+        if right is None or finding.cell == other.cell:
+            return False
+        if other.cell not in self.links.resting_on([finding.cell], MOST_FORMULAS):
+            return False
+        changed = self._changed(finding, [other.cell]).get(other.cell)
+        return changed is not None and math.isclose(changed[1], right, rel_tol=_COMES_OUT)
+
+    def _right(self, finding: Finding) -> float | None:
+        """The number that comes out, as the cell would store it."""
         stored = self._stored(finding.cell)
-        if finding.recomputed is None or finding.stated is None or stored is None or not finding.stated:
-            return {}
+        if finding.recomputed is None or not finding.stated or stored is None:
+            return None
         right = finding.recomputed * (stored / finding.stated)
-        if not math.isfinite(right):
-            return {}
+        return right if math.isfinite(right) else None
+
+    def _changed(self, finding: Finding, wanted: Sequence[str]) -> Results:
+        """Some results as they are stored, and as they would be with the right number in a finding's cell."""
+        right = self._right(finding)
         formulas = [c for c in self.links.resting_on([finding.cell], MOST_FORMULAS) if c != finding.cell]
-        wanted = [cell for cell in formulas if cell in self.final]
-        if not wanted or len(formulas) > MOST_FORMULAS:
+        if right is None or not wanted or len(formulas) > MOST_FORMULAS:
             return {}
-        before = self._calculated(finding.cell, stored, formulas, wanted)
+        before = self._calculated(finding.cell, self._stored(finding.cell), formulas, wanted)
         after = self._calculated(finding.cell, right, formulas, wanted)
         return {
             cell: (before[cell], after[cell])

@@ -11,7 +11,7 @@ import pytest
 from cellfuncs import cli
 from cellfuncs.books import inspect
 from cellfuncs.checks.finding import CAUSES, SEVERITIES
-from cellfuncs.sheets.check import check_book
+from cellfuncs.sheets.check import check_book, checked
 from cellfuncs.sheets.reporting.annotated import annotated
 from cellfuncs.sheets.reporting.page import as_html
 from cellfuncs.sheets.reporting.written import as_dict, as_json
@@ -55,6 +55,24 @@ def test_results_are_told_as_they_would_be(make_book):
     (before, after) = report.changes["Sheet1!B5"]["Sheet1!B8"]
     assert after / before == pytest.approx(1000**0.25, rel=1e-3)
     assert "Pressure drop (Sheet1!B8)" in report.consequence(report.findings[0])
+
+
+def test_a_finding_that_another_explains_is_listed_under_it(read):
+    """Whatever relation contradicts a result: where it comes out right once the cell before it is mended, it inherits."""
+    from dataclasses import replace
+
+    from cellfuncs.sheets.check import _origins
+    from cellfuncs.sheets.consequences import Consequences
+
+    reading = read(WRONG)
+    (first,) = checked(reading).findings
+    stated = reading.quantities["Sheet1!B8"].stated.value
+    drop = replace(first, cell="Sheet1!B8", quantity="pressure drop", stated=stated, unit="kPa", inherited=())
+    consequences = Consequences(reading, ["Sheet1!B8"])
+    same = replace(drop, recomputed=stated * 1000**0.25)  # Blasius' f goes with Re^-1/4
+    own = replace(drop, recomputed=stated * 4.0)
+    assert [f.cell for f in _origins([first, same], consequences)] == ["Sheet1!B5"]
+    assert [f.cell for f in _origins([first, own], consequences)] == ["Sheet1!B5", "Sheet1!B8"]
 
 
 def test_nothing_is_told_of_results_that_the_engine_does_not_give(make_book):
