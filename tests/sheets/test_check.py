@@ -58,7 +58,7 @@ def test_results_are_told_as_they_would_be(make_book):
 
 
 def test_a_finding_that_another_explains_is_listed_under_it(read):
-    """Whatever relation contradicts a result: where it comes out right once the cell before it is mended, it inherits."""
+    """A result that comes out right once the cell before it is mended only inherits, whatever contradicts it."""
     from dataclasses import replace
 
     from cellfuncs.sheets.check import _origins
