@@ -129,7 +129,7 @@ def free_known(case: Case, surface: str, length: float) -> dict[str, Any]:
     """What methods of free convection may ask besides properties."""
     known: dict[str, Any] = {"surface": surface, "wall": case.wall}
     if surface == "inclined plate":
-        known["angle"] = math.degrees(case.need("inclination"))
+        known |= {"angle": math.degrees(case.need("inclination")), "facing": case.get("facing", "not stated")}
     elif surface == "vertical cylinder":
         known["length_over_diameter"] = length / case.need("diameter")
     elif surface == "channel":

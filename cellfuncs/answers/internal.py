@@ -44,6 +44,7 @@ class Internal(Passage):
             "heated": shape.heated,
             "ratio": shape.ratio,
             "shape": "straight",
+            "profile": case.get("inlet_profile", "developed"),
             "length_over_diameter": slender,
             "diameter_over_length": 0.0 if self.at_end else 1.0 / slender,
             "relative_roughness": case.get("roughness", 0.0) / shape.diameter,

@@ -197,3 +197,26 @@ def test_a_fin_from_labelled_inputs():
     corrected = 0.02 + 1e-3 / 2
     expected = math.tanh(m * corrected) / (m * corrected)
     assert call("NUSSELT_OF", fin, "straight fin") == pytest.approx(expected, rel=0.01)
+
+
+def test_a_uniform_inlet_profile_asks_for_other_methods():
+    oil = [
+        ["flow kind", "duct"], ["velocity", 0.5, "m/s"], ["diameter", 20.0, "mm"], ["length", 1.0, "m"],
+        ["density", 850.0, "kg/m3"], ["viscosity", 10.0, "mPa.s"], ["conductivity", 0.13, "W/mK"],
+        ["specific heat", 2000.0, "J/kgK"], ["temperature difference", 10.0, "K"],
+    ]  # fmt: skip
+    developed, uniform = table(oil), table([*oil, ["inlet profile", "uniform"]])
+    assert developed[0]["method"] == "Graetz series, mean"
+    assert {row["method"] for row in uniform} != {row["method"] for row in developed}
+    drops = [call("PRESSURE_DROP", block) for block in (oil, [*oil, ["inlet profile", "uniform"]])]
+    # Shah and London 1978: an entry costs at most 1.25 dynamic heads beyond developed friction
+    assert 0 < drops[1] - drops[0] <= 1.3 * 850 * 0.5**2 / 2
+
+
+def test_a_coil_and_a_ribbed_tube():
+    coil = [*WATER, ["coil diameter", 400.0, "mm"]]
+    assert "coil" in table(coil)[0]["method"]
+    assert call("COEFFICIENT", coil) > call("COEFFICIENT", WATER) * 0.9
+    ribs = [*WATER, ["rib pitch", 4.0, "mm"], ["roughness", 0.4, "mm"]]
+    assert table(ribs)[0]["method"] == "Webb ribs"
+    assert call("PRESSURE_DROP", ribs) > 2 * call("PRESSURE_DROP", WATER)
