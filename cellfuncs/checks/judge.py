@@ -9,10 +9,12 @@ from cellfuncs.checks.causes import causes_of
 from cellfuncs.checks.causes.guess import Ranked
 from cellfuncs.checks.finding import Finding
 from cellfuncs.checks.references import References
+from cellfuncs.checks.relations import of_substance
 from cellfuncs.checks.resolve import Resolver
-from cellfuncs.checks.shown import in_unit, number
+from cellfuncs.checks.shown import in_unit, with_unit
 from cellfuncs.checks.stated import Graph, SheetCase, Stated
 from cellfuncs.checks.trial import Trial, trials
+from cellfuncs.methods import METHODS
 from cellfuncs.sources import cite
 
 # a relation this loose cannot excuse a number that a tight one contradicts
@@ -180,8 +182,8 @@ def _finding(doubt: Doubt, references: References) -> Finding:
     quantity = labels.dictionary()[entry.key].label
     recomputed = in_unit(expected, entry)
     message = (
-        f"{entry.label}: {number(entry.value)} {entry.unit} is stated, {number(recomputed)} {entry.unit} comes out"
-        f" of {_inputs_in_words(trial)} ({trial.relation.name})".replace("  ", " ")
+        f"{entry.label}: {with_unit(entry.value, entry.unit)} is stated, {with_unit(recomputed, entry.unit)} comes out"
+        f" of {_inputs_in_words(trial)} ({trial.relation.name})"
     )
     return Finding(
         cell=entry.cell,
@@ -194,17 +196,25 @@ def _finding(doubt: Doubt, references: References) -> Finding:
         cause=words,
         confidence=round(confidence, 3),
         message=message,
-        source=_source(trial.relation.source),
+        source=_source(trial),
         inherited=references.below(entry.cell),
         case=trial.case.name,
         reasoning=_reasoning(doubt, expected),
     )
 
 
-def _source(key: str) -> str:
-    first = key.split(";")[0]
+def _source(trial: Trial) -> str:
+    """The citation of a relation: that of the method or of the substance where these gave the number."""
+    key = trial.relation.source
+    answer = trial.match if trial.match is not None and trial.match.code else trial.expected
+    if key == "methods" and answer is not None:
+        method = METHODS.get(answer.words) or METHODS.get(answer.words.partition(" holds for ")[0])
+        key = method.source if method else "published methods"
+    if key == "properties":
+        substance, what = of_substance.named(trial.case), of_substance.PROPERTIES.get(trial.entry.key)
+        key = substance.source(what) if substance and what else "properties of the substance"
     try:
-        return cite(first)
+        return "; ".join(cite(part) for part in key.split(";"))
     except ValueError:
         return key
 
@@ -234,17 +244,17 @@ def _inputs_in_words(trial: Trial) -> str:
     for resolved in trial.inputs.values():
         entry = resolved.entry
         if entry is not None:
-            shown.append(f"{entry.label} {number(entry.value)} {entry.unit}".strip())
+            shown.append(f"{entry.label} {with_unit(entry.value, entry.unit)}")
     return ", ".join(shown[:6]) if shown else "the substance"
 
 
 def _reasoning(doubt: Doubt, expected: float) -> tuple[str, ...]:
     trial, entry = doubt.trial, doubt.entry
-    lines = [f"{r.entry.label} = {number(r.entry.value)} {r.entry.unit} ({r.entry.cell})".replace("  ", " ")
-             for r in trial.inputs.values() if r.entry is not None]  # fmt: skip
+    used = [r.entry for r in trial.inputs.values() if r.entry is not None]
+    lines = [f"{e.label} = {with_unit(e.value, e.unit)} ({e.cell})" for e in used]
     answer = trial.expected
     if answer is not None:
-        lines.append(f"{answer.words}: {number(in_unit(expected, entry))} {entry.unit}".strip())
+        lines.append(f"{answer.words}: {with_unit(in_unit(expected, entry), entry.unit)}")
         allowed = trial.tolerance(answer) / abs(expected) if expected else 0.0
         lines.append(f"agreement within {allowed:.1%} was asked")
     if expected and entry.kind != "temperature":

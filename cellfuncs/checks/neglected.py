@@ -80,7 +80,7 @@ def findings(sheet: SheetCase) -> Iterator[Finding]:
     first = sheet.fact_cells.get("neglects", "")
     for term in terms:
         row = judged.get(term)
-        cell = sheet.fact_cells.get(f"neglects:{term}", first)
+        cell = sheet.fact_cells.get(f"neglects {term}", first)
         if row is None or row[4] != KEEP:
             continue
         share = f"{row[2]:.3g}" if isinstance(row[2], float) else str(row[2])
@@ -96,7 +96,7 @@ def findings(sheet: SheetCase) -> Iterator[Finding]:
             cause=f"{term} is neglected, but its share is {share}{effect}: {row[5]}",
             confidence=0.9,
             message=f"{term} is neglected; its verdict is {row[4]} (share {share}{effect})",
-            source="terms",
+            source="the terms of the case, scaled (CF_TERMS)",
             case=sheet.name,
             reasoning=(row[5],),
         )

@@ -40,6 +40,7 @@ class References:
             self.place[cell] = number
         self._above: dict[str, frozenset[str]] = {}
         self._direct: dict[str, tuple[Stated, ...]] = {}
+        self._below: dict[str, tuple[str, ...]] = {}
 
     def direct(self, cell: str) -> tuple[Stated, ...]:
         """The labelled cells that a formula uses, itself or through cells without a label, in their order."""
@@ -112,6 +113,14 @@ class References:
 
     def below(self, cell: str) -> tuple[str, ...]:
         """The labelled cells that depend on a cell, in reading order."""
+        known = self._below.get(cell)
+        if known is None:
+            known = self._below[cell] = self._found_below(cell)
+        return known
+
+    def _found_below(self, cell: str) -> tuple[str, ...]:
+        if cell not in self._users:
+            return ()
         seen: set[str] = set()
         waiting = list(self._users.get(cell, ()))
         while waiting and len(seen) < _DEEPEST:

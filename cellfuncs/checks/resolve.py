@@ -31,11 +31,20 @@ class Resolver:
     def __init__(self, case: SheetCase, references: References):
         self.case = case
         self.references = references
+        self._of: tuple[Stated | None, dict[tuple[str, ...], Stated | None], list[Stated]] = (None, {}, [])
 
     def pick(self, keys: tuple[str, ...], owner: Stated) -> Stated | None:
         """The stated number of one of ``keys`` that belongs to ``owner``: what its formula uses, then what is near."""
+        if self._of[0] is not owner:
+            self._of = (owner, {}, self._found_above(owner))
+        known = self._of[1]
+        if keys not in known:
+            known[keys] = self._picked(keys, owner)
+        return known[keys]
+
+    def _picked(self, keys: tuple[str, ...], owner: Stated) -> Stated | None:
         refs = self.references
-        for group in (refs.direct(owner.cell), self._above(owner)):
+        for group in (refs.direct(owner.cell), self._of[2]):
             for key in keys:
                 found = [entry for entry in group if entry.key == key and entry.cell != owner.cell]
                 if found:
@@ -46,15 +55,18 @@ class Resolver:
                 return found
         return None
 
-    def _above(self, owner: Stated) -> list[Stated]:
+    def _found_above(self, owner: Stated) -> list[Stated]:
         by_cell, place = self.references.by_cell, self.references.place
         cells = [cell for cell in self.references.above(owner.cell) if cell in by_cell]
         return [by_cell[cell] for cell in sorted(cells, key=place.__getitem__)]
 
     def _near(self, key: str, owner: Stated) -> Stated | None:
         """The nearest before the owner in reading order, else the first after it; never what rests on the owner."""
-        below = set(self.references.below(owner.cell))
-        entries = [e for e in self.case.stated.get(key, ()) if e.cell != owner.cell and e.cell not in below]
+        entries = self.case.stated.get(key)
+        if not entries:
+            return None
+        below = self.references.below(owner.cell)
+        entries = [e for e in entries if e.cell != owner.cell and e.cell not in below]
         if not entries:
             return None
         place = self.references.place

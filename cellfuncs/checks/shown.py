@@ -28,6 +28,11 @@ def from_unit(value: float, entry: Stated) -> float:
     return value * factor + offset
 
 
+def with_unit(value: float, unit: str) -> str:
+    """A number with its unit; a dash stands for none."""
+    return f"{number(value)} {unit.strip('-– ')}".strip()
+
+
 def number(value: float) -> str:
     """Four to six digits, as an engineer writes them."""
     if value == 0:

@@ -46,7 +46,7 @@ class SheetCase:
     shell and tube), ``method`` (the name of a method), ``regime`` (laminar, turbulent), ``heating`` (heating,
     cooling), ``neglects`` (a list of terms by their names in term tables), and choices of case blocks by their keys
     (``section``, ``surface``, ``heated_walls`` …). ``fact_cells`` says where a fact stands; of several neglected terms
-    each has its own, ``neglects:viscous heating``.
+    each has its own, ``neglects viscous heating``.
     """
 
     name: str

@@ -163,8 +163,8 @@ def _solved_for(entry: Stated, resolver: Resolver) -> list[Trial]:
     direct = resolver.references.direct(entry.cell)
     keys = {e.key for e in direct}
     found = []
-    for relation in RELATIONS:
-        if relation.gives not in keys or relation.takes_case or not relation.applies(resolver.case):
+    for relation in (r for key in keys for r in giving().get(key, ())):
+        if relation.takes_case or not relation.applies(resolver.case):
             continue
         for role in (*relation.needs, *relation.optional):
             if entry.key not in relation.keys_for(role, resolver.case):

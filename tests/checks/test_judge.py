@@ -147,7 +147,7 @@ def test_a_neglected_effect_that_counts_is_told_where_it_is_said():
         ("area", 0.02, "m2", ()),
     ]
     case, graph, _ = sheet(rows, flow="gap", facts={"neglects": ["viscous heating", "conduction along"]},
-                           fact_cells={"neglects:viscous heating": "Sheet1!A20"})  # fmt: skip
+                           fact_cells={"neglects viscous heating": "Sheet1!A20"})  # fmt: skip
     (finding,), _ = judge([case], graph)
     assert (finding.code, finding.cell, finding.quantity) == ("dropped-term", "Sheet1!A20", "viscous heating")
     case.facts["neglects"] = ["conduction along"]
