@@ -38,8 +38,11 @@ def test_body_by_volume_and_surface(cf):
 
 def test_body_terms(cf):
     assert cf("TERM", body(), "advection", "verdict") == "leave out"
-    slow = body(**{"time scale": (1e6, "s")})
+    slow = body(**{"time scale": (1e6, "s"), "answer": ("duty",)})
     assert cf("TERM", slow, "storage") == pytest.approx(7900 * 480 * 0.004 / 60 / 1e6)
+    # of the final temperature: what the start still does to it, exp(−t/τ)
+    tau = 7900 * 480 * 0.004 / 60
+    assert cf("TERM", body(), "storage") == pytest.approx(math.exp(-300.0 / tau), rel=1e-9)
     assert cf("TERM", slow, "storage", "verdict") == "leave out"
     assert "lags" in cf("TERM", body(coefficient=(2000.0, "W/m2K")), "conduction across", "reason")
 
