@@ -31,7 +31,8 @@ class Consequences:
     def of(self, finding: Finding) -> Results:
         """The final results that change with a finding; nothing where they cannot be calculated."""
         wanted = [cell for cell in self.links.resting_on([finding.cell], MOST_FORMULAS) if cell in self.final]
-        return self._changed(finding, [cell for cell in wanted if cell != finding.cell])
+        changed = self._changed(finding, [cell for cell in wanted if cell != finding.cell])
+        return {cell: pair for cell, pair in changed.items() if not math.isclose(*pair, rel_tol=_SAME)}
 
     def explains(self, finding: Finding, other: Finding) -> bool:
         """Whether ``other`` is wrong only because it rests on ``finding``: mend that, and it comes out right."""

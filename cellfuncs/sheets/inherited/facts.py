@@ -20,7 +20,11 @@ _NEGLECT = re.compile(
     r"\b(?:neglect\w*|ignor\w*|omit\w*|disregard\w*|not considered|left out|without|no allowance for|negligible|no)\b",
     re.IGNORECASE,
 )
-_NOT = re.compile(r"\bnot (?:neglect|ignor|omit|negligible)\w*|\bcannot be neglected", re.IGNORECASE)
+_NOT = re.compile(
+    r"\bnot (?:be )?(?:neglect|ignor|omit|negligible)\w*|\bcannot be neglected"
+    r"|^\s*(?:where|whether|when|which|if|how|why|is|are|can|may)\b|\?\s*$",
+    re.IGNORECASE,
+)
 _HOT = re.compile(r"\b(?:hot|warm|hotter)\b", re.IGNORECASE)
 _COLD = re.compile(r"\b(?:cold|cooler|colder)\b", re.IGNORECASE)
 # families whose names are also ordinary words in sheets do not count outside a row that asks for a substance
@@ -103,8 +107,17 @@ Written = list[tuple[Spot, str]]
 
 
 def written_on(page: Page) -> Written:
-    """The texts of a sheet in reading order."""
-    return sorted((s, v) for s, v in page.values.items() if isinstance(v, str) and len(v) <= _LONGEST)
+    """The texts of a sheet in reading order, without what our own functions say."""
+    return sorted(
+        (spot, value)
+        for spot, value in page.values.items()
+        if isinstance(value, str) and len(value) <= _LONGEST and not _is_ours(page, spot)
+    )
+
+
+def _is_ours(page: Page, spot: Spot) -> bool:
+    formula = page.formulas.get(spot)
+    return formula is not None and "CF_" in formula.text.upper()
 
 
 def facts_of(page: Page, written: Written | None = None) -> Facts:

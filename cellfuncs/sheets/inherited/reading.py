@@ -15,7 +15,7 @@ from cellfuncs.sheets.inherited import gather, rows, settle, tables
 from cellfuncs.sheets.inherited.facts import Facts, facts_of
 from cellfuncs.sheets.inherited.gather import Quantity
 from cellfuncs.sheets.inherited.links import Links
-from cellfuncs.sheets.inherited.page import Page, address, is_error, read_pages
+from cellfuncs.sheets.inherited.page import Page, Spot, address, is_error, read_pages
 from cellfuncs.sheets.inherited.regions import Regions
 
 MOST_NOTES = 200
@@ -88,9 +88,13 @@ def _use_name(page: Page, name: str, spot: tuple[int, int], entries: list[settle
 
 def _odd_cells(page: Page, notes: Judgement) -> None:
     """Tell errors that are stored, formulas without a value, and a sheet that was not read to its end."""
-    errors = [spot for spot, value in page.values.items() if is_error(value)]
-    for spot in sorted(errors)[:20]:
-        notes.notes.append((page.address(spot), f"shows the error {page.values[spot]}"))
+    errors: dict[str, list[Spot]] = defaultdict(list)
+    for spot, value in page.values.items():
+        if is_error(value):
+            errors[str(value)].append(spot)
+    for text, spots in errors.items():
+        more = f", and so do {len(spots) - 1} more cells of the sheet" if len(spots) > 1 else ""
+        notes.notes.append((page.address(min(spots)), f"shows the error {text}{more}"))
     empty = [spot for spot, formula in page.formulas.items() if formula.stored is None]
     if empty:
         first = page.address(min(empty))

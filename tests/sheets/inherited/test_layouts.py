@@ -285,6 +285,11 @@ def test_texts_count(read, text, fact, value):
     assert case.fact_cells.get(fact, "Sheet1!A1") == "Sheet1!A1"
 
 
-def test_not_neglected_is_not_neglected(read):
-    case = read({"A1": "Viscous heating cannot be neglected", "A2": "Velocity", "B2": 2.0, "C2": "m/s"}).cases[0]
+@pytest.mark.parametrize(
+    "text",
+    ["Viscous heating cannot be neglected", "Viscous heating is not neglected", "Where viscous heating may be left out",
+     "Is viscous heating negligible?", "viscous heating: included"],
+)  # fmt: skip
+def test_not_neglected_is_not_neglected(read, text):
+    case = read({"A1": text, "A2": "Velocity", "B2": 2.0, "C2": "m/s"}).cases[0]
     assert "neglects" not in case.facts
