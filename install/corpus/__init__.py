@@ -7,7 +7,7 @@ units, and at most one slip.
 ``formula``       formulas with conversions written by hand, and their values
 ``properties``    water and air from outside the package
 ``calculation``   what a calculation is: lines, texts, slips
-``calculations/`` sixteen kinds of them
+``calculations/`` twenty-five kinds of them
 ``slips``         slips that any calculation can have
 ``layouts``       how the lines stand in a sheet
 ``sheet``         a seed's workbook

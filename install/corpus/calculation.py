@@ -76,6 +76,14 @@ class Calculation:
         self.lines.append(Line(name, tuple(labels.split(";")), symbol, unit, key, value=value, digits=digits))
         return value * factor + offset
 
+    def typed_si(self, name: str) -> float:
+        """A typed number in SI, as it is after rounding."""
+        from corpus.formula import UNITS
+
+        line = self.line(name)
+        factor, offset = UNITS[line.unit]
+        return line.value * factor + offset
+
     def computed(
         self, name: str, key: str, labels: str, units: tuple[str, str], pattern: str, symbol: str = "", digits: int = 4
     ) -> None:

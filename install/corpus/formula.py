@@ -33,7 +33,7 @@ UNITS: Mapping[str, tuple[float, float]] = {
     "psi": (6894.7573, 0.0), "barg": (1e5, 101325.0), "psig": (6894.7573, 101325.0), "bara": (1e5, 0.0),
     "psia": (6894.7573, 0.0), "K": (1.0, 0.0), "degC": (1.0, 273.15), "degF": (1 / 1.8, 459.67 / 1.8),
     "dK": (1.0, 0.0), "dF": (1 / 1.8, 0.0), "1/m": (1.0, 0.0), "1/ft": (1 / 0.3048, 0.0), "1/K": (1.0, 0.0),
-    "1/s": (1.0, 0.0), "1/R": (1.8, 0.0),
+    "1/s": (1.0, 0.0), "g/mol": (0.001, 0.0), "1/R": (1.8, 0.0),
 }  # fmt: skip
 # how a difference of temperatures is written beside its number
 WRITTEN = {"dK": "K", "dF": "°F", "degC": "°C", "degF": "°F"}

@@ -112,12 +112,15 @@ def _changed(trial: Trial, name: str, value: float) -> float:
 
 
 def _together(trial: Trial) -> Iterator[Guess]:
-    """All temperatures in °C where K is meant."""
-    changed = {n: r.value - 273.15 for n, r in trial.inputs.items() if r.entry and r.entry.kind == "temperature"}
-    if len(changed) > 1 and trial.role is None:
-        found = evaluate(trial.relation, trial.case, {**trial.values, **changed})
+    """All temperatures in °C or °F where absolute ones are meant."""
+    absolute = {n: r.value for n, r in trial.inputs.items() if r.entry and r.entry.kind == "temperature"}
+    if len(absolute) < 2 or trial.role is not None:
+        return
+    for zero, scale in ((273.15, "°C"), (459.67 / 1.8, "°F")):
+        values = {**trial.values, **{name: value - zero for name, value in absolute.items()}}
+        found = evaluate(trial.relation, trial.case, values)
         if found:
-            yield Guess("celsius-for-kelvin", "temperatures are taken in °C", found[0].value, 1.0)
+            yield Guess("celsius-for-kelvin", f"temperatures are taken in {scale}", found[0].value, 1.0)
 
 
 def _of_exponents(trial: Trial, expected: float) -> Iterator[Guess]:

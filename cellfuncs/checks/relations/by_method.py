@@ -29,8 +29,9 @@ _DEFAULTS: Mapping[str, Any] = {
     "viscosity_ratio": 1.0,
     "temperature_ratio": 1.0,
     "prandtl_ratio": 1.0,
-    "shape": "straight",
 }
+# the plain shape of a flow kind, where the sheet names no other
+_SHAPES: Mapping[str | None, str] = {"duct": "straight", "cylinder": "circle"}
 
 
 @lru_cache(maxsize=16)
@@ -198,6 +199,8 @@ def _stream_heating(case: SheetCase, wall: float | None, bulk: float | None, out
 def _choices(case: SheetCase) -> dict[str, Any]:
     facts = case.facts
     known = {**_DEFAULTS, **{k: v for k, v in facts.items() if k in _conditions() and isinstance(v, str)}}
+    if case.flow in _SHAPES:
+        known.setdefault("shape", _SHAPES[case.flow])
     if facts.get("heated_walls"):
         known["heated"] = facts["heated_walls"]
     if "heat_flux" in case.stated and "wall_temperature" not in case.stated:
@@ -262,7 +265,7 @@ def friction_factor(case, reynolds, relative_roughness=None):
     ]
     if relative_roughness is None and reynolds > LAMINAR:
         # an unknown roughness only adds to a smooth wall's
-        found += [Admissible(a.value * 1.15, a.words, 0.3, loose=True, assumed=True) for a in found if a.loose]
+        found += [Admissible(a.value * 1.27, a.words, 0.26, loose=True, assumed=True) for a in found if a.loose]
     tight = [a for a in found if not a.code and not a.loose]
     if reynolds > TURBULENT:
         # the round tube's laminar law stands for every section in sheets

@@ -206,6 +206,12 @@ def steam_flow(duty, latent_heat):
     return duty / latent_heat
 
 
+@relation("duty of condensing steam", "duty", source="energy balance")
+def duty_of_steam(steam_flow, latent_heat):
+    """Q = ṁ·h_v."""
+    return steam_flow * latent_heat
+
+
 @relation("mass flow from duty", "mass_flow", source="energy balance")
 def flow_of_duty(duty, specific_heat, bulk_rise):
     """ṁ = Q/(cpΔT)."""

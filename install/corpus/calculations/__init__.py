@@ -1,6 +1,6 @@
-"""Sixteen calculations of one invented works: its cooling-water loop, its oil system, its dryer and its boiler house."""
+"""Twenty-five calculations of one invented works: its cooling-water loop, its oil system, its dryer and its boiler house."""
 
-from corpus.calculations import bodies, exchangers, flows, gases, tubes, walls
+from corpus.calculations import bodies, exchangers, flows, gases, practice, tubes, walls
 
 KINDS = (
     flows.water_pipe,
@@ -20,4 +20,12 @@ KINDS = (
     gases.still_air_plate,
     gases.gas_line,
     gases.fast_air,
+    practice.tube_bundle,
+    practice.mass_flow_pipe,
+    practice.condenser,
+    practice.hot_panel,
+    practice.gas_meter,
+    practice.cooled_rod,
+    practice.crossed_cylinder,
+    practice.fouled_exchanger,
 )
