@@ -23,6 +23,7 @@ from cellfuncs.models.trust import finite
 TEMPERATURE, FLUX, AMBIENT = "temperature", "flux", "ambient"
 _PLACES = 201
 _POLISH = 4
+_ROUNDING = 4e-16
 
 
 @dataclass(frozen=True)
@@ -65,7 +66,28 @@ def solve(given: Balance) -> Profile:
         raise NoModel("the outer conductance is zero: the ambient does not count; prescribe a flux of zero")
     if given.outside == TEMPERATURE:
         given = replace(given, wall=0.0)
+    if not given.along and not given.wall:
+        return _plain(given)
     return _Modes(given).profile()
+
+
+def _plain(g: Balance) -> Profile:
+    """Without conduction along one exponential is left, θ' = n·(1 − θ − r) + H, or none where a flux is given."""
+    if g.outside == FLUX:
+        outlet = g.heating + g.flux
+        wall = outlet + g.recovery + g.flux / g.transfer
+        first = g.recovery + g.flux / g.transfer
+        return Profile(outlet, wall, max(wall, first, key=abs), g.flux, g.flux, _ROUNDING * (abs(wall) + abs(outlet)))
+    series = g.transfer if g.outside == TEMPERATURE else g.transfer * g.outer / (g.transfer + g.outer)
+    end = 1.0 - g.recovery + g.heating / series
+    outlet = -end * math.expm1(-series)
+    local = series * (end * math.exp(-series) - g.heating / series)
+    walls = (1.0, 1.0)
+    if g.outside == AMBIENT:
+        total = g.transfer + g.outer
+        walls = tuple((g.transfer * (fluid + g.recovery) + g.outer) / total for fluid in (0.0, outlet))
+    size = abs(end) + abs(g.heating) + max(map(abs, walls))
+    return Profile(outlet, walls[1], max(walls, key=abs), local, outlet - g.heating, _ROUNDING * size)
 
 
 class _Modes:

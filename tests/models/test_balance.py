@@ -67,6 +67,15 @@ def test_an_independent_solution_agrees_and_comes_nearer_by_orders(case):
     assert found.outlet == pytest.approx(float(modes.fluid(x[-1:])[0])) and found.error < 1e-12
 
 
+@pytest.mark.parametrize("outside", [TEMPERATURE, FLUX, AMBIENT])
+def test_the_closed_form_without_conduction_is_what_the_exponentials_tend_to(outside):
+    case = Balance(outside, 2.3, heating=-0.4, recovery=0.2, flux=0.9 if outside == FLUX else 0.0,
+                   outer=1.1 if outside == AMBIENT else 0.0)  # fmt: skip
+    plain, modes = model.solve(case), model._Modes(case).profile()
+    for name in ("outlet", "wall", "hottest_wall", "local_flux", "duty"):
+        assert getattr(plain, name) == pytest.approx(getattr(modes, name), rel=1e-13, abs=1e-14), name
+
+
 def test_plain_exchange_is_the_exponential():
     assert model.solve(Balance(TEMPERATURE, 2.0)).outlet == pytest.approx(-math.expm1(-2.0), rel=1e-15)
 

@@ -11,7 +11,7 @@ from cellfuncs.answers import Solution
 from cellfuncs.answers.effects.balance import BalancedDuct, ExpandingDuct, RampedDuct
 from cellfuncs.answers.effects.duct import DIGITS, SolvedDuct
 from cellfuncs.answers.effects.film import HeatedFilm
-from cellfuncs.answers.effects.model import KINDS, PAIR, TEMPERATURES, Effect, EffectModel
+from cellfuncs.answers.effects.model import ALONG, KINDS, PAIR, TEMPERATURES, Effect, EffectModel
 from cellfuncs.answers.effects.outside import RadiatingWall, RecoveringLayer, StillPlate
 from cellfuncs.answers.effects.solid import CoolingBody
 from cellfuncs.errors import CellfuncsError, NoModel
@@ -75,7 +75,8 @@ def effect(solution: Solution, term: str, answer: str | None = None, fitting: Fi
     fitting = fitting or models_of(solution)
     terms = frozenset({term})
     reason = ""
-    for model in fitting.models:
+    # models that would cost more than a small term is worth come last
+    for model in sorted(fitting.models, key=lambda m: m.passes(terms, answer)):
         if terms <= model.terms and answer in model.answers:
             try:
                 return model.effect(answer, terms)
@@ -96,7 +97,9 @@ def together(
     answer = answer or solution.case.answer
     rest = list(dict.fromkeys(terms))
     effects: list[Effect] = []
-    for model in (fitting or models_of(solution)).models:
+    fitting = fitting or models_of(solution)
+    small = frozenset(rest)
+    for model in sorted(fitting.models, key=lambda m: m.passes(small & m.terms - {ALONG}, answer)):
         own = frozenset(t for t in rest if t in model.terms)
         if not own or answer not in model.answers:
             continue

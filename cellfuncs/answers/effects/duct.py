@@ -5,7 +5,7 @@ Laminar flow, also of a power-law melt, and turbulent flow with an eddy diffusiv
 
 import math
 from dataclasses import replace
-from functools import lru_cache
+from functools import cached_property, lru_cache
 
 from cellfuncs.answers import Solution
 from cellfuncs.answers.duct import DuctAnswers
@@ -32,7 +32,8 @@ _TURBULENT_SPREAD = 0.1  # of an effect, by the eddy diffusivity; own judgement
 _FRICTION_SPREAD = 0.3  # ... by how far the friction of the case is from the solved one's, in its logarithm
 _FRICTION_OFF = {True: 2.5, False: 1.3}  # laminar: changing viscosity; turbulent: a rough wall has another layer
 _END_FELT = 0.06  # of the tolerance, a conducted part of the driving difference
-_MUCH = 1e3  # Pe
+_MUCH, _VERY_MUCH = 1e3, 1e4  # Pe from which conduction along is not followed: on a map, and else
+_SMALL = 0.03  # of the tolerance
 _FEW = 2  # digits of Re and Pr on a map of turbulent flow
 DIGITS = 10  # of Re, Pr and Pe: cases that differ by rounding are one duct
 
@@ -73,7 +74,6 @@ class SolvedDuct(EffectModel):
         self.unit_flux = self.unit * p.conductivity / d
         self.source = source_density(solution)
         self.expansion = expansion_part(solution)
-        self.brinkman, self.spread = self._brinkman()
 
     def _problem(self, peclet: float | None):
         from cellfuncs.models.duct import DuctProblem
@@ -90,7 +90,8 @@ class SolvedDuct(EffectModel):
         peclet = peclet and reynolds * prandtl
         return DuctProblem(shape.section, heated, wall, 1.0, peclet, reynolds=reynolds, prandtl=prandtl)
 
-    def _brinkman(self) -> tuple[float, float]:
+    @cached_property
+    def brinkman(self) -> float:
         """Br with which the solved flow makes as much heat as the case's friction does, and what that leaves open.
 
         The bulk of an insulated duct rises by f·Re/2·Br a unit of x*; the case has Δp·D²/(L·U)·U²/(kΔT).
@@ -107,20 +108,67 @@ class SolvedDuct(EffectModel):
         if not 1.0 / allowed <= off <= allowed:
             raise NoModel("the friction of the case is far from that of developed flow in a smooth duct")
         spread = _FRICTION_SPREAD * abs(math.log(off))
-        return brinkman, spread if self.laminar else max(spread, _TURBULENT_SPREAD)
+        self.spread = spread if self.laminar else max(spread, _TURBULENT_SPREAD)
+        return brinkman
+
+    def passes(self, terms: frozenset[str], answer: str) -> bool:
+        """Whether the terms are so small in turbulent flow that the one-dimensional balance will do for them."""
+        if self.laminar or ALONG in terms:
+            return False
+        a, p = self.a, self.a.properties
+        heat = abs(self.source) * a.length / a.capacity_flux
+        if terms & PAIR:
+            try:
+                wall = a.recovery_rise
+            except CellfuncsError:
+                return False
+            heat += abs(a.pressure_drop) / (p.density * p.specific_heat) + wall
+        grows = math.exp(min(a.transfer_units, 300.0)) if answer != OUTLET else 1.0
+        return heat * grows < _SMALL * self.solution.case.tolerance * abs(a.difference)
 
     def effect(self, answer: str, left: frozenset[str]) -> Effect:
-        # on a map, what friction and sources do is not followed into a conduction along that is nothing
-        self.ignores_along = self.digits < DIGITS and ALONG not in left and self.peclet > _MUCH
-        return super().effect(answer, left)
+        if left == {ALONG} and self._nothing_along(answer):
+            return self._small_along(answer)
+        # what friction and sources do is not followed into a conduction along that is nothing beside them
+        much = _MUCH if self.digits < DIGITS else _VERY_MUCH
+        self.ignores_along = ALONG not in left and self.peclet > much
+        found = super().effect(answer, left)
+        return replace(found, error=found.error + abs(found.change) / self.peclet) if self.ignores_along else found
+
+    def _nothing_along(self, answer: str) -> bool:
+        """Whether conduction along is too small to be solved across the section, by far.
+
+        Its effect has been found up to 150 times the share kΔT/L_T² over the balance (turbulent flow, short ducts).
+        """
+        if self.digits < DIGITS or answer not in (OUTLET, DUTY, WALL):
+            return False
+        a = self.a
+        n = a.transfer_units
+        along = a.properties.conductivity / (a.capacity_flux * a.length)
+        return along * max(1.0, n) ** 2 * max(1.0, n) < _SMALL * self.solution.case.tolerance / 300.0
+
+    def _small_along(self, answer: str) -> Effect:
+        """The effect of next to nothing by the one-dimensional balance, right to its order of magnitude."""
+        from cellfuncs.models import balance
+
+        a, n = self.a, self.a.transfer_units
+        given = balance.Balance(
+            balance.FLUX if self.flux else balance.TEMPERATURE, n, flux=n if self.flux else 0.0,
+            along=a.properties.conductivity / (a.capacity_flux * a.length),
+        )  # fmt: skip
+        kept, left = balance.solve(given), balance.solve(replace(given, along=0.0))
+        name = {OUTLET: "outlet", WALL: "wall", DUTY: "duty"}[answer]
+        size = a.difference * (a.capacity_flux * (a.shape.area or 1.0) if answer == DUTY else 1.0)
+        change = (getattr(left, name) - getattr(kept, name)) * size
+        error = (kept.error + left.error) * abs(size)
+        return Effect(answer, change, self.base(answer, getattr(left, name) * size), error, 1.0, "small, by a balance")
 
     def value(self, answer: str, left: frozenset[str]) -> tuple[float, float]:
         from cellfuncs.models import duct
 
         a = self.a
-        acts = {}
-        if not left & PAIR:
-            acts = {"brinkman": self.brinkman, "expansion": self.expansion}
+        brinkman = self.brinkman  # refuses a friction that is not the solved one's
+        acts = {} if left & PAIR else {"brinkman": brinkman, "expansion": self.expansion}
         if SOURCE not in left and self.source:
             acts["source"] = self.source * a.shape.diameter**2 / (a.properties.conductivity * self.unit)
         problem = self._problem(None if ALONG in left or self.ignores_along else self.peclet)

@@ -77,10 +77,20 @@ class EffectModel:
         """The size against which an error is nothing."""
         return self.base(answer, without) or abs(without)
 
+    def passes(self, terms: frozenset[str], answer: str) -> bool:
+        """Whether another model, that costs less, will do for these terms."""
+        return False
+
     def effect(self, answer: str, left: frozenset[str]) -> Effect:
         """The effect of leaving out these terms together; NoModel where its error is too large for it."""
         if self.pairs and left & PAIR:
             left = left | PAIR
+        known = self.__dict__.setdefault("known", {})
+        if (answer, left) not in known:
+            known[answer, left] = self._solved(answer, left)
+        return known[answer, left]
+
+    def _solved(self, answer: str, left: frozenset[str]) -> Effect:
         kept, dropped = self.value(answer, frozenset()), self.value(answer, left)
         change, coarse = dropped[0] - kept[0], dropped[1] - kept[1]
         error = abs(change - coarse) + 4e-16 * (abs(dropped[0]) + abs(kept[0]))
