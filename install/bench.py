@@ -355,6 +355,7 @@ ROWS = {
 def outside_rows() -> dict[str, Callable[[], Row]]:
     """Rows measured in files of their own; those about LibreOffice Calc where it is installed."""
     import duct_bench as duct
+    import effects_bench as effects
     import method_bench as method
     import spread_bench as spread
     from calc import bench as calc
@@ -366,6 +367,8 @@ def outside_rows() -> dict[str, Callable[[], Row]]:
     found |= {"n": row(spread.flow_kinds), "o": row(spread.twenty_cases)}
     found |= {"p": row(duct.first_time), "q": row(duct.another), "r": row(duct.against_differences)}
     found |= {"s": row(method.table), "t": row(method.colebrook), "u": row(method.columns)}
+    found |= {"v": row(effects.plate), "w": row(effects.still_plate), "x": row(effects.table)}
+    found |= {"y": row(effects.whole_map)}
     if calc.available():
         found |= {"i": row(calc.cells), "j": row(calc.column), "k": row(calc.opening)}
     return dict(sorted(found.items()))
