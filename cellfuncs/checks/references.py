@@ -41,12 +41,14 @@ class References:
         self._above: dict[str, frozenset[str]] = {}
         self._direct: dict[str, tuple[Stated, ...]] = {}
         self._below: dict[str, tuple[str, ...]] = {}
+        self._unread: dict[str, int] = {}
 
     def direct(self, cell: str) -> tuple[Stated, ...]:
         """The labelled cells that a formula uses, itself or through cells without a label, in their order."""
         known = self._direct.get(cell)
         if known is None:
             found: dict[str, Stated] = {}
+            unread = 0
             waiting, seen = list(reversed(self.graph.get(cell, ()))), {cell}
             while waiting and len(seen) < _DEEPEST:
                 at = waiting.pop()
@@ -55,10 +57,18 @@ class References:
                 seen.add(at)
                 if at in self.by_cell:
                     found[at] = self.by_cell[at]
+                elif at in self.graph:
+                    waiting.extend(reversed(self.graph[at]))
                 else:
-                    waiting.extend(reversed(self.graph.get(at, ())))
+                    unread += 1
             known = self._direct[cell] = tuple(found.values())
+            self._unread[cell] = unread
         return known
+
+    def unread(self, cell: str) -> int:
+        """How many cells a formula uses, itself or through formulas without labels, that nobody could read."""
+        self.direct(cell)
+        return self._unread.get(cell, 0)
 
     def above(self, cell: str) -> frozenset[str]:
         """All cells that a formula depends on."""

@@ -55,7 +55,8 @@ class Trial:
         if not self.support:
             return 0.0
         known = self.support.union(*(self.references.above(cell) for cell in self.support))
-        return sum(e.cell in known for e in direct) / len(direct)
+        unread = self.references.unread(self.entry.cell)
+        return sum(e.cell in known for e in direct) / (len(direct) + unread)
 
     @cached_property
     def answers(self) -> list[Admissible]:

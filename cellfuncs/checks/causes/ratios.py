@@ -115,7 +115,7 @@ def of_number(si: float, expected: float, typed: bool) -> Iterator[Guess]:
         return
     for words, factor in usual(si / expected, typed):
         plain = any(_is(factor, f) for f in _PLAIN)
-        prior = (0.9 if plain else 0.25) if typed else (0.35 if 1.0 / _NEAR < factor < _NEAR else 0.9)
+        prior = (0.9 if plain else 0.12) if typed else (0.35 if 1.0 / _NEAR < factor < _NEAR else 0.9)
         code = "dimension-mismatch" if _is(factor, _GRAVITY) else "unit-factor"
         yield Guess(code, f"it is {words}", expected * factor, prior)
 
