@@ -59,6 +59,19 @@ def test_answers_in_their_units(cf):
     assert cf("WITHOUT", PLATE, "viscous heating", "coefficient") > 0
 
 
+def test_what_is_upstream_decides_size_and_sign(cf):
+    """Heat that runs back warms an insulated inlet length and the stream with it; a fixed inlet takes it away."""
+    short = cf("VARY", cf("VARY", METAL, "length", 5.0, "mm"), "velocity", 0.05, "m/s")
+    usual = cf("WITHOUT", short, "conduction along")
+    assert cf("WITHOUT", [*short, ["upstream wall", "adiabatic"]], "conduction along") == usual < 0
+    held = [
+        cf("WITHOUT", [*METAL, ["upstream wall", kind]], "conduction along") for kind in ("fixed inlet", "adiabatic")
+    ]
+    assert held[0] > 10 * held[1] > 0
+    endless = cf("WITHOUT", [*METAL, ["upstream wall", "fixed inlet"]], "conduction along", "duty")
+    assert "infinite" in endless  # a step of temperature at the plane from which the duty counts
+
+
 def test_a_term_that_the_case_does_not_have_changes_nothing(cf):
     assert cf("WITHOUT", METAL, "volumetric source") == 0.0
 

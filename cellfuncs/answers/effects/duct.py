@@ -35,11 +35,17 @@ _END_FELT = 0.06  # of the tolerance, a conducted part of the driving difference
 _MUCH, _VERY_MUCH = 1e3, 1e4  # Pe from which conduction along is not followed: on a map, and else
 _SMALL = 0.03  # of the tolerance
 _FEW = 2  # digits of Re and Pr on a map of turbulent flow
+# the rows of a block and what the solved duct calls them
+_UPSTREAM = {
+    "adiabatic": "adiabatic",
+    "fixed inlet": "fixed inlet",
+    "at inlet temperature": "wall at inlet temperature",
+}
 DIGITS = 10  # of Re, Pr and Pe: cases that differ by rounding are one duct
 
 
 class SolvedDuct(EffectModel):
-    """The spectral solution of the case's duct; upstream its wall is adiabatic.
+    """The spectral solution of the case's duct; upstream its wall is adiabatic unless the block says otherwise.
 
     With conduction along at a wall temperature, outlet and duty are those of a heated length that ends (the stream
     leaves with what it has been given in all); what is asked at the end itself, and what friction and sources do, is
@@ -67,6 +73,7 @@ class SolvedDuct(EffectModel):
         self.peclet = a.capacity_flux * d / p.conductivity
         self.place = a.length / d / self.peclet
         self.flux = a.flux is not None
+        self.upstream = _UPSTREAM[case.get("upstream", "adiabatic")]
         # θ = 1 in kelvin, and the flux that goes with it
         self.unit = a.flux * d / p.conductivity if self.flux else a.difference
         if not self.unit:
@@ -83,12 +90,15 @@ class SolvedDuct(EffectModel):
         heated = "one" if shape.heated == "one" else "both"
         if self.laminar:
             index = _short(self.index, self.digits)
-            return DuctProblem(shape.section, heated, wall, index, peclet and _short(peclet, self.digits))
+            along = peclet and _short(peclet, self.digits)
+            return DuctProblem(shape.section, heated, wall, index, along, upstream=self.upstream)
         digits = self.digits if self.digits >= DIGITS else _FEW  # the eddy diffusivity is not known any better
         prandtl = _short(self.a.properties.prandtl, digits)
         reynolds = _short(self.a.reynolds, digits)
         peclet = peclet and reynolds * prandtl
-        return DuctProblem(shape.section, heated, wall, 1.0, peclet, reynolds=reynolds, prandtl=prandtl)
+        return DuctProblem(
+            shape.section, heated, wall, 1.0, peclet, upstream=self.upstream, reynolds=reynolds, prandtl=prandtl
+        )
 
     @cached_property
     def brinkman(self) -> float:
@@ -140,7 +150,7 @@ class SolvedDuct(EffectModel):
 
         Its effect has been found up to 150 times the share kΔT/L_T² over the balance (turbulent flow, short ducts).
         """
-        if self.digits < DIGITS or answer not in (OUTLET, DUTY, WALL):
+        if self.digits < DIGITS or answer not in (OUTLET, DUTY, WALL) or self.upstream != "adiabatic":
             return False
         a = self.a
         n = a.transfer_units
