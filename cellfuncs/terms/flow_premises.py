@@ -2,6 +2,7 @@
 
 from cellfuncs import groups
 from cellfuncs.answers import gap as gap_answers
+from cellfuncs.answers.effects.solid import lumping
 from cellfuncs.answers.free import TURBULENT_FROM
 from cellfuncs.errors import NoModel
 from cellfuncs.methods import METHODS
@@ -234,7 +235,9 @@ def lumped_body(f: Facts) -> Figure:
     """Bi of the body, or of the wall between stream and outside."""
     own = getattr(f.answers, "biot", None)
     if own is not None:
-        return Figure(own, "resistance inside over resistance at the surface")
+        mean, middle = lumping(f.solution)
+        words = f"resistance inside over that at the surface; solved, the mean is off by up to {num(mean)} K, "
+        return Figure(own, f"{words}the middle by {num(middle)} K")
     if not (f.case.has("wall_thickness") and f.case.has("wall_conductivity")):
         raise NoModel("no body or wall is stated; wall thickness and wall conductivity would be judged")
     thickness = f.case.get("wall_thickness")

@@ -202,3 +202,16 @@ def test_film_feedback_by_hand(cf):
     k = cf("PROPERTY", "ISO VG 46 VI 95", "conductivity", "50 degC")
     row = table(cf, block)["viscosity feedback"]
     assert row["figure"] == pytest.approx(math.log(mu[0] / mu[2]) * mu[1] * 36.0 / k, rel=1e-6)
+
+
+def test_a_body_says_what_one_temperature_hides(cf):
+    """Bi 0.1 on volume over surface: after one time constant a plane wall's middle stands 0.0183 above lumped."""
+    block = [
+        ["flow kind", "body"], ["density", 1000.0, "kg/m3"], ["specific heat", 1000.0, "J/kgK"],
+        ["conductivity", 1.0, "W/mK"], ["coefficient", 10.0, "W/m2K"], ["length", 0.01, "m"], ["time", 1000.0, "s"],
+        ["initial temperature", 400.0, "K"], ["stream temperature", 300.0, "K"],
+    ]  # fmt: skip
+    reason = next(row[5] for row in cf("PREMISES", block)[1:] if row[0] == "lumped body")
+    middle = float(reason.split("the middle by ")[1].split(" K")[0])
+    assert middle >= 100.0 * (0.3861332871 - 0.3678794412) - 0.01  # the plane wall; a sphere lags more
+    assert middle < 10.0

@@ -41,3 +41,20 @@ class CoolingBody(EffectModel):
 
     def base(self, answer: str, without: float) -> float | None:
         return self.solution.driving
+
+
+def lumping(solution: Solution) -> tuple[float, float]:
+    """What one temperature throughout hides after the time: by how much mean and middle are off [K].
+
+    The largest of plane wall, long cylinder and sphere of this volume over surface, by the exact series; without
+    source and radiation.
+    """
+    from cellfuncs.models import body
+
+    a = solution.answers
+    mean = middle = 0.0
+    for shape, ratio in body.SHAPES.items():  # surface times L over volume: L is ratio times volume over surface
+        found = body.body(shape, a.biot * ratio, a.fourier / ratio**2)
+        mean = max(mean, abs(found.mean - found.lumped))
+        middle = max(middle, abs(found.middle - found.lumped))
+    return mean * abs(a.difference), middle * abs(a.difference)
