@@ -21,11 +21,17 @@ def for_flux(coefficient: Coefficient, flux: float) -> float:
     """The signed difference [K] at which h·ΔT is the flux [W/m2]."""
     sign, wanted = math.copysign(1.0, flux), abs(flux)
 
+    def positive(difference: float) -> float:
+        found = coefficient(difference)
+        if found > 0.0:
+            return found
+        raise OutOfRange("the method has no coefficient above zero here; it is far outside its range")
+
     def missing(logarithm: float) -> float:
         difference = math.exp(logarithm)
-        return math.log(coefficient(sign * difference) * difference / wanted)
+        return math.log(positive(sign * difference) * difference / wanted)
 
-    at = math.log(wanted / coefficient(sign * _first_answered(coefficient, sign)))
+    at = math.log(wanted / positive(sign * _first_answered(positive, sign)))
     short = missing(at)
     if short == 0.0:
         return sign * math.exp(at)
