@@ -84,8 +84,10 @@ def _write(book: Inherited, target: Any, values: Mapping[tuple[str, int, int], A
             page.set_column(column, column, width)
         for row, cells in enumerate(sheet.rows):
             for column, value in enumerate(cells):
-                options = dict(book.head) if row + 1 in sheet.heads else {}
-                if value is not None or options:
+                options = {"bold": True} if row == 0 else dict(book.head) if row + 1 in sheet.heads else {}
+                if isinstance(value, str) and column and not _is_formula(value):
+                    options["indent"] = 1
+                if value is not None or row + 1 in sheet.heads:
                     place = xl_rowcol_to_cell(row, column)
                     if place in sheet.shown:
                         options["num_format"] = sheet.shown[place]
