@@ -13,7 +13,6 @@ from cellfuncs.sheets.inherited.found import Found
 from cellfuncs.sheets.inherited.page import Page, Spot, is_number
 
 _WIDEST_GAP = 4  # blank columns between a label and its value
-_WORD = 4  # letters from which a known text is a label of its own, not a symbol
 _FARTHEST = 60  # cells that are looked through
 _LONGEST_RUN = 200  # rows between a number and the head of its column
 _JOINTS = frozenset(("=", ":", "≈", "~", ":=", "->", "→", "…", "..."))
@@ -105,7 +104,7 @@ def _left(page: Page, spot: Spot) -> tuple[list[str], int, list[str], str] | Non
             continue
         if names and (gap_before or (texts.is_unit(text) and not known)):
             break
-        if texts.is_symbol(text) and not (known and len(text) >= _WORD and text.isalpha()):
+        if texts.is_symbol(text) and not texts.is_name(text):
             names.insert(0, text) if names and not any(map(texts.known, names)) else names.append(text)
             label_column = here
             if len(names) >= 2:

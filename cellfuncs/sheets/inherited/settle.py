@@ -17,6 +17,7 @@ from cellfuncs.sheets.inherited.found import Found
 
 UNITLESS = frozenset(("dimensionless", "fraction", "relative_humidity"))
 _NUMBERS = ("stated", "derived", "sheet")  # roles of labels that stand for numbers
+_SPELLED = 0.85  # from which a name in words counts as known
 _CLEAR = 0.2  # how far the best label must be ahead to need no neighbours
 _NOTHING = Unit(1.0, 0.0, "dimensionless", "-")
 _SHARES = frozenset(("fraction", "relative_humidity"))
@@ -66,7 +67,11 @@ def _fitting(names: tuple[str, ...], units: tuple[str, ...], in_si: bool, atmosp
     misfits: list[str] = []
     unitless: list[str] = []
     remark = False
+    symbols = [name for name in names if texts.is_symbol(name) and not texts.is_name(name)]
+    spelled = any(k.score > _SPELLED for name in names if name not in symbols for k in texts.known(name))
     for place, name in enumerate(names):
+        if spelled and best and name in symbols:
+            continue  # beside a name in words its symbol says nothing more
         for candidate in texts.known(name):
             entry = labels.dictionary()[candidate.key]
             if entry.role not in _NUMBERS:

@@ -16,6 +16,7 @@ from cellfuncs.sources import read_table
 LONGEST_LABEL = 90
 LONGEST_UNIT = 24
 LONGEST_SYMBOL = 9
+_WORD_LENGTH = 4
 _NEAR = 90.0  # rapidfuzz ratio (0 to 100) from which a misspelt label counts as known
 
 _BRACKET = re.compile(r"\s*[\[({]([^\[\](){}]{1,30})[\])}]")
@@ -214,16 +215,27 @@ def known(text: str) -> tuple[Known, ...]:
     if not by_words and len(words) > 1:
         # a qualifier in front or behind: "circulating mass flow", "tube length each", "pin diameter"
         shorter = [_by_words().get(frozenset(part), ()) for part in (words[1:], words[:-1]) if len(part) > 1]
-        if sum(map(bool, shorter)) == 1:
-            return tuple(Known(key, 0.6) for part in shorter for key in part)
+        first, *others = filter(None, shorter) if any(shorter) else ((),)
+        common = [key for key in first if all(key in other for other in others)]
+        if common:
+            return tuple(Known(key, 0.6) for key in common)
         if len(words) == 2 and words[0] not in _telling_words():
             return tuple(Known(key, 0.45) for key in _by_words().get(frozenset(words[1:]), ()))
+        # "length of line", "density of the coating"
+        head, of, tail = text.partition(" of ")
+        if of and not _telling_words() & set(_words(tail)):
+            return tuple(Known(known_head.key, 0.45) for known_head in known(head))
     if by_words:
         return tuple(Known(key, 0.9) for key in by_words)
     if len(text) < 6:
         return ()
     match = process.extractOne(text.casefold(), _names().keys(), scorer=fuzz.ratio, score_cutoff=_NEAR)
     return tuple(Known(key, 0.7) for key in _names()[match[0]]) if match else ()
+
+
+def is_name(text: str) -> bool:
+    """Whether a text that might be a symbol is a word of the dictionary: Head, Tubes."""
+    return len(text) >= _WORD_LENGTH and text.isalpha() and text.isascii() and bool(known(text))
 
 
 def is_symbol(text: str) -> bool:
