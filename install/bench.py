@@ -354,6 +354,7 @@ ROWS = {
 
 def outside_rows() -> dict[str, Callable[[], Row]]:
     """Rows measured in files of their own; those about LibreOffice Calc where it is installed."""
+    import check_bench as check
     import duct_bench as duct
     import effects_bench as effects
     import method_bench as method
@@ -368,7 +369,7 @@ def outside_rows() -> dict[str, Callable[[], Row]]:
     found |= {"p": row(duct.first_time), "q": row(duct.another), "r": row(duct.against_differences)}
     found |= {"s": row(method.table), "t": row(method.colebrook), "u": row(method.columns)}
     found |= {"v": row(effects.plate), "w": row(effects.still_plate), "x": row(effects.table)}
-    found |= {"y": row(effects.whole_map)}
+    found |= {"y": row(effects.whole_map), "z": row(check.targets)}
     if calc.available():
         found |= {"i": row(calc.cells), "j": row(calc.column), "k": row(calc.opening)}
     return dict(sorted(found.items()))
@@ -409,6 +410,8 @@ def main(words: Sequence[str]) -> int:
     loop = min(loop, after)
     print(f"fixed loop: {1000 * loop:.2f} ms\n")
     print(table(rows, loop))
+    for text in import_module("check_bench").printed if "z" in rows else ():
+        print(f"\n{text}")
     if broken:
         return 2
     return 1 if "check" in words and not all(row.kept for row in rows.values()) else 0

@@ -92,7 +92,9 @@ class Calculation:
         spelled = tuple(labels.split(";"))
         self.lines.append(Line(name, spelled, symbol, unit, key, pattern=pattern, digits=digits, group="result"))
 
-    def fluid(self, name: str, prop: dict[str, float], wanted: str, others: Sequence[tuple[str, dict[str, float]]]) -> None:
+    def fluid(
+        self, name: str, prop: dict[str, float], wanted: str, others: Sequence[tuple[str, dict[str, float]]]
+    ) -> None:
         """Typed properties of a fluid, and the slips of reading them elsewhere (code, properties)."""
         for letter in wanted.split():
             PROPERTY_LINES[letter](self, prop)

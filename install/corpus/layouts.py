@@ -12,13 +12,12 @@ Cell = tuple[str, int, int]
 
 @dataclass
 class Page:
-    """Cells to write: ``texts`` as they are, ``numbers`` by line with the number format; sheet, row and column from 0."""
+    """Cells to write: texts as they are, and the places of the lines; sheet, row and column from 0."""
 
     places: dict[str, Cell] = field(default_factory=dict)
     texts: dict[Cell, Any] = field(default_factory=dict)
     formats: dict[str, str] = field(default_factory=dict)
     names: dict[str, str] = field(default_factory=dict)
-    inside: dict[str, str] = field(default_factory=dict)
     merged: list[tuple[str, int, int, int, int, str]] = field(default_factory=list)
     repeats: int = 1
 
@@ -35,7 +34,11 @@ def number_format(line: Line, value: float, quoted: str = "") -> str:
         shown = "0." + "0" * (line.digits - 1) + "E+00"
     else:
         whole = len(str(int(size))) if size >= 1 else 0
-        zeros = 0 if size >= 1 or not size else len(f"{size:.6f}".split(".")[1]) - len(f"{size:.6f}".split(".")[1].lstrip("0"))
+        zeros = (
+            0
+            if size >= 1 or not size
+            else len(f"{size:.6f}".split(".")[1]) - len(f"{size:.6f}".split(".")[1].lstrip("0"))
+        )
         places = max(line.digits - whole, 0) + zeros
         shown = "0." + "0" * places if places else "0"
     return f'{shown} "{quoted}"' if quoted else shown

@@ -37,7 +37,7 @@ def carbon_dioxide(temperature: float, pressure: float = _ATMOSPHERE) -> dict[st
 
 
 def methanol(temperature: float) -> dict[str, float]:
-    """Methanol near room temperature, SI (density and viscosity as handbooks have them at 20 °C, slopes from memory)."""
+    """Methanol near room temperature, SI (handbook values at 20 °C, slopes from memory)."""
     c = temperature - 273.15
     return {
         "density": 791.4 - 0.93 * (c - 20.0),

@@ -79,7 +79,9 @@ def _count(total: Score, made: Made, findings: list) -> None:
     total.right_findings += len(right)
     for finding in findings:
         if finding not in right:
-            total.wrong.append(f"{name} [{made.slip}] {finding.cell} {finding.severity} {finding.code}: {finding.message}")
+            total.wrong.append(
+                f"{name} [{made.slip}] {finding.cell} {finding.severity} {finding.code}: {finding.message}"
+            )
     if made.slip is None:
         total.clean += 1
         total.clean_errors += any(f.severity == "error" for f in findings)

@@ -48,7 +48,9 @@ def _pasted(c: Calculation, values: dict[str, float], rng: random.Random) -> lis
 
 def _digits(c: Calculation, values: dict[str, float], rng: random.Random) -> list[Slip]:
     """A typed property, or a pasted result, with two digits changed or the point misplaced."""
-    lines = [line for line in c.lines if line.name in ("rho", "mu", "k", "cp") and line.value and c.facts.get("substance")]
+    lines = [
+        line for line in c.lines if line.name in ("rho", "mu", "k", "cp") and line.value and c.facts.get("substance")
+    ]
     lines += [line for line in _results(c) if not line.unit.startswith("deg")]
     found = []
     for line in lines:

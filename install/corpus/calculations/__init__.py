@@ -1,4 +1,4 @@
-"""Twenty-five calculations of one invented works: its cooling-water loop, its oil system, its dryer and its boiler house."""
+"""Twenty-five calculations of one invented works: its cooling water, its oil system, its dryer, its boiler house."""
 
 from corpus.calculations import bodies, exchangers, flows, gases, practice, tubes, walls
 

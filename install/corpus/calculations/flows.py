@@ -56,7 +56,9 @@ def oil_line(rng: random.Random, system: str) -> Calculation:
     c = Calculation("Gear oil return line", system, "duct")
     c.texts.append(("Flow regime", "laminar"))
     c.facts = {"regime": "laminar"}
-    c.typed("m", "mass_flow", "Mass flow;Oil flow, mass;Mass flow rate", ("kg/s", "lb/s"), between(rng, 0.4, 2.0), "ṁ", 3)
+    c.typed(
+        "m", "mass_flow", "Mass flow;Oil flow, mass;Mass flow rate", ("kg/s", "lb/s"), between(rng, 0.4, 2.0), "ṁ", 3
+    )
     c.typed("D", "diameter", "Inside diameter;Tube ID", _BORE, rng.choice((0.0409, 0.0525, 0.0627)), "D")
     c.typed("L", "length", "Line length;Pipe length", _LENGTH, between(rng, 8, 40), "L", 3)
     c.typed("rho", "density", "Density;Oil density", ("kg/m3", "lb/ft3"), rng.uniform(850, 895), "ρ", 4)
@@ -92,7 +94,15 @@ def pump(rng: random.Random, system: str) -> Calculation:
     c.typed("D", "diameter", "Inside diameter;Pipe ID", _BORE, rng.choice((0.0779, 0.1023, 0.1541)), "D")
     c.typed("K", "loss_coefficient", "Sum of loss coefficients;Loss coefficient;Resistance coefficient", ("", ""),
             rng.uniform(3, 20), "ΣK", 3)  # fmt: skip
-    c.typed("dpf", "pressure_drop", "Friction pressure drop;Pressure drop", ("kPa", "psi"), between(rng, 10e3, 90e3), "Δpf", 3)
+    c.typed(
+        "dpf",
+        "pressure_drop",
+        "Friction pressure drop;Pressure drop",
+        ("kPa", "psi"),
+        between(rng, 10e3, 90e3),
+        "Δpf",
+        3,
+    )
     c.typed("eta", "pump_efficiency", "Pump efficiency;Efficiency", ("%", "%"), rng.uniform(0.6, 0.8), "η", 2)
     c.typed("etam", "motor_efficiency", "Motor efficiency", ("%", "%"), rng.uniform(0.88, 0.95), "ηm", 2)
     c.fluid("water", properties.water(t), "rho", ())
@@ -122,7 +132,9 @@ def ventilation_duct(rng: random.Random, system: str) -> Calculation:
     c.facts = {"substance": "air", "section": "rectangle"}
     t = c.typed("T", "property_temperature", "Mean temperature;Air temperature, mean", ("degC", "degF"),
                 273.15 + rng.uniform(45, 110), "Tm", 3)  # fmt: skip
-    c.typed("V", "volume_flow", "Volume flow;Air flow;Flow rate", ("m3/h", "cfm"), between(rng, 2000, 12000) / 3600, "Q", 3)
+    c.typed(
+        "V", "volume_flow", "Volume flow;Air flow;Flow rate", ("m3/h", "cfm"), between(rng, 2000, 12000) / 3600, "Q", 3
+    )
     c.typed("B", "width", "Duct width;Width", _BORE, rng.uniform(0.4, 0.8), "B", 3)
     c.typed("Hh", "height", "Duct height;Height of the duct", _BORE, rng.uniform(0.25, 0.4), "Hd", 3)
     c.typed("L", "length", "Duct length;Length", _LENGTH, between(rng, 10, 60), "L", 3)

@@ -14,8 +14,12 @@ def air_over_plate(rng: random.Random, system: str) -> Calculation:
     c = Calculation("Flat plate in an air stream", system, "plate")
     c.texts += [("Fluid", "Air"), ("Flow kind", "flat plate")]
     c.facts = {"substance": "air"}
-    ts = c.typed("Ts", "stream_temperature", "Air temperature;Free stream temperature", _T, 273.15 + rng.uniform(10, 30), "T∞", 2)
-    tw = c.typed("Tw", "wall_temperature", "Plate temperature;Surface temperature", _T, 273.15 + rng.uniform(110, 170), "Ts", 3)
+    ts = c.typed(
+        "Ts", "stream_temperature", "Air temperature;Free stream temperature", _T, 273.15 + rng.uniform(10, 30), "T∞", 2
+    )
+    tw = c.typed(
+        "Tw", "wall_temperature", "Plate temperature;Surface temperature", _T, 273.15 + rng.uniform(110, 170), "Ts", 3
+    )
     c.typed("w", "velocity", "Air velocity;Free stream velocity;Velocity", ("m/s", "ft/s"), between(rng, 2, 9), "U", 2)
     c.typed("L", "length", "Plate length;Length", _MM, rng.uniform(0.15, 0.5), "L", 3)
     c.typed("B", "width", "Plate width;Width", _MM, rng.uniform(0.2, 0.8), "B", 3)
@@ -44,8 +48,12 @@ def still_air_plate(rng: random.Random, system: str) -> Calculation:
     c = Calculation("Vertical plate in still air", system, "free")
     c.texts += [("Fluid", "Air"), ("Surface", "vertical plate"), ("Flow kind", "natural convection")]
     c.facts = {"substance": "air", "surface": "vertical plate"}
-    ts = c.typed("Ts", "stream_temperature", "Ambient temperature;Air temperature", _T, 273.15 + rng.uniform(10, 30), "T∞", 2)
-    tw = c.typed("Tw", "wall_temperature", "Surface temperature;Wall temperature", _T, 273.15 + rng.uniform(70, 140), "Tw", 3)
+    ts = c.typed(
+        "Ts", "stream_temperature", "Ambient temperature;Air temperature", _T, 273.15 + rng.uniform(10, 30), "T∞", 2
+    )
+    tw = c.typed(
+        "Tw", "wall_temperature", "Surface temperature;Wall temperature", _T, 273.15 + rng.uniform(70, 140), "Tw", 3
+    )
     c.typed("L", "length", "Plate length;Length", _L, rng.uniform(0.3, 0.9), "L", 2)
     c.typed("B", "width", "Plate width;Width", _L, rng.uniform(0.4, 1.5), "B", 2)
     c.typed("em", "emissivity", "Emissivity", ("", ""), rng.uniform(0.7, 0.95), "ε", 2)
@@ -80,8 +88,18 @@ def gas_line(rng: random.Random, system: str) -> Calculation:
     c = Calculation("Compressed air main", system, "duct")
     c.texts.append(("Fluid", "Air"))
     c.facts = {"substance": "air"}
-    c.typed("pg", "gauge_pressure", "Gauge pressure;Pressure gauge", ("barg", "psig"), 101325 + between(rng, 2e5, 8e5), "pg", 3)
-    t = c.typed("T", "property_temperature", "Mean temperature;Average temperature", _T, 273.15 + rng.uniform(20, 60), "Tm", 3)
+    c.typed(
+        "pg",
+        "gauge_pressure",
+        "Gauge pressure;Pressure gauge",
+        ("barg", "psig"),
+        101325 + between(rng, 2e5, 8e5),
+        "pg",
+        3,
+    )
+    t = c.typed(
+        "T", "property_temperature", "Mean temperature;Average temperature", _T, 273.15 + rng.uniform(20, 60), "Tm", 3
+    )
     c.typed("R", "gas_constant", "Gas constant;Specific gas constant", ("J/kgK", "J/kgK"), 287.06, "R")
     c.typed("m", "mass_flow", "Mass flow;Mass flow rate", ("kg/h", "lb/h"), between(rng, 300, 2500) / 3600, "ṁ", 3)
     c.typed("D", "diameter", "Inside diameter;Pipe ID", _MM, rng.choice((0.0525, 0.0779, 0.1023)), "D")
@@ -113,7 +131,9 @@ def fast_air(rng: random.Random, system: str) -> Calculation:
     c = Calculation("Blow-off nozzle, plate downstream", system, "plate")
     c.texts += [("Fluid", "Air"), ("Flow kind", "flat plate")]
     c.facts = {"substance": "air"}
-    ts = c.typed("Ts", "stream_temperature", "Free stream temperature;Air temperature", _T, 273.15 + rng.uniform(0, 40), "T∞", 2)
+    ts = c.typed(
+        "Ts", "stream_temperature", "Free stream temperature;Air temperature", _T, 273.15 + rng.uniform(0, 40), "T∞", 2
+    )
     c.typed("w", "velocity", "Velocity;Free stream velocity", ("m/s", "ft/s"), rng.uniform(120, 260), "U", 3)
     c.typed("kap", "isentropic_exponent", "Isentropic exponent;Ratio of specific heats", ("", ""), 1.4, "κ", 3)
     c.typed("R", "gas_constant", "Gas constant;Specific gas constant", ("J/kgK", "J/kgK"), 287.06, "R")
@@ -123,8 +143,17 @@ def fast_air(rng: random.Random, system: str) -> Calculation:
     c.computed("c", "speed_of_sound", "Speed of sound;Sonic velocity", ("m/s", "ft/s"), "SQRT({kap}*{R}*{Ts})", "c")
     c.computed("Ma", "mach", "Mach number;Ma", ("", ""), "{w}/{c}", "Ma")
     c.computed("r", "recovery_factor", "Recovery factor", ("", ""), "{Pr}^(1/3)", "r")
-    c.computed("Tr", "recovery_temperature", "Recovery temperature;Adiabatic wall temperature", _T, "{Ts}+{r}*{w}^2/(2*{cp})", "Tr")
-    c.computed("T0", "stagnation_temperature", "Stagnation temperature;Total temperature", _T, "{Ts}+{w}^2/(2*{cp})", "T0")
+    c.computed(
+        "Tr",
+        "recovery_temperature",
+        "Recovery temperature;Adiabatic wall temperature",
+        _T,
+        "{Ts}+{r}*{w}^2/(2*{cp})",
+        "Tr",
+    )
+    c.computed(
+        "T0", "stagnation_temperature", "Stagnation temperature;Total temperature", _T, "{Ts}+{w}^2/(2*{cp})", "T0"
+    )
     c.slip("celsius-for-kelvin", "c", "SQRT({kap}*{R}*{Ts:d})")
     c.slip("dimension-mismatch", "Tr", "{Ts}+{r}*{w}/(2*{cp})")
     c.slip("unit-factor", "Tr", "{Ts}+{r}*{w}^2/(2*{cp:raw})")

@@ -1,4 +1,4 @@
-"""Calculations as practice has them: parallel tubes, allowances, assumed coefficients, rounded constants, no substance."""
+"""Calculations as practice has them: parallel tubes, assumed coefficients, rounded constants, no substance."""
 
 import random
 
@@ -39,7 +39,9 @@ def mass_flow_pipe(rng: random.Random, system: str) -> Calculation:
     c.texts.append(("Medium", "water"))
     c.facts = {"substance": "water"}
     t = 273.15 + rng.uniform(60, 90)
-    c.typed("m", "mass_flow", "Condensate flow rate, mass;Mass flow rate", ("kg/s", "lb/h"), between(rng, 0.5, 6), "m", 3)
+    c.typed(
+        "m", "mass_flow", "Condensate flow rate, mass;Mass flow rate", ("kg/s", "lb/h"), between(rng, 0.5, 6), "m", 3
+    )
     c.typed("D", "diameter", "Inside diameter", _MM, rng.choice((0.0266, 0.0409, 0.0525)), "d", 3)
     c.typed("L", "length", "Length of line;Pipe length", _L, between(rng, 20, 150), "L", 2)
     c.typed("T", "property_temperature", "Mean temperature", _T, t, "t", 2)
@@ -57,12 +59,22 @@ def condenser(rng: random.Random, system: str) -> Calculation:
     """Steam condensing on tubes; U assumed, area installed larger than needed."""
     c = Calculation("Turbine drain condenser", system)
     c.typed("ms", "steam_flow", "Steam flow;Condensate flow", ("kg/s", "lb/h"), between(rng, 0.2, 1.5), "ms", 3)
-    c.typed("r", "latent_heat", "Latent heat;Heat of vaporisation", ("kJ/kg", "kJ/kg"), rng.uniform(2.2e6, 2.35e6), "r", 4)
+    c.typed(
+        "r", "latent_heat", "Latent heat;Heat of vaporisation", ("kJ/kg", "kJ/kg"), rng.uniform(2.2e6, 2.35e6), "r", 4
+    )
     c.typed("Tw", "wall_temperature", "Wall temperature", _T, 273.15 + rng.uniform(85, 110), "ts", 3)
     c.typed("Ti", "inlet_temperature", "Inlet temperature", _T, 273.15 + rng.uniform(15, 25), "t1", 3)
     c.typed("m", "mass_flow", "Cooling water mass flow rate;Mass flow", ("kg/s", "lb/h"), between(rng, 20, 60), "m", 3)
     c.typed("cp", "specific_heat", "Specific heat", ("kJ/kgK", "Btu/lb-F"), 4180.0, "c", 3)
-    c.typed("U", "overall_coefficient", "Overall coefficient;Overall heat transfer coefficient", _H, rng.uniform(1500, 2800), "k", 2)
+    c.typed(
+        "U",
+        "overall_coefficient",
+        "Overall coefficient;Overall heat transfer coefficient",
+        _H,
+        rng.uniform(1500, 2800),
+        "k",
+        2,
+    )
     c.computed("Q", "duty", "Duty;Heat duty", ("kW", "Btu/h"), "{ms}*{r}", "Q")
     c.computed("To", "outlet_temperature", "Outlet temperature", _T, "{Ti}+{Q}/({m}*{cp})", "t2")
     c.computed("LM", "log_mean_difference", "Log mean temperature difference;LMTD", ("dK", "dF"),
@@ -80,13 +92,36 @@ def hot_panel(rng: random.Random, system: str) -> Calculation:
     c.typed("A", "area", "Surface;Heat transfer area", ("m2", "ft2"), between(rng, 0.5, 6), "A", 3)
     c.typed("em", "emissivity", "Emissivity;Surface emissivity", ("", ""), rng.uniform(0.6, 0.95), "e", 2)
     c.typed("h", "coefficient", "Convection coefficient;Heat transfer coefficient", _H, rng.uniform(6, 14), "h", 2)
-    c.typed("Tw", "wall_temperature", "Surface temperature;Wall temperature", ("degC", "degF"), 273.15 + rng.uniform(90, 260), "Ts", 3)
-    c.typed("Ta", "ambient_temperature", "Outside temperature;Environment temperature", ("degC", "degF"), 273.15 + rng.uniform(10, 32), "Ta", 2)
+    c.typed(
+        "Tw",
+        "wall_temperature",
+        "Surface temperature;Wall temperature",
+        ("degC", "degF"),
+        273.15 + rng.uniform(90, 260),
+        "Ts",
+        3,
+    )
+    c.typed(
+        "Ta",
+        "ambient_temperature",
+        "Outside temperature;Environment temperature",
+        ("degC", "degF"),
+        273.15 + rng.uniform(10, 32),
+        "Ta",
+        2,
+    )
     c.computed("dT", "temperature_difference", "Temperature difference", ("dK", "dF"), "{Tw:d}-{Ta:d}", "dT")
     c.computed("Qc", "convective_heat", "Heat by convection;Convection loss", ("W", "Btu/h"), "{h}*{A}*{dT}", "Qc")
     kelvin = "({Tw:d}+273)" if system == "si" else "{Tw}"
     around = "({Ta:d}+273)" if system == "si" else "{Ta}"
-    c.computed("Qr", "radiant_heat", "Heat by radiation;Radiation loss", ("W", "Btu/h"), f"5.67E-08*{{em}}*{{A}}*({kelvin}^4-{around}^4)", "Qr")
+    c.computed(
+        "Qr",
+        "radiant_heat",
+        "Heat by radiation;Radiation loss",
+        ("W", "Btu/h"),
+        f"5.67E-08*{{em}}*{{A}}*({kelvin}^4-{around}^4)",
+        "Qr",
+    )
     c.computed("Q", "duty", "Heat loss;Heat flow", ("W", "Btu/h"), "{Qc}+{Qr}", "Q")
     c.slip("celsius-for-kelvin", "Qr", "5.67E-08*{em}*{A}*({Tw:d}^4-{Ta:d}^4)")
     c.slip("dimension-mismatch", "Qc", "{h}*{dT}")
@@ -117,12 +152,16 @@ def cooled_rod(rng: random.Random, system: str) -> Calculation:
     """A rod quenched: Biot and Fourier numbers, ratio from both."""
     c = Calculation("Quench of rods", system, "body")
     c.typed("Ti", "initial_temperature", "Initial temperature", _T, 273.15 + rng.uniform(500, 850), "To", 3)
-    c.typed("Ta", "stream_temperature", "Bath temperature;Ambient temperature", _T, 273.15 + rng.uniform(20, 50), "Tb", 2)
+    c.typed(
+        "Ta", "stream_temperature", "Bath temperature;Ambient temperature", _T, 273.15 + rng.uniform(20, 50), "Tb", 2
+    )
     c.typed("Lc", "characteristic_length", "Characteristic length", _MM, rng.uniform(0.002, 0.005), "Lc", 3)
     c.typed("h", "coefficient", "Heat transfer coefficient", _H, rng.uniform(200, 700), "h", 2)
     c.typed("k", "solid_conductivity", "Material conductivity", ("W/mK", "Btu/h-ft-F"), rng.uniform(35, 60), "k", 2)
     c.typed("rho", "solid_density", "Material density", ("kg/m3", "lb/ft3"), 7850.0, "rho", 3)
-    c.typed("cp", "solid_specific_heat", "Material specific heat", ("kJ/kgK", "Btu/lb-F"), rng.uniform(450, 520), "c", 3)
+    c.typed(
+        "cp", "solid_specific_heat", "Material specific heat", ("kJ/kgK", "Btu/lb-F"), rng.uniform(450, 520), "c", 3
+    )
     c.typed("t", "time", "Time", ("s", "s"), rng.uniform(5, 30), "t", 2)
     c.computed("Bi", "biot", "Biot number", ("", ""), "{h}*{Lc}/{k}", "Bi")
     c.computed("Fo", "fourier", "Fourier number", ("", ""), "{k}/({rho}*{cp})*{t}/{Lc}^2", "Fo")
@@ -147,8 +186,8 @@ def crossed_cylinder(rng: random.Random, system: str) -> Calculation:
     c.fluid("air", properties.air(film), "rho mu k cp", ())
     c.computed("Re", "reynolds", "Reynolds number", ("", ""), "{rho}*{w}*{D}/{mu}", "Re")
     c.computed("Pr", "prandtl", "Prandtl number", ("", ""), "{mu}*{cp}/{k}", "Pr")
-    c.computed("Nu", "nusselt", "Nusselt number", ("", ""),
-               "0.3+0.62*SQRT({Re})*{Pr}^(1/3)/(1+(0.4/{Pr})^(2/3))^0.25*(1+({Re}/282000)^0.625)^0.8", "Nu")  # fmt: skip
+    by_both = "0.3+0.62*SQRT({Re})*{Pr}^(1/3)/(1+(0.4/{Pr})^(2/3))^0.25*(1+({Re}/282000)^0.625)^0.8"
+    c.computed("Nu", "nusselt", "Nusselt number", ("", ""), by_both, "Nu")
     c.computed("h", "coefficient", "Heat transfer coefficient", _H, "{Nu}*{k}/{D}", "h")
     c.computed("q", "heat_flux", "Heat flux", ("W/m2", "Btu/h-ft2"), "{h}*({Tw:d}-{Ts:d})", "q")
     c.slip("radius-for-diameter", "Re", "{rho}*{w}*({D}/2)/{mu}")

@@ -16,8 +16,12 @@ def heated_tube(rng: random.Random, system: str) -> Calculation:
     c.facts = {"substance": "water", "method": "Dittus-Boelter"}
     low, high = 273.15 + rng.uniform(12, 25), 273.15 + rng.uniform(55, 80)
     t_in, t_out = (low, high) if heating else (high, low)
-    t_in = c.typed("Ti", "inlet_temperature", "Inlet temperature;Water inlet temperature", ("degC", "degF"), t_in, "Tin", 3)
-    t_out = c.typed("To", "outlet_temperature", "Outlet temperature;Water outlet temperature", ("degC", "degF"), t_out, "Tout", 3)
+    t_in = c.typed(
+        "Ti", "inlet_temperature", "Inlet temperature;Water inlet temperature", ("degC", "degF"), t_in, "Tin", 3
+    )
+    t_out = c.typed(
+        "To", "outlet_temperature", "Outlet temperature;Water outlet temperature", ("degC", "degF"), t_out, "Tout", 3
+    )
     t_wall = high + rng.uniform(8, 25) if heating else low - rng.uniform(4, 9)
     c.typed("Tw", "wall_temperature", "Wall temperature;Tube wall temperature", ("degC", "degF"), t_wall, "Tw", 3)
     c.typed("D", "diameter", "Inside diameter;Tube ID", _BORE, rng.choice((0.0158, 0.0199, 0.0266)), "D")
@@ -36,7 +40,9 @@ def heated_tube(rng: random.Random, system: str) -> Calculation:
     c.computed("Pr", "prandtl", "Prandtl number;Pr", ("", ""), "{mu}*{cp}/{k}", "Pr")
     power = "0.4" if heating else "0.3"
     c.computed("Nu", "nusselt", "Nusselt number;Nu", ("", ""), f"0.023*{{Re}}^0.8*{{Pr}}^{power}", "Nu")
-    c.computed("h", "coefficient", "Heat transfer coefficient;Coefficient", ("W/m2K", "Btu/h-ft2-F"), "{Nu}*{k}/{D}", "h")
+    c.computed(
+        "h", "coefficient", "Heat transfer coefficient;Coefficient", ("W/m2K", "Btu/h-ft2-F"), "{Nu}*{k}/{D}", "h"
+    )
     c.computed("LM", "log_mean_difference", "LMTD;Log mean temperature difference", ("dK", "dF"),
                "({Tw:d}-{Ti:d}-({Tw:d}-{To:d}))/LN(({Tw:d}-{Ti:d})/({Tw:d}-{To:d}))" if heating else
                "({Ti:d}-{Tw:d}-({To:d}-{Tw:d}))/LN(({Ti:d}-{Tw:d})/({To:d}-{Tw:d}))", "ΔTlm")  # fmt: skip
@@ -68,10 +74,26 @@ def laminar_tube(rng: random.Random, system: str) -> Calculation:
     c = Calculation("Lube oil heater, tube side", system, "duct")
     c.texts.append(("Flow regime", "laminar"))
     c.facts = {"regime": "laminar"}
-    c.typed("m", "mass_flow", "Mass flow;Oil mass flow rate;Mass flow rate", ("kg/s", "lb/h"), between(rng, 0.02, 0.09), "ṁ", 3)
+    c.typed(
+        "m",
+        "mass_flow",
+        "Mass flow;Oil mass flow rate;Mass flow rate",
+        ("kg/s", "lb/h"),
+        between(rng, 0.02, 0.09),
+        "ṁ",
+        3,
+    )
     c.typed("D", "diameter", "Inside diameter;Tube ID", _BORE, rng.choice((0.0158, 0.0199)), "D")
     c.typed("L", "length", "Tube length;Length", _LENGTH, between(rng, 300, 900), "L", 3)
-    c.typed("Ti", "inlet_temperature", "Inlet temperature;Oil inlet temperature", ("degC", "degF"), 273.15 + rng.uniform(20, 40), "Tin", 3)
+    c.typed(
+        "Ti",
+        "inlet_temperature",
+        "Inlet temperature;Oil inlet temperature",
+        ("degC", "degF"),
+        273.15 + rng.uniform(20, 40),
+        "Tin",
+        3,
+    )
     c.typed("Tw", "wall_temperature", "Wall temperature", ("degC", "degF"), 273.15 + rng.uniform(90, 120), "Tw", 3)
     c.typed("rho", "density", "Density;Oil density", ("kg/m3", "lb/ft3"), rng.uniform(840, 880), "ρ", 3)
     c.typed("mu", "viscosity", "Dynamic viscosity;Viscosity", ("mPa.s", "cP"), between(rng, 0.02, 0.06), "μ", 3)
@@ -83,7 +105,9 @@ def laminar_tube(rng: random.Random, system: str) -> Calculation:
     c.computed("Pr", "prandtl", "Prandtl number;Pr", ("", ""), "{mu}*{cp}/{k}", "Pr")
     c.computed("Gz", "graetz", "Graetz number;Gz", ("", ""), "{Re}*{Pr}*{D}/{L}", "Gz")
     c.computed("Nu", "nusselt", "Nusselt number;Nu", ("", ""), "3.66+0.0668*{Gz}/(1+0.04*{Gz}^(2/3))", "Nu")
-    c.computed("h", "coefficient", "Heat transfer coefficient;Coefficient", ("W/m2K", "Btu/h-ft2-F"), "{Nu}*{k}/{D}", "h")
+    c.computed(
+        "h", "coefficient", "Heat transfer coefficient;Coefficient", ("W/m2K", "Btu/h-ft2-F"), "{Nu}*{k}/{D}", "h"
+    )
     c.computed("S", "area", "Heat transfer area;Exchange area", ("m2", "ft2"), "PI()*{D}*{L}", "S")
     c.computed("N", "transfer_units", "NTU;Number of transfer units", ("", ""), "{h}*{S}/({m}*{cp})", "NTU")
     c.computed("To", "outlet_temperature", "Outlet temperature;Oil outlet temperature", ("degC", "degF"),
