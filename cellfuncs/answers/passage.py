@@ -126,12 +126,15 @@ def solve_passage(passage: Passage) -> Any:
     """The answers of a passage with the methods that hold where it comes to lie."""
     case = passage.case
     inlet, difference = temperatures(case)
-    chosen: Chosen | None = None
+    chosen: Chosen | None = None  # chosen at the first temperature that the loop tries, and kept for its round
+
+    def at(bulk: float | None) -> Any:
+        nonlocal chosen
+        answers = _at(passage, bulk, inlet, difference, chosen)
+        chosen = answers.chosen
+        return answers
+
     for _ in range(_MOST_CHOICES):
-
-        def at(bulk: float | None, chosen: Chosen | None = chosen) -> Any:
-            return _at(passage, bulk, inlet, difference, chosen)
-
         found = close_on_bulk(case, at, inlet, difference)
         chosen = passage.choose(found.state, case.allow)
         if (found.chosen.nusselt, found.chosen.friction) == (chosen.nusselt, chosen.friction):
