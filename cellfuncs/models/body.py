@@ -84,12 +84,17 @@ def lumped(time: float, source: float = 0.0, radiation: float = 0.0, level: floa
     from scipy.integrate import solve_ivp
 
     def slope(t: float, y: list[float]) -> list[float]:
-        return [-y[0] + source - radiation * ((1.0 + level * y[0]) ** 4 - seen**4) / level]
+        t = 1.0 + level * y[0]  # a step that tries a temperature below zero is led back, not away
+        return [-y[0] + source - radiation * (abs(t) ** 3 * t - seen**4) / level]
 
+    if 1.0 + level * source <= 0 and radiation * seen**4 < -source * level - 1.0:
+        raise NoModel("the sink of heat would take the body below absolute zero")
     ends = []
     for tolerance in (1e-8, 1e-11):
         found = solve_ivp(slope, (0.0, min(time, 700.0)), [1.0], method="LSODA", rtol=tolerance, atol=1e-2 * tolerance)
         if found.status != 0:
             raise NoModel("the cooling of the body was not solved")
         ends.append(float(found.y[0, -1]))
+        if 1.0 + level * ends[-1] <= 0:
+            raise NoModel("the sink of heat would take the body below absolute zero")
     return Lumped(ends[1], abs(ends[1] - ends[0]) + 1e-14)

@@ -107,3 +107,10 @@ def test_weak_radiation_is_a_coefficient():
 def test_radiation_of_a_body_below_absolute_zero_is_refused():
     with pytest.raises(NoModel, match="absolute zero"):
         model.lumped(1.0, radiation=0.1, level=-1.5)
+
+
+def test_a_sink_below_absolute_zero_is_refused_and_a_hot_one_solved():
+    with pytest.raises(NoModel, match="absolute zero"):
+        model.lumped(5.0, source=-1e12, radiation=0.3, level=0.002, seen=1.0)
+    hot = model.lumped(50.0, source=1e9, radiation=0.3, level=0.002, seen=1.0)
+    assert 0.3 * (1 + 0.002 * hot.ratio) ** 4 / 0.002 == pytest.approx(1e9, rel=1e-2)
