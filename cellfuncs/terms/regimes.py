@@ -152,6 +152,7 @@ def regime_map(case: Case, term: str, x: str | None = None, y: str | None = None
     """The map of a term; without axes over the two that rule it. Refuses what does not vary or depends on nothing."""
     if not FEWEST <= points <= MOST:
         raise OutOfRange(f"{points} points on an axis; from {FEWEST} to {MOST} make a map", "points")
+    case = case.origin or case  # rows as stated; what follows from them follows anew at each place
     solution = solve(case)
     j = next((j for j in judged(solution, equation_of(term)) if j.size.term == term), None)
     if j is None or j.size.leading:
