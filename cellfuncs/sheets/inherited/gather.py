@@ -161,6 +161,10 @@ def cases_of(group: Group, facts: Facts, name: str, notes: Judgement) -> list[Sh
     return found
 
 
+# what only the flow in a pipe has together, and what others have
+_OF_A_DUCT = {"diameter", "friction_factor"}
+_OF_OTHERS = {"pitch_across", "pitch_along", "particle_diameter", "voidage", "film_flow", "friction_coefficient"}
+
 _ENDS = {"inlet_temperature", "outlet_temperature"}
 
 
@@ -214,6 +218,8 @@ def _case(name: str, quantities: Sequence[Quantity], facts: Facts) -> SheetCase:
             case.flow = value
         elif key != "si":
             case.facts[key] = tuple(value) if key == "method" else value
+    if case.flow is None and case.stated.keys() >= _OF_A_DUCT and not case.stated.keys() & _OF_OTHERS:
+        case.flow = "duct"
     case.fact_cells.update(facts.cells)
     case.fact_cells |= {key: cell for key, cell in facts.cells.items() if key.startswith("neglects:")}
     return case
