@@ -74,7 +74,7 @@ class _Writer:
 
     def write(self) -> None:
         sheet, content = self.sheet, self.content
-        for column, width in enumerate((25, 29, 11, 11, 13, 62)):
+        for column, width in enumerate((25, 29, 11, 14, 13, 66)):
             sheet.set_column(column, column, width)
         sheet.hide_gridlines(2)
         row = self._head()
@@ -125,7 +125,8 @@ class _Writer:
         notes = (
             "Tinted cells with a rule at their left are inputs; everything else follows from them.",
             "A text that begins with an exclamation mark is a fault and says what would do.",
-            "Shares are judged against the tolerance: below a third leave out, above three times keep.",
+            "A verdict goes by the effect where a solved model gives it, against the tolerance.",
+            "Else it goes by the share: below a third of the tolerance leave out, above three times keep.",
             *(f"{sentence.rstrip('.')}." for sentence in CAUTION.split(". ")),
         )
         for k, note in enumerate(notes, start=5 + len(places)):
@@ -133,6 +134,7 @@ class _Writer:
         sheet.set_landscape()
         sheet.set_paper(9)
         sheet.fit_to_pages(1, 1)
+        sheet.print_area(0, 0, 5 + len(places) + len(notes), 2)
 
     def _head(self) -> int:
         sheet, content = self.sheet, self.content
@@ -235,11 +237,11 @@ class _Writer:
                     bottom=4,
                     bottom_color=LINE,
                     text_wrap=measure == "reason",
-                    font_size=9.5 if measure == "reason" else 10.5,
+                    font_size=9 if measure == "reason" else 10.5,
                 )
                 column = "ABCDEF"[j]
                 sheet.write_formula(at, j, f"=CF_TERM({content.block},$A{at + 1},{column}${head + 1})", style)
-            sheet.set_row(at, 28)
+            sheet.set_row(at, 35)  # three lines of a reason
             guarded = f"=IF(ISNUMBER(C{at + 1}),MAX(C{at + 1},0.000001),NA())"
             if term != ALL_LEFT_OUT:
                 sheet.write_formula(at, 7, guarded, self.style(num_format=SHARES, font_color=GREY))
@@ -292,10 +294,10 @@ class _Writer:
         )  # fmt: skip
         chart.set_y_axis({"reverse": True, "num_font": font, "line": {"color": INK}})
         chart.set_legend({"none": True})
-        chart.set_size({"width": 920, "height": 300})
+        chart.set_size({"width": 920, "height": 250})
         self.places.append(("Chart", f"A{row + 1}", "the share of each term on a logarithmic axis"))
         self.sheet.insert_chart(row, 0, chart, {"x_offset": 4, "y_offset": 6})
-        self.last_row = row + 16
+        self.last_row = row + 13
 
     def _print(self) -> None:
         sheet = self.sheet

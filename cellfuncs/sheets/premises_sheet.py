@@ -13,7 +13,7 @@ _FIRST = 5  # row of the first premise, counted from 1
 def write_premises(sheet: Any, style: Callable[..., Any], block: str, title: str) -> None:
     """Write the premises of the case block that has the workbook name ``block``."""
     sheet.hide_gridlines(2)
-    for column, width in enumerate((32, 12, 12, 13, 92)):
+    for column, width in enumerate((32, 12, 12, 13, 128)):
         sheet.set_column(column, column, width)
     sheet.set_row(0, 24)
     sheet.write(0, 0, f"{title}: what the calculation rests on", style(bold=True, font_size=16))
