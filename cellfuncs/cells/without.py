@@ -11,7 +11,7 @@ from cellfuncs.cells.catalogue import Answer, cell_function
 from cellfuncs.cells.term import term_name
 from cellfuncs.errors import CaseRefused, CellfuncsError, NoModel
 from cellfuncs.terms import regimes
-from cellfuncs.terms.priced import change
+from cellfuncs.terms.priced import change, on_pressure_drop
 from cellfuncs.terms.table import MOMENTUM_TERMS, TERMS, sizes
 
 _MOST = 2048
@@ -50,6 +50,9 @@ def _without(block: Any, term: str, answer: str) -> tuple[float, str]:
         raise CaseRefused(
             f"a {case.flow} has no {wanted}; write one of: {', '.join(answers_of(case.flow))}", argument="answer"
         )
+    if term in MOMENTUM_TERMS and wanted == "pressure drop":
+        s = next(s for s in sizes(solution, "momentum") if s.term == term)
+        return on_pressure_drop(solution, s).change, wanted
     if term not in TERMS:
         equation = "momentum; its size stands in CF_TERMS" if term in MOMENTUM_TERMS else "the sum of several terms"
         raise NoModel(f"no model gives the effect of {term}, a term of {equation}", argument="term")

@@ -10,7 +10,7 @@ from cellfuncs.cases import labels
 from cellfuncs.cases.case import Case
 from cellfuncs.cases.vary import places, start_of, with_value
 from cellfuncs.errors import CaseRefused, NoModel, OutOfRange
-from cellfuncs.terms.priced import change
+from cellfuncs.terms.priced import change, on_pressure_drop
 from cellfuncs.terms.size import percent
 from cellfuncs.terms.table import MOMENTUM_TERMS, TERMS, equation_of, judged, sizes
 from cellfuncs.terms.verdicts import Judged
@@ -64,10 +64,14 @@ def effect_limit(case: Case, vary: str, term: str, level: float, words: Callable
     def changed(x: float) -> float:
         solution = solve(with_value(case, vary, x))
         size = next((s for s in sizes(solution, equation_of(term)) if s.term == term), None)
-        if size is None or size.term in MOMENTUM_ONLY:
+        if size is None:
             raise NoModel(f"no model gives an effect of {term} by itself; give a share, such as 0.05", argument="level")
+        momentum = size.term in MOMENTUM_ONLY
+        if momentum and (solution.case.answer != "pressure drop" or size.leading):
+            raise NoModel(f"no model gives an effect of {term} on this answer; give a share, such as 0.05", "level")
         try:
-            return abs(change(solution, size).change)
+            found = on_pressure_drop(solution, size) if momentum else change(solution, size)
+            return abs(found.change)
         except NoModel as error:
             if error.argument != "term" or not size.leading:
                 error.argument = "level"

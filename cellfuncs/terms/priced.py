@@ -9,6 +9,8 @@ from cellfuncs.terms.size import Size, num, percent
 
 NO_MODEL = "no model"
 NOT_LEFT_OUT = "never left out"
+# terms of momentum that pressure pays for along a duct, and how far that may be off
+_PAID = {"inertia": 0.3, "storage": 0.1, "buoyancy": 0.3}
 _FEW_DIGITS = 3
 _TINY = 1e-5  # a share
 _UNITS = {
@@ -94,6 +96,29 @@ def together(solution: Solution, terms: Sequence[str]) -> tuple[float | None, fl
     kelvins = [e.kelvins for e in found if e.kelvins is not None]
     names = ", ".join(dict.fromkeys(e.model for e in found))
     return sum(ratios) if ratios else None, sum(kelvins) if kelvins else None, rest, names
+
+
+def on_pressure_drop(solution: Solution, s: Size) -> effects.Effect:
+    """The change of a duct's pressure drop without a term of the momentum equation: along a duct of one section the
+    pressure pays for each of them, size times length."""
+    if solution.case.flow != "duct" or s.term not in _PAID:
+        raise NoModel(f"no model gives what {s.term} does to the pressure drop of a {solution.case.flow}", "term")
+    a = solution.answers
+    drop = abs(a.pressure_drop)
+    return effects.Effect("pressure drop", -s.size * a.length, drop, 0.0, _PAID[s.term], "balance of momentum")
+
+
+def priced_momentum(solution: Solution, sizes: Sequence[Size]) -> dict[str, Priced | str]:
+    """Term -> its effect on the pressure drop, where that is the answer and the flow is a duct's."""
+    if solution.case.answer != "pressure drop":
+        return {}
+    found: dict[str, Priced | str] = {}
+    for s in sizes:
+        try:
+            found[s.term] = NOT_LEFT_OUT if s.leading else in_words(on_pressure_drop(solution, s))
+        except CellfuncsError:
+            continue
+    return found
 
 
 def change(solution: Solution, s: Size, answer: str | None = None) -> effects.Effect:

@@ -61,7 +61,9 @@ def _judged(
     sizes_of = _sizes_of(case.flow, equation)
     sizes = sizes_of(solution)
     if equation != "energy":
-        return judge(sizes, case.tolerance, case.smallest), {}, uncertainty_of(solution, sizes, sizes_of)
+        effects = priced.priced_momentum(solution, sizes)
+        uncertain = uncertainty_of(solution, sizes, sizes_of)
+        return judge(sizes, case.tolerance, case.smallest, effects, relative(uncertain)), effects, uncertain
     effects = priced.priced(solution, sizes, quickly_for)
     uncertain = {} if quickly_for else uncertainty_of(solution, sizes, sizes_of)
     return judge(sizes, case.tolerance, case.smallest, effects, relative(uncertain)), effects, uncertain
@@ -86,7 +88,7 @@ def term_rows(solution: Solution, equation: str = "energy") -> list[Row]:
     terms, effects, uncertain = _judged(solution, equation)
     survives = survival(solution, terms, _sizes_of(solution.case.flow, equation), effects, uncertain)
     rows = [_row(j, survives.get(j.size.term), effects.get(j.size.term, NO_MODEL)) for j in terms]
-    return [*rows, _together(solution, terms)]
+    return [*rows, _together(solution, terms, equation)]
 
 
 def _row(j: Judged, survives: Survival | None, effect: priced.Priced | str) -> Row:
@@ -101,7 +103,7 @@ def _row(j: Judged, survives: Survival | None, effect: priced.Priced | str) -> R
     return j.size.term, j.size.one_scale, share, shown, j.verdict, "; ".join(filter(None, parts))
 
 
-def _together(solution: Solution, judged: list[Judged]) -> Row:
+def _together(solution: Solution, judged: list[Judged], equation: str) -> Row:
     tolerance = solution.case.tolerance
     out = left_out(judged)
     share = sum(j.share for j in out)
@@ -111,7 +113,11 @@ def _together(solution: Solution, judged: list[Judged]) -> Row:
     names = ", ".join(f"{j.size.term} with pressure work" if j.size.pair else j.size.term for j in out)
     if not names:
         return ALL_LEFT_OUT, one_scale, 0.0, 0.0, LEAVE_OUT, "only terms that the case as stated does not have"
-    ratio, kelvins, rest, models = priced.together(solution, [j.size.term for j in out])
+    ratio, kelvins, rest, models = None, None, [], ""
+    if equation == "energy":
+        ratio, kelvins, rest, models = priced.together(solution, [j.size.term for j in out])
+    elif all(j.effect is not None for j in out):
+        ratio, models = sum(j.weight for j in out), "balance of momentum"
     by_share = [j for j in out if j.size.term in rest]
     effect: float | str = NO_MODEL
     reason = f"{names}: shares {percent(share)} together, tolerance {percent(tolerance)}"

@@ -59,6 +59,20 @@ def test_answers_in_their_units(cf):
     assert cf("WITHOUT", PLATE, "viscous heating", "coefficient") > 0
 
 
+def test_the_entrance_in_the_pressure_drop(cf):
+    """Inertia of a tube's laminar entrance: 1.25 dynamic heads (Shah and London 1978)."""
+    block = [*METAL, ["answer", "pressure drop"]]
+    entrance = 1.25 * 850.0 * 0.03**2 / 2
+    assert cf("WITHOUT", block, "inertia") == pytest.approx(-entrance, rel=1e-9)
+    assert cf("WITHOUT", METAL, "inertia", "pressure drop", "mbar") == pytest.approx(-entrance / 100.0, rel=1e-9)
+    drop = cf("CASE", METAL, "pressure drop")
+    row = next(row for row in cf("TERMS", block, "momentum") if row[0] == "inertia")
+    assert row[3] == pytest.approx(entrance / drop, rel=1e-9) and row[4] == "keep"
+    found = cf("TERM_LIMIT", block, "inertia", "velocity", "0.1 Pa")
+    assert found == pytest.approx(0.03 * math.sqrt(0.1 / entrance), rel=1e-9)
+    assert "pressure drop" in cf("WITHOUT", block, "gravity")
+
+
 def test_what_is_upstream_decides_size_and_sign(cf):
     """Heat that runs back warms an insulated inlet length and the stream with it; a fixed inlet takes it away."""
     short = cf("VARY", cf("VARY", METAL, "length", 5.0, "mm"), "velocity", 0.05, "m/s")
