@@ -10,6 +10,8 @@ from cellfuncs.checks.stated import SheetCase, Stated
 
 # how many relations one behind the other: fewer for a typed number, which is mostly an input
 _DEEPEST, _DEEPEST_TYPED = 3, 1
+# relative: a formula that names no property has it as a constant, 500 Btu/h for a gpm and °F, good for some temperature
+_CONSTANT = 0.05
 
 
 @dataclass(frozen=True)
@@ -100,6 +102,8 @@ class Resolver:
             if tight:
                 cells = frozenset().union(*(r.cells for r in inputs.values()))
                 scatter = tight[0].scatter + sum(r.scatter for r in inputs.values())
+                if relation.source == "properties" and not owner.typed:
+                    scatter = max(scatter, _CONSTANT)
                 yield Resolved(tight[0].value, cells, scatter)
 
     def inputs(

@@ -54,7 +54,9 @@ class Trial:
             return 1.0
         if not self.support:
             return 0.0
-        known = self.support.union(*(self.references.above(cell) for cell in self.support))
+        own = self.references.above(self.entry.cell)
+        # what stands behind an input that the formula itself rests on is used through it
+        known = self.support.union(*(self.references.above(cell) for cell in self.support & own))
         unread = self.references.unread(self.entry.cell)
         return sum(e.cell in known for e in direct) / (len(direct) + unread)
 

@@ -129,7 +129,7 @@ def answers(case: SheetCase, given: Mapping[str, Any], gives: tuple[str, ...]) -
         value, outside = found
         if not outside:
             right.append(Admissible(value, method.name, SAME))
-        else:
+        elif named or all(given.get(key) is not None for key in method.where):
             regime = _regime_missed(method, given, _applying(case, given, gives))
             code = "wrong-regime" if regime else "outside-range"
             wrong.append(Admissible(value, outside, SAME, code))
