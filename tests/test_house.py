@@ -45,6 +45,7 @@ NEVER_AT_IMPORT = {
     "formualizer",
     "iapws",
     "jinja2",
+    "distributed",
 }
 LONGEST_FILE = 400
 LONG_WITH_REASON: dict[str, str] = {}

@@ -80,11 +80,12 @@ def test_name_version_and_licence(wheel, metadata):
 
 
 def requirements(metadata) -> dict[str, str]:
-    """Package -> version bounds, without those of the tests."""
+    """Package -> version bounds, also those for a cluster, without those of the tests."""
     found = {}
     for line in metadata.get_all("Requires-Dist"):
-        if "extra ==" not in line:
-            name, bounds = re.fullmatch(r"([A-Za-z0-9_.-]+)\s*(.*)", line).groups()
+        wanted, _, extra = line.partition(";")
+        if "extra" not in extra or "cluster" in extra:
+            name, bounds = re.fullmatch(r"([A-Za-z0-9_.-]+)\s*(.*)", wanted.strip()).groups()
             found[name.lower()] = bounds
     return found
 

@@ -32,7 +32,7 @@ class Run:
     @property
     def is_many(self) -> bool:
         """Whether outcomes are told in one table, and kept for going on; otherwise each workbook is told in full."""
-        return bool(self.summary or self.scheduler) or any(Path(name).is_dir() for name in self.named)
+        return bool(self.summary or self.scheduler is not None) or any(Path(name).is_dir() for name in self.named)
 
     @property
     def wanted(self) -> tuple[str, ...]:
@@ -143,7 +143,7 @@ def _going_on(state: states.State) -> str:
 
 
 def _answers(run: Run, files: Sequence[Found], screen: Screen | None) -> Iterator[Answer]:
-    if run.scheduler:
+    if run.scheduler is not None:
         from cellfuncs.sheets.many.cluster import answers_from
 
         return answers_from(run.scheduler, files, run.wanted, screen)

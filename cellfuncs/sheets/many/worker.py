@@ -14,6 +14,7 @@ import signal
 import subprocess
 import sys
 import threading
+from importlib import import_module
 from typing import Any
 
 from cellfuncs.books.child import GRACE, MEMORY, bound_memory, ended, own_memory, start_of, started
@@ -21,6 +22,8 @@ from cellfuncs.sheets.many.one import Answer, Task, checked_one, failed
 
 SECONDS = 120.0  # for one file; the largest that are let in need a quarter of it
 START = 120.0  # s, for the imports on a machine that is busy
+FOR_MANY = ("CoolProp.CoolProp", "scipy.optimize")
+_ALWAYS = ("formualizer", "cellfuncs.sheets.check")
 _START = start_of("cellfuncs.sheets.many.worker")
 _GROWN = 4  # a process that has grown by this part of the memory is replaced
 # what reading an answer raises that is cut off, or none
@@ -41,11 +44,11 @@ class Ended(Exception):
 class Worker:
     """A worker of its own process. ``check`` is for one thread, ``stop`` for any.
 
-    One ``is_for_many`` imports beforehand what not every workbook needs.
+    One that is for many workbooks imports beforehand what only most of them need.
     """
 
     def __init__(self, seconds: float | None = None, memory: int | None = None, is_for_many: bool = True) -> None:
-        self.is_for_many = is_for_many
+        self.imports = FOR_MANY if is_for_many else ()
         self.seconds = SECONDS if seconds is None else seconds
         self.memory = MEMORY if memory is None else memory
         self._process: subprocess.Popen | None = None
@@ -94,7 +97,7 @@ class Worker:
             if self._process is not None:
                 return self._process
             process = self._process = started(_START)
-        self._heard(process, START, (self.seconds, self.memory, self.is_for_many))
+        self._heard(process, START, (self.seconds, self.memory, self.imports))
         return process
 
     def _heard(self, process: subprocess.Popen, seconds: float, said: Any) -> Any:
@@ -145,8 +148,9 @@ def main() -> None:
         outgoing.flush()
 
     try:
-        seconds, memory, is_for_many = pickle.load(sys.stdin.buffer)
-        _imports(is_for_many)
+        seconds, memory, imports = pickle.load(sys.stdin.buffer)
+        for name in (*_ALWAYS, *imports):  # so that their size and their time are not counted as a file's
+            import_module(name)
         bound_memory(memory)
         own = own_memory()
         tell(None, False)  # ready
@@ -171,14 +175,3 @@ def _bound_time(seconds: float) -> None:
     if hasattr(signal, "setitimer"):
         signal.signal(signal.SIGALRM, signal.SIG_DFL)
         signal.setitimer(signal.ITIMER_REAL, seconds)
-
-
-def _imports(is_for_many: bool) -> None:
-    """What is needed, so that its size and its time are not counted as a file's."""
-    import formualizer  # noqa: F401
-
-    from cellfuncs.sheets import check  # noqa: F401
-
-    if is_for_many:
-        from CoolProp import CoolProp  # noqa: F401
-        from scipy import optimize  # noqa: F401
