@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import os
 from collections.abc import Iterable, Sequence
 from dataclasses import replace
 from pathlib import Path
@@ -39,7 +40,7 @@ def check_book(path: str | Path | bytes, name: str = "") -> Report:
 
 def checked(reading: Reading) -> Report:
     """The report on a workbook that was read."""
-    found, agreed = judge(reading.cases, reading.graph)
+    found, agreed, broken = _judged(reading)
     findings = _together(found, units.findings(reading), {cell for cell, _ in agreed})
     findings += [f for f in own_formulas.findings(reading) if f.cell not in {other.cell for other in findings}]
     final = _final(reading)
@@ -54,7 +55,7 @@ def checked(reading: Reading) -> Report:
     findings.sort(key=lambda f: (SEVERITIES.index(f.severity), order.get(f.cell, len(order))))
     wrong = {f.cell for f in findings} | {cell for f in findings for cell in f.inherited if f.severity == "error"}
     words = {cell: labels.dictionary()[q.stated.key].label for cell, q in reading.quantities.items()}
-    notes = reading.notes.notes[:MOST_NOTES]
+    notes = [*broken, *reading.notes.notes][:MOST_NOTES]
     if not reading.quantities:
         notes = [*notes, ("", "no quantity was recognised in this workbook")]
     changes = {f.cell: found for f in findings[:_MOST_FOLLOWED] if (found := consequences.of(f))}
@@ -71,6 +72,32 @@ def checked(reading: Reading) -> Report:
         changes=changes,
         units={cell: quantity.stated.unit for cell, quantity in reading.quantities.items()},
     )
+
+
+def _judged(reading: Reading) -> tuple[list[Finding], list[tuple[str, str]], list[tuple[str, str]]]:
+    """Findings and cells that agree; cases that the program itself breaks off at, told as remarks.
+
+    One strange case must not take the rest of the report along.
+    """
+    try:
+        return *judge(reading.cases, reading.graph), []
+    except Exception:
+        if os.environ.get("CELLFUNCS_TRACEBACK"):
+            raise
+    found: list[Finding] = []
+    agreed: list[tuple[str, str]] = []
+    broken: list[tuple[str, str]] = []
+    for case in reading.cases:
+        try:
+            findings, agrees = judge([case], reading.graph)
+        except Exception as error:
+            first = next((entry.cell for entry in case.all()), "")
+            why = f"{type(error).__name__}: {error}"
+            broken.append((first, f"{case.name}: not recomputed, an error of the program itself ({why})"[:200]))
+            continue
+        found += findings
+        agreed += agrees
+    return found, agreed, broken
 
 
 def _together(recomputed: Iterable[Finding], of_units: Iterable[Finding], agreed: set[str]) -> list[Finding]:

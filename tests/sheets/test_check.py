@@ -242,6 +242,32 @@ def test_markup_in_a_workbook_is_no_markup_on_the_terminal(make_book, tmp_path, 
     assert "\x1b[" not in capsys.readouterr().out
 
 
+def test_one_strange_case_does_not_take_the_rest_along(make_book, monkeypatch):
+    from cellfuncs.sheets import check
+    from cellfuncs.sheets.reporting import chart
+
+    real = check.judge
+
+    def breaks(cases, graph):
+        if any(case.name == "Pump 1" for case in cases):
+            raise ZeroDivisionError("division by zero")
+        return real(cases, graph)
+
+    monkeypatch.setattr(check, "judge", breaks)
+    monkeypatch.setattr(chart, "_drawn", breaks)
+    cells = {}
+    for number, column in enumerate("AE"):
+        value, unit = (("B", "C"), ("F", "G"))[number]
+        cells |= {f"{column}1": f"Pump {number + 1}"}
+        rows = [("Flow", 10.0, "m³/h"), ("Head", 20.0, "m"), ("Density", 998.0, "kg/m³")]
+        for row, (label, amount, written) in enumerate([*rows, ("Hydraulic power", 9.9, "kW")], 2):
+            cells |= {f"{column}{row}": label, f"{value}{row}": amount, f"{unit}{row}": written}
+    report = check_book(make_book(cells))
+    assert [finding.cell for finding in report.findings] == ["Sheet1!F5"]
+    assert any("not recomputed" in why and "ZeroDivisionError" in why for _, why in report.not_understood)
+    assert "an error of the program itself" in as_html(report)
+
+
 def test_the_report_is_plain_values(make_book):
     import pickle
 

@@ -33,6 +33,15 @@ class Drawing(NamedTuple):
 
 def drawing_of(case: SheetCase) -> Drawing:
     """The terms of the case that a sheet states, judged and drawn."""
+    try:
+        return _drawn(case)
+    except CellfuncsError as error:
+        return Drawing(case.name, "", str(error))
+    except Exception as error:  # a chart that cannot be drawn must not take the report along
+        return Drawing(case.name, "", f"an error of the program itself ({type(error).__name__})")
+
+
+def _drawn(case: SheetCase) -> Drawing:
     from cellfuncs.answers import solve
     from cellfuncs.checks.neglected import case_of
     from cellfuncs.terms import table
