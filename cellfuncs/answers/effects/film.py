@@ -6,13 +6,13 @@ from cellfuncs.answers.gap import GapAnswers
 from cellfuncs.errors import CellfuncsError, NoModel
 
 _POINTS = 9  # viscosities over the film's temperatures
-_CARRIED = 5.0  # Uh²/(αL) up to which a film is warm over most of its length; the mean effect is a fifth of it
+_DEVELOPING_SPREAD = 0.3  # of what is not yet developed: walls apart, and a viscosity that changes on the way
 _MARGIN = 1.0  # K above what a constant viscosity would give
 _WEAK = 1e-3  # relative change of the viscosity that is none
 
 
 class HeatedFilm(EffectModel):
-    """The film between walls of given temperatures; with the substance's own viscosities where it has them."""
+    """The film between walls of given temperatures, at its end; with the viscosities of the substance."""
 
     name = "heated film, solved"
     terms = frozenset({"viscous heating", SOURCE})
@@ -24,12 +24,11 @@ class HeatedFilm(EffectModel):
             raise NoModel("no sheared gap")
         self.solution, self.a = solution, a
         self.unit = a.difference  # K
-        carried = a.velocity * a.gap**2 / (a.properties.diffusivity * a.length)
-        if carried > _CARRIED:
-            raise NoModel(
-                f"a developed film is solved; this one is carried off before heat crosses it, Uh²/(αL) = {carried:.3g}"
-            )
-        self.spread = carried / _CARRIED
+        from cellfuncs.models.developing_film import developing
+
+        # heat is carried off before it has crossed a short film: part of the developed values is reached at its end
+        self.part = developing(a.properties.diffusivity * a.length / (a.velocity * a.gap**2))
+        self.spread = _DEVELOPING_SPREAD * (1.0 - min(self.part.peak, 1.0))
         self.thinning, self.reference = self._viscosities()
 
     def _viscosities(self):
@@ -61,11 +60,15 @@ class HeatedFilm(EffectModel):
             gap.Gap(self.thinning, 0.0, a.walls_apart / self.unit, source=q * a.gap**2 / (p.conductivity * self.unit)),
             heating,
         )
+        apart, part = a.walls_apart / self.unit, self.part
+        off = film.error + part.error * abs(film.peak - apart)
         if answer == PEAK:
-            return film.peak * self.unit, (film.peak + film.error) * self.unit
+            peak = apart + part.peak * (film.peak - apart)
+            return peak * self.unit, (peak + off) * self.unit
         if answer == FLUX:
             over = p.conductivity * self.unit / a.gap
-            return film.low_flux * over, (film.low_flux + film.error) * over
+            flux = apart + max(part.low_flux, part.high_flux) * (film.low_flux - apart)
+            return flux * over, (flux + 4.0 * off) * over
         raise NoModel(f"{self.name}: {answer} is not solved")
 
     def base(self, answer: str, without: float) -> float | None:

@@ -157,8 +157,8 @@ def test_a_film_thins_as_it_warms():
     found = effects.effect(solution, "viscous heating")
     constant = solution.answers.full_rise / 8.0
     assert 0.7 * constant < -found.change < 0.99 * constant
-    with pytest.raises(NoModel, match="carried off before heat crosses it"):
-        effects.effect(solved(rows, length=(0.003, "m")), "viscous heating")
+    short = effects.effect(solved(rows, length=(0.01, "m")), "viscous heating")
+    assert 0.2 < short.change / found.change < 0.9 and short.spread > 0.05  # carried off before heat has crossed it
 
 
 def test_a_body_with_a_source_by_hand():
