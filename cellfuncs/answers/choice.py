@@ -241,6 +241,8 @@ def number(method: Method, view: View) -> float:
         result = math.nan
     if isinstance(result, complex) or not math.isfinite(result):
         raise OutOfRange(f"{method.name} has no finite value here")
+    if result <= 0 and method.gives in (*NUSSELT, *FRICTION, *DROP):
+        raise OutOfRange(f"{method.name} has no value here, its formula gives {result:.4g}")
     return float(result)
 
 

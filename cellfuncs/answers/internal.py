@@ -27,6 +27,7 @@ FRICTION_FACTORS = (
     "temperature correction of turbulent friction",
 )
 ANNULUS_FACTOR = "Petukhov-Roizen"
+_NOTHING = 5e-3  # a factor nearer to 1 is not spoken of
 RATIOS = frozenset(("viscosity_ratio", "prandtl_ratio", "temperature_ratio"))
 
 
@@ -104,6 +105,10 @@ class Internal(Passage):
             return self.case.get("coefficient"), 1.0, ""
         nusselt, view = self._nusselt(state, name)
         factor, words = self._factor(state, name, NUSSELT_FACTORS)
+        if abs(factor - 1.0) < _NOTHING:
+            words = ""
+        if name in METHODS and self._section_factor(METHODS[name], view) != 1.0:
+            words = " and ".join(filter(None, (words, f"that of the annulus by {ANNULUS_FACTOR}")))
         return factor * nusselt * view.p.conductivity / view.length, factor, words
 
     def _nusselt(self, state: Inputs, name: str) -> tuple[float, View]:
