@@ -4,6 +4,7 @@ A ``Passage`` is a case of a duct, a bank, a bed or a film as methods see it; it
 knows, how its coefficient and its friction come from methods, and what answers they make.
 """
 
+from abc import ABC, abstractmethod
 from collections.abc import Callable
 from dataclasses import dataclass, replace
 from typing import Any
@@ -41,7 +42,7 @@ class Values:
     words: str = ""
 
 
-class Passage:
+class Passage(ABC):
     """A case with a stream that exchanges along it."""
 
     wanted = choice.NUSSELT
@@ -108,18 +109,21 @@ class Passage:
 
     # -- answers, of the flow kinds ---------------------------------------------------------
 
+    @abstractmethod
     def shape(self, p: Properties) -> Duct:
-        raise NotImplementedError
+        """The section at a state of the fluid."""
 
+    @abstractmethod
     def values(self, state: Inputs, chosen: Chosen) -> Values:
-        raise NotImplementedError
+        """Coefficient and friction of a state with methods chosen before."""
 
+    @abstractmethod
     def coefficient(self, state: Inputs, name: str) -> tuple[float, float, str]:
         """Film coefficient [W/(m2 K)] by a method, the factor of changing properties in it, and that factor's name."""
-        raise NotImplementedError
 
+    @abstractmethod
     def answers(self, **known: Any) -> Any:
-        raise NotImplementedError
+        """The answers of the flow kind."""
 
 
 def solve_passage(passage: Passage) -> Any:

@@ -4,6 +4,7 @@ Everything is as in a duct, with a the exchanging surface per volume of the stre
 """
 
 import math
+from abc import abstractmethod
 from dataclasses import dataclass
 from typing import Any
 
@@ -47,8 +48,9 @@ class _Through(Passage):
     def size(self, p: Properties) -> float:
         return self.lengths[""]
 
+    @abstractmethod
     def per_volume(self, p: Properties) -> float:
-        raise NotImplementedError
+        """Exchanging surface per volume of the stream [1/m]."""
 
     def area(self, p: Properties) -> float | None:
         return self.case.get("flow_area")
