@@ -11,6 +11,7 @@ from math import isclose, log10, pi
 from cellfuncs.quantities.kinds import read_dimension
 from cellfuncs.sources import read_table
 
+_ROUND = (10.0, 100.0, 0.1, 0.01)
 CLOSE = 0.006  # relative: constants written with three digits
 MOST_LITERALS = 10
 
@@ -65,17 +66,31 @@ def converts(value: float) -> bool:
     return value != 0 and any(isclose(v, f, rel_tol=1e-4) for v in (abs(value), 1 / abs(value)) for f in factors())
 
 
+_PLAIN = (1, 2, 3, 4, 6, 8, 12, 16, 24, 32, 64)
+
+
 @lru_cache(maxsize=4096)
 def is_plain(value: float) -> bool:
-    """Whether a number is a plain one or a conversion: a small whole number or its part, π, a power of ten."""
+    """Whether a number carries no unit for sure: one of formulas of geometry and definitions (2, 3/4, π/4), a power of
+    ten, a conversion, or a coefficient of a known correlation. All others may be a value with a unit, typed in."""
     size = abs(value)
-    if size == 0 or (size <= 100 and size == int(size)) or (size < 1 and isclose(1 / size, round(1 / size))):
+    if size == 0 or converts(size) or any(isclose(size, n, rel_tol=1e-4) for n in (*_loose(), *coefficients())):
         return True
-    if converts(size) or any(isclose(size, n, rel_tol=1e-4) for n in (*_loose(), *coefficients())):
+    if isclose(log10(size), round(log10(size)), abs_tol=1e-9):
         return True
-    if isclose(log10(size), round(log10(size)), abs_tol=1e-9) or isclose(size, round(2 * size) / 2):
-        return True
-    return any(isclose(size, n * pi / d, rel_tol=1e-3) for n in (1, 2, 4) for d in (1, 2, 4, 6, 8, 16, 32))
+    return any(isclose(size, ratio * by, rel_tol=1e-3) for ratio in _ratios() for by in (1.0, pi, 1 / pi))
+
+
+@lru_cache(maxsize=1)
+def _ratios() -> frozenset[float]:
+    return frozenset(above / below for above in _PLAIN for below in _PLAIN)
+
+
+@lru_cache(maxsize=4096)
+def may_carry_a_unit(value: float) -> bool:
+    """Whether a number may be a value with a unit that was typed in: also 10 or 0.01, which else convert."""
+    size = abs(value)
+    return not is_plain(value) or any(isclose(size, n) for n in _ROUND)
 
 
 @lru_cache(maxsize=4096)

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import math
 from collections.abc import Iterator
+from itertools import combinations
 
 from cellfuncs.checks.finding import Finding
 from cellfuncs.checks.stated import Stated
@@ -17,7 +18,7 @@ from cellfuncs.sheets.dimensions.measure import TEMPERATURE, Measure, alike
 from cellfuncs.sheets.inherited.reading import Reading
 
 SOURCE = "units carried through the formula (NIST SP 811, 2008)"
-_LEAST = 0.4  # numbers from here to its reciprocal may be margins and efficiencies
+_LEAST = 0.7  # numbers from here to its reciprocal may be margins and efficiencies
 _DIFFERENT_ZERO = 1.0  # K
 
 
@@ -53,11 +54,14 @@ def compared(derived: Measure, stated: Measure, entry: Stated) -> Problem | None
     if not alike(derived.dimension, stated.dimension):
         carried = _carried(derived, stated)
         if carried is None:
-            if derived.odd or any(power != round(power) for power in derived.dimension):
+            open_ones = any(constants.may_carry_a_unit(value) for value, _ in derived.literals)
+            if open_ones or any(power != round(power) for power in derived.dimension):
                 return None
             words = f"the formula gives {_of(derived)}, the cell states {KINDS[entry.kind].words} ({_unit(entry)})"
             return Problem("dimension-mismatch", words)
         factor, literals = carried
+        if len(derived.literals) - len(literals) > 1:
+            return None  # two numbers with units: what scale they have is a guess
     problem = _points(derived, stated, entry) or _marks(derived)
     return problem or _scale(factor, literals, stated, entry)
 
@@ -71,15 +75,25 @@ def _unit(entry: Stated) -> str:
 
 
 def _carried(derived: Measure, stated: Measure) -> tuple[float, m.Literals] | None:
-    """Scale and numbers left when a number in the formula carries a unit, such as 9.81; None where none does."""
-    for place, (value, power) in enumerate(derived.literals):
-        for constant in constants.constants():
-            if not math.isclose(value, constant.value, rel_tol=CLOSE):
-                continue
-            pairs = zip(derived.dimension, constant.dimension, strict=True)
-            if alike(tuple(a + power * b for a, b in pairs), stated.dimension):
-                rest = derived.literals[:place] + derived.literals[place + 1 :]
-                return derived.factor * constant.si**power, rest
+    """Scale and numbers left when one or two numbers in the formula carry a unit, such as 9.81; None where none do."""
+    found = [
+        (place, power, constant)
+        for place, (value, power) in enumerate(derived.literals)
+        for constant in constants.constants()
+        if math.isclose(value, constant.value, rel_tol=CLOSE)
+    ]
+    for chosen in (*combinations(found, 1), *combinations(found, 2)):
+        places = {place for place, _, _ in chosen}
+        if len(places) < len(chosen):
+            continue
+        dimension = derived.dimension
+        factor = derived.factor
+        for _, power, constant in chosen:
+            dimension = tuple(a + power * b for a, b in zip(dimension, constant.dimension, strict=True))
+            factor *= constant.si**power
+        if alike(dimension, stated.dimension):
+            rest = tuple(entry for place, entry in enumerate(derived.literals) if place not in places)
+            return factor, rest
     return None
 
 
