@@ -25,8 +25,8 @@ _REMEMBERED_TEXTS = 20_000
 BLANK = (None, "")
 ERROR_TEXTS = frozenset(
     ["#NULL!", "#DIV/0!", "#VALUE!", "#REF!", "#NAME?", "#NUM!", "#N/A", "#GETTING_DATA", "#SPILL!", "#CALC!",
-     "#BLOCKED!", "#FIELD!"]  # fmt: skip
-)
+     "#BLOCKED!", "#FIELD!"]
+)  # fmt: skip
 
 
 # The embedded engine's names of the same errors.
