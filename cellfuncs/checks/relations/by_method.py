@@ -30,6 +30,7 @@ _DEFAULTS: Mapping[str, Any] = {
     "temperature_ratio": 1.0,
     "prandtl_ratio": 1.0,
 }
+_RATIOS = ("viscosity_ratio", "temperature_ratio", "prandtl_ratio")
 # the plain shape of a flow kind, where the sheet names no other
 _SHAPES: Mapping[str | None, str] = {"duct": "straight", "cylinder": "circle"}
 
@@ -110,6 +111,17 @@ def _evaluate(method: Method, given: Mapping[str, Any]) -> tuple[float, str] | N
         return None
 
 
+def _without_corrections(method: Method, given: Mapping[str, Any], value: float) -> Iterator[Admissible]:
+    """The same where a sheet leaves out what corrects for a short tube or for changing properties."""
+    for names, words in ((("diameter_over_length",), "the entrance"), (_RATIOS, "changing properties")):
+        if not any(name in method.inputs for name in names):
+            continue
+        plain = {**given, **{name: 0.0 if name == "diameter_over_length" else 1.0 for name in names}}
+        found = _evaluate(method, plain)
+        if found and not found[1] and abs(found[0] / value - 1.0) > SAME:
+            yield Admissible(found[0], f"{method.name} without a factor for {words}", SAME)
+
+
 def _flipped(given: Mapping[str, Any]) -> dict[str, Any]:
     """The same with heating for cooling."""
     other = {"heating": "cooling", "cooling": "heating"}
@@ -129,6 +141,7 @@ def answers(case: SheetCase, given: Mapping[str, Any], gives: tuple[str, ...]) -
         value, outside = found
         if not outside:
             right.append(Admissible(value, method.name, SAME))
+            right += _without_corrections(method, given, value)
         elif named or all(given.get(key) is not None for key in method.where):
             regime = _regime_missed(method, given, _applying(case, given, gives))
             code = "wrong-regime" if regime else "outside-range"
@@ -140,7 +153,7 @@ def answers(case: SheetCase, given: Mapping[str, Any], gives: tuple[str, ...]) -
     if named:
         others = _applying(case, given, gives)
         wrong += _outside_of_regime([m for m in others if m not in named], given, others)
-    return [*right, *wrong, *_envelope(right, gives)]
+    return [*right, *wrong, *_envelope(right, gives, bool(named))]
 
 
 def _inside(methods: Iterable[Method], given: Mapping[str, Any], loose: bool) -> list[Admissible]:
@@ -174,14 +187,14 @@ def _other_exponents(case: SheetCase, given: Mapping[str, Any], methods: Iterabl
                 yield Admissible(found[0], words, SAME, "exponent-heating-cooling")
 
 
-def _envelope(right: list[Admissible], gives: tuple[str, ...]) -> list[Admissible]:
-    """One loose answer that spans the right ones with their scatter."""
+def _envelope(right: list[Admissible], gives: tuple[str, ...], named: bool) -> list[Admissible]:
+    """One loose answer that spans the right ones with their scatter; a method that is named has none to spare."""
     if not right:
         return []
     low, high = min(a.value for a in right), max(a.value for a in right)
     middle = (low + high) / 2.0
-    # one law alone, as in laminar flow, leaves no room
-    width = (high - low) / (2.0 * middle) + (LOOSE.get(gives[0], 0.1) if high > low * 1.001 else 0.02)
+    # one law alone, as in laminar flow, leaves no room either
+    width = (high - low) / (2.0 * middle) + (0.02 if named or high <= low * 1.001 else LOOSE.get(gives[0], 0.1))
     return [Admissible(middle, "methods that hold here", width, loose=True)]
 
 

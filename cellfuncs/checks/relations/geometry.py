@@ -136,6 +136,12 @@ def hydraulic_of_rectangle(width, height):
     return 2.0 * width * height / (width + height)
 
 
+@relation("circular equivalent of a rectangle", "hydraulic_diameter", derives=False, source="Huebscher 1948")
+def circular_equivalent(width, height):
+    """De = 1.30·(ab)^0.625/(a + b)^0.25, the round duct of the same loss at the same flow."""
+    return 1.30 * (width * height) ** 0.625 / (width + height) ** 0.25
+
+
 @relation("hydraulic diameter of an annulus", "hydraulic_diameter", derives=False)
 def hydraulic_of_annulus(diameter, core_diameter):
     """Dh = D − d."""
