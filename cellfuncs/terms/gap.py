@@ -40,7 +40,7 @@ def _across(a: GapAnswers, across: float) -> Size:
 
 
 def _advection(solution: Solution, a: GapAnswers, across: float) -> Size:
-    ratio = a.velocity * a.gap**2 / (a.properties.diffusivity * a.length)
+    ratio = _carried(a)
     kelvins = 3.0 * ratio * a.peak_rise if solution.case.answer == "peak temperature" and not a.walls_apart else None
     says = f"Uh²/(αL) = {num(ratio)}; the mean effect is about a fifth of that"
     return Size("advection", 1.0, ratio * across, says, kelvins=kelvins)
@@ -72,10 +72,26 @@ def _viscous(solution: Solution, a: GapAnswers) -> Size:
 
 
 def _asked(solution: Solution, a: GapAnswers, size: float) -> float | None:
-    """Heat made in the film changes the flux through a wall by half of itself, whatever else is large."""
-    if solution.case.answer != "local flux" or not a.walls_apart:
+    """What heat made in the film does to the answer, where another large term would dilute its share.
+
+    The flux through a wall changes by half of it; a peak by up to an eighth where another heat has made one already.
+    """
+    if not a.walls_apart:
         return None
-    return 0.5 * abs(size) * a.gap**2 / (a.properties.conductivity * a.walls_apart)
+    across = a.properties.conductivity * a.walls_apart / a.gap**2
+    over = abs(size) / across
+    if solution.case.answer == "local flux":
+        return 0.5 * over
+    q = solution.case.get("volumetric_source")
+    if q is None:
+        return None
+    largest = max(1.0, _carried(a), abs(q) / across, a.brinkman)
+    return max(over / largest, over / 8.0)
+
+
+def _carried(a: GapAnswers) -> float:
+    """Uh²/(αL), advection over conduction across."""
+    return a.velocity * a.gap**2 / (a.properties.diffusivity * a.length)
 
 
 def _feedback(solution: Solution) -> str:
