@@ -75,7 +75,7 @@ def picture(source: Path, wanted: tuple[int, ...], target: Path) -> None:
         for part in parts:
             whole.paste(part, (0, top))
             top += part.height
-        whole.quantize(64).save(target, optimize=True)
+        whole.quantize(128).save(target, optimize=True)
 
 
 def main() -> int:
