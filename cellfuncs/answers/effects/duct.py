@@ -64,6 +64,8 @@ class SolvedDuct(EffectModel):
             raise NoModel(f"tubes and plates are solved, not a section {a.shape.section}")
         if far_temperature(case) is not None or a.method == "stated":
             raise NoModel("the section is solved for a wall temperature or flux, with no coefficient stated")
+        if case.get("temperature_basis") == "stagnation":
+            raise NoModel("the section is solved in static temperatures")
         self.solution, self.a = solution, a
         self.laminar = a.reynolds <= LAMINAR_UP_TO
         self.name = "laminar duct, solved" if self.laminar else "turbulent duct, solved"
