@@ -357,6 +357,7 @@ def outside_rows() -> dict[str, Callable[[], Row]]:
     import check_bench as check
     import duct_bench as duct
     import effects_bench as effects
+    import many_bench as many
     import method_bench as method
     import spread_bench as spread
     from calc import bench as calc
@@ -370,9 +371,10 @@ def outside_rows() -> dict[str, Callable[[], Row]]:
     found |= {"s": row(method.table), "t": row(method.colebrook), "u": row(method.columns)}
     found |= {"v": row(effects.plate), "w": row(effects.still_plate), "x": row(effects.table)}
     found |= {"y": row(effects.whole_map), "z": row(check.targets)}
+    found |= {"A": row(many.typical_sheet), "B": row(many.many_formulas), "C": row(many.folder)}
     if calc.available():
         found |= {"i": row(calc.cells), "j": row(calc.column), "k": row(calc.opening)}
-    return dict(sorted(found.items()))
+    return dict(sorted(found.items(), key=lambda one: (one[0].isupper(), one[0])))
 
 
 ROWS |= outside_rows()
