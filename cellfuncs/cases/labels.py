@@ -151,11 +151,23 @@ def _sheet_index() -> tuple[dict[str, list[str]], dict[str, list[str]], dict[str
 @cache
 def in_sheets(label: str) -> tuple[str, ...]:
     """All keys that a label of somebody's sheet may stand for: by its name, as a symbol, as one in any case."""
+    return tuple(dict.fromkeys(key for place in _in_sheets(label) for key in place))
+
+
+@cache
+def as_written(label: str) -> frozenset[str]:
+    """Those of ``in_sheets`` that need no other case: F, but not f."""
+    names, symbols, _ = _in_sheets(label)
+    return frozenset((*names, *symbols))
+
+
+@cache
+def _in_sheets(label: str) -> tuple[tuple[str, ...], tuple[str, ...], tuple[str, ...]]:
     names, exact, loose = _sheet_index()
     if plain(label).startswith(_REMARKS):
-        return ("note",)
+        return ("note",), (), ()
     places = (names.get(plain(label)), exact.get(_symbol(label)), loose.get(_symbol(label).casefold()))
-    return tuple(dict.fromkeys(key for place in places for key in place or ()))
+    return tuple(tuple(place or ()) for place in places)
 
 
 def settle(label: str, keys: Iterable[str], unit: str, flow: str | None) -> str:

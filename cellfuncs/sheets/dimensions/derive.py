@@ -146,7 +146,7 @@ class Derivation:
     def _with_number(self, measure: Measure, number: float, sign: float) -> Measure:
         """A measure and a plain number: a change of the zero, or a number in the same unit."""
         if alike(measure.dimension, NONE):
-            return replace(measure, log_of=None, literals=()) if m.scaled_to(measure, 1.0) else UNKNOWN
+            return replace(measure, factor=1.0, log_of=None, literals=()) if m.scaled_to(measure, 1.0) else UNKNOWN
         mixed = measure.weight == 0.0 and abs(measure.shift) > 1.0
         if (m.is_point(measure) or mixed) and alike(measure.dimension, TEMPERATURE):
             shift = measure.shift - sign * number * measure.factor

@@ -17,6 +17,7 @@ LONGEST_LABEL = 90
 LONGEST_UNIT = 24
 LONGEST_SYMBOL = 9
 _WORD_LENGTH = 4
+_OTHER_CASE = 0.75  # how sure a symbol is whose case is another
 _NEAR = 90.0  # rapidfuzz ratio (0 to 100) from which a misspelt label counts as known
 
 _BRACKET = re.compile(r"\s*[\[({]([^\[\](){}]{1,30})[\])}]")
@@ -209,7 +210,10 @@ def known(text: str) -> tuple[Known, ...]:
         return ()
     exact = labels.in_sheets(text)
     if exact:
-        return tuple(Known(key, 1.0 - 0.001 * place) for place, key in enumerate(exact))
+        written = labels.as_written(text)
+        return tuple(
+            Known(key, (1.0 if key in written else _OTHER_CASE) - 0.001 * place) for place, key in enumerate(exact)
+        )
     words = _words(text)
     by_words = _by_words().get(frozenset(words), ())
     if not by_words and len(words) > 1:

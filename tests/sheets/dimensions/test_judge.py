@@ -30,6 +30,7 @@ PIPE = {
     "A23": "Pipe run", "B23": 20.0, "C23": "ft",
     "A24": "Reynolds number", "B24": 50000.0, "C24": "-",
     "A25": "Prandtl number", "B25": 7.0, "C25": "-",
+    "A26": "Time", "B26": 5.0, "C26": "min", "A27": "Time constant", "B27": 900.0, "C27": "s",
 }  # fmt: skip
 
 # label of the result, its unit, formula, code of the finding (None: nothing to report)
@@ -104,6 +105,9 @@ CASES = [
     ("Nusselt number", "-", "=0.023*B24^0.8*B25^0.4", None),
     ("Nusselt number", "-", "=LN(B1)", "dimension-mismatch"),
     ("Nusselt number", "-", "=EXP(B2)", "dimension-mismatch"),
+    ("Nusselt number", "-", "=EXP(0-(B26*60)/B27)", None),
+    ("Nusselt number", "-", "=1-EXP(-B26*60/B27)", None),
+    ("Nusselt number", "-", "=EXP(-B26/B27)", "unit-factor"),
     ("Nusselt number", "-", "=LN(B10+273.15)-LN(B9+273.15)", None),
     ("Heat transfer coefficient", "W/m²K", "=5.7+3.8*B1", None),  # empirical
     ("Heat transfer coefficient", "W/m²K", "=B24*B7/(B2/1000)", None),
