@@ -29,18 +29,26 @@ def found(named: Sequence[str | Path], left_out: Iterable[Path] = ()) -> list[Fo
 
     Folders ``left_out`` (those of the outputs) are not looked into, nor are links to folders followed.
     """
-    aside = {folder.resolve() for folder in left_out}
+    aside = {_real(folder) for folder in left_out}
     labels = _labels([Path(name) for name in named])
     seen: set[Path] = set()
     files = []
     for root, label in labels:
         listed = _walked(root, label, aside) if root.is_dir() else iter([Found(root, label)])
         for file in listed:
-            real = file.path.resolve()
+            real = _real(file.path)
             if real not in seen:
                 seen.add(real)
                 files.append(file)
     return files
+
+
+def _real(path: Path) -> Path:
+    """Where a path leads; itself where it leads in a circle."""
+    try:
+        return path.resolve()
+    except (OSError, RuntimeError):
+        return path.absolute()
 
 
 def _labels(roots: Sequence[Path]) -> list[tuple[Path, str]]:
@@ -65,7 +73,7 @@ def _walked(root: Path, label: str, aside: set[Path]) -> Iterator[Found]:
     refused: list[OSError] = []
     for folder, folders, names in os.walk(root, onerror=refused.append):
         here = Path(folder)
-        folders[:] = sorted(name for name in folders if (here / name).resolve() not in aside)
+        folders[:] = sorted(name for name in folders if _real(here / name) not in aside)
         for name in sorted(names):
             path = here / name
             if path.suffix.casefold() in ENDINGS and not name.startswith(_OPEN) and path.is_file():

@@ -279,6 +279,17 @@ def test_each_file_once(folder, tmp_path):
 
 
 @on_linux
+def test_links_lead_nowhere_twice(folder, seen, capsys):
+    """A link to a folder is not followed, one to a file that is there is the same file, circles are told."""
+    (folder / "again").symlink_to(folder)
+    (folder / "same.xlsx").symlink_to(folder / "a.xlsx")
+    (folder / "circle.xlsx").symlink_to(folder / "circle.xlsx")
+    assert [file.place for file in found([folder])] == ["a.xlsx", "c.xlsx", "deep/b.xlsx"]
+    code, _, err = check(capsys, folder / "circle.xlsx")
+    assert code == 2 and err.count("\n") == 1 and "circle.xlsx" in err
+
+
+@on_linux
 def test_names_that_are_no_unicode(folder, seen, tmp_path, right, capsys):
     os.makedirs(os.path.join(os.fsencode(folder), b"caf\xe9"))
     with open(os.path.join(os.fsencode(folder), b"caf\xe9", b"\xff.xlsx"), "wb") as file:
