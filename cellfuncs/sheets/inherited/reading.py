@@ -67,7 +67,7 @@ def _quantities(page: Page, facts: Facts, links: Links, notes: Judgement) -> lis
     for entry in sorted(entries, key=lambda e: e.spot):
         if not entry.in_text:
             entry.value /= page.shown(entry.spot).scale
-        settled = settle.options_for(entry, in_si, STANDARD_ATMOSPHERE)
+        settled = settle.options_for(entry, in_si, STANDARD_ATMOSPHERE, entry.spot in page.formulas)
         found.append(Quantity(page.name, entry, settled))
     return found
 

@@ -52,12 +52,18 @@ class Settled:
         )
 
 
-def options_for(found: Found, in_si: bool, atmosphere: float) -> Settled:
-    """All quantities that fit the label, the unit and the value of a number."""
+def options_for(found: Found, in_si: bool, atmosphere: float, computed: bool = False) -> Settled:
+    """All quantities that fit the label, the unit and the value of a number.
+
+    A temperature that a formula computed is one even below absolute zero: that is the fault to be found.
+    """
     settled = _fitting(found.names, found.units, in_si, atmosphere)
     if all(map(_possible, repeat(found.value), settled.options)):
         return settled
-    return Settled(tuple(option for option in settled.options if _possible(found.value, option)), settled.why)
+    possible = tuple(option for option in settled.options if _possible(found.value, option))
+    if not possible and computed and {option.kind for option in settled.options} == {"temperature"}:
+        return settled
+    return Settled(possible, settled.why)
 
 
 @lru_cache(maxsize=8192)
@@ -88,7 +94,7 @@ def _fitting(names: tuple[str, ...], units: tuple[str, ...], in_si: bool, atmosp
         return Settled((), "remark")
     if best:
         ranked = sorted(best.values(), key=lambda option: -option.score)
-        return Settled(tuple(ranked), f"no value of {labels.dictionary()[ranked[0].key].label}")
+        return Settled(tuple(ranked), f"{labels.dictionary()[ranked[0].key].label} cannot have this value")
     if misfits:
         return Settled((), f"{units[0]} is no unit of {' or '.join(dict.fromkeys(misfits))}")
     if unitless:
