@@ -20,6 +20,7 @@ from cellfuncs.methods import METHODS, Method, Range
 NUSSELT = ("mean Nu", "local Nu")
 FRICTION = ("Darcy friction factor",)
 DROP = ("pressure drop", "pressure gradient")
+_ROUNDING = 1e-12  # of a variable, at the end of a range
 _OPEN, _HALF_OPEN = 8.0, 4.0  # decades that a range counts for where it has no end, or one
 _CHOICE = 2.0  # decades that a condition on a choice is worth
 Conditions = tuple[tuple[str, tuple[str, ...]], ...]
@@ -130,7 +131,9 @@ def missed(method: Method, view: View) -> tuple[tuple[Range, float], ...]:
     found = []
     for r in method.ranges:
         value = view.of_symbol(r.variable)
-        if value is not None and not r.low <= value <= r.high:
+        if value is None or r.low <= value <= r.high:
+            continue
+        if not _distance(r, value) <= _ROUNDING:  # a Prandtl number of 0.5 may come out as 0.49999999999999994
             found.append((r, value))
     return tuple(found)
 
