@@ -111,10 +111,7 @@ SODIUM = CaseSheet(
         Effects(
             "The same terms, left out of the stream's temperature at the heater's end and of the wall's there.",
             (("outlet temperature", "K"), ("wall temperature", "K")),
-            (
-                ("conduction along", "velocity", "mm/s", "0.5 K", "outlet temperature"),
-                ("conduction along", "velocity", "mm/s", "0.5 K", "wall temperature"),
-            ),
+            (("conduction along", "velocity", "mm/s", "0.5 K", "wall temperature"),),
         ),
         RegimeMap(
             "conduction along",

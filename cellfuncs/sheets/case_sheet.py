@@ -208,10 +208,11 @@ class _Writer:
             self.style(bold=True, bottom=1, bottom_color=INK, indent=2),
         )
         sheet.write(top, 6, term, self.style(bold=True, bottom=1, bottom_color=INK, align="right"))
+        swept = f"{content.block}_values" if content.pages else content.block  # shares and effects know no ±
         measure = "" if content.sweep_measure == "share" else f',"{content.sweep_measure}"'
         for k, value in enumerate(values, start=1):
             sheet.write(top + k, 5, value, self.entry(align="left", indent=1))
-            formula = f'=CF_TERM(CF_VARY({content.block},"{label}",$F{top + k + 1},"{unit}"),"{term}"{measure})'
+            formula = f'=CF_TERM(CF_VARY({swept},"{label}",$F{top + k + 1},"{unit}"),"{term}"{measure})'
             sheet.write_formula(top + k, 6, formula, self.style(num_format=SHARES, bottom=4, bottom_color=LINE))
 
     def _terms(self, row: int) -> None:

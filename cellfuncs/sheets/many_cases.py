@@ -68,7 +68,7 @@ def _rows(sheet: Any, look: Look, content: ManyCases) -> int:
         sheet.write(at, 0, label, look.label())
         sheet.write(at, 1, unit, look.label())
         for column, value in enumerate(values, start=2):
-            sheet.write(at, column, value, look.entry(ruled=column == 2, align="right"))
+            sheet.write(at, column, value, look.entry(ruled=column == 2, align="right", indent=0, shrink=True))
     return _TOP - 1 + len(content.rows)
 
 
