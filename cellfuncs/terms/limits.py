@@ -12,8 +12,8 @@ from cellfuncs.cases.vary import places, start_of, with_value
 from cellfuncs.errors import CaseRefused, NoModel, OutOfRange
 from cellfuncs.terms.priced import change, on_pressure_drop
 from cellfuncs.terms.size import percent
-from cellfuncs.terms.table import MOMENTUM_TERMS, TERMS, equation_of, judged, sizes
-from cellfuncs.terms.verdicts import Judged
+from cellfuncs.terms.table import MOMENTUM_TERMS, TERMS, equation_of, sizes
+from cellfuncs.terms.verdicts import Judged, judge
 
 _MOST_SHOWN = 4
 MOMENTUM_ONLY = frozenset(MOMENTUM_TERMS) - frozenset(TERMS)
@@ -81,7 +81,8 @@ def effect_limit(case: Case, vary: str, term: str, level: float, words: Callable
 
 
 def _judged(solution: Solution, term: str) -> Judged:
-    for j in judged(solution, equation_of(term)):
+    # shares alone: the effects, which cost more, do not enter them
+    for j in judge(sizes(solution, equation_of(term)), solution.case.tolerance, solution.case.smallest):
         if j.size.term == term:
             return j
     raise NoModel(f'"{term}" is the sum of several terms; ask for one of them', argument="term")
