@@ -168,7 +168,10 @@ class Derivation:
                 return UNKNOWN
             self.problems.append(Problem("dimension-mismatch", f"adds {words(one)} and {words(other)}"))
             return UNKNOWN
-        factor = m.common_factor(one, other)
+        same = one.literals == other.literals
+        factor = one.factor if same and math.isclose(one.factor, other.factor, rel_tol=1e-9) else None
+        kept = one.literals if factor is not None else ()
+        factor = factor or m.common_factor(one, other)
         if factor is None:
             if one.odd or other.odd:
                 return UNKNOWN
@@ -184,6 +187,7 @@ class Derivation:
             factor,
             shift,
             weight,
+            literals=kept,
             empirical=one.empirical or other.empirical,
             marks=one.marks | other.marks,
         )

@@ -9,7 +9,7 @@ from __future__ import annotations
 import math
 from dataclasses import dataclass, replace
 
-from cellfuncs.sheets.dimensions.constants import CLOSE, Dimension, is_plain, subsets
+from cellfuncs.sheets.dimensions.constants import CLOSE, Dimension, converts, is_plain, subsets
 
 NONE: Dimension = (0.0,) * 6  # L M T Θ N I
 TEMPERATURE: Dimension = (0.0, 0.0, 0.0, 1.0, 0.0, 0.0)
@@ -166,13 +166,23 @@ def scaled_to(measure: Measure, factor: float) -> bool:
 
 
 def common_factor(one: Measure, other: Measure) -> float | None:
-    """The scale that two measures of one dimension can share; None where they cannot."""
-    if math.isclose(one.factor, other.factor, rel_tol=CLOSE) and not (one.literals and other.literals):
+    """The scale that two measures of one dimension can share; None where they cannot.
+
+    Of several the one that uses up the conversions written in both: 25 mm / 1000 is in metres.
+    """
+    if math.isclose(one.factor, other.factor, rel_tol=CLOSE) and not (one.literals or other.literals):
         return one.factor
-    mine = [one.factor / product for product, _ in subsets(one.literals)]
-    theirs = [other.factor / product for product, _ in subsets(other.literals)]
-    for factor in mine:
-        for another in theirs:
-            if math.isclose(factor, another, rel_tol=CLOSE):
-                return factor
-    return None
+    best: tuple[int, float] | None = None
+    for left, factor in _scales(one):
+        for more, another in _scales(other):
+            if math.isclose(factor, another, rel_tol=CLOSE) and (best is None or left + more < best[0]):
+                best = (left + more, factor)
+    return None if best is None else best[1]
+
+
+def _scales(measure: Measure) -> list[tuple[int, float]]:
+    """The scales that the numbers in a measure can make, each with how many conversions it leaves unused."""
+    converting = {place for place, (value, _) in enumerate(measure.literals) if converts(value)}
+    return [
+        (len(converting - set(places)), measure.factor / product) for product, places in subsets(measure.literals)
+    ]
