@@ -1,7 +1,7 @@
 """The effect of each term, ready for a verdict: what leaving it out does to the answer, or why that is not known."""
 
 from collections.abc import Mapping, Sequence
-from dataclasses import dataclass, replace
+from dataclasses import dataclass
 
 from cellfuncs.answers import Solution, effects
 from cellfuncs.errors import CellfuncsError, NoModel
@@ -9,6 +9,7 @@ from cellfuncs.terms.size import Size, num, percent
 
 NO_MODEL = "no model"
 NOT_LEFT_OUT = "never left out"
+SILENT = " "  # words of an effect whose verdict alone is wanted
 # terms of momentum that pressure pays for along a duct, and how far that may be off
 _PAID = {"inertia": 0.3, "storage": 0.1, "buoyancy": 0.3}
 _FEW_DIGITS = 3
@@ -31,16 +32,21 @@ class Priced:
     doubt: float  # relative: how far the effect may be off, by the model's physics and its error
     words: str
 
-    def scaled(self, factor: float) -> "Priced":
-        """The same effect in a case that differs a little."""
-        return replace(
-            self,
-            ratio=None if self.ratio is None else self.ratio * factor,
-            kelvins=None if self.kelvins is None else self.kelvins * factor,
-        )
+
+class Scaled:
+    """An effect in a case that differs a little: the same, changed as its share changes. Two thousand of them are made
+    for the ± of a case, so that it has no words."""
+
+    __slots__ = ("doubt", "kelvins", "ratio", "words")
+
+    def __init__(self, effect: Priced, factor: float):
+        self.ratio = None if effect.ratio is None else effect.ratio * factor
+        self.kelvins = None if effect.kelvins is None else effect.kelvins * factor
+        self.doubt = effect.doubt
+        self.words = SILENT if effect.words else ""
 
 
-Effects = Mapping[str, Priced | str]
+Effects = Mapping[str, Priced | Scaled | str]
 
 
 def priced(solution: Solution, sizes: Sequence[Size], quickly_for: str = "") -> dict[str, Priced | str]:

@@ -19,7 +19,7 @@ from cellfuncs.cases.block import SIGNED
 from cellfuncs.cases.case import Case
 from cellfuncs.cases.vary import with_value
 from cellfuncs.errors import CellfuncsError, OutOfRange
-from cellfuncs.terms.priced import Effects, Priced
+from cellfuncs.terms.priced import Effects, Priced, Scaled
 from cellfuncs.terms.size import Size
 from cellfuncs.terms.verdicts import Judged, judge
 
@@ -182,7 +182,7 @@ class _Sampling:
             for j, share in zip(self.judged, shares, strict=True):
                 effect = self.effects.get(j.size.term)
                 if isinstance(effect, Priced):
-                    effects[j.size.term] = effect.scaled(share / j.share) if j.share else effect
+                    effects[j.size.term] = Scaled(effect, share / j.share if j.share else 1.0)
         return [j.verdict for j in judge(sizes, self.case.tolerance, self.case.smallest, effects, self.relative)]
 
     def by_solving(self, draws: Any) -> dict[str, Survival]:

@@ -9,7 +9,7 @@ exceeds the tolerance, the largest comes back as borderline.
 from collections.abc import Mapping, Sequence
 from dataclasses import dataclass
 
-from cellfuncs.terms.priced import Effects, Priced
+from cellfuncs.terms.priced import SILENT, Effects, Priced, Scaled
 from cellfuncs.terms.size import Size, num, percent
 
 KEEP, BORDERLINE, LEAVE_OUT = "keep", "borderline", "leave out"
@@ -27,7 +27,7 @@ class Judged:
     verdict: str
     why: str
     by_kelvins: bool = False
-    effect: Priced | None = None
+    effect: Priced | Scaled | None = None
 
     @property
     def weight(self) -> float:
@@ -52,34 +52,43 @@ def judge(
     largest = max(s.size if s.nets_to is None else s.nets_to for s in sizes)
     judged = []
     for s in sizes:
-        effect = (effects or {}).get(s.term)
-        j = _one(s, largest, tolerance, smallest)
-        if isinstance(effect, Priced) and not s.leading:
-            j = _by_effect(j, effect, tolerance, smallest, (uncertainty or {}).get(s.term, 0.0))
-        judged.append(j)
+        effect = None if effects is None else effects.get(s.term)
+        if effect is None or isinstance(effect, str) or s.leading:
+            judged.append(_one(s, largest, tolerance, smallest))
+        else:
+            doubt = 0.0 if uncertainty is None else uncertainty.get(s.term, 0.0)
+            judged.append(_by_effect(s, _share(s, largest), effect, tolerance, smallest, doubt))
     _take_back(judged, tolerance, smallest)
     return judged
 
 
-def _by_effect(j: Judged, effect: Priced, tolerance: float, smallest: float, uncertainty: float) -> Judged:
+def _share(s: Size, largest: float) -> float:
+    return s.asked if s.asked is not None else s.size / largest if largest > 0 else 0.0
+
+
+def _by_effect(
+    s: Size, share: float, effect: Priced | Scaled, tolerance: float, smallest: float, uncertainty: float
+) -> Judged:
     """The verdict of a term whose effect is known."""
-    s, share, ratio, kelvins = j.size, j.share, effect.ratio, effect.kelvins
-    if not effect.words:  # the case does not have it
+    ratio, kelvins, words = effect.ratio, effect.kelvins, effect.words
+    if not words:  # the case does not have it
         return Judged(s, share, LEAVE_OUT, "", effect=effect)
-    why = effect.words + _apart(share, ratio, s)
+    silent = words == SILENT
+    why = words if silent else words + _apart(share, ratio, s)
     if kelvins is not None and kelvins < smallest and (ratio is None or ratio >= CLOSE_BELOW * tolerance):
-        return Judged(s, share, LEAVE_OUT, f"{why}; less than {num(smallest)} K that matters", True, effect)
+        why = why if silent else f"{why}; less than {num(smallest)} K that matters"
+        return Judged(s, share, LEAVE_OUT, why, True, effect)
     if ratio is None:
-        return Judged(s, share, KEEP, f"{why}; {num(smallest)} K matter", effect=effect)
-    low, high = CLOSE_BELOW, CLOSE_ABOVE
+        return Judged(s, share, KEEP, why if silent else f"{why}; {num(smallest)} K matter", effect=effect)
     wide = max(effect.doubt, _SURE * uncertainty)
     if uncertainty:  # then the ± decide what is close, not the fixed band
         low, high = 1.0 / (1.0 + wide), 1.0 + wide
     else:
-        low, high = min(low, 1.0 / (1.0 + wide)), max(high, 1.0 + wide)
+        low, high = min(CLOSE_BELOW, 1.0 / (1.0 + wide)), max(CLOSE_ABOVE, 1.0 + wide)
     place = ratio / tolerance
     if low <= place <= high:
-        return Judged(s, share, BORDERLINE, f"{why}; close to the tolerance {percent(tolerance)}", effect=effect)
+        why = why if silent else f"{why}; close to the tolerance {percent(tolerance)}"
+        return Judged(s, share, BORDERLINE, why, effect=effect)
     return Judged(s, share, LEAVE_OUT if place < low else KEEP, why, effect=effect)
 
 
@@ -93,7 +102,7 @@ def _apart(share: float, ratio: float | None, s: Size) -> str:
 
 
 def _one(s: Size, largest: float, tolerance: float, smallest: float) -> Judged:
-    share = s.asked if s.asked is not None else s.size / largest if largest > 0 else 0.0
+    share = _share(s, largest)
     if s.settled is not None:
         return Judged(s, share, s.settled, "")
     if s.leading:
@@ -108,10 +117,7 @@ def _one(s: Size, largest: float, tolerance: float, smallest: float) -> Judged:
     if s.thresholds:
         against = f"limits {num(low)} and {num(high)}"
     if share < low and s.uncancelled is not None and s.uncancelled > tolerance:
-        why = (
-            f"share {percent(share)} rests on a cancellation that is not sure; "
-            f"apart {percent(s.uncancelled)}"
-        )
+        why = f"share {percent(share)} rests on a cancellation that is not sure; apart {percent(s.uncancelled)}"
         return Judged(s, share, BORDERLINE, why)
     if share < low:
         return Judged(s, share, LEAVE_OUT, f"share {percent(share)}, below a third of {against}" if not s.thresholds

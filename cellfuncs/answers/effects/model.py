@@ -90,8 +90,18 @@ class EffectModel:
             known[answer, left] = self._solved(answer, left)
         return known[answer, left]
 
+    ignores_along = False  # set by ducts where conduction along is not followed
+
+    def _kept(self, answer: str) -> tuple[float, float]:
+        """The answer with every term, which all effects of a case share."""
+        known = self.__dict__.setdefault("kept", {})
+        key = answer, self.ignores_along
+        if key not in known:
+            known[key] = self.value(answer, frozenset())
+        return known[key]
+
     def _solved(self, answer: str, left: frozenset[str]) -> Effect:
-        kept, dropped = self.value(answer, frozenset()), self.value(answer, left)
+        kept, dropped = self._kept(answer), self.value(answer, left)
         change, coarse = dropped[0] - kept[0], dropped[1] - kept[1]
         error = abs(change - coarse) + 4e-16 * (abs(dropped[0]) + abs(kept[0]))
         change = trusted(change, error, self.scale(answer, dropped[0]), self.name)
