@@ -139,7 +139,7 @@ def check(block):
         ]
         for line in lines(sheet_case(block))
     ]
-    nothing = ["nothing to check", "", "", "", "no row states more than the others give"]
+    nothing = ["nothing to check", "none", "none", "none", "no row states more than the others give"]
     return [list(_COLUMNS), *(rows or [nothing])]
 
 
