@@ -158,7 +158,6 @@ DIE = CaseSheet(
         Effects(
             "The same terms, left out of the melt temperature, of what the walls give, and of their flux at the lip.",
             (("outlet temperature", "K"), ("duty", "W"), ("local flux", "W/m2")),
-            (("viscous heating", "velocity", "mm/s", "1 K", "outlet temperature"),),
         ),
         RegimeMap(
             "viscous heating",
@@ -204,8 +203,9 @@ GAS_LINE = CaseSheet(
         Effects(
             "Friction heat and expansion go as a pair: next to nothing in the stream, kelvins at the wall.",
             (("outlet temperature", "K"), ("wall temperature", "K")),
-            (("viscous heating", "velocity", "m/s", "1 K", "wall temperature"),),
-            ("The stream loses what its speed takes up; an unheated wall would stand above it by the recovery rise.",),
+            remarks=(
+                "The stream loses what its speed takes up; an unheated wall would stand above it by the recovery rise.",
+            ),
         ),
         RegimeMap(
             "viscous heating",
