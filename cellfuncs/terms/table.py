@@ -87,11 +87,12 @@ def term_rows(solution: Solution, equation: str = "energy") -> list[Row]:
     """Rows of the term table (without the head): term, one-scale, share, effect, verdict, reason."""
     terms, effects, uncertain = _judged(solution, equation)
     survives = survival(solution, terms, _sizes_of(solution.case.flow, equation), effects, uncertain)
-    rows = [_row(j, survives.get(j.size.term), effects.get(j.size.term, NO_MODEL)) for j in terms]
+    driving = solution.driving
+    rows = [_row(j, survives.get(j.size.term), effects.get(j.size.term, NO_MODEL), driving) for j in terms]
     return [*rows, _together(solution, terms, equation)]
 
 
-def _row(j: Judged, survives: Survival | None, effect: priced.Priced | str) -> Row:
+def _row(j: Judged, survives: Survival | None, effect: priced.Priced | str, driving: float) -> Row:
     missing = ""
     if isinstance(effect, str) and not j.size.leading and j.verdict != KEEP:
         missing = effect if effect != NO_MODEL else ""
@@ -99,7 +100,8 @@ def _row(j: Judged, survives: Survival | None, effect: priced.Priced | str) -> R
     share = NO_SHARE if j.size.no_share else j.share
     shown = priced.NOT_LEFT_OUT if j.size.leading else NO_MODEL
     if isinstance(effect, priced.Priced):
-        shown = effect.ratio if effect.ratio is not None else j.share
+        # between equal walls a peak has no base; the driving difference gives the number its size
+        shown = effect.ratio if effect.ratio is not None else (effect.kelvins or 0.0) / driving
     return j.size.term, j.size.one_scale, share, shown, j.verdict, "; ".join(filter(None, parts))
 
 

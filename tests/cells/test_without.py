@@ -35,6 +35,13 @@ def regimes_columns(cf, block):
     return cf("TERMS", block)[0]
 
 
+def test_a_peak_between_equal_walls_is_told_in_kelvins_and_over_the_driving_difference(cf, stated_gap):
+    """μU²/(8k) over μU²/k: an eighth, and the kelvins decide."""
+    film = stated_gap(length=(10.0, "m"))
+    assert cf("TERM", film, "viscous heating", "effect") == pytest.approx(0.125, rel=1e-9)
+    assert "K matter" in cf("TERM", film, "viscous heating", "reason")
+
+
 def test_friction_in_a_die_by_hand(cf):
     """Far downstream the bulk is 5/6·μU²/k above the wall, and without friction it is the wall's (laminar tube).
 
