@@ -13,6 +13,7 @@ from cellfuncs.cases.case import Case, Properties
 from cellfuncs.errors import CellfuncsError
 from cellfuncs.groups import grashof, rayleigh
 from cellfuncs.methods import Method
+from cellfuncs.methods.base import following
 from cellfuncs.methods.base import inputs as all_inputs
 
 GAS_CONSTANT = 8.31446261815324  # J/(mol K), exact by definition of the SI
@@ -192,7 +193,8 @@ class View:
     def of_symbol(self, symbol: str) -> float | None:
         """The value of a variable of a range, by its symbol."""
         name = parameter_of(symbol)
-        return None if name is None else self.get(name)
+        value = None if name is None else self.get(name)
+        return following(symbol, self.get) if value is None else value
 
 
 _BY_SYMBOL: dict[str, str] = {}

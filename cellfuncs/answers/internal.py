@@ -44,6 +44,7 @@ class Internal(Passage):
             "wall": case.wall,
             "heated": shape.heated,
             "ratio": shape.ratio,
+            "apex_angle": shape.apex_angle,
             "shape": "straight",
             "profile": case.get("inlet_profile", "developed"),
             "length_over_diameter": slender,

@@ -1,6 +1,6 @@
 """Answers of a layer on a body in a stream: plate, cylinder, sphere, jet. Mean coefficient, wall, flux, duty.
 
-The length is that of the plate, the diameter of cylinder and sphere, the radius that a jet covers.
+The length is that of the plate, the diameter of cylinder and sphere, what a jet covers to each side of its middle.
 """
 
 import math
@@ -22,7 +22,8 @@ from cellfuncs.methods import plate as methods
 class LayerAnswers:
     """A solved layer; differences are wall minus stream. SI units.
 
-    ``group_length`` is what Re and Nu are on: the length, but the nozzle's diameter for a jet.
+    ``group_length`` is what Re and Nu are on: the length, but the nozzle's diameter for a jet (twice the
+    width of a slot).
     """
 
     case: Case
@@ -79,8 +80,10 @@ class LayerAnswers:
         case, flow = self.case, self.case.flow
         if flow == "sphere":
             return math.pi * self.length**2
-        if flow == "jet":
+        if flow == "jet" and "slot" not in _nozzle(case):
             return math.pi * self.length**2
+        if flow == "jet":
+            return 2.0 * self.length * case.need("width")
         across = {"plate": "width", "cylinder": "length"}[flow]
         if not case.has(across):
             raise CaseRefused(f'a duty needs the row "{across}"')
@@ -142,8 +145,32 @@ def _lengths(case: Case) -> tuple[float, float]:
     """Length of the layer, and the length that the groups are on."""
     if case.flow == "plate":
         return case.need("length"), case.need("length")
+    if case.flow == "jet":
+        return _jet_lengths(case)
     diameter = case.need("diameter")
-    return (case.need("radius"), diameter) if case.flow == "jet" else (diameter, diameter)
+    return diameter, diameter
+
+
+def _nozzle(case: Case) -> str:
+    """What a jet comes from; a row "slot width" says slot, a row "open area" says many."""
+    natural = "slot" if case.has("slot_width") else "round"
+    return case.get("nozzle", f"{natural} array" if case.has("open_area") else natural)
+
+
+def _jet_lengths(case: Case) -> tuple[float, float]:
+    """What a nozzle covers to each side, and the hydraulic diameter; in an array the first follows from the open area:
+    a circle that is as large as a nozzle's part of the wall, half the pitch of slots."""
+    nozzle = _nozzle(case)
+    slot = "slot" in nozzle
+    diameter = 2.0 * case.need("slot_width") if slot else case.need("diameter")
+    if "array" not in nozzle:
+        return case.need("radius"), diameter
+    share = case.need("open_area")
+    if not 0.0 < share < 1.0:
+        raise CaseRefused(f'"{case.stated["open_area"].label}" is a part of the wall, above 0 and below 1')
+    if case.has("radius"):
+        raise CaseRefused(f'"{case.stated["radius"].label}" follows from the open area of an array; leave it out')
+    return 0.25 * diameter / share if slot else 0.5 * diameter / math.sqrt(share), diameter
 
 
 def _known(case: Case, length: float, group_length: float, transition: float) -> dict[str, Any]:
@@ -156,7 +183,9 @@ def _known(case: Case, length: float, group_length: float, transition: float) ->
     elif case.flow == "cylinder":
         known["shape"] = case.get("body_shape", "circle")
     elif case.flow == "jet":
-        known |= {"jet": "round", "height": case.need("distance") / group_length, "radius": length / group_length}
+        known |= {"jet": _nozzle(case), "height": case.need("distance") / group_length, "radius": length / group_length}
+        if case.has("open_area"):
+            known["open_area"] = case.get("open_area")
     return known
 
 

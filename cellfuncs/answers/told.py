@@ -10,6 +10,7 @@ from cellfuncs.answers import choice
 from cellfuncs.answers.inputs import Known, parameter_of
 from cellfuncs.errors import CellfuncsError, NumberRefused
 from cellfuncs.methods import Method
+from cellfuncs.methods.base import following
 from cellfuncs.methods.base import inputs as all_inputs
 
 _LIQUID, _VAPOUR = "_liquid", "_vapour"
@@ -66,7 +67,8 @@ class Told:
 
     def of_symbol(self, symbol: str) -> float | None:
         name = parameter_of(symbol)
-        return None if name is None else self.get(name)
+        value = None if name is None else self.get(name)
+        return following(symbol, self.get) if value is None else value
 
 
 def evaluate(told: Told, name: str, allow: bool = False) -> float:

@@ -11,9 +11,10 @@ from cellfuncs.errors import CaseRefused
 class Duct:
     """Cross-section of a duct.
 
-    ``section`` is tube, plates, rectangle, annulus or other; ``heated`` both, one, inner or outer;
+    ``section`` is tube, plates, rectangle, annulus, ellipse, triangle or other; ``heated`` both, one, inner or outer;
     ``heated_share`` the heated part of the wetted perimeter; ``ratio`` the short over the long side of a
-    rectangle, the inner over the outer diameter of an annulus, 1 elsewhere.
+    rectangle or the short over the long axis of an ellipse, the inner over the outer diameter of an annulus, 1
+    elsewhere; ``apex_angle`` that of an isosceles triangle in degrees.
     """
 
     diameter: float
@@ -22,6 +23,7 @@ class Duct:
     heated: str
     heated_share: float = 1.0
     ratio: float = 1.0
+    apex_angle: float | None = None
 
     @property
     def heated_per_area(self) -> float:
@@ -45,12 +47,14 @@ def section_of(case: Any) -> Duct:
     if natural == "tube" and case.has("core_diameter"):
         natural = "annulus"
     section = case.get("section", natural)
-    if section in ("plates", "rectangle", "annulus") and section != natural:
-        wants = {"plates": "gap", "rectangle": "height", "annulus": "core diameter"}[section]
+    if natural == "rectangle" and section in _IN_A_BOX:
+        natural = section
+    if section in _WANTS and section != natural:
+        wants = _WANTS[section]
         raise CaseRefused(
             f'a section of {section} is described by its "{wants}", not by "{case.stated[given[0]].label}"'
         )
-    if natural in ("plates", "rectangle", "annulus") and section != natural:
+    if natural in _WANTS and section != natural:
         raise CaseRefused(f'"{case.stated[given[0]].label}" describes {natural}, but the section is {section}')
     heated = case.get("heated_walls", "both")
     fitting = {"plates": ("both", "one"), "annulus": ("both", "inner", "outer")}.get(section, ("both",))
@@ -79,6 +83,24 @@ def _rectangle(case: Any, height: float, section: str, heated: str) -> Duct:
     return Duct(2.0 * height * width / (height + width), height * width, section, heated, ratio=ratio)
 
 
+def _ellipse(case: Any, height: float, section: str, heated: str) -> Duct:
+    from scipy.special import ellipe
+
+    width = case.need("width")
+    short, long = min(height, width), max(height, width)
+    area = math.pi / 4.0 * short * long
+    around = 2.0 * long * float(ellipe(1.0 - (short / long) ** 2))
+    return Duct(4.0 * area / around, area, section, heated, ratio=short / long)
+
+
+def _triangle(case: Any, height: float, section: str, heated: str) -> Duct:
+    base = case.need("width")
+    area = 0.5 * height * base
+    around = base + 2.0 * math.hypot(height, 0.5 * base)
+    angle = 2.0 * math.degrees(math.atan2(0.5 * base, height))
+    return Duct(4.0 * area / around, area, section, heated, apex_angle=angle)
+
+
 def _annulus(case: Any, outer: float, section: str, heated: str) -> Duct:
     core = case.need("core_diameter")
     if core >= outer:
@@ -88,4 +110,19 @@ def _annulus(case: Any, outer: float, section: str, heated: str) -> Duct:
     return Duct(outer - core, area, section, heated, share, core / outer)
 
 
-_BUILD = {"plates": _plates, "rectangle": _rectangle, "annulus": _annulus}
+_BUILD = {
+    "plates": _plates,
+    "rectangle": _rectangle,
+    "annulus": _annulus,
+    "ellipse": _ellipse,
+    "triangle": _triangle,
+}
+# the row that describes a section; ellipse and triangle are described by the sides of the rectangle round them
+_WANTS = {
+    "plates": "gap",
+    "rectangle": "height",
+    "annulus": "core diameter",
+    "ellipse": "height",
+    "triangle": "height",
+}
+_IN_A_BOX = ("ellipse", "triangle")

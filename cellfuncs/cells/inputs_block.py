@@ -22,6 +22,7 @@ _SAME = {
     "volume": None,
     "heated_walls": "heated",
     "flow_direction": "direction",
+    "nozzle": "jet",
     "diameter": "diameter",
     "emissivity": "emissivity",
 }

@@ -202,6 +202,15 @@ def follows(symbol: str) -> Callable[[Callable[..., Any]], Callable[..., Any]]:
     return record
 
 
+def following(symbol: str, get: Callable[[str], Any]) -> float | None:
+    """A variable of a range from the inputs it follows from, by what hands them over; None where one is not known."""
+    if symbol not in _FOLLOWS:
+        return None
+    names, function = _FOLLOWS[symbol]
+    given = [get(name) for name in names]
+    return None if any(value is None for value in given) else function(*given)
+
+
 @follows("Pe")
 def _peclet(reynolds: Any, prandtl: Any) -> Any:
     return reynolds * prandtl
