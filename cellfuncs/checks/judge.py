@@ -1,9 +1,7 @@
 """Every stated number against what follows from the others; the fault is laid to the cell where it starts."""
 
-import re
 from collections.abc import Iterable
-from dataclasses import dataclass, replace
-from functools import lru_cache
+from dataclasses import dataclass
 
 from cellfuncs.cases import labels
 from cellfuncs.checks import neglected
@@ -12,18 +10,13 @@ from cellfuncs.checks.causes.guess import Ranked
 from cellfuncs.checks.finding import Finding
 from cellfuncs.checks.references import References
 from cellfuncs.checks.relations import of_substance
-from cellfuncs.checks.resolve import Resolver
+from cellfuncs.checks.resolve import Resolver, is_limit
 from cellfuncs.checks.shown import in_unit, with_unit
 from cellfuncs.checks.stated import Graph, SheetCase, Stated
-from cellfuncs.checks.trial import Trial, trials
+from cellfuncs.checks.trial import Trial, converted, trials
 from cellfuncs.methods import METHODS
 from cellfuncs.sources import cite
 
-_LIMIT = re.compile(
-    r"\b(max|maximum|min|minimum|allow\w*|permi\w*|admissible|limit\w*|rated|rating|nominal|recommended|target|"
-    r"set\s?point|criterion|guide\w*|typical|design|guarantee\w*)\b",
-    re.IGNORECASE,
-)
 # a relation this loose cannot excuse a number that a tight one contradicts
 _LOOSE = 0.05
 # how many trials are asked for a cause
@@ -49,7 +42,7 @@ def judge(cases: Iterable[SheetCase], graph: Graph) -> tuple[list[Finding], list
     ``graph`` holds the cells that each formula uses. A number that a formula computes is judged by what the formula
     uses; a cell that is wrong only because it rests on another wrong one is listed under that one.
     """
-    cases = [_without_limits(case) for case in cases]
+    cases = list(cases)
     references = References(cases, graph)
     doubts: list[Doubt] = []
     agreed: list[tuple[str, str]] = []
@@ -69,25 +62,13 @@ def judge(cases: Iterable[SheetCase], graph: Graph) -> tuple[list[Finding], list
     return sorted(findings, key=lambda f: place.get(f.cell, len(place))), agreed
 
 
-def _without_limits(case: SheetCase) -> SheetCase:
-    """The case without what is allowed, rated or wished for: a limit follows from nothing, and nothing from it."""
-    stated = {key: [e for e in entries if not _is_limit(e.label, key)] for key, entries in case.stated.items()}
-    return replace(case, stated={key: entries for key, entries in stated.items() if entries})
-
-
-@lru_cache(maxsize=4096)
-def _is_limit(label: str, key: str) -> bool:
-    """Whether a label speaks of a limit, and the quantity's own names do not: a largest duty is none."""
-    found = _LIMIT.search(label)
-    entry = labels.dictionary()[key]
-    return bool(found) and not any(found.group().casefold() in n.casefold() for n in (entry.label, *entry.synonyms))
-
-
 def _judged(entry: Stated, resolver: Resolver) -> Doubt | bool | None:
     """True where the number agrees, a doubt where it does not, None where nothing can be said."""
     if _copies(entry, resolver.references):
         return True
-    tried = trials(entry, resolver)
+    if entry.typed and is_limit(entry.label, entry.key):
+        return None
+    tried = trials(entry, resolver) or converted(entry, resolver)
     if not tried:
         return None
     best = _pick(tried)

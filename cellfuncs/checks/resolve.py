@@ -1,9 +1,12 @@
 """Which stated number fills a parameter of a relation, and what follows where none is stated."""
 
+import re
 from collections.abc import Iterator
 from dataclasses import dataclass
+from functools import lru_cache
 from typing import Any
 
+from cellfuncs.cases import labels
 from cellfuncs.checks.references import References
 from cellfuncs.checks.relation import Admissible, Relation, giving
 from cellfuncs.checks.stated import SheetCase, Stated
@@ -12,6 +15,31 @@ from cellfuncs.checks.stated import SheetCase, Stated
 _DEEPEST, _DEEPEST_TYPED = 3, 1
 # relative: a formula that names no property has it as a constant, 500 Btu/h for a gpm and °F, good for some temperature
 _CONSTANT = 0.05
+
+
+_LIMIT = re.compile(
+    r"\b(max|maximum|min|minimum|allow\w*|permi\w*|admissible|limit\w*|rated|rating|nominal|recommended|target|"
+    r"set\s?point|criterion|guide\w*|typical|design|guarantee\w*|installed|selected|available|provided|existing|"
+    r"chosen)\b",
+    re.IGNORECASE,
+)
+
+
+# the part of the numbers around that must be formulas for a typed one to count as pasted
+PASTED = 0.5
+
+
+@lru_cache(maxsize=4096)
+def is_limit(label: str, key: str) -> bool:
+    """Whether a label speaks of what is allowed, rated or wished for; a largest duty is a quantity of its own.
+
+    Nothing follows from such a number but what a formula makes of it, and a typed one follows from nothing.
+    """
+    found = _LIMIT.search(label)
+    if not found:
+        return False
+    word, entry = found.group().casefold(), labels.dictionary()[key]
+    return not (word.startswith(("max", "min")) and any(word in n.casefold() for n in (entry.label, *entry.synonyms)))
 
 
 @dataclass(frozen=True)
@@ -69,6 +97,10 @@ class Resolver:
             return None
         below = self.references.below(owner.cell)
         entries = [e for e in entries if e.cell != owner.cell and e.cell not in below]
+        plain = [e for e in entries if not is_limit(e.label, key)]
+        # an input may differ from what is installed; a number among results was computed with it
+        given = owner.typed and self.references.pasted(owner.cell) < PASTED
+        entries = plain if plain or given else entries
         if not entries:
             return None
         place = self.references.place
@@ -117,11 +149,11 @@ class Resolver:
             if resolved is None:
                 return None
             found[need] = resolved
-        own = self._own(owner)
+        direct = {entry.cell for entry in self.references.direct(owner.cell)}
         for need in relation.optional:
             entry = self.pick(relation.keys_for(need, self.case), owner)
             # what a formula leaves out it leaves out; a method may need whatever the sheet says
-            if entry is not None and (relation.takes_case or owner.typed or entry.cell in own):
+            if entry is not None and (relation.takes_case or owner.typed or entry.cell in direct):
                 found[need] = Resolved(entry.si, frozenset((entry.cell,)), 0.0, entry)
         return found
 

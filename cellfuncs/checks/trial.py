@@ -6,18 +6,21 @@ from functools import cached_property
 from cellfuncs.checks.references import References
 from cellfuncs.checks.relation import DEFINITION, Admissible, Relation, giving, solve
 from cellfuncs.checks.relations import RELATIONS
-from cellfuncs.checks.resolve import Resolved, Resolver, evaluate
+from cellfuncs.checks.resolve import PASTED, Resolved, Resolver, evaluate, is_limit
 from cellfuncs.checks.stated import SheetCase, Stated
 
 # K: 273 for 273.15, or a temperature shown to a tenth
 _TEMPERATURE = 0.2
-# the part of the numbers around that must be formulas for a typed one to count as pasted
-PASTED = 0.5
 # relative: how near a pasted number must come to a method
 _PASTED_NEAR = 0.03
 # what is given or taken: the sign is a convention of the sheet
 _EITHER_SIGN = frozenset(
     {"power", "energy", "heat_flux", "heat_per_length", "temperature_difference", "pressure_difference"}
+)
+
+
+_CONVERSION = Relation(
+    "the same in another unit", "", ("other",), (), lambda other: other, 0.0, "conversion of units"
 )
 
 
@@ -43,8 +46,10 @@ class Trial:
 
     @cached_property
     def local(self) -> bool:
-        """Whether the number's own formula rests on all these cells."""
-        return self.support <= self.references.above(self.entry.cell)
+        """Whether the number's own formula rests on all these cells, or on all that they rest on themselves."""
+        own = self.references.above(self.entry.cell)
+        behind = ((cell, self.references.above(cell)) for cell in self.support - own)
+        return all(above and above <= own for _, above in behind)
 
     @cached_property
     def coverage(self) -> float:
@@ -53,7 +58,9 @@ class Trial:
         if not direct:
             return 1.0
         if not self.support:
-            return 0.0
+            # a property of the substance rests on a temperature, whoever computes it
+            warm = any(e.kind == "temperature" for e in direct)
+            return 1.0 if warm and self.relation.source == "properties" else 0.0
         own = self.references.above(self.entry.cell)
         # what stands behind an input that the formula itself rests on is used through it
         known = self.support.union(*(self.references.above(cell) for cell in self.support & own))
@@ -161,6 +168,16 @@ def trials(entry: Stated, resolver: Resolver) -> list[Trial]:
     return [trial for trial in found if trial.answers]
 
 
+def converted(entry: Stated, resolver: Resolver) -> list[Trial]:
+    """The same quantity in another unit, where a formula uses nothing else that is labelled."""
+    direct = resolver.references.direct(entry.cell)
+    if len(direct) != 1 or direct[0].key != entry.key or direct[0].unit == entry.unit:
+        return []
+    other = direct[0]
+    inputs = {"other": Resolved(other.si, frozenset((other.cell,)), 0.0, other)}
+    return [Trial(_CONVERSION, entry, None, inputs, resolver.case, resolver.references)]
+
+
 def _solved_for(entry: Stated, resolver: Resolver) -> list[Trial]:
     """Relations solved for a number whose formula uses what they give."""
     direct = resolver.references.direct(entry.cell)
@@ -193,7 +210,7 @@ def _solved_for_pasted(entry: Stated, resolver: Resolver) -> list[Trial]:
             continue
         picks = {need: resolver.pick(relation.keys_for(need, case), entry) for need in relation.needs if need != role}
         given = resolver.pick((relation.gives,), entry)
-        if given is None or any(picked is None for picked in picks.values()):
+        if given is None or any(picked is None or is_limit(picked.label, picked.key) for picked in picks.values()):
             continue
         optional = {need: resolver.pick(relation.keys_for(need, case), entry) for need in relation.optional}
         picks |= {need: picked for need, picked in optional.items() if picked is not None}
@@ -205,12 +222,13 @@ def _solved_for_pasted(entry: Stated, resolver: Resolver) -> list[Trial]:
 
 def _inputs_but(relation: Relation, role: str, entry: Stated, resolver: Resolver) -> dict[str, Resolved] | None:
     own = resolver.references.above(entry.cell)
+    direct = {e.cell for e in resolver.references.direct(entry.cell)}
     found = {}
     for need in (*relation.needs, *relation.optional):
         if need == role:
             continue
         picked = resolver.pick(relation.keys_for(need, resolver.case), entry)
-        if need in relation.optional and (picked is None or picked.cell not in own):
+        if need in relation.optional and (picked is None or picked.cell not in direct):
             continue
         if picked is None:
             return None
