@@ -46,6 +46,11 @@ class Candidate:
         return "; ".join(f"{r.words()}, here {value:.4g}" for r, value in self.missed)
 
     @property
+    def other_regime(self) -> bool:
+        """Whether it was made for another Reynolds number: laminar for turbulent, or the other way round."""
+        return any(r.variable == "Re" for r, _ in self.missed)
+
+    @property
     def distance(self) -> float:
         """How far outside, in logarithms of the variables."""
         return sum(_distance(r, value) for r, value in self.missed)
@@ -160,7 +165,7 @@ def first(
         return second
     if not outside:
         raise NoModel(f"no method at hand gives the {what} of this {state.case.flow}; state it")
-    nearest = min(outside, key=lambda c: c.distance)
+    nearest = min(outside, key=lambda c: (c.other_regime, c.distance))
     if not allow:
         refuse_outside(nearest)
     return nearest

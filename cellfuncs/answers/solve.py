@@ -185,6 +185,18 @@ def _friction_power(s: Solution) -> float | None:
     return None
 
 
+def _chosen(which: str) -> Callable[[Solution], str | None]:
+    """The name of the method that was taken for the coefficient or for friction."""
+
+    def name(s: Solution) -> str | None:
+        chosen = getattr(s.answers, "chosen", None)
+        if isinstance(chosen, str) or chosen is None:
+            return (chosen or getattr(s.answers, "method", None)) if which == "nusselt" else None
+        return getattr(chosen, which, None)
+
+    return name
+
+
 _DERIVED: Mapping[str, Callable[[Solution], float | str | None]] = {
     "flow_kind": lambda s: s.case.flow,
     "answer": lambda s: s.case.answer,
@@ -196,6 +208,8 @@ _DERIVED: Mapping[str, Callable[[Solution], float | str | None]] = {
     "volume_flow": _duct(lambda a: None if a.shape.area is None else a.velocity * a.shape.area),
     "hydraulic_diameter": _duct(lambda a: a.shape.diameter),
     "flow_area": _duct(lambda a: a.shape.area),
+    "method": _chosen("nusselt"),
+    "friction_method": _chosen("friction"),
     "section": _duct(lambda a: a.shape.section),
     "heated_walls": _duct(lambda a: a.shape.heated),
     "property_temperature": _attribute("property_temperature"),
