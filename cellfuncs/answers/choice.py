@@ -218,6 +218,11 @@ def find(name: str) -> Method:
     found = _plain_names().get(plain)
     if found is not None:
         return METHODS[found]
+    author = plain.rstrip("0123456789 ")  # a year after it is not part of a name
+    begins = [known for key, known in _plain_names().items() if author and key.startswith(author + " ")]
+    if begins:
+        listed = ", ".join(f'"{known}"' for known in begins[:5]) + (", and more" if len(begins) > 5 else "")
+        raise UnknownName(f'"{name[:40]}" is no method; there {"is" if len(begins) == 1 else "are"} {listed}')
     from rapidfuzz import fuzz, process
 
     near, score, _ = process.extractOne(plain, list(_plain_names()), scorer=fuzz.ratio)

@@ -101,9 +101,14 @@ def _refuse(reynolds: float, rough: float) -> Any:
 def _by(name: str, reynolds: Any, relative_roughness: Any) -> Any:
     method = choice.find(name)
     if method.gives not in choice.FRICTION:
-        raise NumberRefused(f"{method.name} gives a {method.gives}, no Darcy friction factor")
+        raise NumberRefused(f"{method.name} gives a {method.gives}, no Darcy friction factor", argument="method_name")
     given = {"reynolds": reynolds, "relative_roughness": relative_roughness, "section": "tube"}
     missing = [n for n in method.needed if n not in given]
     if missing:
-        raise NumberRefused(f"{method.name} needs more than Re and roughness; a case has it, or CF_NUSSELT_OF")
-    return method.evaluate({n: given[n] for n in given if n in method.inputs or n != "section"})
+        why = f"{method.name} needs more than Re and roughness; a case has it, or CF_NUSSELT_OF"
+        raise NumberRefused(why, argument="method_name")
+    try:
+        return method.evaluate({n: given[n] for n in given if n in method.inputs or n != "section"})
+    except OutOfRange as refused:
+        where = str(refused).split("; change the case")[0]
+        raise OutOfRange(f"{where}; leave the method out, or name one that holds there") from None

@@ -19,6 +19,14 @@ _PROPERTIES = frozenset(
 )
 
 
+# what else would do, for those who are asked for an input
+_INSTEAD = {
+    "friction": ' (or the row "relative roughness", 0 for a smooth wall)',
+    "x_star": ' (or the rows "length over diameter", "Reynolds number" and "Prandtl number")',
+    "x_plus": ' (or the rows "length over diameter" and "Reynolds number")',
+}
+
+
 class Told:
     """Inputs of methods as they are told, with what follows from them."""
 
@@ -63,7 +71,7 @@ class Told:
         return {name: value for name in method.inputs if (value := self.get(name)) is not None}
 
     def missing(self, method: Method) -> list[str]:
-        return [all_inputs()[name].words for name in method.needed if self.get(name) is None]
+        return [all_inputs()[n].words + _INSTEAD.get(n, "") for n in method.needed if self.get(n) is None]
 
     def of_symbol(self, symbol: str) -> float | None:
         name = parameter_of(symbol)

@@ -220,7 +220,7 @@ class QuantityReader:
             raise OutOfRange(f"{self._shown(si)}; it cannot be negative")
 
     def _shown(self, si: float) -> str:
-        return f"a {self.words} of {si:g} {quantities.KINDS[self.kind].si_unit}"
+        return f"a {self.words} of {si:g} {quantities.KINDS[self.kind].si_unit}".removesuffix(" 1")
 
     def read_range(self, value: Any) -> Any:
         rows = as_rows(value)

@@ -11,7 +11,7 @@ from cellfuncs.cases import labels
 from cellfuncs.cells import faults, inputs_block, solved
 from cellfuncs.cells.catalogue import cell_function
 from cellfuncs.errors import CaseRefused, CellfuncsError, NoModel, UnknownName
-from cellfuncs.methods import METHODS
+from cellfuncs.methods import METHODS, Method
 
 COLUMNS = ("method", "nusselt", "coefficient", "in range", "scatter", "property temperature", "source", "reason")
 IN_RANGE = "in range"
@@ -24,13 +24,18 @@ def with_method(block: Block, method: str | None, label: str = "method") -> Bloc
     """The block with a row that names the method; the rows that named one are left out."""
     if method is None:
         return block
+    name = _named(method).name
+    rows = [row for row in block if not (isinstance(row[1], str) and label in labels.candidates(row[1]))]
+    return (*rows, (len(block) + 1, labels.dictionary()[label].label, name))
+
+
+def _named(method: str) -> Method:
+    """The method of a name; what is wrong is about the argument that names it."""
     try:
-        name = choice.find(method).name
+        return choice.find(method)
     except UnknownName as error:
         error.argument = "method_name"
         raise
-    rows = [row for row in block if not (isinstance(row[1], str) and label in labels.candidates(row[1]))]
-    return (*rows, (len(block) + 1, labels.dictionary()[label].label, name))
 
 
 def _solution(block: Block, method: str | None, label: str = "method") -> Any:
@@ -85,8 +90,7 @@ def _reference(keys: str) -> str:
     example='=CF_COEFFICIENT(coolant,"Gnielinski","W/m2K")',
 )
 def coefficient(block, method_name=None):
-    if method_name is not None and choice.find(method_name).gives not in choice.NUSSELT:
-        named = choice.find(method_name)
+    if method_name is not None and (named := _named(method_name)).gives not in choice.NUSSELT:
         raise NoModel(f"{named.name} gives a {named.gives}, no coefficient", argument="method_name")
     answers = _solution(block, method_name).answers
     found = getattr(answers, "film", 0.0) or getattr(answers, "coefficient", None)
@@ -164,20 +168,33 @@ def source(method_name):
     try:
         method = choice.find(method_name)
     except UnknownName as error:
-        key = method_name.strip()
-        if key in sources.bibliography():
-            return faults.clip(sources.cite(key))
+        keys = [key.strip() for key in method_name.split(";")]
+        if all(key in sources.bibliography() for key in keys):
+            return faults.clip(sources.cite(";".join(keys)))
         error.argument = "method_name"
         raise
     return describe(METHODS[method.name])
 
 
 def describe(method: Any) -> str:
-    """Reference, what it gives, range, scatter, property temperature; the reference in full where all has room."""
+    """What it gives, range, scatter, property temperature, reference; where a cell has no room for all of it, authors
+    and year stand there with the keys under which CF_SOURCE tells the reference in full."""
     gives = f"{method.gives} on {method.length}" if method.length and "Nu" in method.gives else method.gives
     span = ", ".join(r.words() for r in method.ranges) or "no limits"
     scatter = f"±{100 * method.scatter:g} %" if method.scatter else "exact"
     at = "" if method.property_temperature == "none" else f"; properties: {method.property_temperature}"
     warning = f"{method.warning}. " if method.warning else ""
-    facts = f"{gives}; {span}; {scatter}{at}. {warning}"
-    return faults.clip(facts + sources.cite(method.source))
+    facts = f"{gives}; {span}; {scatter}{at}. "
+    whole = facts + warning + sources.cite(method.source)
+    if len(whole) <= faults.LONGEST_TEXT:
+        return whole
+    keys = [key.strip() for key in method.source.split(";")]
+    full = " and ".join(f'=CF_SOURCE("{key}")' for key in keys)
+    for short in (f"{'; '.join(sources.cite(key).split(':')[0] for key in keys)}, in full {full}. ", f"{full}. "):
+        room = faults.LONGEST_TEXT - len(facts) - len(short)
+        if room >= min(len(warning), _WORTH):
+            return facts + short + (faults.clip(warning, room) if warning else "").strip()
+    return faults.clip(facts + f'in full =CF_SOURCE("{keys[0]}")')
+
+
+_WORTH = 60  # characters of a warning that still say something
