@@ -126,7 +126,7 @@ def _words(found: list[Ranked], stated: float, recomputed: float) -> str:
     "stated and recomputed in the unit of the row, the difference, and the likely cause.",
     returns="table",
     source=_SOURCE,
-    example="=CF_CHECK(coolant)",
+    example='=CF_CHECK(CF_VARY(coolant,"Reynolds number",40000))',
 )
 def check(block):
     rows = [
