@@ -191,7 +191,9 @@ def _chosen(which: str) -> Callable[[Solution], str | None]:
     def name(s: Solution) -> str | None:
         chosen = getattr(s.answers, "chosen", None)
         if isinstance(chosen, str) or chosen is None:
-            return (chosen or getattr(s.answers, "method", None)) if which == "nusselt" else None
+            blended = getattr(s.answers, "blended", None) is not None  # the method chosen is that of the stream alone
+            found = getattr(s.answers, "method", None) if blended or not chosen else chosen
+            return found if which == "nusselt" else None
         return getattr(chosen, which, None)
 
     return name

@@ -6,7 +6,7 @@ from typing import Any
 from cellfuncs import sources
 from cellfuncs.answers import choice
 from cellfuncs.answers.friction import friction_factor
-from cellfuncs.answers.listing import listed
+from cellfuncs.answers.listing import listed, listed_friction
 from cellfuncs.cases import labels
 from cellfuncs.cells import faults, inputs_block, solved
 from cellfuncs.cells.catalogue import cell_function
@@ -52,19 +52,26 @@ def _solution(block: Block, method: str | None, label: str = "method") -> Any:
 @cell_function(
     "CF_METHODS",
     family="Methods",
-    summary="Every published method that gives the coefficient of a case: number, range, scatter, property "
-    "temperature, source; the recommended one first, with the reason.",
+    summary="Every published method that gives the coefficient of a case (friction where the answer is the pressure "
+    "drop): number, range, scatter, property temperature, source; the recommended one first, with the reason.",
     returns="table",
     source=_SOURCE,
     example="=CF_METHODS(coolant)",
 )
 def methods(block):
-    rows: list[list[Any]] = [list(COLUMNS)]
-    for row in listed(solved.solution(block)):
+    solution = solved.solution(block)
+    if solution.case.answer == "pressure drop":
+        found = [(row, row.friction, row.drop) for row in listed_friction(solution)]
+        head = ("method", "friction factor", "pressure drop", *COLUMNS[3:])
+    else:
+        found = [(row, row.nusselt, row.coefficient) for row in listed(solution)]
+        head = COLUMNS
+    rows: list[list[Any]] = [list(head)]
+    for row, group, number in found:
         at = row.candidate.view.temperature
         method = row.method
         rows.append([
-            method.name, row.nusselt, row.coefficient,
+            method.name, group, number,
             faults.clip(f"outside: {row.candidate.outside}") if row.candidate.missed else IN_RANGE,
             method.scatter, method.property_temperature if at is None else at,
             _reference(method.source), faults.clip(row.reason),
@@ -112,7 +119,7 @@ def coefficient(block, method_name=None):
 def pressure_drop(block, method_name=None):
     solution = _solution(block, method_name, "friction_method")
     if not hasattr(solution.answers, "pressure_drop"):
-        raise NoModel(f"a {solution.case.flow} has no pressure drop")
+        raise NoModel(f"a case of the flow kind {solution.case.flow} has no pressure drop")
     if method_name is not None and solution.case.has("pressure_drop"):
         raise CaseRefused("the case states its pressure drop; leave the row out to compute it", argument="method_name")
     return solution.answers.pressure_drop
@@ -132,7 +139,7 @@ def nusselt_of(block, method_name=None):
         solution = _solution(block, method_name)
         found = getattr(solution.answers, "nusselt", None)
         if found is None:
-            raise NoModel(f"a {solution.case.flow} has no Nusselt number")
+            raise NoModel(f"a case of the flow kind {solution.case.flow} has no Nusselt number")
         return found
     return inputs_block.number(block, method_name)
 
