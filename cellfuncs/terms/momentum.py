@@ -8,6 +8,7 @@ from typing import NamedTuple
 
 from cellfuncs.answers import Solution
 from cellfuncs.errors import CellfuncsError, NoModel
+from cellfuncs.methods.duct_laminar import friction_times_re
 from cellfuncs.terms.facts import FALLING_FILM, Facts
 from cellfuncs.terms.size import STEADY, Size, absent, num, percent
 
@@ -26,6 +27,9 @@ TERMS = (
 # common practice)
 _LAMINAR_ENTRANCE = {"plates": 0.67, "tube": 1.25}
 _TURBULENT_ENTRANCE = 0.05
+APPARENT = "Shah entry friction"  # the method whose friction has the growing momentum in it
+# of that, what goes into the growing momentum of a laminar profile: 2(β − 1) with β 4/3 in a tube, 6/5 between plates
+_LAMINAR_MOMENTUM = {"plates": 0.4, "tube": 2.0 / 3.0}
 
 
 class _Balance(NamedTuple):
@@ -75,19 +79,39 @@ def _through(f: Facts) -> _Balance:
     friction = f.drop / f.length
     inertia = _inertia(f)
     entrance, says = 0.0, "form drag is counted with friction"
-    if f.flow == "duct":
+    inside = _in_friction(f) if f.flow == "duct" else None
+    if inside is not None:
+        entrance = inside
+        friction -= entrance
+        says = "the profile that grows from the inlet; taken out of the apparent friction"
+    elif f.flow == "duct":
         head = _LAMINAR_ENTRANCE.get(a.shape.section, 1.25) if f.laminar else _TURBULENT_ENTRANCE
         entrance = head * inertia / 2.0
         says = f"zero when developed; the entrance costs {num(head)} dynamic heads"
     rise = abs(f.properties.expansion * a.bulk_rise)
     if rise:
         says += f"; the stream speeds up by {percent(rise)} on heating"
-    drop = f"{num(f.drop)} Pa over {num(f.length)} m"
+    all_of_it, at_wall = (f"{num(x)} Pa over {num(f.length)} m" for x in (f.drop, friction * f.length))
+    paid = f.drop / f.length
     return _Balance(
         Size("inertia", 1.0, entrance + inertia * rise, says),
-        Size("viscous across", _viscous_one_scale(f), friction, f"friction at the wall takes {drop}", leading=True),
-        Size("pressure", _one_scale(f, friction), friction, f"pressure pays for friction, {drop}", leading=True),
+        Size("viscous across", _viscous_one_scale(f), friction, f"friction at the wall takes {at_wall}", leading=True),
+        Size("pressure", _one_scale(f, paid), paid, f"pressure pays for friction, {all_of_it}", leading=True),
     )
+
+
+def _in_friction(f: Facts) -> float | None:
+    """What of an apparent friction goes into the profile that grows from a uniform inlet [Pa/m]; None where the
+    friction is not an apparent one. Of what it is above developed friction, momentum takes the part that it has
+    once the profile is developed."""
+    a = f.answers
+    if getattr(a.chosen, "friction", "") != APPARENT:
+        return None
+    section = a.shape.section
+    developed = friction_times_re(section, a.shape.ratio) / f.reynolds * a.values.friction_factor
+    above = max(0.0, 1.0 - developed / a.friction)
+    part = _LAMINAR_MOMENTUM.get(section, 0.55 * 1.25) / _LAMINAR_ENTRANCE.get(section, 1.25)
+    return part * above * a.friction * a.length / a.shape.diameter * _inertia(f) / 2.0
 
 
 def _falling(f: Facts) -> _Balance:

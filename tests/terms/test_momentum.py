@@ -47,6 +47,17 @@ def test_laminar_tube_by_hand(cf, stated_duct):
     assert rows["viscous along"]["share"] == pytest.approx(0.04 * 1.0 / 16.0 / friction, rel=1e-12)
 
 
+def test_from_a_uniform_inlet_the_growing_profile_is_in_the_friction_once(cf, stated_duct):
+    """Far behind the entrance K is 1.25 heads, of which 2(4/3 − 1) went into momentum; wall and momentum are paid."""
+    still = {"expansion coefficient": (0.0, "1/K")}
+    block = [*stated_duct(reynolds=100.0, prandtl=5.0, **still), ["inlet profile", "uniform", ""]]
+    rows = table(cf, block)
+    friction, drop = 64.0 / 100.0 * 4.0 / 0.02, cf("CASE", block, "pressure drop") / 500.0  # in dynamic heads
+    assert drop - friction == pytest.approx(1.25, rel=0.1)
+    assert rows["inertia"]["share"] == pytest.approx(2.0 / 3.0 / 1.25 * (drop - friction) / drop, rel=1e-9)
+    assert rows["viscous across"]["share"] + rows["inertia"]["share"] == pytest.approx(1.0, rel=1e-9)
+
+
 def test_buoyancy_is_its_size_over_friction(cf, stated_duct):
     rows = table(cf, stated_duct(reynolds=500.0, prandtl=5.0))
     friction = 64.0 / 500.0 * 1000.0 / (2.0 * 0.02)
