@@ -132,7 +132,7 @@ def pressure_drop(block, method_name=None):
     "(Reynolds number, ratios, lengths), SI.",
     returns="number",
     source=_SOURCE,
-    example='=CF_NUSSELT_OF(groups,"Gnielinski")',
+    example='=CF_NUSSELT_OF(coolant,"Gnielinski")',
 )
 def nusselt_of(block, method_name=None):
     if inputs_block.is_case(block):
