@@ -69,7 +69,9 @@ class Blocks:
 
 
 def _literal(value: Any, blocks: Blocks) -> str:
-    """An argument as it is typed in a formula."""
+    """An argument as it is typed in a formula; nothing for one that is left out."""
+    if value is None:
+        return ""
     if isinstance(value, list):
         return blocks.area(value)
     if isinstance(value, str):

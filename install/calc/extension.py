@@ -24,7 +24,7 @@ OLDEST_OFFICE = "7.0"
 CATEGORY = "Add-In"  # Calc knows no groups but its own; the family stands first in the help
 
 # In the catalogue these count as tables, yet their answer is one cell: a text there must compare as a text does.
-ONE_CELL = {"CF_FAULTS", "CF_TERM"}
+ONE_CELL = {"CF_FAULTS", "CF_TERM", "CF_AGREES", "CF_CAUSE"}
 # Calc hands a range with an error value over to none of the other functions; counting errors is the work of this one.
 REFERENCE = {"CF_FAULTS"}
 RETURNED = {"cell": "any", "reference": "any", "table": "sequence< sequence<any> >"}
