@@ -64,7 +64,10 @@ class Told:
         if found is None and name in _FOLLOWS:
             names, formula = _FOLLOWS[name]
             given = [self.known.get(n) if n != name else None for n in names]
-            found = None if any(value is None for value in given) else formula(*given)
+            try:
+                found = None if any(value is None for value in given) else formula(*given)
+            except ZeroDivisionError:  # of no number at all: what follows from it is not known
+                found = None
         return found
 
     def given(self, method: Method) -> dict[str, Any]:

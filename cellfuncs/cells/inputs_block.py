@@ -13,7 +13,7 @@ from cellfuncs.answers import choice
 from cellfuncs.answers.told import Told, evaluate, recommended
 from cellfuncs.cases import labels
 from cellfuncs.errors import CaseRefused, CellfuncsError, UnknownName
-from cellfuncs.methods.base import Input
+from cellfuncs.methods.base import Input, choices_of
 from cellfuncs.methods.base import inputs as all_inputs
 
 _OURS = ("flow_kind", "method", "substance", "pressure", "beyond_range", "note")
@@ -130,9 +130,17 @@ def _choice(entry: Input, label: str, value: Any) -> str:
         if key in labels.dictionary() and labels.dictionary()[key].role == "choice":
             try:
                 return labels.choice(key, text)
-            except UnknownName:
-                break
-    return text.strip().casefold() if entry.parameter != "fitting" else text.strip()
+            except UnknownName as error:
+                raise CaseRefused(f'"{label}": {error}') from None
+    return _known(entry, label, text.strip().casefold()) if entry.parameter != "fitting" else text.strip()
+
+
+def _known(entry: Input, label: str, text: str) -> str:
+    """The word of a choice where methods know it."""
+    words = choices_of(entry.parameter)
+    if words and text not in words:
+        raise CaseRefused(f'"{label}": write {", ".join(words[:-1])} or {words[-1]}, not {text[:40]}')
+    return text
 
 
 @cache

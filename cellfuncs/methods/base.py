@@ -77,6 +77,13 @@ def inputs() -> Mapping[str, Input]:
     return found
 
 
+@lru_cache(maxsize=32)
+def choices_of(parameter: str) -> tuple[str, ...]:
+    """The words that methods know of a choice, in the order of the library; empty where they are free (fittings)."""
+    found = (word for m in METHODS.values() for word in m.where.get(parameter, ()))
+    return tuple(dict.fromkeys(found))
+
+
 @dataclass(frozen=True)
 class Range:
     """Closed interval of one variable in which a method was published; ``variable`` is an input's symbol."""

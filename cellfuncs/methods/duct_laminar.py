@@ -49,6 +49,11 @@ def _in_logs(key: tuple[str, str, str]) -> tuple[tuple[float, ...], tuple[float,
 def table_value(section: str, what: str, heated: str, at: float) -> float:
     """A value of the table at a ratio or an angle; straight in the logarithms for the annulus."""
     key = (section, what, heated)
+    if key not in _tables():
+        raise OutOfRange(
+            f"laminar flow in the section {section} with heated walls {heated} at a given {what} is not tabulated; "
+            "change section, wall or heated walls"
+        )
     if section != "annulus":
         return between(at, *_tables()[key])
     return exp(between(log(at), *_in_logs(key)))
@@ -56,6 +61,8 @@ def table_value(section: str, what: str, heated: str, at: float) -> float:
 
 def rectangle_value(what: str, ratio: float) -> float:
     """Nu ("temperature", "flux") or f·Re ("friction") of a rectangle by short over long side."""
+    if what not in _RECTANGLE:
+        raise OutOfRange(f"a wall condition of {what} is not known; write temperature or flux")
     lead, *rest = _RECTANGLE[what]
     total = 0.0
     for coefficient in reversed(rest):

@@ -60,3 +60,23 @@ def test_a_source_that_is_too_long_tells_where_it_stands_in_full(cf):
 def test_friction_alone_speaks_of_no_case(cf):
     told = cf("FRICTION", 1e5, 0.0, "laminar friction")
     assert told.startswith("! reynolds: laminar friction holds for Re up to 2300") and "beyond range" not in told
+
+
+@pytest.mark.parametrize("wrong", ["warm", 0, float("nan"), 7.5])
+@pytest.mark.parametrize("row", ["wall condition", "heated walls", "section"])
+def test_a_choice_that_no_method_knows_is_refused_in_words(cf, row, wrong):
+    known = {"wall condition": "flux", "section": "plates", "heated walls": "both"}
+    block = [[label, wrong if label == row else word] for label, word in known.items()]
+    told = cf("NUSSELT_OF", block, "developed laminar")
+    assert isinstance(told, str) and told.startswith("! block:") and "broke off" not in told
+    right = [list(pair) for pair in known.items()]
+    assert cf("NUSSELT_OF", right, "developed laminar") == pytest.approx(140 / 17, rel=1e-6)
+
+
+def test_choices_that_do_not_go_together_are_refused_in_words(cf):
+    block = [["wall condition", "flux"], ["section", "tube"], ["heated walls", "one"]]
+    assert "is not tabulated" in cf("NUSSELT_OF", block, "developed laminar")
+
+
+def test_a_tube_without_end_has_no_entry(cf):
+    assert cf("NUSSELT_OF", [["diameter over length", 0]], "turbulent entry") == 1.0
