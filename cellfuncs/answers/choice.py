@@ -16,6 +16,7 @@ from cellfuncs.answers.inputs import Inputs, View
 from cellfuncs.cases.case import Case
 from cellfuncs.errors import CaseRefused, CellfuncsError, NoModel, OutOfRange, UnknownName
 from cellfuncs.methods import METHODS, Method, Range
+from cellfuncs.methods.duct import LAMINAR_UP_TO, TURBULENT_FROM
 
 NUSSELT = ("mean Nu", "local Nu")
 FRICTION = ("Darcy friction factor",)
@@ -47,8 +48,11 @@ class Candidate:
 
     @property
     def other_regime(self) -> bool:
-        """Whether it was made for another Reynolds number: laminar for turbulent, or the other way round."""
-        return any(r.variable == "Re" for r, _ in self.missed)
+        """Whether it was made for the other side of the transition: laminar for turbulent, or the other way round."""
+        return any(
+            r.variable == "Re" and (r.high <= TURBULENT_FROM < re or re < LAMINAR_UP_TO <= r.low)
+            for r, re in self.missed
+        )
 
     @property
     def distance(self) -> float:

@@ -98,7 +98,8 @@ def _no_velocity(found: search.Scan, what: str) -> CellfuncsError:
     if not found.stretches and found.refusal is not None:
         return found.refusal
     low, high = (f"{x:.3g}" for x in (_SLOWEST, _FASTEST))
-    why = f"; beyond the velocities that answer: {found.refusal}" if found.refusal is not None else ""
+    beyond = str(found.refusal or "").split("; change the case")[0]
+    why = f"; beyond the velocities that answer: {beyond}" if beyond else ""
     return CaseRefused(f"no velocity between {low} and {high} m/s gives this {what}{why}"[:225])
 
 

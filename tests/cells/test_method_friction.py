@@ -80,3 +80,17 @@ def test_choices_that_do_not_go_together_are_refused_in_words(cf):
 
 def test_a_tube_without_end_has_no_entry(cf):
     assert cf("NUSSELT_OF", [["diameter over length", 0]], "turbulent entry") == 1.0
+
+
+@pytest.mark.parametrize(("velocity", "allowed"), [(30.0, "turbulent"), (0.02, "laminar")])
+def test_allowed_beyond_its_range_is_a_method_of_the_same_regime(cf, velocity, allowed):
+    """Of a smooth tube at Re 3e7, and of a short annulus in laminar flow, no method is in range."""
+    if allowed == "turbulent":
+        block = [["diameter", 1.0, "m"], ["velocity", velocity, "m/s"]]
+    else:
+        block = [["diameter", 100, "mm"], ["core diameter", 2, "mm"], ["velocity", velocity, "m/s"]]
+    case = [row for row in WATER[:-1] if row[0] not in ("velocity", "diameter")] + block
+    assert "beyond range" in cf("COEFFICIENT", case)
+    method = cf("CASE", [*case, ["beyond range", "allow", ""]], "method")
+    assert ("laminar" in method or "entry" in method) == (allowed == "laminar"), method
+    assert "rough" not in method
