@@ -29,8 +29,6 @@ WITHOUT_OUTSIDE_CHECK = {
     "CF_PROPERTIES": "the values of CF_PROPERTY in a table; compared with it in tests/cells",
     "CF_BLOCK": "rearranges cells",
     "CF_VARY": "replaces a row",
-    "CF_METHODS": "the values of CF_COEFFICIENT in a table; compared with it in tests/cells",
-    "CF_SOURCE": "looks up; the bibliography is held by tests of its own",
     "CF_TERMS": "the values of CF_TERM in a table; compared with it in tests/cells",
 }
 
