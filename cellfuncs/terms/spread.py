@@ -10,7 +10,7 @@ words say so.
 
 import math
 from collections.abc import Callable, Mapping, Sequence
-from dataclasses import dataclass, fields
+from dataclasses import dataclass
 from typing import Any
 
 from cellfuncs.answers import Solution, solve
@@ -19,7 +19,9 @@ from cellfuncs.cases.block import SIGNED
 from cellfuncs.cases.case import Case
 from cellfuncs.cases.vary import with_value
 from cellfuncs.errors import CellfuncsError, OutOfRange
+from cellfuncs.terms import sampled
 from cellfuncs.terms.priced import Effects, Priced, Scaled
+from cellfuncs.terms.sampled import VERDICTS
 from cellfuncs.terms.size import Size
 from cellfuncs.terms.verdicts import Judged, judge
 
@@ -64,16 +66,6 @@ class Survival:
         if self.kept == self.answered:
             return f"holds in all {of}"
         return f"holds in {1000 * self.kept // self.answered / 10:g} % of {of}"
-
-
-class _Sampled:
-    """A size whose numbers are set anew for each sample; the rule of verdicts reads it like a Size."""
-
-    __slots__ = tuple(f.name for f in fields(Size))
-
-    def __init__(self, size: Size):
-        for name in self.__slots__:
-            setattr(self, name, getattr(size, name))
 
 
 def uncertain(case: Case) -> list[tuple[str, float, float]]:
@@ -193,7 +185,8 @@ class _Sampling:
                 found.append(self.verdicts(self.sizes(deviates)))
             except CellfuncsError:
                 continue
-        return self._counted(found, len(draws))
+        kept = [sum(verdicts[t] == j.verdict for verdicts in found) for t, j in enumerate(self.judged)]
+        return self._survivals(kept, len(found), len(draws))
 
     def by_surrogate(self, draws: Any) -> dict[str, Survival] | None:
         """Every sample from the surrogate; None where it may not be trusted."""
@@ -202,34 +195,42 @@ class _Sampling:
             solved = [self.verdicts(self.sizes(deviates)) for deviates in draws[:_CHECKED].tolist()]
         except CellfuncsError:
             return None
-        samples = [_Sampled(size) for size in self.base]
-        columns = []
-        for t, sample in enumerate(samples):
+        columns: list[dict[str, Any]] = []
+        for t, size in enumerate(self.base):
             across = [[sizes[t] for sizes in row] for row in moves]
-            if any(_kind(size) != _kind(self.base[t]) for row in across for size in row):
+            if any(_kind(other) != _kind(size) for row in across for other in row):
                 return None
-            for name in _NUMBERS:
-                column = _column([[getattr(size, name) for size in row] for row in across], draws)
-                if column is not None:
-                    columns.append((sample, name, column))
-        found = []
-        for n in range(len(draws)):
-            for sample, name, column in columns:
-                setattr(sample, name, column[n])
-            found.append(self.verdicts(samples))
-        wrong = [sum(s[t] != f[t] for s, f in zip(solved, found, strict=False)) for t in range(len(samples))]
-        return None if max(wrong) > _MOST_WRONG else self._counted(found, len(draws))
+            read = {name: _column([[getattr(s, name) for s in row] for row in across], draws) for name in _NUMBERS}
+            columns.append({name: column for name, column in read.items() if column is not None})
+        found = self._by_columns(columns, len(draws))
+        if found is None:
+            return None
+        wrong = [sum(s[t] != VERDICTS[place] for s, place in zip(solved, row, strict=False))
+                 for t, row in enumerate(found)]  # fmt: skip
+        if max(wrong) > _MOST_WRONG:
+            return None
+        kept = [int((row == VERDICTS.index(j.verdict)).sum()) for row, j in zip(found, self.judged, strict=True)]
+        return self._survivals(kept, len(draws), len(draws))
+
+    def _by_columns(self, columns: Sequence[Mapping[str, Any]], samples: int) -> Any:
+        """Verdicts of all samples as places in ``VERDICTS``; None where a number of them is none."""
+        import numpy as np
+
+        if not all(np.isfinite(column).all() for term in columns for column in term.values()):
+            return None
+        if not any(columns):  # no input moves any term
+            return np.array([[VERDICTS.index(verdict)] * samples for verdict in self.verdicts(self.base)])
+        case = self.case
+        return sampled.verdicts(self.judged, columns, case.tolerance, case.smallest, self.effects, self.relative)
 
     def _moved(self, k: int, z: float) -> Sequence[Size]:
         """The sizes with one row alone moved."""
         return self.sizes([z if i == k else 0.0 for i in range(len(self.rows))]) if z else self.base
 
-    def _counted(self, found: list[list[str]], drawn: int) -> dict[str, Survival]:
+    def _survivals(self, kept: Sequence[int], answered: int, drawn: int) -> dict[str, Survival]:
         return {
-            j.size.term: Survival(
-                sum(verdicts[t] == j.verdict for verdicts in found), len(found), drawn, self.doubts.get(j.size.term)
-            )
-            for t, j in enumerate(self.judged)
+            j.size.term: Survival(number, answered, drawn, self.doubts.get(j.size.term))
+            for number, j in zip(kept, self.judged, strict=True)
             if not j.size.leading and (j.share != 0 or j.size.settled)
         }
 
@@ -239,7 +240,7 @@ def _kind(size: Size) -> tuple[Any, ...]:
     return size.settled, size.leading, size.thresholds, *(getattr(size, name) is None for name in _NUMBERS)
 
 
-def _column(by_row: list[list[float | None]], draws: Any) -> list[float] | None:
+def _column(by_row: list[list[float | None]], draws: Any) -> Any:
     """One number of one term in all samples; None where no input moves it."""
     import numpy as np
 
@@ -253,4 +254,4 @@ def _column(by_row: list[list[float | None]], draws: Any) -> list[float] | None:
     total = np.full(len(draws), middle)
     for k, row in enumerate(values):
         total += np.interp(draws[:, k], _PLACES, row) - middle
-    return (np.exp(total) if logarithmic else total).tolist()
+    return np.exp(total) if logarithmic else total

@@ -66,6 +66,14 @@ def _share(s: Size, largest: float) -> float:
     return s.asked if s.asked is not None else s.size / largest if largest > 0 else 0.0
 
 
+def band(doubt: float, uncertainty: float) -> tuple[float, float]:
+    """Between which multiples of the tolerance an effect is close to it."""
+    wide = max(doubt, _SURE * uncertainty)
+    if uncertainty:  # then the ± decide what is close, not the fixed band
+        return 1.0 / (1.0 + wide), 1.0 + wide
+    return min(CLOSE_BELOW, 1.0 / (1.0 + wide)), max(CLOSE_ABOVE, 1.0 + wide)
+
+
 def _by_effect(
     s: Size, share: float, effect: Priced | Scaled, tolerance: float, smallest: float, uncertainty: float
 ) -> Judged:
@@ -80,11 +88,7 @@ def _by_effect(
         return Judged(s, share, LEAVE_OUT, why, True, effect)
     if ratio is None:
         return Judged(s, share, KEEP, why if silent else f"{why}; {num(smallest)} K matter", effect=effect)
-    wide = max(effect.doubt, _SURE * uncertainty)
-    if uncertainty:  # then the ± decide what is close, not the fixed band
-        low, high = 1.0 / (1.0 + wide), 1.0 + wide
-    else:
-        low, high = min(CLOSE_BELOW, 1.0 / (1.0 + wide)), max(CLOSE_ABOVE, 1.0 + wide)
+    low, high = band(effect.doubt, uncertainty)
     place = ratio / tolerance
     if low <= place <= high:
         why = why if silent else f"{why}; close to the tolerance {percent(tolerance)}"

@@ -1,5 +1,7 @@
 """± of the inputs: the surrogate against solved samples, what is said, and that nothing is done without ±."""
 
+from dataclasses import replace
+
 import numpy as np
 import pytest
 
@@ -136,3 +138,17 @@ def test_without_spread_nothing_is_drawn(cf, monkeypatch):
     monkeypatch.setattr(np.random, "default_rng", refuse)
     assert isinstance(cf("TERMS", block(FILM)), list)
     assert "samples are drawn" in cf("TERMS", block(dict(FILM) | {"gap": (51.0, "um")}, velocity="5 %"))
+
+
+@pytest.mark.parametrize("cells", [block(WATER, velocity="5 %", wall_temperature=1.0), block(FILM, gap="10 %")])
+def test_the_samples_of_a_case_are_judged_as_one_alone_is(cells):
+    sampled, draws = sampling(cells)
+    columns = [
+        {"size": size.size * np.exp(0.2 * draws[:200, 0])} if size.size > 0 else {} for size in sampled.base
+    ]  # fmt: skip
+    found = sampled._by_columns(columns, 200)
+    for n in range(0, 200, 7):
+        moved = [
+            replace(s, **{k: float(v[n]) for k, v in c.items()}) for s, c in zip(sampled.base, columns, strict=True)
+        ]
+        assert [spread.VERDICTS[place] for place in found[:, n]] == sampled.verdicts(moved)
