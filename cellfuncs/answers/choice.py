@@ -52,6 +52,9 @@ class Candidate:
         return any(
             r.variable == "Re" and (r.high <= TURBULENT_FROM < re or re < LAMINAR_UP_TO <= r.low)
             for r, re in self.missed
+        ) or (
+            any(r.variable == "Reε" for r, _ in self.missed)  # rough walls are of turbulent flow
+            and (self.view.get("reynolds") or 0.0) < LAMINAR_UP_TO
         )
 
     @property
@@ -148,8 +151,20 @@ def missed(method: Method, view: View) -> tuple[tuple[Range, float], ...]:
 
 
 def recommended(state: Inputs, gives: tuple[str, ...], what: str, allow: bool, at_end: bool = False) -> Candidate:
-    """The method that the rule recommends; outside all ranges refused, or with ``allow`` the one least outside."""
-    return first(state, in_order(state.case.flow, gives), what, allow, at_end)
+    """The method that the rule recommends; outside all ranges refused, or with ``allow`` the one least outside.
+
+    A method of the other side of a duct's transition is never recommended, only taken where it is named.
+    """
+    flow = state.case.flow
+    found = first(state, in_order(flow, gives), what, True, at_end)
+    if flow == "duct" and found.other_regime:
+        raise NoModel(
+            f"no method at hand gives the {what} of this duct at its Reynolds number; state it, or change section, "
+            "heated walls or inlet profile"
+        )
+    if found.missed and not allow:
+        refuse_outside(found)
+    return found
 
 
 def first(

@@ -109,6 +109,7 @@ def _search(stretch: Stretch, off: Callable[[float], float | None]) -> None:
 
 def _turn(stretch: Stretch, off: Callable[[float], float | None]) -> None:
     """Where the function turns back towards the target between places, add the place where it is nearest."""
+    from numpy import errstate
     from scipy.optimize import minimize_scalar
 
     x, y = stretch.places, stretch.values
@@ -121,7 +122,8 @@ def _turn(stretch: Stretch, off: Callable[[float], float | None]) -> None:
             value = off(place)
             return math.inf if value is None else value * sign
 
-        found = minimize_scalar(height, bounds=(x[k - 1], x[k + 1]), method="bounded", options={"maxiter": 25})
+        with errstate(invalid="ignore", over="ignore"):  # where there is no answer the height is infinite
+            found = minimize_scalar(height, bounds=(x[k - 1], x[k + 1]), method="bounded", options={"maxiter": 25})
         if math.isfinite(found.fun) and found.fun * sign != y[k]:
             place = k + 1 if found.x > x[k] else k
             x.insert(place, float(found.x))
