@@ -24,6 +24,8 @@ TEMPERATURE, FLUX, AMBIENT = "temperature", "flux", "ambient"
 _PLACES = 201
 _POLISH = 4
 _ROUNDING = 4e-16
+_WORST = 1e13  # condition of the equations for the weights
+_APART = "conduction along and exchange differ by too much to be solved together"
 
 
 @dataclass(frozen=True)
@@ -68,7 +70,7 @@ def solve(given: Balance) -> Profile:
         given = replace(given, wall=0.0)
     if not given.along and not given.wall:
         return _plain(given)
-    return _Modes(given).profile()
+    return _Modes(given).profile() if given.wall else _two(given)
 
 
 def _plain(g: Balance) -> Profile:
@@ -90,23 +92,61 @@ def _plain(g: Balance) -> Profile:
     return Profile(outlet, walls[1], max(walls, key=abs), local, outlet - g.heating, _ROUNDING * size)
 
 
+def _two(g: Balance) -> Profile:
+    """Without conduction along the wall two exponentials are left, whose rates are real: the rates of θ''/Pe − θ' = c·θ
+    in closed form. As ``_Modes`` has it, in plain numbers."""
+    e, n = g.along, g.transfer
+    slope, constant, wall_constant = _particular(g)
+    if g.outside == TEMPERATURE:
+        back, ratio = n, 0.0
+    else:  # the wall follows: its temperature is a mean of both sides
+        back, ratio = n * g.outer / (n + g.outer), n / (n + g.outer)
+    larger = 0.5 * (1.0 + math.sqrt(1.0 + 4.0 * e * back))
+    up, down = larger / e, -back / larger  # anchored at the outlet and at the inlet
+    faded, sunk = math.exp(-up), math.exp(down)
+    # the inlet's condition and the outlet's, weighed alike
+    inlet, outlet = [(1.0 - e * up) * faded, 1.0 - e * down], [up, down * sunk]
+    size_in, size_out = max(map(abs, inlet)), max(map(abs, outlet))
+    a, b, c, d = *(v / size_in for v in inlet), *(v / size_out for v in outlet)
+    right = (e * slope - constant) / size_in, -slope / size_out
+    determinant = a * d - b * c
+    squares = a * a + b * b + c * c + d * d
+    largest = 0.5 * (squares + math.sqrt(max(squares * squares - 4.0 * determinant * determinant, 0.0)))
+    condition = largest / abs(determinant) if determinant else math.inf
+    if not math.isfinite(condition) or condition > _WORST:
+        raise NoModel(_APART)
+    weight_up = (right[0] * d - b * right[1]) / determinant
+    weight_down = (a * right[1] - c * right[0]) / determinant
+    end = weight_up + weight_down * sunk
+    mean = weight_up * -math.expm1(-up) / up + weight_down * (math.expm1(down) / down if down else 1.0)
+    steady = n * (wall_constant - constant - g.recovery)
+    leaves, wall, duty = constant + slope + end, wall_constant + slope + ratio * end, steady + n * (ratio - 1.0) * mean
+    hottest = wall
+    if ratio or slope:
+        x = np.linspace(0.0, 1.0, _PLACES)
+        waves = weight_up * np.exp(up * (x - 1.0)) + weight_down * np.exp(down * x)
+        walls = wall_constant + slope * x + ratio * waves
+        hottest = float(walls[np.argmax(abs(walls))])
+    error = abs(leaves - duty - g.heating) + condition * 2e-16 * max(abs(leaves), abs(hottest), abs(duty))
+    return Profile(leaves, wall, hottest, steady + n * (ratio - 1.0) * end, duty, error)
+
+
+def _particular(g: Balance) -> tuple[float, float, float]:
+    """Slope of both temperatures, constant of the fluid and of the wall far from both ends."""
+    if g.outside == TEMPERATURE:
+        return 0.0, 1.0 - g.recovery + g.heating / g.transfer, 1.0
+    if g.outside == FLUX:
+        return g.heating + g.flux, 0.0, g.recovery + g.flux / g.transfer
+    wall = 1.0 + g.heating / g.outer
+    return 0.0, wall - g.recovery + g.heating / g.transfer, wall
+
+
 class _Modes:
     """The particular solution and the exponentials of one balance."""
 
     def __init__(self, given: Balance):
         self.given = given
-        g = given
-        self.slope = 0.0
-        if g.outside == TEMPERATURE:
-            self.wall_constant = 1.0
-            self.constant = 1.0 - g.recovery + g.heating / g.transfer
-        elif g.outside == FLUX:
-            self.slope = g.heating + g.flux
-            self.constant = 0.0
-            self.wall_constant = g.recovery + g.flux / g.transfer
-        else:
-            self.wall_constant = 1.0 + g.heating / g.outer
-            self.constant = self.wall_constant - g.recovery + g.heating / g.transfer
+        self.slope, self.constant, self.wall_constant = _particular(given)
         self.roots = self._roots()
         self.anchors = np.where(self.roots.real > 0, 1.0, 0.0)
         self.ratios = self._ratios()
@@ -167,8 +207,8 @@ class _Modes:
         # rows have the units of their conditions: weigh them alike
         size = abs(matrix).max(axis=1)
         self.condition = float(np.linalg.cond(matrix / size[:, None]))
-        if not math.isfinite(self.condition) or self.condition > 1e13:
-            raise NoModel("conduction along and exchange differ by too much to be solved together")
+        if not math.isfinite(self.condition) or self.condition > _WORST:
+            raise NoModel(_APART)
         return np.linalg.solve(matrix / size[:, None], np.array(right) / size)
 
     def _sum(self, x: np.ndarray, factor: np.ndarray) -> np.ndarray:
@@ -202,6 +242,8 @@ class _Modes:
         scale = max(abs(outlet), float(abs(wall).max()), abs(duty))
         # the stream leaves with what it was given: what is missing there is an error
         error = abs(outlet - duty - g.heating) + self.condition * 2e-16 * scale
+        if g.outside == FLUX:  # and so is what the wall does not pass on
+            error += abs(duty - g.flux)
         return Profile(
             outlet, float(wall[-1]), float(wall[np.argmax(abs(wall))]), float(self._flux(end)[0]), duty, error
         )

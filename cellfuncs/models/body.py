@@ -14,6 +14,7 @@ from cellfuncs.models.trust import finite
 
 SHAPES = {"plane wall": 1.0, "long cylinder": 2.0, "sphere": 3.0}  # surface times L over volume
 _ROUNDING = 1e-13  # of the series, which has every term above e^-40 of the first
+_STEPS = 20000  # of the integration, more than any that ends
 _SERIES_FROM = 1e-4  # Fo: before, heat has not come a twentieth of the way to the middle
 
 
@@ -81,20 +82,23 @@ def lumped(time: float, source: float = 0.0, radiation: float = 0.0, level: floa
         raise NoModel("radiation needs the level of the temperatures")
     if 1.0 + level <= 0:
         raise NoModel("the body would start below absolute zero")
-    from scipy.integrate import solve_ivp
+    from scipy.integrate import odeint
 
-    def slope(t: float, y: list[float]) -> list[float]:
-        t = 1.0 + level * y[0]  # a step that tries a temperature below zero is led back, not away
-        return [-y[0] + source - radiation * (abs(t) ** 3 * t - seen**4) / level]
+    def slope(_: float, y: list[float]) -> float:
+        t = 1.0 + level * float(y[0])  # a step that tries a temperature below zero is led back, not away
+        return -float(y[0]) + source - radiation * (abs(t) ** 3 * t - seen**4) / level
 
     if 1.0 + level * source <= 0 and radiation * seen**4 < -source * level - 1.0:
         raise NoModel("the sink of heat would take the body below absolute zero")
     ends = []
     for tolerance in (1e-8, 1e-11):
-        found = solve_ivp(slope, (0.0, min(time, 700.0)), [1.0], method="LSODA", rtol=tolerance, atol=1e-2 * tolerance)
-        if found.status != 0:
+        found, told = odeint(
+            slope, 1.0, (0.0, min(time, 700.0)), rtol=tolerance, atol=1e-2 * tolerance,
+            mxstep=_STEPS, tfirst=True, full_output=True,
+        )  # fmt: skip
+        if told["message"] != "Integration successful.":
             raise NoModel("the cooling of the body was not solved")
-        ends.append(float(found.y[0, -1]))
+        ends.append(float(found[-1, 0]))
         if 1.0 + level * ends[-1] <= 0:
             raise NoModel("the sink of heat would take the body below absolute zero")
     return Lumped(ends[1], abs(ends[1] - ends[0]) + 1e-14)

@@ -49,13 +49,16 @@ class Scaled:
 Effects = Mapping[str, Priced | Scaled | str]
 
 
-def priced(solution: Solution, sizes: Sequence[Size], quickly_for: str = "") -> dict[str, Priced | str]:
+def priced(
+    solution: Solution, sizes: Sequence[Size], quickly_for: str = "", fitting: effects.Fitting | None = None
+) -> dict[str, Priced | str]:
     """Term -> its effect, or the words that stand where there is none.
 
     ``quickly_for`` one term, as a map wants it: groups are rounded so that neighbours share a solution, and tiny
-    terms beside the one are not solved.
+    terms beside the one are not solved. ``fitting`` spares finding the models again.
     """
-    fitting = effects.models_of(solution, _FEW_DIGITS) if quickly_for else effects.models_of(solution)
+    if fitting is None or quickly_for:
+        fitting = effects.models_of(solution, _FEW_DIGITS) if quickly_for else effects.models_of(solution)
     largest = max(s.size if s.nets_to is None else s.nets_to for s in sizes)
     found: dict[str, Priced | str] = {}
     for s in sizes:
@@ -93,9 +96,11 @@ def in_words(e: effects.Effect) -> Priced:
     return Priced(e.ratio, e.kelvins, min(doubt, 1.0), words)
 
 
-def together(solution: Solution, terms: Sequence[str]) -> tuple[float | None, float | None, list[str], str]:
+def together(
+    solution: Solution, terms: Sequence[str], fitting: effects.Fitting | None = None
+) -> tuple[float | None, float | None, list[str], str]:
     """All these left out at once: ratio and kelvins by models, the terms that none has, and the models' names."""
-    found, rest = effects.together(solution, terms)
+    found, rest = effects.together(solution, terms, fitting=fitting)
     if not found:
         return None, None, rest, ""
     ratios = [abs(e.ratio) for e in found if e.ratio is not None]

@@ -3,6 +3,7 @@
 from collections.abc import Callable, Mapping
 
 from cellfuncs.answers import Solution
+from cellfuncs.answers.effects import Fitting, models_of
 from cellfuncs.errors import UnknownName
 from cellfuncs.terms import body, duct, free, gap, layer, momentum, priced
 from cellfuncs.terms.size import Size, num, percent
@@ -52,7 +53,7 @@ def judged(solution: Solution, equation: str = "energy", quickly_for: str = "") 
 
 
 def _judged(
-    solution: Solution, equation: str, quickly_for: str = ""
+    solution: Solution, equation: str, quickly_for: str = "", fitting: Fitting | None = None
 ) -> tuple[list[Judged], priced.Effects, Mapping[str, Doubt]]:
     if equation not in EQUATIONS:
         named = " or ".join(EQUATIONS)
@@ -64,7 +65,7 @@ def _judged(
         effects = priced.priced_momentum(solution, sizes)
         uncertain = uncertainty_of(solution, sizes, sizes_of)
         return judge(sizes, case.tolerance, case.smallest, effects, relative(uncertain)), effects, uncertain
-    effects = priced.priced(solution, sizes, quickly_for)
+    effects = priced.priced(solution, sizes, quickly_for, fitting)
     uncertain = {} if quickly_for else uncertainty_of(solution, sizes, sizes_of)
     return judge(sizes, case.tolerance, case.smallest, effects, relative(uncertain)), effects, uncertain
 
@@ -85,11 +86,12 @@ def equation_of(term: str) -> str:
 
 def term_rows(solution: Solution, equation: str = "energy") -> list[Row]:
     """Rows of the term table (without the head): term, one-scale, share, effect, verdict, reason."""
-    terms, effects, uncertain = _judged(solution, equation)
+    fitting = models_of(solution) if equation == "energy" else None  # what they have solved serves all rows
+    terms, effects, uncertain = _judged(solution, equation, fitting=fitting)
     survives = survival(solution, terms, _sizes_of(solution.case.flow, equation), effects, uncertain)
     driving = solution.driving
     rows = [_row(j, survives.get(j.size.term), effects.get(j.size.term, NO_MODEL), driving) for j in terms]
-    return [*rows, _together(solution, terms, equation)]
+    return [*rows, _together(solution, terms, equation, fitting)]
 
 
 def _row(j: Judged, survives: Survival | None, effect: priced.Priced | str, driving: float) -> Row:
@@ -105,7 +107,7 @@ def _row(j: Judged, survives: Survival | None, effect: priced.Priced | str, driv
     return j.size.term, j.size.one_scale, share, shown, j.verdict, "; ".join(filter(None, parts))
 
 
-def _together(solution: Solution, judged: list[Judged], equation: str) -> Row:
+def _together(solution: Solution, judged: list[Judged], equation: str, fitting: Fitting | None) -> Row:
     tolerance = solution.case.tolerance
     out = left_out(judged)
     share = sum(j.share for j in out)
@@ -117,7 +119,7 @@ def _together(solution: Solution, judged: list[Judged], equation: str) -> Row:
         return ALL_LEFT_OUT, one_scale, 0.0, 0.0, LEAVE_OUT, "only terms that the case as stated does not have"
     ratio, kelvins, rest, models = None, None, [], ""
     if equation == "energy":
-        ratio, kelvins, rest, models = priced.together(solution, [j.size.term for j in out])
+        ratio, kelvins, rest, models = priced.together(solution, [j.size.term for j in out], fitting)
     elif all(j.effect is not None for j in out):
         ratio, models = sum(j.weight for j in out), "balance of momentum"
     by_share = [j for j in out if j.size.term in rest]
