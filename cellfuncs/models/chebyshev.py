@@ -39,14 +39,33 @@ def nodes(count: int) -> tuple[Any, Any, Any]:
 def interpolate(count: int, values: Any, places: Any) -> Any:
     """The polynomial through values at ``nodes(count)``, at places in [0, 1] (barycentric)."""
     x = nodes(count)[0]
-    w = (-1.0) ** np.arange(count)
-    w[[0, -1]] *= 0.5
     places = np.atleast_1d(np.asarray(places, dtype=float))
     apart = places[:, None] - x[None, :]
     hit = apart == 0.0
-    apart[hit] = 1.0
-    terms = w / apart
+    some = hit.any()
+    if some:
+        apart[hit] = 1.0
+    terms = _barycentric(count) / apart
     found = (terms @ values) / terms.sum(axis=1)
-    rows, columns = np.nonzero(hit)
-    found[rows] = np.asarray(values)[columns]
+    if some:
+        rows, columns = np.nonzero(hit)
+        found[rows] = np.asarray(values)[columns]
     return found
+
+
+@lru_cache(maxsize=64)
+def second_derivative(count: int) -> Any:
+    """The matrix of the second derivative on ``nodes(count)``."""
+    d = nodes(count)[1]
+    found = d @ d
+    found.flags.writeable = False
+    return found
+
+
+@lru_cache(maxsize=64)
+def _barycentric(count: int) -> Any:
+    """Weights of the nodes in an interpolation."""
+    w = (-1.0) ** np.arange(count)
+    w[[0, -1]] *= 0.5
+    w.flags.writeable = False
+    return w

@@ -8,7 +8,7 @@ from typing import Any
 import numpy as np
 
 from cellfuncs.errors import NoModel
-from cellfuncs.models.chebyshev import interpolate, nodes
+from cellfuncs.models.chebyshev import interpolate, nodes, second_derivative
 from cellfuncs.models.thinning import Thinning, constant
 from cellfuncs.models.trust import finite
 
@@ -89,7 +89,7 @@ class Solver:
     def __init__(self, gap: Gap, count: int):
         self.gap, self.count = gap, count
         self.x, self.d, self.w = nodes(count)
-        self.second = self.d @ self.d
+        self.second = second_derivative(count)
         self.source = gap.source(self.x) if callable(gap.source) else np.full(count, gap.source)
         self.still = self._linear(self.source)
 
@@ -128,23 +128,45 @@ class Solver:
             share = made / total
             residual = self.second @ theta + heat * share + self.source
             # θ enters through where the heat is made and through its sum; τ's own change is left to the iteration
-            jacobian = self.second + heat * (np.diag(slope / total) - np.outer(share, self.w * slope) / total)
+            weight = heat / total
+            jacobian = self.second - np.outer(weight * share, self.w * slope)
+            jacobian.flat[:: self.count + 1] += weight * slope
             if self.gap.pressure:
                 jacobian = jacobian + heat * self._by_stress(theta, made, stress, total)
-            right = -residual
-            self._ends(jacobian, right)
-            right[0] -= theta[0] if self.gap.low is not None else self.d[0] @ theta
-            right[-1] -= theta[-1] if self.gap.high is not None else self.d[-1] @ theta
-            step = np.linalg.solve(jacobian, right)
-            size = float(abs(step).max())
-            if not math.isfinite(size):
-                raise Unresolved
-            theta = theta + step * min(1.0, 4.0 / max(size, 1e-300)) if self._thins else theta + step
-            if size <= 1e-11 * max(float(abs(theta).max()), 1e-12):
+            theta, done = self._newton(theta, residual, jacobian)
+            if done:
                 _, _, stress, total = self.spread(theta)
                 heating = heat / total
                 return State(self.count, theta, heat, heating, stress, heating * stress**2)
         raise Unresolved
+
+    def _at_heating(self, heating: float, start: Any) -> State:
+        """The film at a given Br without a pressure gradient, by Newton's method from a start."""
+        theta = start.copy()
+        for _ in range(_ROUNDS):
+            made, slope, stress, total = self.spread(theta)
+            residual = self.second @ theta + heating * made + self.source
+            # w = τ²/m: θ enters through m in its place, and everywhere through τ = 1/∫(1/m)
+            jacobian = self.second - np.outer((2.0 * heating / stress) * made, self.w * slope)
+            jacobian.flat[:: self.count + 1] += heating * slope
+            theta, done = self._newton(theta, residual, jacobian)
+            if done:
+                _, _, stress, total = self.spread(theta)
+                return State(self.count, theta, heating * total, heating, stress, heating * stress**2)
+        raise Unresolved
+
+    def _newton(self, theta: Any, residual: Any, jacobian: Any) -> tuple[Any, bool]:
+        """The next θ, and whether the step was so small that it is the last."""
+        right = -residual
+        self._ends(jacobian, right)
+        right[0] -= theta[0] if self.gap.low is not None else self.d[0] @ theta
+        right[-1] -= theta[-1] if self.gap.high is not None else self.d[-1] @ theta
+        step = np.linalg.solve(jacobian, right)
+        size = float(abs(step).max())
+        if not math.isfinite(size):
+            raise Unresolved
+        theta = theta + step * min(1.0, 4.0 / max(size, 1e-300)) if self._thins else theta + step
+        return theta, size <= 1e-11 * max(float(abs(theta).max()), 1e-12)
 
     @property
     def _thins(self) -> bool:
@@ -187,6 +209,12 @@ class Solver:
 
     def at_speed(self, heating: float, near: State | None = None) -> State:
         if near is not None:
+            start = near.theta_at(self.x)
+            if self._thins and not self.gap.pressure and (self.gap.thinning(start)[1] <= 0.0).all():
+                try:
+                    return self._at_heating(heating, start)
+                except Unresolved:
+                    pass
             return self._root(lambda s: s.heating, heating, near, near)
         if not self._thins:
             still = self.solve(0.0, self.still)
@@ -225,8 +253,7 @@ class Solver:
             return None
         guess /= 1.0 + weakening
         try:
-            low = self.solve(guess, self._linear(self.source + guess))
-            return self._root(lambda s: s.heating, heating, low, self._step(low, guess * 1.1))
+            return self._at_heating(heating, self._linear(self.source + guess))
         except Unresolved:
             return None
 

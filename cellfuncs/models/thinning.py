@@ -50,10 +50,14 @@ def smooth(low: float, high: float, relative: Any) -> Thinning:
     series = np.polynomial.chebyshev.chebfit(2.0 * nodes(len(values))[0] - 1.0, values, len(values) - 1)
     powers = np.polynomial.chebyshev.cheb2poly(series)[::-1]
     slopes = np.polyder(powers) * 2.0 / (high - low)
+    first, *others = np.array([powers, np.append(np.zeros(len(powers) - len(slopes)), slopes)]).T[:, :, None]
 
     def inside(theta: Any) -> tuple[Any, Any]:
         s = 2.0 * (theta - low) / (high - low) - 1.0
-        return np.polyval(powers, s), np.polyval(slopes, s)
+        found = first
+        for power in others:  # Horner's rule for both at once
+            found = found * s + power
+        return found[0], found[1]
 
     return _bounded(inside, low, high)
 
