@@ -5,28 +5,23 @@ from typing import Any
 
 from cellfuncs.answers import choice
 from cellfuncs.errors import NumberRefused, OutOfRange
-from cellfuncs.methods import Method
+from cellfuncs.methods import METHODS, Method
 from cellfuncs.methods.base import Range
 from cellfuncs.methods.duct import LAMINAR_UP_TO, TURBULENT_FROM
 from cellfuncs.methods.friction import haaland
 
-_TUBE = {"section": "tube", "shape": "straight"}
-
 
 @lru_cache(maxsize=1)
 def _methods() -> tuple[Method, ...]:
-    """The methods for straight tubes that need no more than Re and roughness, in the order of the rule."""
-    known = {"reynolds", "relative_roughness", "section"}
-    return tuple(
-        m for m in choice.in_order("duct", choice.FRICTION) if m.applies(**_TUBE) and set(m.needed) <= known
-    )
+    """The laminar law, and the one that holds at any roughness: a sweep from smooth to rough walls has no seam."""
+    return METHODS["laminar friction"], METHODS["Colebrook-White"]
 
 
 def friction_factor(reynolds: Any, relative_roughness: Any, name: str | None = None) -> Any:
     """Darcy's f; ``reynolds`` and ``relative_roughness`` (sand grain over diameter) numbers or arrays of one shape.
 
-    Without a method the one recommended for each pair: laminar to Re 2300, from 4000 turbulent, linear in Re
-    between (Gnielinski 2013). Raises OutOfRange where no method holds, or where the named one does not.
+    Without a method 64/Re up to Re 2300, Colebrook and White's equation from 4000, linear in Re between
+    (Gnielinski 2013). Raises OutOfRange where no method holds, or where the named one does not.
     """
     if name is not None:
         return _by(name, reynolds, relative_roughness)

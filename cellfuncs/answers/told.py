@@ -9,6 +9,7 @@ from typing import Any
 from cellfuncs.answers import choice
 from cellfuncs.answers.inputs import Known, parameter_of
 from cellfuncs.errors import CellfuncsError, NumberRefused
+from cellfuncs.groups import STANDARD_GRAVITY
 from cellfuncs.methods import Method
 from cellfuncs.methods.base import following
 from cellfuncs.methods.base import inputs as all_inputs
@@ -31,7 +32,8 @@ class Told:
     """Inputs of methods as they are told, with what follows from them."""
 
     def __init__(self, known: Mapping[str, Any], substance: Any = None, pressure: float | None = None):
-        self.known, self.substance, self.pressure = Known(known), substance, pressure
+        self.known = Known({"gravity": STANDARD_GRAVITY, **known})
+        self.substance, self.pressure = substance, pressure
 
     # -- as a state -------------------------------------------------------------------------
 

@@ -48,12 +48,7 @@ def _our_key(label: str) -> str | None:
 
 def number(block: Block, method: str | None) -> float:
     """The number of a method, named in the cell or the block, or of the one recommended for the flow kind named."""
-    known, ours = _read(block)
-    name = method or ours.get("method")
-    substance = None
-    if "substance" in ours:
-        substance = substances.find(ours["substance"])
-    told = Told(known, substance, ours.get("pressure"))
+    told, name, ours = _told(block, method)
     allow = ours.get("beyond_range") == "allow"
     if name is not None:
         return evaluate(told, name, allow)
@@ -62,6 +57,34 @@ def number(block: Block, method: str | None) -> float:
         why = 'name a method, or add the row "flow kind" so that one can be recommended'
         raise CaseRefused(why, argument="method_name")
     return recommended(told, flow, allow)[1]
+
+
+def coefficient(block: Block, method: str | None) -> float:
+    """The coefficient [W/(m2 K)] of a named method that gives one, or a flux over the wall's superheat."""
+    told, name, ours = _told(block, method)
+    if name is None:
+        raise CaseRefused('name a method, or add the row "flow kind" and what a case needs', argument="method_name")
+    found = choice.find(name)
+    if found.gives not in ("mean coefficient", "heat flux"):
+        raise CaseRefused(
+            f"{found.name} gives a {found.gives}; CF_NUSSELT_OF tells it, and a case gives the coefficient",
+            argument="method_name",
+        )
+    value = evaluate(told, name, ours.get("beyond_range") == "allow")
+    if found.gives == "mean coefficient":
+        return value
+    superheat = told.view(found).get("wall_superheat")
+    if superheat is None:
+        needed = all_inputs()["wall_superheat"].words
+        raise CaseRefused(f'{found.name} gives a flux; a coefficient needs the row "{needed}"')
+    return value / superheat
+
+
+def _told(block: Block, method: str | None) -> tuple[Told, str | None, dict[str, Any]]:
+    """The inputs of a block, the name of the method, and our own rows."""
+    known, ours = _read(block)
+    substance = substances.find(ours["substance"]) if "substance" in ours else None
+    return Told(known, substance, ours.get("pressure")), method or ours.get("method"), ours
 
 
 def _read(block: Block) -> tuple[dict[str, Any], dict[str, Any]]:

@@ -97,6 +97,8 @@ def _reference(keys: str) -> str:
     example='=CF_COEFFICIENT(coolant,"Gnielinski","W/m2K")',
 )
 def coefficient(block, method_name=None):
+    if not inputs_block.is_case(block):
+        return inputs_block.coefficient(block, method_name)
     if method_name is not None and (named := _named(method_name)).gives not in choice.NUSSELT:
         raise NoModel(f"{named.name} gives a {named.gives}, no coefficient", argument="method_name")
     answers = _solution(block, method_name).answers
@@ -147,8 +149,8 @@ def nusselt_of(block, method_name=None):
 @cell_function(
     "CF_FRICTION",
     family="Methods",
-    summary="Darcy's friction factor of a straight round tube from Reynolds number and relative roughness, by the "
-    "recommended or a named method.",
+    summary="Darcy's friction factor of a straight round tube from Reynolds number and relative roughness: 64/Re, "
+    "Colebrook-White, a blend between, or a named method.",
     returns="number",
     source=_SOURCE,
     example='=CF_FRICTION(50000,0.001,"Colebrook-White")',
