@@ -120,6 +120,11 @@ class Solver:
 
     def solve(self, heat: float, start: Any) -> State:
         """The film that makes the heat H, by Newton's method from a start."""
+        if heat == 0.0:  # then the equation is linear
+            _, _, stress, total = self.spread(self.still)
+            if not (0.0 < total < math.inf):
+                raise Unresolved
+            return State(self.count, self.still, 0.0, 0.0, stress, 0.0)
         theta = start.copy()
         for _ in range(_ROUNDS):
             made, slope, stress, total = self.spread(theta)
@@ -208,6 +213,8 @@ class Solver:
         raise Unresolved
 
     def at_speed(self, heating: float, near: State | None = None) -> State:
+        if heating == 0.0:
+            return self.solve(0.0, self.still)
         if near is not None:
             start = near.theta_at(self.x)
             if self._thins and not self.gap.pressure and (self.gap.thinning(start)[1] <= 0.0).all():
@@ -219,8 +226,6 @@ class Solver:
         if not self._thins:
             still = self.solve(0.0, self.still)
             return self.solve(heating * self.spread(self.still)[3], still.theta)
-        if heating == 0.0:
-            return self.solve(0.0, self.still)
         direct = self._directly(heating)
         if direct is not None:
             return direct

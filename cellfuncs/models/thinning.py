@@ -1,6 +1,7 @@
 """How the viscosity of a film goes with its temperature: θ -> ln m and its slope, m over that at θ = 0."""
 
 from collections.abc import Callable
+from functools import lru_cache
 from typing import Any
 
 import numpy as np
@@ -47,10 +48,9 @@ def smooth(low: float, high: float, relative: Any) -> Thinning:
     values = np.log(np.asarray(relative, dtype=float))
     if not (high > low and np.isfinite(values).all()):
         raise NumberRefused("a viscosity over a range needs two temperatures and viscosities above zero")
-    series = np.polynomial.chebyshev.chebfit(2.0 * nodes(len(values))[0] - 1.0, values, len(values) - 1)
-    powers = np.polynomial.chebyshev.cheb2poly(series)[::-1]
-    slopes = np.polyder(powers) * 2.0 / (high - low)
-    first, *others = np.array([powers, np.append(np.zeros(len(powers) - len(slopes)), slopes)]).T[:, :, None]
+    powers, slopes = (matrix @ values for matrix in _powers(len(values)))
+    slopes = slopes * (2.0 / (high - low))
+    first, *others = np.array([powers, slopes]).T[:, :, None]
 
     def inside(theta: Any) -> tuple[Any, Any]:
         s = 2.0 * (theta - low) / (high - low) - 1.0
@@ -60,6 +60,21 @@ def smooth(low: float, high: float, relative: Any) -> Thinning:
         return found[0], found[1]
 
     return _bounded(inside, low, high)
+
+
+@lru_cache(maxsize=16)
+def _powers(count: int) -> tuple[Any, Any]:
+    """From values at ``chebyshev.nodes`` to the powers of s = −1 … 1 in the polynomial through them, the highest first;
+    and to those of its slope in s, as many."""
+    series = np.polynomial.chebyshev
+    fitted = series.chebfit(2.0 * nodes(count)[0] - 1.0, np.eye(count), count - 1)
+    rising = np.zeros((count, count))  # powers of each Chebyshev polynomial
+    for k in range(count):
+        rising[: k + 1, k] = series.cheb2poly(np.eye(count)[k, : k + 1])
+    powers = (rising @ fitted)[::-1]
+    slopes = np.zeros_like(powers)
+    slopes[1:] = np.arange(count - 1, 0, -1)[:, None] * powers[:-1]
+    return powers, slopes
 
 
 def _bounded(function: Callable[[Any], tuple[Any, Any]], low: float, high: float) -> Thinning:
