@@ -138,3 +138,17 @@ def test_what_has_no_answer_is_refused_in_words(make, why):
 def test_no_heating_leaves_the_conduction_profile():
     film = gap.at_speed(gap.Gap(gap.exponential(), low=0.0, high=2.0), 0.0)
     assert film.peak == pytest.approx(2.0) and film.low_flux == pytest.approx(2.0)
+
+
+@pytest.mark.parametrize("walls", [(0.0, 0.0), (0.0, 1.0), (None, 0.0)])
+@pytest.mark.parametrize("heating", [0.0, 0.3, 8.0, 60.0])
+def test_a_film_found_at_its_speed_is_the_one_found_by_its_heat(walls, heating):
+    """Newton's method at a given Br, and the branch of films of rising heat followed to that Br."""
+    solver = Solver(gap.Gap(gap.exponential(0.7), *walls), 45)
+    direct = solver.at_speed(heating)
+    followed = solver.solve(0.0, solver.still)
+    for part in range(1, 9):
+        followed = solver.solve(direct.made * part / 8, followed.theta)
+    assert followed.heating == pytest.approx(heating, rel=1e-9, abs=1e-14)
+    assert followed.stress == pytest.approx(direct.stress, rel=1e-9)
+    assert abs(followed.theta - direct.theta).max() <= 1e-9
