@@ -158,6 +158,8 @@ class _Sampling:
         """The sizes with every uncertain row moved by so many standard uncertainties; or a refusal."""
         case = self.case
         for (key, value, spread), z in zip(self.rows, deviates, strict=True):
+            if not z:
+                continue
             moved = value + z * spread
             if moved <= 0 < value and key not in SIGNED:
                 raise OutOfRange("not above zero")
@@ -253,5 +255,6 @@ def _column(by_row: list[list[float | None]], draws: Any) -> Any:
     middle = values[0, len(_PLACES) // 2]
     total = np.full(len(draws), middle)
     for k, row in enumerate(values):
-        total += np.interp(draws[:, k], _PLACES, row) - middle
+        if (row != middle).any():  # the input moves it
+            total += np.interp(draws[:, k], _PLACES, row) - middle
     return np.exp(total) if logarithmic else total
