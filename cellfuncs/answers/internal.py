@@ -68,8 +68,15 @@ class Internal(Passage):
             return super().choose_nusselt(state, False)
         except OutOfRange:
             if self._between(state) and choice.row(self.case, "method", self.wanted) is None:
-                ends = [choice.recommended(end, self.wanted, "coefficient", allow, self.at_end)
-                        for end in self._ends(state)]  # fmt: skip
+                try:
+                    ends = [choice.recommended(end, self.wanted, "coefficient", allow, self.at_end)
+                            for end in self._ends(state)]  # fmt: skip
+                except OutOfRange as error:
+                    re = self.at_bulk(state).get("reynolds")
+                    raise OutOfRange(
+                        f"Re {re:.4g} lies between laminar (2300) and turbulent (4000), and a blend needs a method at "
+                        f"both: {error}"
+                    ) from None
                 return BLEND, "; ".join(dict.fromkeys(e.outside for e in ends if e.outside))
             if not allow:
                 raise

@@ -8,12 +8,12 @@ of a rough wall too, which claims too much where the wall is fully rough (``duct
 from cellfuncs.methods.algebra import exp, sqrt
 from cellfuncs.methods.base import Range, method
 from cellfuncs.methods.duct_laminar import LENGTH, friction_times_re
-from cellfuncs.methods.friction import SMOOTH_UP_TO, konakov
+from cellfuncs.methods.friction import konakov
 
 TURBULENT_FROM = 4000.0
 STRAIGHT = {"shape": ("straight",)}
 TURBULENT = Range("Re", 1e4, 5e6)
-SMOOTH = Range("Reε", 0.0, SMOOTH_UP_TO)
+SMOOTH = Range("Reε", 0.0, 0.5)  # the friction of a made wall is 4 % above a smooth one's there
 LONG = Range("L/D", low=100.0)  # the entry adds less than 5 % to the mean
 THIRD, TWO_THIRDS = 1.0 / 3.0, 2.0 / 3.0
 
