@@ -204,13 +204,14 @@ def _completed(solution: Solution, term: str, given: list[str], given_y: bool) -
 
 
 def _serves(solution: Solution, key: str, others: Sequence[str]) -> bool:
-    """Whether the case has this row, or rows that vary this group."""
+    """Whether the case has this row, or rows that vary this group; the groups before it keep rows to be varied by."""
     try:
-        if _is_row(key):
-            return solution.case.has(key) and _own(solution, key) is not None
+        if _is_row(key) and not solution.case.has(key):
+            return False
         _own(solution, key)
         groups = [k for k in (*others, key) if not _is_row(k)]
-        return bool(_levers(solution.case, solution, groups, [k for k in others if _is_row(k)]))
+        rows = [k for k in (*others, key) if _is_row(k)]
+        return not groups or bool(_levers(solution.case, solution, groups, rows))
     except CellfuncsError:
         return False
 
