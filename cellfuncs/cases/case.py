@@ -45,6 +45,11 @@ _ANSWERS = {
 }
 
 
+def flow_words(flow: str) -> str:
+    """The flow kind as a noun in a sentence."""
+    return f"surface in {flow} convection" if flow in ("free", "mixed") else flow
+
+
 def answers_of(flow: str) -> tuple[str, ...]:
     """The answers that the verdicts of a flow kind may be for."""
     return _ANSWERS[flow]
@@ -100,7 +105,7 @@ class Case:
                 return self.stated[key].value
         names = [f'"{labels.dictionary()[k].label}"' for k in keys]
         listed = " or ".join([", ".join(names[:-1]), names[-1]] if len(names) > 1 else names)
-        raise CaseRefused(f"the row {listed} is missing for a {self.flow}")
+        raise CaseRefused(f"the row {listed} is missing for a {flow_words(self.flow)}")
 
     @property
     def tolerance(self) -> float:
@@ -143,7 +148,8 @@ class Case:
             default = _ANSWERS[self.flow][0]
         wanted = self.get("answer", default)
         if wanted not in _ANSWERS[self.flow] or self._wall_is_given(wanted):
-            why = "the wall temperature is prescribed" if wanted == "wall temperature" else f"a {self.flow} has none"
+            none = f"a {flow_words(self.flow)} has none"
+            why = "the wall temperature is prescribed" if wanted == "wall temperature" else none
             rest = [a for a in _ANSWERS[self.flow] if not self._wall_is_given(a)]
             raise CaseRefused(f'"answer" is {wanted}, but {why}; write one of: {", ".join(rest)}')
         return wanted

@@ -5,7 +5,7 @@ from typing import Any
 
 from cellfuncs.answers.effects.model import KINDS
 from cellfuncs.cases import labels, read_case
-from cellfuncs.cases.case import answers_of
+from cellfuncs.cases.case import answers_of, flow_words
 from cellfuncs.cells import solved
 from cellfuncs.cells.catalogue import Answer, cell_function
 from cellfuncs.cells.term import term_name
@@ -48,7 +48,8 @@ def _without(block: Any, term: str, answer: str) -> tuple[float, str]:
     wanted = answer or case.answer
     if wanted not in answers_of(case.flow):
         raise CaseRefused(
-            f"a {case.flow} has no {wanted}; write one of: {', '.join(answers_of(case.flow))}", argument="answer"
+            f"a {flow_words(case.flow)} has no {wanted}; write one of: {', '.join(answers_of(case.flow))}",
+            argument="answer",
         )
     if term in MOMENTUM_TERMS and wanted == "pressure drop":
         s = next(s for s in sizes(solution, "momentum") if s.term == term)

@@ -12,7 +12,7 @@ from typing import Any
 
 from cellfuncs import quantities
 from cellfuncs.answers.effects import TEMPERATURES
-from cellfuncs.cases.case import Case
+from cellfuncs.cases.case import Case, flow_words
 from cellfuncs.sheets.inks import CAUTION, GREY, INK, RULE
 from cellfuncs.terms.regimes import NO_ANSWER, Axis, Point, RegimeMap, regime_map
 from cellfuncs.terms.size import num, percent
@@ -206,7 +206,7 @@ def _dress(figure: Any, axes: Any, found: RegimeMap) -> None:
     axes.tick_params(colors=INK, labelsize=8.5)
     for side in axes.spines.values():
         side.set_color(GREY)
-    title = f"{found.term} in a {found.case.flow}"
+    title = f"{found.term} in a {flow_words(found.case.flow)}"
     figure.text(0.11, 0.945, title, fontsize=15, fontweight="bold", color=INK)
     answer = f"answer: {found.case.answer}, tolerance {percent(found.case.tolerance)}"
     if found.case.answer in TEMPERATURES:
