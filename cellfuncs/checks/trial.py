@@ -1,5 +1,6 @@
 """One relation tried on one stated number: what comes out, within what, and whether the number agrees."""
 
+import re
 from dataclasses import dataclass
 from functools import cached_property
 
@@ -13,6 +14,8 @@ from cellfuncs.checks.stated import SheetCase, Stated
 _TEMPERATURE = 0.2
 # relative: how near a pasted number must come to a method
 _PASTED_NEAR = 0.03
+# a temperature of properties that belongs to the stream alone
+_OF_A_STREAM = re.compile(r"^(?!.*\b(film|wall|surface)).*\b(bulk|mean|average|water|fluid|oil|air)\b", re.IGNORECASE)
 # what is given or taken: the sign is a convention of the sheet
 _EITHER_SIGN = frozenset(
     {"power", "energy", "heat_flux", "heat_per_length", "temperature_difference", "pressure_difference"}
@@ -64,6 +67,9 @@ class Trial:
         own = self.references.above(self.entry.cell)
         # what stands behind an input that the formula itself rests on is used through it
         known = self.support.union(*(self.references.above(cell) for cell in self.support & own))
+        # so is what an input was computed from that the formula computes once more itself
+        again = [above for cell in self.support - own if (above := self.references.above(cell)) and above <= own]
+        known = known.union(*again)
         unread = self.references.unread(self.entry.cell)
         return sum(e.cell in known for e in direct) / (len(direct) + unread)
 
@@ -168,6 +174,23 @@ def trials(entry: Stated, resolver: Resolver) -> list[Trial]:
     return [trial for trial in found if trial.answers]
 
 
+def _may_be_meant(relation: Relation, given: Stated, resolver: Resolver) -> bool:
+    """Whether a temperature of properties may be what ``relation`` says: a bulk mean of a duct is no film temperature,
+    and one that another relation gives is explained already. Of other quantities all relations hold at once."""
+    if given.key != "property_temperature":
+        return True
+    if resolver.case.flow == "duct" and _OF_A_STREAM.search(given.label) and "wall_temperature" in relation.needs:
+        return False
+    return not any(
+        trial.passed
+        for other in giving()[given.key]
+        if other is not relation and other.applies(resolver.case)
+        for inputs in [resolver.inputs(other, given)]
+        if inputs is not None
+        for trial in [Trial(other, given, None, inputs, resolver.case, resolver.references)]
+    )
+
+
 def converted(entry: Stated, resolver: Resolver) -> list[Trial]:
     """The same quantity in another unit, where a formula uses nothing else that is labelled."""
     direct = resolver.references.direct(entry.cell)
@@ -210,7 +233,9 @@ def _solved_for_pasted(entry: Stated, resolver: Resolver) -> list[Trial]:
             continue
         picks = {need: resolver.pick(relation.keys_for(need, case), entry) for need in relation.needs if need != role}
         given = resolver.pick((relation.gives,), entry)
-        if given is None or any(picked is None or is_limit(picked.label, picked.key) for picked in picks.values()):
+        if given is None or not _may_be_meant(relation, given, resolver):
+            continue
+        if any(picked is None or is_limit(picked.label, picked.key) for picked in picks.values()):
             continue
         optional = {need: resolver.pick(relation.keys_for(need, case), entry) for need in relation.optional}
         picks |= {need: picked for need, picked in optional.items() if picked is not None}

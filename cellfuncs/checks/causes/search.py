@@ -65,7 +65,8 @@ def _less_likely(guesses: Iterator[Guess], trial: Trial) -> Iterator[Guess]:
 
 def _declared(trial: Trial) -> Iterator[Guess]:
     """The known wrong ways of the relation, solved for the stated quantity where it is not what the relation gives."""
-    if trial.role is not None:
+    # a cell that nobody could read may hold any factor
+    if trial.role is not None or trial.references.unread(trial.entry.cell):
         return
     for way in trial.relation.wrong:
         try:

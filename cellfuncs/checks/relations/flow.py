@@ -8,25 +8,46 @@ from cellfuncs.groups import STANDARD_GRAVITY
 _ATMOSPHERE = 101_325.0
 
 
-@relation("velocity from volume flow", "velocity", source="continuity")
+def _of_a_wrong_section(velocity):
+    """What a mistake in the section of a round tube makes of the velocity in it."""
+    return (
+        ("radius-for-diameter", "the section has the diameter where the radius is meant",
+         lambda **stated: velocity(**stated) / 4.0),
+        ("radius-for-diameter", "the section has the radius where the diameter is meant",
+         lambda **stated: velocity(**stated) * 4.0),
+        ("area-factor", "π/4 is missing in the section", lambda **stated: velocity(**stated) * pi / 4.0),
+        ("area-factor", "π is missing in the section", lambda **stated: velocity(**stated) * pi),
+        ("area-factor", "π/2 stands for π/4 in the section", lambda **stated: velocity(**stated) / 2.0),
+    )  # fmt: skip
+
+
+@relation("velocity from volume flow", "velocity", source="continuity",
+          wrong=_of_a_wrong_section(
+              lambda volume_flow, flow_area: volume_flow / flow_area))  # fmt: skip
 def velocity_of_volume_flow(volume_flow, flow_area):
     """U = V̇/A."""
     return volume_flow / flow_area
 
 
-@relation("velocity in one of the tubes", "velocity", source="continuity")
+@relation("velocity in one of the tubes", "velocity", source="continuity",
+          wrong=_of_a_wrong_section(
+              lambda volume_flow, flow_area, tubes: volume_flow / (tubes * flow_area)))  # fmt: skip
 def velocity_in_tubes(volume_flow, flow_area, tubes):
     """U = V̇/(N·A) with the section of one tube."""
     return volume_flow / (tubes * flow_area)
 
 
-@relation("velocity from mass flow", "velocity", source="continuity")
+@relation("velocity from mass flow", "velocity", source="continuity",
+          wrong=_of_a_wrong_section(
+              lambda mass_flow, density, flow_area: mass_flow / (density * flow_area)))  # fmt: skip
 def velocity_of_mass_flow(mass_flow, density, flow_area):
     """U = ṁ/(ρA)."""
     return mass_flow / (density * flow_area)
 
 
-@relation("velocity in one of the tubes from mass flow", "velocity", source="continuity")
+@relation("velocity in one of the tubes from mass flow", "velocity", source="continuity",
+          wrong=_of_a_wrong_section(
+              lambda mass_flow, density, flow_area, tubes: mass_flow / (density * tubes * flow_area)))  # fmt: skip
 def velocity_in_tubes_of_mass_flow(mass_flow, density, flow_area, tubes):
     """U = ṁ/(ρNA) with the section of one tube."""
     return mass_flow / (density * tubes * flow_area)

@@ -11,7 +11,7 @@ from cellfuncs.cases import labels
 from cellfuncs.checks.finding import Judgement
 from cellfuncs.checks.stated import SheetCase, Stated
 from cellfuncs.quantities import STANDARD_ATMOSPHERE
-from cellfuncs.sheets.inherited import gather, rows, settle, tables
+from cellfuncs.sheets.inherited import gather, rows, sections, settle, tables
 from cellfuncs.sheets.inherited.facts import Facts, facts_of
 from cellfuncs.sheets.inherited.gather import Quantity
 from cellfuncs.sheets.inherited.links import Links
@@ -132,6 +132,9 @@ def _settle(found: list[Quantity], facts: Mapping[str, Facts], links: Links, not
             continue
         _state(quantity, option, links)
         beside.add(quantity.stated.key)
+    by_cell = {q.stated.cell: q for q in found if q.stated is not None}
+    for cell in sections.among({cell: q.stated for cell, q in by_cell.items()}, links):
+        _state(by_cell[cell], by_cell[cell].settled.as_key("flow_area"), links)
 
 
 def _cell(quantity: Quantity) -> str:

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import math
 from collections.abc import Iterable, Mapping, Sequence
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from functools import lru_cache
 from itertools import repeat
 
@@ -50,6 +50,10 @@ class Settled:
         return len(self.options) == 1 or (
             len(self.options) > 1 and self.options[0].score - self.options[1].score >= _CLEAR
         )
+
+    def as_key(self, key: str) -> Option:
+        """The likeliest option, read as another quantity of the same kind."""
+        return replace(self.options[0], key=key)
 
 
 def options_for(found: Found, in_si: bool, atmosphere: float, computed: bool = False) -> Settled:
