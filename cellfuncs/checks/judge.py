@@ -23,6 +23,8 @@ _LOOSE = 0.05
 _TRIED = 4
 # what another trial must cover of the formula, and how sure its cause must be where it covers less than the first
 _COVERED, _SURE = 0.5, 0.6
+# relative: what tables of solutions and oils may differ by, and how near to it a cause must come, as a part of that
+_VARIED, _SHARP = 0.1, 0.1
 # relative: the same quantity, once typed and once referred to, in two units
 _COPY = 0.002
 
@@ -234,11 +236,24 @@ def _cause(doubt: Doubt, references: References) -> tuple[str, str, float]:
 
 def _severity(doubt: Doubt, code: str) -> str:
     trial = doubt.trial
-    if code == "outside-range":
+    if code == "outside-range" or _of_another_table(doubt):
         return "warning"
     if code == "unknown" and (trial.coverage < 1.0 or trial.relation.source == "methods"):
         return "note" if trial.coverage < 1.0 else "warning"
     return "error"
+
+
+def _of_another_table(doubt: Doubt) -> bool:
+    """Whether a property of a solution or an oil is off by little, and no cause meets it far better than chance."""
+    trial, stated = doubt.trial, doubt.entry.si
+    substance = of_substance.named(trial.case)
+    if trial.relation.source != "properties" or trial.expected is None or not of_substance.varies(substance):
+        return False
+    off = abs(stated - trial.expected.value)
+    if off > _VARIED * abs(trial.expected.value):
+        return False
+    near = max(_SHARP * off, doubt.entry.rounding if doubt.entry.rounding < off / 2.0 else 0.0)
+    return not any(abs(ranked.guess.value - stated) <= near for ranked in doubt.causes)
 
 
 def _inputs_in_words(trial: Trial) -> str:

@@ -13,15 +13,19 @@ from cellfuncs.cases import labels
 from cellfuncs.checks.finding import SEVERITIES, Finding
 from cellfuncs.checks.judge import judge
 from cellfuncs.checks.references import References
+from cellfuncs.checks.stated import Stated
 from cellfuncs.sheets import own_formulas
 from cellfuncs.sheets.consequences import Consequences
 from cellfuncs.sheets.dimensions import judge as units
 from cellfuncs.sheets.inherited.page import Page, Spot
 from cellfuncs.sheets.inherited.reading import MOST_NOTES, Reading, read_book
+from cellfuncs.sheets.inherited.remarks import has_remark
 from cellfuncs.sheets.reporting.report import Report, excerpt
 
 # causes that say less than what the units of a formula tell
 _WEAK = frozenset(("unknown", "typing-slip", "hard-coded"))
+# what a calculation is made for, wherever it stands
+_TOTALS = frozenset(("total_pressure_drop", "overall_coefficient", "clean_coefficient", "duty", "heat_loss", "head"))
 _SURE = 0.75
 _MOST_FINDINGS = 500
 _MOST_FOLLOWED = 20  # findings whose consequences are calculated
@@ -150,9 +154,16 @@ def _origins(findings: list[Finding], consequences: Consequences) -> list[Findin
 
 
 def _final(reading: Reading) -> tuple[str, ...]:
-    """The results at the end of a workbook: labelled formulas that no other formula uses."""
+    """The results of a workbook: totals and what a remark stands beside, then labelled formulas that no other uses."""
     used = {source for sources in reading.graph.values() for source in sources}
-    return tuple(cell for cell, q in reading.quantities.items() if not q.stated.typed and cell not in used)
+    computed = {cell: quantity for cell, quantity in reading.quantities.items() if not quantity.stated.typed}
+    pages = {page.name: page for page in reading.pages}
+    weighty = [cell for cell, q in computed.items() if _is_total(q.stated) or has_remark(pages[q.page], q.found.spot)]
+    return tuple(dict.fromkeys((*weighty, *(cell for cell in computed if cell not in used))))
+
+
+def _is_total(stated: Stated) -> bool:
+    return stated.key in _TOTALS or "total" in stated.label.casefold().split()
 
 
 def _excerpts(reading: Reading, findings: Sequence[Finding]) -> dict:

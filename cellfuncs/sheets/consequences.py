@@ -25,12 +25,13 @@ class Consequences:
     """The results of a workbook with other numbers in it."""
 
     def __init__(self, reading: Reading, final: Sequence[str]) -> None:
-        self.reading, self.final = reading, set(final)
+        self.reading, self.final = reading, tuple(final)
         self.links: Links = reading.links
 
     def of(self, finding: Finding) -> Results:
-        """The final results that change with a finding; nothing where they cannot be calculated."""
-        wanted = [cell for cell in self.links.resting_on([finding.cell], MOST_FORMULAS) if cell in self.final]
+        """The results that change with a finding, weightiest first; nothing where they cannot be calculated."""
+        resting = set(self.links.resting_on([finding.cell], MOST_FORMULAS))
+        wanted = [cell for cell in self.final if cell in resting]
         changed = self._changed(finding, [cell for cell in wanted if cell != finding.cell])
         return {cell: pair for cell, pair in changed.items() if not math.isclose(*pair, rel_tol=_SAME)}
 

@@ -126,3 +126,49 @@ def test_a_rectangle_is_a_section_by_its_use(make_book):
     report = check_book(make_book(cells))
     assert not report.findings
     assert ("Sheet1!B5", "flow area") in report.agreed
+
+
+def glycol(density=65.2, viscosity=6.6, substance="propylene glycol 40 % by mass", temperature=50.0):
+    return {
+        "A1": "Glycol line", "A2": "Fluid", "B2": substance, "A3": "Temperature", "B3": temperature, "C3": "°F",
+        "A4": "Density", "B4": density, "C4": "lb/ft3", "A5": "Viscosity", "B5": viscosity, "C5": "cP",
+        "A6": "Pressure", "B6": 60.0, "C6": "psia", "A7": "Pipe ID", "B7": 3.068, "C7": "in",
+    }  # fmt: skip
+
+
+@pytest.mark.parametrize("viscosity", [6.6, 7.3, 6.4])
+def test_another_table_of_a_solution_is_no_error(make_book, viscosity):
+    """Makers' tables of glycols differ by about 1 % in density and 5 % and more in viscosity (common practice)."""
+    report = check_book(make_book(glycol(viscosity=viscosity)))
+    assert not report.has_errors
+    assert all(f.code != "gauge-for-absolute" for f in report.findings)
+
+
+@pytest.mark.parametrize(("density", "viscosity", "cell"), [(72.0, 6.6, "Sheet1!B4"), (65.2, 14.0, "Sheet1!B5")])
+def test_a_solution_far_off_stays_an_error(make_book, density, viscosity, cell):
+    ((found_at, severity),) = [(f.cell, f.severity) for f in check_book(make_book(glycol(density, viscosity))).findings]
+    assert (found_at, severity) == (cell, "error")
+
+
+def test_a_liquid_hardly_feels_an_atmosphere(make_book):
+    report = check_book(make_book(glycol(61.5, 1.31, "water")))
+    assert [f.cell for f in report.findings] == ["Sheet1!B4"]
+    assert "gauge-for-absolute" not in " ".join((report.findings[0].code, *report.findings[0].reasoning))
+
+
+def test_what_rests_on_a_finding_names_totals_and_remarks(make_book):
+    """Results that others use are results too: a total, and what somebody wrote a remark beside."""
+    cells = line("=B4/3600/(PI()*(B5/1000)^2)", 0.25)
+    drop = cells["B14"][1]
+    cells |= {
+        "A15": "Loss of fittings", "B15": 5.0, "C15": "kPa",
+        "A16": "Total pressure loss", "B16": ("=B14+B15", drop + 5.0), "C16": "kPa",
+        "A17": "Hydraulic power", "B17": ("=B4*B16/3600", 25.0 * (drop + 5.0) / 3600.0), "C17": "kW",
+        "D12": "the maker asks for more",
+    }  # fmt: skip
+    report = check_book(make_book(cells))
+    (finding,) = report.findings
+    assert set(report.changes[finding.cell]) == {"Sheet1!B12", "Sheet1!B16", "Sheet1!B17"}
+    before, after = report.changes[finding.cell]["Sheet1!B12"]
+    assert after / before == pytest.approx(4.0, rel=1e-3)
+    assert "Total pressure loss (Sheet1!B16)" in report.consequence(finding)

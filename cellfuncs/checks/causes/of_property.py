@@ -4,7 +4,7 @@ from collections.abc import Iterator
 
 from cellfuncs.cases import labels
 from cellfuncs.checks.causes.guess import Guess
-from cellfuncs.checks.relations.of_substance import PROPERTIES, SCATTER, named, pressure_of, value_at
+from cellfuncs.checks.relations.of_substance import PROPERTIES, SCATTER, is_liquid, named, pressure_of, value_at
 from cellfuncs.checks.stated import SheetCase, Stated
 
 _ZERO = 273.15
@@ -63,6 +63,8 @@ def _other_temperatures(case: SheetCase) -> Iterator[tuple[float, str, float]]:
 
 
 def _pressures(name: str, what: str, at: float, pressure: float) -> Iterator[Guess]:
+    if is_liquid(name, at, pressure):
+        return  # a liquid hardly feels an atmosphere
     others = ((pressure - _ATMOSPHERE, "the gauge pressure"), (pressure + _ATMOSPHERE, "twice the atmosphere"))
     for other, words in others:
         if other > 0 and abs(other / pressure - 1.0) > 1e-6:

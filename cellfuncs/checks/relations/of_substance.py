@@ -28,6 +28,9 @@ SCATTER: Mapping[str, tuple[float, float]] = {
     "surface_tension": (0.02, 0.02),
 }
 _ESTIMATED = 0.2
+# solutions and oils vary with maker, additives and the table they come from (common practice)
+_VARIED = frozenset(("solution", "thermal oil", "mineral oil"))
+_VARIED_BY: Mapping[str, float] = {"viscosity": 0.06, "kinematic_viscosity": 0.06, "density": 0.01}
 # label -> property
 PROPERTIES: Mapping[str, str] = {
     "density": "density",
@@ -107,9 +110,25 @@ def temperatures(case: SheetCase, prefix: str = "") -> Iterator[tuple[float, str
             yield ambient, "stream"
 
 
+def varies(substance: Any) -> bool:
+    """Whether a substance is a solution or an oil, of which no two tables agree as they do of pure fluids."""
+    return getattr(substance, "family", "") in _VARIED
+
+
+def is_liquid(name: str, temperature: float, pressure: float) -> bool:
+    """Whether a substance is liquid there; False where it does not say."""
+    found = find(name)
+    try:
+        return found is not None and found.phase(temperature, pressure) == "liquid"
+    except (CellfuncsError, AttributeError):
+        return False
+
+
 def spread(substance: Any, what: str, temperature: float, pressure: float) -> float:
     """Relative scatter that belongs to a property here."""
     liquid, gas = SCATTER[what]
+    if varies(substance):
+        liquid = max(liquid, _VARIED_BY.get(what, 0.0))
     try:
         is_gas = substance.phase(temperature, pressure) != "liquid"
         estimated = "estimated" in substance.note(what)
