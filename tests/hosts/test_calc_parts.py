@@ -243,8 +243,9 @@ def test_a_function_that_answers_in_one_cell_is_declared_so(cf):
     """Texts in rows are not equal to any text in Calc, so only what is a table may be declared as rows."""
     block = [["flow kind", "duct", ""], ["substance", "water", ""], ["velocity", 3.0, "m/s"], ["diameter", 8.0, "mm"]]
     block += [["length", 1.2, "m"], ["inlet temperature", 18.0, "degC"], ["wall temperature", 45.0, "degC"]]
-    given = {"block": block, "labels": [["a"]], "values": [[1.0]], "term": "advection", "label": "velocity"}
+    given = {"block": block, "labels": [["a"]], "values": [[1.0]], "term": "viscous heating", "label": "velocity"}
     given |= {"what": "terms", "substance": "water", "temperature": 300.0, "value": 2.0, "range": [[1.0]]}
+    given |= {"stated": 2.0, "recomputed": 1.0, "case_block": block}
     for function in catalogue.functions().values():
         if function.returns == "table":
             answer = function.call(*[given[a.name] for a in function.arguments if not a.optional])
