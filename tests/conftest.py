@@ -1,5 +1,9 @@
 """What the tests share: calling a cell function, and the case blocks they vary."""
 
+import os
+
+os.environ.setdefault("OPENBLAS_NUM_THREADS", "1")  # as the command line and the hosts set it, before numpy is loaded
+
 import pytest
 from hypothesis import settings
 
